@@ -1,8 +1,7 @@
+import type { FamilyName } from '../outline/families/family.ts';
 import type { Task } from '../score/task.ts';
 
-/** The outline families a search can draw from, in the order in which tables name them. */
-export const FAMILY_NAMES = ['disc', 'rings', 'ramp', 'fourier', 'polygon', 'sectors'] as const;
-export type FamilyName = (typeof FAMILY_NAMES)[number];
+export { FAMILY_NAMES, type FamilyName } from '../outline/families/family.ts';
 
 /** A brief as checked: every key filled, every quantity in SI units. */
 export interface Brief {

@@ -1,0 +1,75 @@
+import type { Variant } from '../outline/families/family.ts';
+import { isDrawn } from '../outline/families/family.ts';
+import { polygonise } from '../outline/polygonise.ts';
+import type { Shape } from '../outline/shape.ts';
+import type { Aim } from '../score/aim.ts';
+import { aimValue } from '../score/aim.ts';
+import type { Judge } from '../score/judge.ts';
+import type { Scores } from '../score/scores.ts';
+import type { SearchSpace } from '../score/searchSpace.ts';
+import { inspectOutline } from '../shop/inspect.ts';
+
+/** A point of the search, with its scores. */
+export interface Candidate {
+  variant: string;
+  /** Parameters in the variant's own units, then the distance's place where the brief leaves a choice. */
+  vector: number[];
+  scores: Scores;
+  /** How badly the shop's rules are missed, 0 to 1. */
+  misfit: number;
+}
+
+/** Value of a candidate that draws nothing: above all that a drawn one can have, and falling towards the valid. */
+const MISDRAWN = 1e3;
+
+/** Vertices a turn for asking the shop in a search. */
+const SHOP_VERTICES = 96;
+
+/** Beyond this many times the allowed correction a candidate is not shown to the shop: it has other troubles. */
+const SHOP_FROM = 2;
+
+/** The distance that a place from 0 to 1 on the grid stands for. */
+function distanceAt(space: SearchSpace, place: number): number {
+  const last = space.distances.length - 1;
+  return space.distances[Math.min(last, Math.max(0, Math.round(place * last)))];
+}
+
+/** Draws a candidate's outline at its distance, unless its parameters draw none. */
+export function drawCandidate(
+  judge: Judge,
+  space: SearchSpace,
+  variant: Variant,
+  vector: ArrayLike<number>,
+): { shape: Shape; distanceM: number } | { misdrawnBy: number } {
+  const count = variant.parameters.length;
+  const distanceM = distanceAt(space, vector[count] ?? 0);
+  const values = Array.from(vector).slice(0, count);
+  const drawn = variant.draw(values, 1 / Math.sqrt(judge.kappa(distanceM)));
+  return isDrawn(drawn) ? { shape: drawn, distanceM } : drawn;
+}
+
+/** Scores one point of the search; `value` is what the search makes small. */
+export function tryCandidate(
+  judge: Judge,
+  space: SearchSpace,
+  variant: Variant,
+  vector: Float64Array,
+  aim: Aim,
+): { value: number; candidate: Candidate | null } {
+  const drawn = drawCandidate(judge, space, variant, vector);
+  if ('misdrawnBy' in drawn) return { value: MISDRAWN + drawn.misdrawnBy, candidate: null };
+  const scores = judge.scoreShape(drawn.shape, drawn.distanceM);
+  const misfit = shopMisfit(judge, drawn.shape, scores, aim);
+  const value = aimValue(scores, misfit, aim, judge.task);
+  return { value, candidate: { variant: variant.id, vector: Array.from(vector), scores, misfit } };
+}
+
+function shopMisfit(judge: Judge, shape: Shape, scores: Scores, aim: Aim): number {
+  const { shop } = judge.task;
+  if (shop === null) return 0;
+  if (scores.correction.worst > SHOP_FROM * aim.correction) return 1;
+  const elements = shape.elements.map(({ loops }) => ({
+    rings: loops.map((loop) => polygonise(loop, SHOP_VERTICES)),
+  }));
+  return inspectOutline(elements, shop).misfit;
+}

@@ -1,0 +1,58 @@
+import type { Variant } from '../outline/families/family.ts';
+import { polygonise } from '../outline/polygonise.ts';
+import type { OutlineElement, Shape } from '../outline/shape.ts';
+import { shapeRadius } from '../outline/shapeRadius.ts';
+import type { Design } from '../score/design.ts';
+import type { Judge } from '../score/judge.ts';
+import type { SearchSpace } from '../score/searchSpace.ts';
+import type { ShopReport } from '../shop/inspect.ts';
+import { inspectOutline } from '../shop/inspect.ts';
+import type { ShopRules } from '../shop/shopRules.ts';
+import { drawCandidate } from './candidate.ts';
+
+/** Candidates to be drawn as points and scored again, finely. */
+export interface FinishJob {
+  kind: 'finish';
+  candidates: { variant: string; vector: number[] }[];
+}
+
+export interface FinishResult {
+  /** In the order of the candidates. */
+  designs: Design[];
+}
+
+/** Turns candidates into what the shop gets, and judges exactly that: the points as they stand in the files. */
+export function finish(job: FinishJob, judge: Judge, space: SearchSpace): FinishResult {
+  return {
+    designs: job.candidates.map(({ variant: id, vector }) => {
+      const variant = space.variants.find((one) => one.id === id) as Variant;
+      const drawn = drawCandidate(judge, space, variant, vector) as { shape: Shape; distanceM: number };
+      const elements = toPoints(drawn.shape, judge.kappa(drawn.distanceM));
+      return {
+        family: variant.family,
+        distanceM: drawn.distanceM,
+        elements,
+        scores: judge.scoreOutline(elements, drawn.distanceM, drawn.shape),
+        shop: askShop(elements, judge.task.shop),
+      };
+    }),
+  };
+}
+
+/** The shop's word on an outline; without a shop everything fits. */
+export function askShop(elements: readonly OutlineElement[], shop: ShopRules | null): ShopReport {
+  return shop === null ? { fits: true, notes: [], misfit: 0 } : inspectOutline(elements, shop);
+}
+
+/**
+ * A side of a polygon of n on a rim of phase η falls short of the circle by η(π/n)²/2 in phase; n is chosen to keep
+ * that below 0.01, where what is left of it after the equal-area stretch no longer counts.
+ */
+function toPoints(shape: Shape, kappa: number): OutlineElement[] {
+  const phase = kappa * shapeRadius(shape) ** 2;
+  const vertices = 4 * Math.ceil(Math.min(1440, Math.max(180, Math.PI * Math.sqrt(50 * phase))) / 4);
+  return shape.elements.map(({ weight, loops }) => ({
+    weight,
+    rings: loops.map((loop) => polygonise(loop, vertices)),
+  }));
+}

@@ -1,0 +1,26 @@
+import type { FamilyName } from '../outline/families/family.ts';
+import type { Task } from '../score/task.ts';
+import type { ExploreJob, ExploreResult } from './explore.ts';
+import type { FinishJob, FinishResult } from './finish.ts';
+
+/** What every worker is told when it starts. */
+export interface Orders {
+  task: Task;
+  families: readonly FamilyName[];
+}
+
+export type Job = ExploreJob | FinishJob;
+
+/** The result that belongs to a kind of job. */
+export type ResultOf<J extends Job> = J extends ExploreJob ? ExploreResult : FinishResult;
+
+/** To a worker: one job with its number. */
+export interface JobMessage {
+  id: number;
+  job: Job;
+}
+
+/** From a worker: what came of it. An error's code and problems travel as plain data. */
+export type Reply =
+  | { id: number; result: ExploreResult | FinishResult }
+  | { id: number; error: { code: string; message: string } };

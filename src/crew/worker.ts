@@ -1,0 +1,20 @@
+import { parentPort, workerData } from 'node:worker_threads';
+import { RimwrightError } from '../base/errors.ts';
+import type { JobMessage, Orders, Reply } from './messages.ts';
+import { Workshop } from './workshop.ts';
+
+/** The body of a worker thread: takes a job, does it, replies, and waits for the next. */
+const workshop = new Workshop(workerData as Orders);
+
+parentPort?.on('message', ({ id, job }: JobMessage) => {
+  parentPort?.postMessage(replyTo(id, job));
+});
+
+function replyTo(id: number, job: JobMessage['job']): Reply {
+  try {
+    return { id, result: workshop.do(job) };
+  } catch (error) {
+    const code = error instanceof RimwrightError ? error.code : 'machine';
+    return { id, error: { code, message: error instanceof Error ? error.message : String(error) } };
+  }
+}

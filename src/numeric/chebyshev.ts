@@ -1,0 +1,64 @@
+/**
+ * Chebyshev coefficients c of several functions at once: f_j(x) = Σ' c_n T_n(t), t running over [−1, 1] as x over [low, high].
+ *
+ * @param sample writes the `width` function values at x into `out`
+ * @param count number of coefficients, 1 or more
+ * @returns coefficients laid out as [n · width + j]; the halved first term is already applied
+ */
+export function chebyshevFit(
+  sample: (x: number, out: Float64Array) => void,
+  width: number,
+  low: number,
+  high: number,
+  count: number,
+): Float64Array {
+  const values = new Float64Array(count * width);
+  const out = new Float64Array(width);
+  for (let i = 0; i < count; i++) {
+    const t = Math.cos((Math.PI * (i + 0.5)) / count);
+    sample((low + high) / 2 + ((high - low) / 2) * t, out);
+    values.set(out, i * width);
+  }
+  const coefficients = new Float64Array(count * width);
+  for (let n = 0; n < count; n++) {
+    for (let i = 0; i < count; i++) {
+      // The angle is reduced in whole numbers first: large n·i would lose digits.
+      const weight = Math.cos((Math.PI * ((n * (2 * i + 1)) % (4 * count))) / (2 * count));
+      for (let j = 0; j < width; j++) coefficients[n * width + j] += values[i * width + j] * weight;
+    }
+    const scale = (n === 0 ? 1 : 2) / count;
+    for (let j = 0; j < width; j++) coefficients[n * width + j] *= scale;
+  }
+  return coefficients;
+}
+
+/** Clenshaw's sum of four series at once at t in [−1, 1]; `coefficients` as from `chebyshevFit` with width 4. */
+export function chebyshevFour(coefficients: Float64Array, count: number, t: number, out: Float64Array): void {
+  let a1 = 0;
+  let a2 = 0;
+  let b1 = 0;
+  let b2 = 0;
+  let c1 = 0;
+  let c2 = 0;
+  let d1 = 0;
+  let d2 = 0;
+  const twice = 2 * t;
+  for (let n = (count - 1) * 4; n > 0; n -= 4) {
+    const a = coefficients[n] + twice * a1 - a2;
+    a2 = a1;
+    a1 = a;
+    const b = coefficients[n + 1] + twice * b1 - b2;
+    b2 = b1;
+    b1 = b;
+    const c = coefficients[n + 2] + twice * c1 - c2;
+    c2 = c1;
+    c1 = c;
+    const d = coefficients[n + 3] + twice * d1 - d2;
+    d2 = d1;
+    d1 = d;
+  }
+  out[0] = coefficients[0] + t * a1 - a2;
+  out[1] = coefficients[1] + t * b1 - b2;
+  out[2] = coefficients[2] + t * c1 - c2;
+  out[3] = coefficients[3] + t * d1 - d2;
+}

@@ -1,0 +1,94 @@
+import type { LegendreRules } from '../numeric/gaussLegendre.ts';
+import type { Segment } from './segment.ts';
+import { isClosed, pointOn } from './segment.ts';
+import type { Loop } from './shape.ts';
+
+/** How densely a boundary is sampled. */
+export interface NodeDensity {
+  /** Phase in radians per m² of ρ²: κ of the distance and the shortest wavelength. */
+  kappa: number;
+  /** Farthest that the particle's axis may be from the outline's, metres. */
+  offsetM: number;
+  /** Nodes per radian of phase beyond the fixed ones; 0.5 gives about 1e-4 of the extinction, 0.9 about 1e-8. */
+  perRadian: number;
+  /** Least number of nodes on a segment. */
+  least: number;
+}
+
+const PROBES = 8;
+
+/**
+ * Quadrature nodes [x, y, dx, dy] for a set of loops: evenly spaced on smooth closed curves, Gauss–Legendre on the rest.
+ * The number on each segment follows the phase that runs along it.
+ */
+export function boundaryNodes(
+  loops: readonly Loop[],
+  density: NodeDensity,
+  rules: LegendreRules,
+): Float64Array {
+  const counts: number[] = [];
+  let total = 0;
+  for (const loop of loops) {
+    for (const segment of loop) {
+      const count = nodeCount(segment, density);
+      counts.push(count);
+      total += count;
+    }
+  }
+  const nodes = new Float64Array(4 * total);
+  const point = new Float64Array(4);
+  let at = 0;
+  let next = 0;
+  for (const loop of loops) {
+    for (const segment of loop) {
+      const count = counts[next++];
+      const rule = isClosed(segment) ? null : rules.rule(count);
+      for (let i = 0; i < count; i++) {
+        const t = rule ? (1 + rule.nodes[i]) / 2 : i / count;
+        const weight = rule ? rule.weights[i] / 2 : 1 / count;
+        pointOn(segment, t, point);
+        nodes[at++] = point[0];
+        nodes[at++] = point[1];
+        nodes[at++] = point[2] * weight;
+        nodes[at++] = point[3] * weight;
+      }
+    }
+  }
+  return nodes;
+}
+
+/** Nodes for one segment: the phase κ|r − p|² that passes along it, for the worst particle place p, sets their number. */
+function nodeCount(segment: Segment, density: NodeDensity): number {
+  const { kappa, offsetM, perRadian, least } = density;
+  const point = new Float64Array(4);
+  if (segment.kind === 'polar' && isClosed(segment)) {
+    // One fold is probed, and every fold gets the same whole number of nodes.
+    const probes = 4 * PROBES;
+    let own = 0;
+    let largest = 0;
+    for (let i = 0; i < probes; i++) {
+      segment.squared(segment.from + ((i + 0.5) * 2 * Math.PI) / (segment.folds * probes), point);
+      own = Math.max(own, Math.abs(point[1]));
+      largest = Math.max(largest, point[0]);
+    }
+    const perTurn = kappa * own * 2 * Math.PI + 4 * Math.PI * kappa * offsetM * Math.sqrt(largest);
+    const perFold = Math.ceil((least + perRadian * perTurn) / segment.folds);
+    return segment.folds * Math.max(perFold, 4);
+  }
+  let phase = 0;
+  let before = 0;
+  let farthest = 0;
+  let length = 0;
+  for (let i = 0; i <= PROBES; i++) {
+    pointOn(segment, i / PROBES, point);
+    const squared = point[0] * point[0] + point[1] * point[1];
+    if (i > 0) phase += Math.abs(squared - before) * kappa;
+    before = squared;
+    farthest = Math.max(farthest, squared);
+    length = Math.max(length, Math.hypot(point[2], point[3]));
+  }
+  // An offset particle adds the phase 2κ p·r; the azimuth seen from the particle must be resolved as well.
+  phase += 2 * kappa * offsetM * Math.min(length, 2 * Math.sqrt(farthest) * Math.PI);
+  const turn = Math.min(Math.PI, length / Math.sqrt(farthest));
+  return Math.ceil(least * Math.max(0.25, turn / Math.PI) + perRadian * phase);
+}

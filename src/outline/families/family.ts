@@ -1,0 +1,44 @@
+import type { RandomSource } from '../../base/random.ts';
+import type { Shape } from '../shape.ts';
+
+/** The families, in the order in which tables name them. */
+export const FAMILY_NAMES = ['disc', 'rings', 'ramp', 'fourier', 'polygon', 'sectors'] as const;
+export type FamilyName = (typeof FAMILY_NAMES)[number];
+
+/** The span of phases η = κρ² that a search may use: from the brief's radii and distances. */
+export interface PhaseLimits {
+  low: number;
+  high: number;
+}
+
+/** One number that a family varies, with the range outside of which it is refused. */
+export interface Parameter {
+  name: string;
+  low: number;
+  high: number;
+}
+
+/** Parameters that draw no valid outline; `by` grows with the distance from validity, to lead a search back. */
+export interface Misdrawn {
+  misdrawnBy: number;
+}
+
+/**
+ * One way for a family to draw: fixed whole numbers (fold, number of rings), some real parameters.
+ * Lengths are phases: a boundary at η lies at the radius √η · unitM, with unitM = 1/√κ of the design's distance.
+ */
+export interface Variant {
+  family: FamilyName;
+  /** Name of its own within all variants: `rings-3-open`. */
+  id: string;
+  parameters: readonly Parameter[];
+  /** Draws the outline; `values` run in the order of `parameters`, each within its range. */
+  draw(values: ArrayLike<number>, unitM: number): Shape | Misdrawn;
+  /** A promising place to start from, and how far around it to look, both in the parameters' own units. */
+  start(random: RandomSource): { values: number[]; spreads: number[] };
+}
+
+/** Whether the drawing came out. */
+export function isDrawn(drawn: Shape | Misdrawn): drawn is Shape {
+  return 'elements' in drawn;
+}

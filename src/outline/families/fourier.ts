@@ -1,0 +1,114 @@
+import type { RandomSource } from '../../base/random.ts';
+import type { Shape } from '../shape.ts';
+import type { Misdrawn, PhaseLimits, Variant } from './family.ts';
+
+/** Least ρ² in phase: nearer to the axis a boundary is no longer told apart from it. */
+const LEAST = 0.01;
+
+/** What is expanded: ρ² itself or ρ; and with sines besides the cosines or not. */
+interface Expansion {
+  of: 'square' | 'radius';
+  folds: number;
+  terms: number;
+  sines: boolean;
+}
+
+/**
+ * Fourier boundaries: ρ² (or ρ) = c₀ + Σ c_k cos(k n φ) [+ s_k sin(k n φ)], n-fold; one-fold with sines is the free form.
+ */
+export function fourierVariants(limits: PhaseLimits): Variant[] {
+  const expansions: Expansion[] = [
+    ...[2, 3, 4, 5, 6, 8].map((folds) => ({ of: 'square', folds, terms: 5, sines: false }) as const),
+    ...[3, 5].map((folds) => ({ of: 'radius', folds, terms: 5, sines: false }) as const),
+    ...[3, 5].map((folds) => ({ of: 'square', folds, terms: 3, sines: true }) as const),
+    { of: 'square', folds: 1, terms: 6, sines: true },
+  ];
+  return expansions.map((expansion) => fourierVariant(expansion, limits));
+}
+
+function fourierVariant(expansion: Expansion, limits: PhaseLimits): Variant {
+  const { of, folds, terms, sines } = expansion;
+  const harmonics = terms - 1;
+  const largest = of === 'square' ? limits.high : Math.sqrt(limits.high);
+  const swing = Math.min(largest, of === 'square' ? 60 : 8);
+  const parameters = [{ name: 'c0', low: of === 'square' ? LEAST : Math.sqrt(LEAST), high: largest }];
+  for (let k = 1; k <= harmonics; k++) parameters.push({ name: `c${k}`, low: -swing, high: swing });
+  if (sines)
+    for (let k = 1; k <= harmonics; k++) parameters.push({ name: `s${k}`, low: -swing, high: swing });
+  return {
+    family: 'fourier',
+    id: `fourier-${of}-${folds}-fold-${terms}${sines ? '-sines' : ''}`,
+    parameters,
+    draw: (values, unitM) => drawFourier(values, expansion, unitM),
+    start: (random) => startFourier(random, expansion, limits),
+  };
+}
+
+function drawFourier(values: ArrayLike<number>, expansion: Expansion, unitM: number): Shape | Misdrawn {
+  const { of, folds, terms, sines } = expansion;
+  const out = new Float64Array(2);
+  const series = (phi: number, target: Float64Array) => {
+    let value = values[0];
+    let slope = 0;
+    // cos kα and sin kα by rotation: one pair of trigonometric calls serves all harmonics.
+    const cos1 = Math.cos(folds * phi);
+    const sin1 = Math.sin(folds * phi);
+    let cos = 1;
+    let sin = 0;
+    for (let k = 1; k < terms; k++) {
+      const next = cos * cos1 - sin * sin1;
+      sin = sin * cos1 + cos * sin1;
+      cos = next;
+      const c = values[k];
+      const s = sines ? values[terms - 1 + k] : 0;
+      value += c * cos + s * sin;
+      slope += k * folds * (s * cos - c * sin);
+    }
+    target[0] = value;
+    target[1] = slope;
+  };
+  let least = Number.POSITIVE_INFINITY;
+  const probes = 12 * terms;
+  for (let i = 0; i < probes; i++) {
+    series((2 * Math.PI * i) / (probes * folds), out);
+    least = Math.min(least, of === 'square' ? out[0] : out[0] * Math.abs(out[0]));
+  }
+  if (least < LEAST) return { misdrawnBy: LEAST - least };
+  const area = unitM * unitM;
+  const squared = (phi: number, target: Float64Array) => {
+    series(phi, target);
+    if (of === 'radius') {
+      target[1] *= 2 * target[0];
+      target[0] *= target[0];
+    }
+    // Between the probes the boundary may dip a little lower, but never to the axis.
+    target[0] = Math.max(target[0], LEAST / 4) * area;
+    target[1] *= area;
+  };
+  const loop = [{ kind: 'polar', from: 0, to: 2 * Math.PI, folds, squared }] as const;
+  return { elements: [{ weight: 1, loops: [loop] }], folds, mirror: !sines };
+}
+
+function startFourier(random: RandomSource, { of, terms, sines }: Expansion, limits: PhaseLimits) {
+  const high = Math.min(limits.high, 16);
+  const mean = Math.max(limits.low, 1.2 + (0.6 * high - 1.2) * random.uniform() ** 2);
+  const values = [mean];
+  const spreads = [0.15 * mean];
+  for (let part = 0; part < (sines ? 2 : 1); part++) {
+    for (let k = 1; k < terms; k++) {
+      values.push(
+        k === 1 && part === 0 ? mean * (0.4 + 0.5 * random.uniform()) : ((0.2 * mean) / k) * random.normal(),
+      );
+      spreads.push((0.2 * mean) / Math.sqrt(k));
+    }
+  }
+  // A series of ρ has half the relative swing of one of ρ², about the root of the mean.
+  if (of === 'radius') {
+    const root = Math.sqrt(mean);
+    return {
+      values: values.map((value, k) => (k === 0 ? root : value / (2 * root))),
+      spreads: spreads.map((spread) => spread / (2 * root)),
+    };
+  }
+  return { values, spreads };
+}

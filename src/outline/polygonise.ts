@@ -1,0 +1,54 @@
+import type { Segment } from './segment.ts';
+import { isClosed, pointOn } from './segment.ts';
+import type { Loop } from './shape.ts';
+
+/**
+ * Turns a loop into the points that go to files, on a grid of 1 nm.
+ *
+ * A whole circle becomes a regular polygon of the same area, so that the mean of ρ² over its rim, hence the phase, stays.
+ *
+ * @param verticesPerTurn vertices for a whole turn of curved segments, 16 or more
+ * @returns flat [x0, y0, x1, y1, …], metres
+ */
+export function polygonise(loop: Loop, verticesPerTurn: number): Float64Array {
+  const points: number[] = [];
+  const point = new Float64Array(4);
+  for (const segment of loop) {
+    const pieces = pieceCount(segment, verticesPerTurn);
+    const stretch = isClosed(segment) && segment.kind === 'arc' ? equalAreaStretch(pieces) : 1;
+    for (let i = 0; i < pieces; i++) {
+      pointOn(segment, i / pieces, point);
+      if (segment.kind === 'arc' && stretch !== 1) {
+        point[0] = segment.centre[0] + (point[0] - segment.centre[0]) * stretch;
+        point[1] = segment.centre[1] + (point[1] - segment.centre[1]) * stretch;
+      }
+      const x = onGrid(point[0]);
+      const y = onGrid(point[1]);
+      const last = points.length - 2;
+      if (last < 0 || points[last] !== x || points[last + 1] !== y) points.push(x, y);
+    }
+  }
+  const last = points.length - 2;
+  if (last > 0 && points[0] === points[last] && points[1] === points[last + 1]) points.length = last;
+  return Float64Array.from(points);
+}
+
+/** Coordinates are written in mm with six decimals: one nanometre, far below what any shop holds. */
+function onGrid(metres: number): number {
+  return Math.round(metres * 1e9) / 1e9;
+}
+
+function pieceCount(segment: Segment, verticesPerTurn: number): number {
+  if (segment.kind === 'line') return 1;
+  const turns = Math.abs(segment.to - segment.from) / (2 * Math.PI);
+  const pieces = Math.max(2, Math.ceil(turns * verticesPerTurn));
+  // A whole number of vertices a fold keeps the polygon as symmetric as the curve.
+  return segment.kind === 'polar' && isClosed(segment)
+    ? segment.folds * Math.ceil(pieces / segment.folds)
+    : pieces;
+}
+
+function equalAreaStretch(sides: number): number {
+  const angle = (2 * Math.PI) / sides;
+  return Math.sqrt(angle / Math.sin(angle));
+}

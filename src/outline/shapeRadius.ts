@@ -1,0 +1,43 @@
+import type { Segment } from './segment.ts';
+import { pointOn } from './segment.ts';
+import type { Shape } from './shape.ts';
+
+const PROBES = 24;
+
+/** Radius of the circle about the axis around a shape, metres; curves are probed finely and the best probe refined. */
+export function shapeRadius(shape: Shape): number {
+  let squared = 0;
+  for (const { loops } of shape.elements) {
+    for (const loop of loops)
+      for (const segment of loop) squared = Math.max(squared, farthestSquared(segment));
+  }
+  return Math.sqrt(squared);
+}
+
+function farthestSquared(segment: Segment): number {
+  const point = new Float64Array(4);
+  const squaredAt = (t: number) => {
+    pointOn(segment, t, point);
+    return point[0] * point[0] + point[1] * point[1];
+  };
+  if (segment.kind === 'line') return Math.max(squaredAt(0), squaredAt(1));
+  if (segment.kind === 'arc' && segment.centre[0] === 0 && segment.centre[1] === 0)
+    return segment.radius ** 2;
+  // A repeating curve need only be searched over one of its folds.
+  const span = segment.kind === 'polar' ? 1 / segment.folds : 1;
+  let best = 0;
+  let place = 0;
+  for (let i = 0; i <= PROBES; i++) {
+    const value = squaredAt((span * i) / PROBES);
+    if (value > best) {
+      best = value;
+      place = i;
+    }
+  }
+  // One step of a parabola through the best probe and its neighbours.
+  const before = squaredAt((span * Math.max(0, place - 1)) / PROBES);
+  const after = squaredAt((span * Math.min(PROBES, place + 1)) / PROBES);
+  const bend = before - 2 * best + after;
+  const shift = bend < 0 ? (before - after) / (2 * bend) : 0;
+  return Math.max(best, squaredAt((span * Math.min(PROBES, Math.max(0, place + shift))) / PROBES));
+}

@@ -1,0 +1,125 @@
+import { cellIntegrals, hermitePieces, slopeAtStart } from '../numeric/uniformTable.ts';
+import { fluxDensity } from './fluxDensity.ts';
+import type { FluxSamples } from './randomSpread.ts';
+import { averageOverSpread } from './randomSpread.ts';
+import type { Scenario } from './scenario.ts';
+
+/**
+ * The cumulative flux of one scenario at one distance, ready for boundary integrals.
+ *
+ * With G(ρ) = ∫₀^ρ w ρ' dρ' the reading of an outline is ∮ G dφ. The table holds G over s = ρ² (and for polarised light the
+ * twofold part over s²), since G dφ = (G/s)(x dy − y dx): no division, and smooth where the outline passes the axis.
+ */
+export interface RadialTable {
+  /** Cells per m² of s. */
+  cellsPerM2: number;
+  cells: number;
+  /** Cubic pieces of G/s, four numbers a cell (see `hermitePieces`). */
+  mean: Float64Array;
+  /** Cubic pieces of (twofold G)/s², 1/m²; null for unpolarised light. */
+  twofold: Float64Array | null;
+  /** The field's angle, as cos 2φ and sin 2φ. */
+  axis: readonly [cos2: number, sin2: number];
+}
+
+/** Phase advance per cell that keeps a table's error below 1e-6 of the extinction for ordinary particles. */
+const PHASE_STEP = 1 / 8;
+
+/**
+ * Builds the table of one scenario.
+ *
+ * @param distanceM from particle to detector plane, metres
+ * @param radiusM largest distance from the particle's axis that will be asked for, metres
+ * @param spreadM rms random motion per axis, metres
+ */
+export function buildRadialTable(
+  scenario: Scenario,
+  distanceM: number,
+  radiusM: number,
+  spreadM: number,
+): RadialTable {
+  const sphere = scenario.colours[0].sphere;
+  const kappa = sphere.wavenumber / (2 * distanceM);
+  const stepM2 = phaseStep(sphere.forward) / kappa;
+  const cells = Math.floor((radiusM * radiusM) / stepM2) + 2;
+  const samples = sampleFlux(scenario, distanceM, stepM2, cells + 4, spreadM, kappa);
+  const mean = add(samples.crossedMean, samples.scatteredMean);
+  const angle = scenario.polarizationRad;
+  return {
+    cellsPerM2: 1 / stepM2,
+    cells,
+    mean: cumulativePieces(mean, stepM2, cells, 1),
+    twofold:
+      angle === null
+        ? null
+        : cumulativePieces(add(samples.crossedTwofold, samples.scatteredTwofold), stepM2, cells, 2),
+    axis: angle === null ? [0, 0] : [Math.cos(2 * angle), Math.sin(2 * angle)],
+  };
+}
+
+/** The interpolation error h⁴/384 counts relative to |S|; where the extinction is a small part of |S| the step shrinks. */
+function phaseStep(forward: readonly [number, number]): number {
+  const ratio = Math.hypot(forward[0], forward[1]) / Math.abs(forward[0]);
+  return Math.max(PHASE_STEP / 8, PHASE_STEP / ratio ** 0.25);
+}
+
+function sampleFlux(
+  scenario: Scenario,
+  distanceM: number,
+  stepM2: number,
+  count: number,
+  spreadM: number,
+  kappa: number,
+): FluxSamples {
+  if (spreadM === 0) return sampleLine(scenario, distanceM, stepM2, count);
+  const reach = (Math.sqrt(count * stepM2) + 7.5 * spreadM) ** 2;
+  const fine = sampleLine(scenario, distanceM, stepM2 / 2, Math.ceil((2 * reach) / stepM2) + 4);
+  return averageOverSpread(fine, kappa, spreadM, count);
+}
+
+/** Samples of the flux density, summed over the colours of the line. */
+function sampleLine(scenario: Scenario, distanceM: number, stepM2: number, count: number): FluxSamples {
+  const samples: FluxSamples = {
+    stepM2,
+    crossedMean: new Float64Array(count),
+    crossedTwofold: new Float64Array(count),
+    scatteredMean: new Float64Array(count),
+    scatteredTwofold: new Float64Array(count),
+  };
+  const out = new Float64Array(4);
+  const work = new Float64Array(4);
+  for (const { weight, sphere } of scenario.colours) {
+    for (let i = 0; i < count; i++) {
+      fluxDensity(sphere, distanceM, i * stepM2, out, work);
+      samples.crossedMean[i] += weight * out[0];
+      samples.crossedTwofold[i] += weight * out[1];
+      samples.scatteredMean[i] += weight * out[2];
+      samples.scatteredTwofold[i] += weight * out[3];
+    }
+  }
+  return samples;
+}
+
+function add(a: Float64Array, b: Float64Array): Float64Array {
+  return a.map((value, i) => value + b[i]);
+}
+
+/** Cubic pieces of G/s^power, where dG/ds = w/2. */
+function cumulativePieces(density: Float64Array, stepM2: number, cells: number, power: 1 | 2): Float64Array {
+  const pieces = cellIntegrals(density, cells + 1);
+  const values = new Float64Array(cells + 1);
+  const slopes = new Float64Array(cells + 1);
+  // At the axis w = w(0) + w'(0) s + …, and the twofold part starts with w'(0) s.
+  const slope = slopeAtStart(density) / stepM2;
+  values[0] = power === 1 ? density[0] / 2 : slope / 4;
+  slopes[0] = (slope * stepM2) / 4;
+  let cumulative = 0;
+  for (let i = 1; i <= cells; i++) {
+    cumulative += (pieces[i - 1] * stepM2) / 2;
+    const s = i * stepM2;
+    values[i] = cumulative / s ** power;
+    slopes[i] = ((density[i] / 2) * s ** -power - (power * values[i]) / s) * stepM2;
+  }
+  if (power === 2) slopes[0] = values[1] - values[0];
+  return hermitePieces(values, slopes, cells);
+}

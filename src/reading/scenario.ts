@@ -1,0 +1,78 @@
+import { gaussHermite } from '../numeric/gaussHermite.ts';
+import type { IndexModel } from '../optics/indexModel.ts';
+import { refractiveIndex } from '../optics/indexModel.ts';
+import type { Light } from '../optics/light.ts';
+import type { Particle } from '../optics/particle.ts';
+import type { SphereAmplitudes } from '../optics/sphereAmplitudes.ts';
+import { sphereAmplitudes } from '../optics/sphereAmplitudes.ts';
+
+/** One particle in one light: what a detector is judged on at every position. */
+export interface Scenario {
+  particle: Particle;
+  /** Centre of the line, vacuum, metres. */
+  wavelengthM: number;
+  /** The line as a weighted sum of colours; the weights add up to 1. */
+  colours: readonly { weight: number; sphere: SphereAmplitudes }[];
+  /** Extinction cross-section in this light: the mean over the line, m². */
+  extinctionM2: number;
+  /** Angle of the field from x, radians; null for unpolarised light. */
+  polarizationRad: number | null;
+}
+
+/** Standard deviation over full width at half maximum of a Gaussian. */
+const SIGMA_PER_FWHM = 1 / Math.sqrt(8 * Math.LN2);
+
+/** The vacuum wavelengths that the drift makes: the nominal one, and `count` − 1 more evenly between the extremes. */
+export function driftedWavelengths(light: Light, count = 3): number[] {
+  if (light.driftM === 0) return [light.wavelengthM];
+  return Array.from(
+    { length: count },
+    (_, i) => light.wavelengthM + light.driftM * ((2 * i) / (count - 1) - 1),
+  );
+}
+
+/**
+ * Solves every particle at every wavelength.
+ *
+ * @param halfAngle half-angle of the cone in which the light may fall on a detector, radians, below π/2
+ * @param largestPhase largest η = κρ² at which readings are wanted; decides how finely the line is sampled
+ */
+export function buildScenarios(
+  light: Light,
+  medium: IndexModel,
+  particles: readonly Particle[],
+  wavelengths: readonly number[],
+  halfAngle: number,
+  largestPhase: number,
+): Scenario[] {
+  return particles.flatMap((particle) =>
+    wavelengths.map((wavelengthM) => {
+      const colours = lineColours(light, wavelengthM, largestPhase).map(({ weight, colourM }) => ({
+        weight,
+        sphere: sphereAmplitudes(particle, medium, colourM, halfAngle),
+      }));
+      return {
+        particle,
+        wavelengthM,
+        colours,
+        extinctionM2: colours.reduce((sum, { weight, sphere }) => sum + weight * sphere.extinctionM2, 0),
+        polarizationRad: light.polarizationRad,
+      };
+    }),
+  );
+}
+
+/** Gauss–Hermite colours of the line. A phase η spreads by η σ/λ over it; n nodes follow cos up to about √(2n) − 1. */
+function lineColours(light: Light, wavelengthM: number, largestPhase: number) {
+  const sigmaM = light.linewidthM * SIGMA_PER_FWHM;
+  if (sigmaM === 0) return [{ weight: 1, colourM: wavelengthM }];
+  const spread = (largestPhase * sigmaM) / wavelengthM;
+  const count = Math.min(60, Math.ceil(4 + 2 * spread + spread * spread));
+  const { nodes, weights } = gaussHermite(count);
+  return Array.from(nodes, (node, i) => ({ weight: weights[i], colourM: wavelengthM + sigmaM * node }));
+}
+
+/** κ = k/(2z), 1/m², in the medium at the given vacuum wavelength. */
+export function paraxialKappa(medium: IndexModel, vacuumWavelengthM: number, distanceM: number): number {
+  return (Math.PI * refractiveIndex(medium, vacuumWavelengthM)[0]) / (vacuumWavelengthM * distanceM);
+}

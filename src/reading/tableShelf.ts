@@ -1,0 +1,51 @@
+import type { RadialTable } from './radialTable.ts';
+import { buildRadialTable } from './radialTable.ts';
+import type { Scenario } from './scenario.ts';
+
+/** Numbers that all tables together may hold: 256 MB. */
+const CAPACITY = 32_000_000;
+
+/**
+ * Keeps the radial tables of every scenario by distance, and builds them when first asked for.
+ * Tables grow with the radius asked for; the least recently used distances go first when the shelf is full.
+ */
+export class TableShelf {
+  readonly #scenarios: readonly Scenario[];
+  readonly #spreadM: number;
+  readonly #held = new Map<number, { radiusM: number; tables: RadialTable[]; size: number }>();
+  #size = 0;
+
+  constructor(scenarios: readonly Scenario[], spreadM: number) {
+    this.#scenarios = scenarios;
+    this.#spreadM = spreadM;
+  }
+
+  /** One table a scenario, in their order, good to at least `radiusM` from the particle's axis. */
+  tables(distanceM: number, radiusM: number): readonly RadialTable[] {
+    const held = this.#held.get(distanceM);
+    if (held && held.radiusM >= radiusM) {
+      this.#held.delete(distanceM);
+      this.#held.set(distanceM, held);
+      return held.tables;
+    }
+    if (held) this.#drop(distanceM, held.size);
+    // Some room to grow spares a rebuild for every slightly larger outline.
+    const reach = radiusM * 1.3;
+    const tables = this.#scenarios.map((scenario) =>
+      buildRadialTable(scenario, distanceM, reach, this.#spreadM),
+    );
+    const size = tables.reduce((sum, { mean, twofold }) => sum + mean.length + (twofold?.length ?? 0), 0);
+    this.#held.set(distanceM, { radiusM: reach, tables, size });
+    this.#size += size;
+    for (const [oldest, { size: its }] of this.#held) {
+      if (this.#size <= CAPACITY || oldest === distanceM) break;
+      this.#drop(oldest, its);
+    }
+    return tables;
+  }
+
+  #drop(distanceM: number, size: number): void {
+    this.#held.delete(distanceM);
+    this.#size -= size;
+  }
+}

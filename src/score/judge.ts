@@ -1,0 +1,237 @@
+import { RimwrightError } from '../base/errors.ts';
+import { LegendreRules } from '../numeric/gaussLegendre.ts';
+import { refractiveIndex } from '../optics/indexModel.ts';
+import { nodesArea, ringsRadius } from '../outline/area.ts';
+import type { NodeDensity } from '../outline/boundaryNodes.ts';
+import { boundaryNodes } from '../outline/boundaryNodes.ts';
+import { ringNodes } from '../outline/ringNodes.ts';
+import type { OutlineElement, Shape } from '../outline/shape.ts';
+import { shapeRadius } from '../outline/shapeRadius.ts';
+import { boundaryReading } from '../reading/boundaryReading.ts';
+import type { Symmetry } from '../reading/positions.ts';
+import { flightPoints, samplePositions } from '../reading/positions.ts';
+import type { Scenario } from '../reading/scenario.ts';
+import { buildScenarios, driftedWavelengths } from '../reading/scenario.ts';
+import { TableShelf } from '../reading/tableShelf.ts';
+import { correctionOf } from './correction.ts';
+import type { ElementArea } from './cost.ts';
+import { areaOverFloor, lobeRatio, measurementTime, requiredSnr } from './cost.ts';
+import type { Scores } from './scores.ts';
+import type { Task } from './task.ts';
+
+/** How finely a design is judged. */
+export interface Fineness {
+  /** Phase between neighbouring positions, radians (see `samplePositions`). */
+  spacing: number;
+  /** Wavelengths over the drift, and places over the depth. */
+  drifts: number;
+  depths: number;
+  /** Boundary nodes per radian of phase. */
+  perRadian: number;
+}
+
+/** For every candidate of a search. */
+export const SEARCH_FINENESS: Fineness = { spacing: 0.5, drifts: 3, depths: 3, perRadian: 0.45 };
+
+/** For what is reported: ten times denser in position, and finer in the rest. */
+export const REPORT_FINENESS: Fineness = { spacing: 0.16, drifts: 5, depths: 5, perRadian: 0.9 };
+
+/** One detector element ready for integration. */
+interface ElementNodes extends ElementArea {
+  nodes: Float64Array;
+}
+
+/** Scores designs for one task. Holds the solved particles and the radial tables, so make one and keep it. */
+export class Judge {
+  readonly task: Task;
+  readonly scenarios: readonly Scenario[];
+  /** Wavelength in the medium, metres. */
+  readonly wavelengthM: number;
+  readonly #fineness: Fineness;
+  readonly #shelf: TableShelf;
+  readonly #rules = new LegendreRules();
+  readonly #leastExtinctionM2: number;
+  readonly #largestDiameterM: number;
+
+  constructor(task: Task, fineness: Fineness) {
+    this.task = task;
+    this.#fineness = fineness;
+    this.wavelengthM = task.light.wavelengthM / refractiveIndex(task.medium, task.light.wavelengthM)[0];
+    this.scenarios = scenariosOf(task, fineness.drifts);
+    this.#shelf = new TableShelf(this.scenarios, task.placement.spreadM);
+    this.#leastExtinctionM2 = Math.min(...this.scenarios.map(({ extinctionM2 }) => extinctionM2));
+    this.#largestDiameterM = Math.max(...task.particles.map(({ diameterM }) => diameterM));
+  }
+
+  /** κ = k/(2z) at the nominal wavelength, 1/m². */
+  kappa(distanceM: number): number {
+    return Math.PI / (this.wavelengthM * distanceM);
+  }
+
+  /** Scores a shape as its family draws it. */
+  scoreShape(shape: Shape, distanceM: number): Scores {
+    const density = this.#density(distanceM);
+    const elements = shape.elements.map(({ weight, loops }) =>
+      withArea(weight, boundaryNodes(loops, density, this.#rules)),
+    );
+    return this.#score(elements, shapeRadius(shape), distanceM, shape);
+  }
+
+  /** Scores an outline given by its points. */
+  scoreOutline(
+    elements: readonly OutlineElement[],
+    distanceM: number,
+    symmetry: Symmetry = NO_SYMMETRY,
+  ): Scores {
+    const radiusM = Math.max(...elements.map(({ rings }) => ringsRadius(rings)));
+    return this.#score(this.#outlineNodes(elements, distanceM), radiusM, distanceM, symmetry);
+  }
+
+  /**
+   * Ratios reading/extinction of an outline, one row a scenario.
+   *
+   * @param positions flat [x0, y0, x1, y1, …], metres; without it the sampling that scores use
+   * @returns for each scenario the ratios, positions of the nominal depth first
+   */
+  outlineRatios(
+    elements: readonly OutlineElement[],
+    distanceM: number,
+    positions?: Float64Array,
+  ): { positions: Float64Array; depths: readonly number[]; ratios: Float64Array[] } {
+    const radiusM = Math.max(...elements.map(({ rings }) => ringsRadius(rings)));
+    const nodes = this.#outlineNodes(elements, distanceM);
+    const places = positions ?? this.#positions(radiusM, distanceM, NO_SYMMETRY);
+    const depths = positions ? [0] : this.#depths();
+    return { positions: places, depths, ratios: this.#ratios(nodes, radiusM, distanceM, places, depths) };
+  }
+
+  #outlineNodes(elements: readonly OutlineElement[], distanceM: number): ElementNodes[] {
+    const density = this.#density(distanceM);
+    return elements.map(({ weight, rings }) => withArea(weight, ringNodes(rings, density, this.#rules)));
+  }
+
+  #density(distanceM: number): NodeDensity {
+    const { placement, light } = this.task;
+    const shortest = (light.wavelengthM - light.driftM) / light.wavelengthM;
+    return {
+      kappa: this.kappa(distanceM - placement.depthM) / shortest,
+      offsetM: placement.offsetM + (placement.crossing?.spanM ?? 0) / 2,
+      perRadian: this.#fineness.perRadian,
+      least: 6,
+    };
+  }
+
+  #positions(radiusM: number, distanceM: number, symmetry: Symmetry): Float64Array {
+    const { placement, light } = this.task;
+    // A field's angle or a flight's heading breaks the outline's symmetry.
+    const kept = light.polarizationRad === null && placement.crossing === null ? symmetry : NO_SYMMETRY;
+    return samplePositions(
+      placement.offsetM,
+      2 * this.kappa(distanceM) * radiusM,
+      this.#fineness.spacing,
+      kept,
+    );
+  }
+
+  #depths(): number[] {
+    const { depthM } = this.task.placement;
+    const count = this.#fineness.depths;
+    if (depthM === 0) return [0];
+    const others = Array.from({ length: count }, (_, i) => depthM * ((2 * i) / (count - 1) - 1));
+    return [0, ...others.filter((depth) => depth !== 0)];
+  }
+
+  #ratios(
+    elements: readonly ElementNodes[],
+    radiusM: number,
+    distanceM: number,
+    positions: Float64Array,
+    depths: readonly number[],
+  ): Float64Array[] {
+    const { crossing } = this.task.placement;
+    const flight = flightPoints(crossing, 2 * this.kappa(distanceM) * radiusM);
+    const reach = radiusM + farthest(positions) + (crossing?.spanM ?? 0) / 2;
+    const count = positions.length / 2;
+    const ratios = this.scenarios.map(() => new Float64Array(count * depths.length));
+    depths.forEach((depth, d) => {
+      const tables = this.#shelf.tables(distanceM - depth, reach);
+      for (let s = 0; s < ratios.length; s++) {
+        const perExtinction = 2 / (this.scenarios[s].extinctionM2 * flight.length);
+        for (let p = 0; p < count; p++) {
+          let reading = 0;
+          for (let f = 0; f < flight.length; f += 2) {
+            const x = positions[2 * p] + flight[f];
+            const y = positions[2 * p + 1] + flight[f + 1];
+            for (const { weight, nodes } of elements)
+              reading += weight * boundaryReading(tables[s], nodes, x, y);
+          }
+          ratios[s][d * count + p] = reading * perExtinction;
+        }
+      }
+    });
+    return ratios;
+  }
+
+  #score(elements: readonly ElementNodes[], radiusM: number, distanceM: number, symmetry: Symmetry): Scores {
+    const { target, detector, light } = this.task;
+    const positions = this.#positions(radiusM, distanceM, symmetry);
+    const ratios = this.#ratios(elements, radiusM, distanceM, positions, this.#depths());
+    const { gain, worst, rms } = correctionOf(flatten(ratios), target.gain);
+    if (!Number.isFinite(worst)) {
+      throw new RimwrightError(
+        'machine',
+        `a score is not finite: outline of radius ${radiusM} m at ${distanceM} m`,
+      );
+    }
+    const electronics = { ...detector, ...light };
+    const extinctionM2 = this.#leastExtinctionM2;
+    return {
+      gain,
+      correction: { worst, rms },
+      lobe: { ratio: lobeRatio(radiusM, distanceM, this.wavelengthM, this.#largestDiameterM) },
+      snr: {
+        required: requiredSnr(elements, target.correction, gain, extinctionM2),
+        time_s: measurementTime(elements, target.correction, gain, extinctionM2, electronics),
+      },
+      area_m2: elements.reduce((sum, { areaM2 }) => sum + areaM2, 0),
+      radius_m: radiusM,
+      areaOverFloor: areaOverFloor(elements, gain, this.wavelengthM, distanceM),
+    };
+  }
+}
+
+const NO_SYMMETRY: Symmetry = { folds: 1, mirror: false };
+
+/** Solves the particles of a task for the widest cone and the largest phase that its limits allow. */
+function scenariosOf(task: Task, drifts: number): Scenario[] {
+  const { light, medium, particles, placement, detector } = task;
+  const nearestM = detector.distanceM[0] - placement.depthM;
+  const spanM = placement.crossing?.spanM ?? 0;
+  // Tables are built with some room to grow (TableShelf), and the spread reaches 7.5 σ beyond them.
+  const reachM = 1.35 * (detector.radiusM[1] + placement.offsetM + spanM / 2) + 7.5 * placement.spreadM;
+  const index = refractiveIndex(medium, light.wavelengthM)[0];
+  const largestPhase = (Math.PI * index * detector.radiusM[1] ** 2) / (light.wavelengthM * nearestM);
+  const halfAngle = Math.min(1.5, Math.atan(reachM / nearestM) + 1e-3);
+  return buildScenarios(light, medium, particles, driftedWavelengths(light, drifts), halfAngle, largestPhase);
+}
+
+function withArea(weight: number, nodes: Float64Array): ElementNodes {
+  return { weight, nodes, areaM2: nodesArea(nodes) };
+}
+
+function farthest(positions: Float64Array): number {
+  let squared = 0;
+  for (let i = 0; i < positions.length; i += 2)
+    squared = Math.max(squared, positions[i] ** 2 + positions[i + 1] ** 2);
+  return Math.sqrt(squared);
+}
+
+function flatten(rows: readonly Float64Array[]): Float64Array {
+  const out = new Float64Array(rows.reduce((sum, { length }) => sum + length, 0));
+  let at = 0;
+  for (const row of rows) {
+    out.set(row, at);
+    at += row.length;
+  }
+  return out;
+}
