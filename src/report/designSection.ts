@@ -1,0 +1,46 @@
+import { markupText } from '../draw/plainText.ts';
+import { areaText, countText, percentText, quantityText, timeText } from '../draw/quantityText.ts';
+import { designNotes } from './designNotes.ts';
+import { shopText } from './designTable.ts';
+import { outlineFigure } from './outlineFigure.ts';
+import type { ReportDesign, ReportInput } from './reportInput.ts';
+import { textList } from './textList.ts';
+
+/** A design's own part of the report: picture, scores, notes, and what the shop should mind. */
+export function designSection(design: ReportDesign, input: ReportInput, anchor: string): string {
+  const { scores } = design;
+  return [
+    `<article id="${anchor}" aria-labelledby="${anchor}-name">`,
+    `<h3 id="${anchor}-name">${markupText(design.id)} <span class="family">${markupText(design.family)}</span></h3>`,
+    '<div class="beside">',
+    outlineFigure(design, input, anchor),
+    '<div>',
+    scoreList(design),
+    '<h4>Notes</h4>',
+    textList(designNotes(design, input.targetCorrection), 'Nothing to add.'),
+    '<h4>Machinability</h4>',
+    `<p>Fits the shop: ${shopText(scores.shop.fits)}.</p>`,
+    textList(scores.shop.notes, ''),
+    '</div></div>',
+    '</article>',
+  ].join('\n');
+}
+
+function scoreList({ rank, distanceM, elements, scores, meetsTarget }: ReportDesign): string {
+  const rows: [name: string, value: string][] = [
+    ['Rank', rank === 1 ? '1 (front)' : String(rank)],
+    ['Meets the target', meetsTarget ? 'yes' : 'no'],
+    ['Distance', quantityText(distanceM, 'm')],
+    ['Radius', quantityText(scores.radius_m, 'm')],
+    ['Elements', String(elements.length)],
+    ['Gain', scores.gain.toFixed(3)],
+    ['Worst correction', percentText(scores.correction.worst)],
+    ['RMS correction', percentText(scores.correction.rms)],
+    ['Lobe ratio', countText(scores.lobe.ratio)],
+    ['Required SNR', countText(scores.snr.required)],
+    ['Time', timeText(scores.snr.time_s)],
+    ['Area', areaText(scores.area_m2)],
+    ['Area over floor', countText(scores.areaOverFloor)],
+  ];
+  return `<dl>${rows.map(([name, value]) => `<div><dt>${name}</dt><dd>${value}</dd></div>`).join('')}</dl>`;
+}
