@@ -1,0 +1,136 @@
+import { formatQuantity } from '../base/quantity.ts';
+import type { IndexModel } from '../optics/indexModel.ts';
+import { coversWavelength, refractiveIndex } from '../optics/indexModel.ts';
+import type { Particle } from '../optics/particle.ts';
+import type { Path, Report } from './briefReport.ts';
+import type { briefSchema } from './briefSchema.ts';
+import type { Values } from './readMapping.ts';
+import { readParticles } from './readParticles.ts';
+
+/** A brief as far as it could be read. */
+export type BriefValues = Values<ReturnType<typeof briefSchema>>;
+
+/** Size parameters for which spheres can be computed. */
+const SIZE_PARAMETERS = [0.001, 20_000] as const;
+const LEAST_CONTRAST = 1e-6;
+const LARGEST_HALF_ANGLE = (80 * Math.PI) / 180;
+/** A Gaussian line is sampled to about twice its full width at half maximum on either side. */
+const LINEWIDTHS_USED = 2;
+
+const inLength = (metres: number) => formatQuantity(metres, 'length');
+
+/** Checks that involve more than one key; they pass over what has a mistake already. Gives the particles of each entry. */
+export function checkTogether(brief: BriefValues, report: Report): Particle[][] {
+  const entries = (brief.particles ?? []).map((entry, i) => readParticles(entry, ['particles', i], report));
+  checkLight(brief, report);
+  checkGeometry(brief, Math.max(0, ...entries.flat().map(({ diameterM }) => diameterM)), report);
+  checkIndices(brief, entries, report);
+  return entries;
+}
+
+function checkLight({ light }: BriefValues, report: Report): void {
+  if (light?.wavelength === undefined) return;
+  const limit = light.wavelength / 5;
+  for (const name of ['linewidth', 'drift'] as const) {
+    if ((light[name] ?? 0) < limit) continue;
+    report.refuse(['light', name], `less than a fifth of the wavelength, ${inLength(limit)}`);
+  }
+}
+
+function checkGeometry({ detector, placement }: BriefValues, largestDiameterM: number, report: Report): void {
+  if (detector?.distance === undefined) return;
+  const depth = placement?.depth ?? 0;
+  const [distance] = detector.distance;
+  if (depth > distance / 2) {
+    report.refuse(['placement', 'depth'], `at most half of the least distance, ${inLength(distance / 2)}`);
+    return;
+  }
+  const nearest = distance - depth;
+  if (nearest <= largestDiameterM) {
+    const expected = `a distance that exceeds the largest particle's diameter, ${inLength(largestDiameterM)}`;
+    report.refuse(['detector', 'distance'], expected);
+    return;
+  }
+  const limit = nearest * Math.tan(LARGEST_HALF_ANGLE);
+  if (detector.radius !== undefined && detector.radius[1] >= limit) {
+    const place = `${inLength(nearest)} behind the particle`;
+    const expected = `a radius below ${inLength(limit)}, a half-angle of 80 deg at ${place}`;
+    report.refuse(['detector', 'radius'], expected);
+  }
+}
+
+function checkIndices(
+  { light, medium, particles }: BriefValues,
+  entries: Particle[][],
+  report: Report,
+): void {
+  if (medium === undefined || light?.wavelength === undefined) return;
+  if (light.linewidth === undefined || report.hasMistake(['light', 'linewidth'])) return;
+  if (light.drift === undefined || report.hasMistake(['light', 'drift'])) return;
+  const width = light.drift + LINEWIDTHS_USED * light.linewidth;
+  const wavelengths = [light.wavelength - width, light.wavelength, light.wavelength + width];
+  const isDefault = report.defaults.includes(`medium: ${medium.name}`);
+  const mediumName = isDefault ? `${medium.name}, the default,` : medium.name;
+  const isMediumKnown = checkCovered(mediumName, medium.item, wavelengths, ['medium'], report);
+  entries.forEach(([particle], i) => {
+    if (particle === undefined) return;
+    const path = ['particles', i];
+    const indexPath = [...path, particles?.[i].material === undefined ? 'index' : 'material'];
+    const isKnown = checkCovered(particle.material, particle.index, wavelengths, indexPath, report);
+    if (!isKnown || !isMediumKnown) return;
+    checkContrast(particle.index, medium.item, wavelengths, indexPath, report);
+    checkSizes(entries[i], medium.item, wavelengths, [...path, 'diameter'], report);
+  });
+}
+
+function checkCovered(
+  name: string,
+  model: IndexModel,
+  wavelengths: number[],
+  path: Path,
+  report: Report,
+): boolean {
+  const [low, , high] = wavelengths;
+  if (coversWavelength(model, low) && coversWavelength(model, high)) return true;
+  const light = low === high ? inLength(low) : `${inLength(low)} to ${inLength(high)}`;
+  const [least, largest] = model.rangeM.map(inLength);
+  report.refuse(
+    path,
+    `light from ${least} to ${largest}, where its index is known`,
+    `${name} in light of ${light}`,
+  );
+  return false;
+}
+
+function checkContrast(
+  index: IndexModel,
+  medium: IndexModel,
+  wavelengths: number[],
+  path: Path,
+  report: Report,
+): void {
+  const isInvisible = wavelengths.some((wavelength) => {
+    const [n, k] = refractiveIndex(index, wavelength);
+    const [nMedium] = refractiveIndex(medium, wavelength);
+    return Math.hypot(n / nMedium - 1, k / nMedium) <= LEAST_CONTRAST;
+  });
+  if (isInvisible) report.refuse(path, "an index that differs from the medium's by more than 1e-6");
+}
+
+function checkSizes(
+  particles: Particle[],
+  medium: IndexModel,
+  wavelengths: number[],
+  path: Path,
+  report: Report,
+): void {
+  // Diameters whose size parameter is 1, at each wavelength.
+  const units = wavelengths.map(
+    (wavelength) => wavelength / (Math.PI * refractiveIndex(medium, wavelength)[0]),
+  );
+  const least = SIZE_PARAMETERS[0] * Math.max(...units);
+  const largest = SIZE_PARAMETERS[1] * Math.min(...units);
+  if (particles.every(({ diameterM }) => diameterM >= least && diameterM <= largest)) return;
+  const range = `${inLength(least)} to ${inLength(largest)} in this light`;
+  report.refuse(path, `diameters from ${range} (size parameter ${SIZE_PARAMETERS.join(' to ')})`);
+}

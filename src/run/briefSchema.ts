@@ -1,0 +1,89 @@
+import type { Units } from '../base/quantity.ts';
+import { loadIndexModel } from '../optics/shelf.ts';
+import { loadShop } from '../shop/shelf.ts';
+import { FAMILY_NAMES } from './brief.ts';
+import type { ListKey, NoneOrSectionKey, SectionKey, ValueKey } from './readMapping.ts';
+import { indexOrShelfName, indexValue, shelfName } from './shelfRules.ts';
+import type { ValueRule } from './valueRules.ts';
+import { orNone, plainNumber, quantityRules, textLine, wholeNumber, word, words } from './valueRules.ts';
+
+/**
+ * Every key of a brief: what it may hold, its limits, and its default. Defaults stand here and nowhere else, written as
+ * a brief would write them.
+ *
+ * @param presets the folder of the shelf
+ * @param title what a brief without a title is called
+ */
+export function briefSchema(units: Units, presets: string, title: string) {
+  const { quantity, quantityRange } = quantityRules(units);
+  const materials = shelfName(
+    (name) => loadIndexModel('materials', name, presets),
+    'the name of a material on the shelf, such as polystyrene',
+  );
+  const media = shelfName(
+    (name) => loadIndexModel('media', name, presets),
+    'the name of a medium on the shelf, such as air, or an index such as 1.332',
+  );
+  const shops = shelfName(
+    (name) => loadShop(name, presets),
+    'the name of a shop on the shelf, such as photomask',
+  );
+
+  return {
+    title: withDefault(title, textLine(200)),
+    light: section({
+      wavelength: required(quantity('length', ['100 nm', '20 um'], '635 nm')),
+      linewidth: withDefault('0 nm', quantity('length', ['0 nm', '4 um'], '1 nm')),
+      drift: withDefault('0 nm', quantity('length', ['0 nm', '4 um'], '1 nm')),
+      polarization: withDefault('none', orNone(quantity('angle', ['-360 deg', '360 deg'], '30 deg'))),
+      irradiance: withDefault('5 W/cm^2', quantity('irradiance', ['1e-9 W/cm^2', '1e12 W/cm^2'], '5 W/cm^2')),
+      beam: withDefault('flat', word(['flat'], 'flat (focused beams are not read by this version)')),
+      intensityNoise: withDefault('none', orNone(plainNumber(-300, 0, 'a number of dB/Hz'))),
+    }),
+    medium: withDefault('air', indexOrShelfName(indexValue({ n: [0.5, 5], k: 0 }), media)),
+    particles: listOf(50, {
+      diameter: required(quantityRange('length', ['0.01 nm', '1 m'], '1 um to 4 um')),
+      count: optional(wholeNumber(1, 50)),
+      material: optional(materials),
+      index: optional(indexValue({ n: [0.05, 30], k: 30 })),
+    }),
+    placement: section({
+      offset: withDefault('0 um', quantity('length', ['0 um', '10 mm'], '10 um')),
+      depth: withDefault('0 mm', quantity('length', ['0 mm', '1 m'], '1 mm')),
+      spread: withDefault('0 um', quantity('length', ['0 um', '10 mm'], '5 um')),
+      crossing: noneOrSection({
+        span: required(quantity('length', ['10 nm', '100 mm'], '400 um')),
+        heading: withDefault('0 deg', quantity('angle', ['-360 deg', '360 deg'], '0 deg')),
+      }),
+    }),
+    detector: section({
+      distance: required(quantityRange('length', ['0.1 mm', '10 m'], '10 mm to 60 mm')),
+      radius: required(quantityRange('length', ['1 um', '1 m'], '50 um to 2 mm')),
+      responsivity: withDefault('0.42 A/W', quantity('responsivity', ['1e-6 A/W', '1e9 A/W'], '0.42 A/W')),
+      noiseCurrent: withDefault('2 pA', quantity('current', ['0 pA', '1 A'], '2 pA')),
+    }),
+    target: section({
+      correction: required(quantity('ratio', ['1e-7 %', '99.9 %'], '1 %')),
+      gain: withDefault('one', word(['one', 'free'])),
+      lobe: withDefault('none', orNone(quantity('ratio', ['0.0001 %', '10000 %'], '10 %'))),
+      time: withDefault('none', orNone(quantity('time', ['1 ns', '1e6 s'], '1 ms'))),
+    }),
+    shop: withDefault('none', orNone(shops)),
+    families: withDefault([...FAMILY_NAMES], words(FAMILY_NAMES)),
+    search: section({
+      candidates: withDefault(20_000, wholeNumber(100, 100_000_000)),
+      seed: withDefault(1, wholeNumber(0, 2 ** 31 - 1)),
+    }),
+  };
+}
+
+const required = <T>(rule: ValueRule<T>): ValueKey<T> => ({ kind: 'value', rule, leftOut: 'refused' });
+const optional = <T>(rule: ValueRule<T>): ValueKey<T> => ({ kind: 'value', rule, leftOut: 'allowed' });
+const withDefault = <T>(use: unknown, rule: ValueRule<T>): ValueKey<T> => ({
+  kind: 'value',
+  rule,
+  leftOut: { use },
+});
+const section = <K>(keys: K): SectionKey<K> => ({ kind: 'section', keys });
+const noneOrSection = <K>(keys: K): NoneOrSectionKey<K> => ({ kind: 'none or section', keys });
+const listOf = <K>(longest: number, keys: K): ListKey<K> => ({ kind: 'list', keys, longest });

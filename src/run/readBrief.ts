@@ -1,0 +1,86 @@
+import { basename, extname } from 'node:path';
+import { inputError } from '../base/errors.ts';
+import { presetsFolder } from '../base/presetsFolder.ts';
+import { loadUnits } from '../base/quantity.ts';
+import { parseYaml } from '../base/yamlFile.ts';
+import type { Particle } from '../optics/particle.ts';
+import type { Brief } from './brief.ts';
+import type { BriefValues } from './briefChecks.ts';
+import { checkTogether } from './briefChecks.ts';
+import { openReport } from './briefReport.ts';
+import { briefSchema } from './briefSchema.ts';
+import { readMapping } from './readMapping.ts';
+
+/**
+ * Reads a brief and checks it as a whole. Keys, limits and defaults are those of `briefSchema`.
+ *
+ * @param text YAML, at most 1 MB
+ * @param file its name, for messages and for a brief without a title
+ * @param presets the folder of the shelf
+ * @throws RimwrightError `input` with one problem for each mistake, in the order of the lines (at most 50); `machine`
+ *   where the shelf cannot be read
+ */
+export async function readBrief(text: string, file: string, presets = presetsFolder()): Promise<Brief> {
+  const source = parseYaml(text, file);
+  const report = openReport(source);
+  const schema = briefSchema(await loadUnits(), presets, basename(file, extname(file)));
+  const values = readMapping(source.value, [], schema, report);
+  const particles = checkTogether(values, report).flat();
+  if (report.problems.length > 0) {
+    throw inputError(report.problems.toSorted((a, b) => (a.line ?? 0) - (b.line ?? 0)));
+  }
+  return fillBrief(values, particles, report.defaults);
+}
+
+/** Turns the values of a brief without mistakes, in which every key has its value, into what the program works with. */
+function fillBrief(values: BriefValues, particles: Particle[], defaults: readonly string[]): Brief {
+  const { title, medium, shop, families, ...sections } = filled(values);
+  const light = filled(sections.light);
+  const placement = filled(sections.placement);
+  const detector = filled(sections.detector);
+  const target = filled(sections.target);
+  const crossing = placement.crossing === null ? null : filled(placement.crossing);
+  return {
+    title,
+    task: {
+      light: {
+        wavelengthM: light.wavelength,
+        linewidthM: light.linewidth,
+        driftM: light.drift,
+        polarizationRad: light.polarization,
+        irradianceWm2: light.irradiance,
+        intensityNoisePerHz: light.intensityNoise === null ? 0 : 10 ** (light.intensityNoise / 10),
+      },
+      medium: medium.item,
+      particles,
+      placement: {
+        offsetM: placement.offset,
+        depthM: placement.depth,
+        spreadM: placement.spread,
+        crossing: crossing && { spanM: crossing.span, headingRad: crossing.heading },
+      },
+      detector: {
+        distanceM: detector.distance,
+        radiusM: detector.radius,
+        responsivityAW: detector.responsivity,
+        noiseCurrentA: detector.noiseCurrent,
+      },
+      target: {
+        correction: target.correction,
+        gain: target.gain,
+        lobe: target.lobe,
+        timeS: target.time,
+      },
+      shop: shop === null ? null : shop.item,
+    },
+    families,
+    search: filled(sections.search),
+    mediumName: medium.name,
+    shopName: shop === null ? 'none' : shop.name,
+    defaults: [...defaults],
+  };
+}
+
+function filled<T>(section: T): Required<T> {
+  return section as Required<T>;
+}

@@ -1,0 +1,297 @@
+import { readdirSync, readFileSync } from 'node:fs';
+import fc from 'fast-check';
+import { describe, expect, it } from 'vitest';
+import { RimwrightError } from '../../src/base/errors.ts';
+import { presetsFolder } from '../../src/base/presetsFolder.ts';
+import { constantIndex } from '../../src/optics/indexModel.ts';
+import { loadIndexModel } from '../../src/optics/shelf.ts';
+import type { Brief } from '../../src/run/brief.ts';
+import { readBrief } from '../../src/run/readBrief.ts';
+import { loadShop } from '../../src/shop/shelf.ts';
+
+const BROKEN = new URL('../broken/briefs/', import.meta.url);
+const EXPECTED: Record<string, string[]> = JSON.parse(readFileSync(new URL('expected.json', BROKEN), 'utf8'));
+const BRIEFS = new URL('../../presets/briefs/', import.meta.url);
+
+const MINIMAL = `
+light: { wavelength: 635 nm }
+particles: [{ diameter: 2 um, index: 1.59 }]
+detector: { distance: 20 mm, radius: 20 um to 0.4 mm }
+target: { correction: 1 % }
+`;
+
+async function messageFor(text: string, file: string): Promise<string> {
+  try {
+    await readBrief(text, file);
+  } catch (error) {
+    if (error instanceof RimwrightError && error.code === 'input') return error.message;
+    throw error;
+  }
+  return 'no mistake found';
+}
+
+/** A brief with one more line in one of its sections. */
+function minimalWith(section: string, line: string): string {
+  const added = MINIMAL.replace(`${section}: {`, `${section}: { ${line},`);
+  return added === MINIMAL ? `${MINIMAL}${section}: { ${line} }\n` : added;
+}
+
+describe('readBrief', () => {
+  it('fills what a brief leaves out, and says so', async () => {
+    const brief = await readBrief(MINIMAL, 'folder/shortest.yaml');
+    // These are the defaults of design.md, section 5, and of the handbook.
+    const expected: Brief = {
+      title: 'shortest',
+      task: {
+        light: {
+          wavelengthM: 6.35e-7,
+          linewidthM: 0,
+          driftM: 0,
+          polarizationRad: null,
+          irradianceWm2: 5e4,
+          intensityNoisePerHz: 0,
+        },
+        medium: loadIndexModel('media', 'air', presetsFolder()),
+        particles: [{ diameterM: 2e-6, index: constantIndex(1.59), material: '1.59' }],
+        placement: { offsetM: 0, depthM: 0, spreadM: 0, crossing: null },
+        detector: {
+          distanceM: [0.02, 0.02],
+          radiusM: [2e-5, 4e-4],
+          responsivityAW: 0.42,
+          noiseCurrentA: 2e-12,
+        },
+        target: { correction: 0.01, gain: 'one', lobe: null, timeS: null },
+        shop: null,
+      },
+      families: ['disc', 'rings', 'ramp', 'fourier', 'polygon', 'sectors'],
+      search: { candidates: 20_000, seed: 1 },
+      mediumName: 'air',
+      shopName: 'none',
+      defaults: [
+        'title: shortest',
+        'light.linewidth: 0 nm',
+        'light.drift: 0 nm',
+        'light.polarization: none',
+        'light.irradiance: 5 W/cm^2',
+        'light.beam: flat',
+        'light.intensityNoise: none',
+        'medium: air',
+        'placement.offset: 0 um',
+        'placement.depth: 0 mm',
+        'placement.spread: 0 um',
+        'placement.crossing: none',
+        'detector.responsivity: 0.42 A/W',
+        'detector.noiseCurrent: 2 pA',
+        'target.gain: one',
+        'target.lobe: none',
+        'target.time: none',
+        'shop: none',
+        'families: [disc, rings, ramp, fourier, polygon, sectors]',
+        'search.candidates: 20000',
+        'search.seed: 1',
+        'particles[0].count: 1',
+      ],
+    };
+    expect(brief).toEqual(expected);
+  });
+
+  it('reads its own defaults as a brief would write them, and then leans on none', async () => {
+    const { defaults, ...first } = await readBrief(MINIMAL, 'a.yaml');
+    const sections = new Map<string, string[]>();
+    let text = MINIMAL.replace('index: 1.59', 'index: 1.59, count: 1');
+    for (const line of defaults.filter((line) => !line.startsWith('particles'))) {
+      const [, section, key] = /^(?:(\w+)\.)?(\w+: .*)$/.exec(line) ?? [];
+      if (section === undefined) text += `${key}\n`;
+      else sections.set(section, [...(sections.get(section) ?? []), key]);
+    }
+    for (const [section, keys] of sections) {
+      const added = text.replace(`${section}: {`, `${section}: { ${keys.join(', ')},`);
+      text = added === text ? `${text}${section}: { ${keys.join(', ')} }\n` : added;
+    }
+    expect(await readBrief(text, 'a.yaml')).toEqual({ ...first, defaults: [] });
+  });
+
+  it('reads the complete example', async () => {
+    const text = readFileSync(new URL('road-dust.yaml', BRIEFS), 'utf8');
+    const { title, task, families, search, mediumName, shopName } = await readBrief(text, 'road-dust.yaml');
+    expect(title).toBe('Road-dust monitor, extinction channel');
+    expect(task.light).toEqual({
+      wavelengthM: 6.35e-7,
+      linewidthM: 1e-9,
+      driftM: 1e-9,
+      polarizationRad: null,
+      irradianceWm2: 5e4,
+      intensityNoisePerHz: 1e-15,
+    });
+    expect(task.particles.map(({ diameterM }) => diameterM)).toEqual([1e-6, 2e-6, 4e-6, 2e-6]);
+    expect(task.particles.map(({ material }) => material)).toEqual([
+      ...Array(3).fill('polystyrene'),
+      '1.5 + 0.1i',
+    ]);
+    expect(task.particles[3].index).toEqual(constantIndex(1.5, 0.1));
+    expect(task.placement).toEqual({ offsetM: 1e-5, depthM: 0, spreadM: 0, crossing: null });
+    expect(task.detector.distanceM).toEqual([0.01, 0.06]);
+    expect(task.detector.radiusM).toEqual([5e-5, 2e-3]);
+    expect(task.target).toEqual({ correction: 0.01, gain: 'free', lobe: 0.1, timeS: 1e-3 });
+    expect(task.shop).toEqual(loadShop('photomask', presetsFolder()));
+    expect({ families: families.length, ...search }).toEqual({ families: 6, candidates: 20_000, seed: 1 });
+    expect([mediumName, shopName]).toEqual(['air', 'photomask']);
+  });
+
+  it.each(readdirSync(BRIEFS))('reads the example %s, which has a title', async (file) => {
+    const brief = await readBrief(readFileSync(new URL(file, BRIEFS), 'utf8'), file);
+    expect(brief.defaults.filter((line) => line.startsWith('title'))).toEqual([]);
+    expect(brief.task.particles.length).toBeGreaterThan(0);
+  });
+
+  it('reads what a brief may write in more than one way', async () => {
+    const flight = await readBrief(minimalWith('placement', 'crossing: { span: 400 um }'), 'a.yaml');
+    expect(flight.task.placement.crossing).toEqual({ spanM: 4e-4, headingRad: 0 });
+    expect(flight.defaults).toContain('placement.crossing.heading: 0 deg');
+
+    const angle = await readBrief(minimalWith('light', 'polarization: 90 deg'), 'a.yaml');
+    expect(angle.task.light.polarizationRad).toBe(Math.PI / 2);
+
+    const water = await readBrief(`${MINIMAL}medium: 1.332\n`, 'a.yaml');
+    expect(water.task.medium).toEqual(constantIndex(1.332));
+    expect(water.mediumName).toBe('1.332');
+
+    const ratio = await readBrief(MINIMAL.replace('1 %', '0.01'), 'a.yaml');
+    expect(ratio.task.target.correction).toBe(0.01);
+
+    const sizes = await readBrief(MINIMAL.replace('2 um', '1 um to 10 um, count: 5'), 'a.yaml');
+    const diameters = sizes.task.particles.map(({ diameterM }) => diameterM);
+    expect(diameters[0]).toBe(1e-6);
+    expect(diameters[4]).toBe(1e-5);
+    for (let i = 1; i < 5; i++) expect(diameters[i] / diameters[i - 1]).toBeCloseTo(10 ** 0.25, 12);
+  });
+
+  it('can be sent to a worker', async () => {
+    const text = readFileSync(new URL('spray-droplets.yaml', BRIEFS), 'utf8');
+    const brief = await readBrief(text, 'a.yaml');
+    expect(structuredClone(brief)).toEqual(brief);
+    expect(JSON.parse(JSON.stringify(brief))).toEqual(brief);
+  });
+
+  it('keeps spheres to what Mie series can compute', async () => {
+    // Size parameter π · d · n / λ from 0.001 to 20 000: at 635 nm in an index of 1, d from 0.2021 nm to 4.0425 mm.
+    const sphere = (diameter: string) =>
+      messageFor(`${MINIMAL.replace('2 um', diameter)}medium: 1.0\n`, 'a.yaml');
+    expect(await sphere('0.203 nm')).toBe('no mistake found');
+    expect(await sphere('0.202 nm')).toContain('size parameter');
+    expect(await sphere('4.04 mm')).toBe('no mistake found');
+    expect(await sphere('4.05 mm')).toContain('size parameter');
+  });
+});
+
+describe('readBrief refuses', () => {
+  it.each(Object.entries(EXPECTED))('broken/briefs/%s', async (file, messages) => {
+    const text = readFileSync(new URL(file, BROKEN), 'utf8');
+    expect(await messageFor(text, file)).toBe(messages.map(withShelf).join('\n'));
+  });
+
+  it('each broken brief for a reason that stands beside it', () => {
+    const files = readdirSync(BROKEN).filter((file) => file.endsWith('.yaml'));
+    expect(files.sort()).toEqual(Object.keys(EXPECTED));
+  });
+
+  it('a text beyond 1 MB', async () => {
+    const message = await messageFor(`${MINIMAL}# ${'x'.repeat(1_000_000)}`, 'a.yaml');
+    expect(message).toMatch(/^a.yaml: found 10\d+ bytes, expected at most 1000000 bytes$/);
+  });
+
+  it('a flood of unknown keys, of which it lists fifty', async () => {
+    const flood = Array.from({ length: 2_000 }, (_, i) => `k${i}: 1\n`).join('');
+    expect((await messageFor(MINIMAL + flood, 'a.yaml')).split('\n')).toHaveLength(50);
+  });
+
+  it('a file name that cannot serve as a title', async () => {
+    expect(await messageFor(MINIMAL, 'a\nb.yaml')).toContain(
+      'title: found nothing, expected one line of text',
+    );
+  });
+
+  it('keys that are no words, in one line each', async () => {
+    const message = await messageFor(`${MINIMAL}"two\\nlines": 1\n__proto__: 1\nconstructor: 1\n`, 'a.yaml');
+    expect(message.split('\n').map((line) => line.slice(0, 24))).toEqual([
+      'a.yaml:6: "two\\nlines": ',
+      'a.yaml:7: __proto__: fou',
+      'a.yaml:8: constructor: f',
+    ]);
+  });
+});
+
+describe('readBrief throws nothing but its own error', () => {
+  const scalar = fc.oneof(
+    fc.constantFrom(
+      '635 nm',
+      '1 um to 4 um',
+      '1 %',
+      'none',
+      'air',
+      'polystyrene',
+      '1.5 + 0.1i',
+      'free',
+      '-1 mm',
+    ),
+    fc.double(),
+    fc.integer(),
+    fc.string(),
+    fc.constant(null),
+    fc.boolean(),
+  );
+
+  it('whatever the text', async () => {
+    const text = fc.oneof(fc.string(), fc.string({ unit: 'binary' }));
+    await fc.assert(
+      fc.asyncProperty(text, async (sample) => {
+        expect(await messageFor(sample, 'random.yaml')).not.toBe('no mistake found');
+      }),
+      { numRuns: 300 },
+    );
+  });
+
+  it('whatever stands at a key', async () => {
+    const paths = ['title', 'medium', 'shop', 'families', 'particles', 'light', 'placement'].concat(
+      ['light.wavelength', 'light.drift', 'light.intensityNoise', 'placement.depth', 'placement.crossing'],
+      ['detector.distance', 'detector.radius', 'target.correction', 'target.lobe', 'search.seed'],
+      [
+        'particles.0',
+        'particles.0.diameter',
+        'particles.0.index',
+        'particles.0.material',
+        'particles.0.count',
+      ],
+    );
+    const value = fc.oneof(scalar, fc.array(scalar, { maxLength: 3 }), fc.dictionary(fc.string(), scalar));
+    const base = {
+      light: { wavelength: '635 nm' },
+      particles: [{ diameter: '2 um', index: 1.59 }],
+      placement: {},
+      detector: { distance: '20 mm', radius: '20 um to 0.4 mm' },
+      target: { correction: '1 %' },
+      search: {},
+    };
+    await fc.assert(
+      fc.asyncProperty(fc.constantFrom(...paths), value, async (path, replacement) => {
+        const brief: Record<string, unknown> = structuredClone(base);
+        const keys = path.split('.');
+        let place = brief;
+        for (const key of keys.slice(0, -1)) place = place[key] as Record<string, unknown>;
+        place[keys[keys.length - 1]] = replacement;
+        await messageFor(JSON.stringify(brief), 'random.yaml'); // JSON is YAML
+      }),
+      { numRuns: 300 },
+    );
+  });
+});
+
+/** Expected messages do not repeat the names on the shelf, which may grow. */
+function withShelf(message: string): string {
+  return message.replace(/\{(media|materials|shops)\}/, (_match, kind) =>
+    readdirSync(`${presetsFolder()}/${kind}`)
+      .map((file) => file.replace(/\.yaml$/, ''))
+      .sort()
+      .join(', '),
+  );
+}
