@@ -19,6 +19,11 @@ export interface Candidate {
   misfit: number;
 }
 
+/** What came of trying a point: `value` is what the search makes small; the rest is null where nothing was drawn. */
+export type Trial =
+  | { value: number; candidate: Candidate; ratios: Float64Array }
+  | { value: number; candidate: null; ratios: null };
+
 /** Value of a candidate that draws nothing: above all that a drawn one can have, and falling towards the valid. */
 const MISDRAWN = 1e3;
 
@@ -29,7 +34,7 @@ const SHOP_VERTICES = 96;
 const SHOP_FROM = 2;
 
 /** The distance that a place from 0 to 1 on the grid stands for. */
-function distanceAt(space: SearchSpace, place: number): number {
+export function distanceAt(space: SearchSpace, place: number): number {
   const last = space.distances.length - 1;
   return space.distances[Math.min(last, Math.max(0, Math.round(place * last)))];
 }
@@ -48,20 +53,20 @@ export function drawCandidate(
   return isDrawn(drawn) ? { shape: drawn, distanceM } : drawn;
 }
 
-/** Scores one point of the search; `value` is what the search makes small. */
+/** Scores one point of the search. */
 export function tryCandidate(
   judge: Judge,
   space: SearchSpace,
   variant: Variant,
   vector: Float64Array,
   aim: Aim,
-): { value: number; candidate: Candidate | null } {
+): Trial {
   const drawn = drawCandidate(judge, space, variant, vector);
-  if ('misdrawnBy' in drawn) return { value: MISDRAWN + drawn.misdrawnBy, candidate: null };
-  const scores = judge.scoreShape(drawn.shape, drawn.distanceM);
+  if ('misdrawnBy' in drawn) return { value: MISDRAWN + drawn.misdrawnBy, candidate: null, ratios: null };
+  const { scores, ratios } = judge.scoreShape(drawn.shape, drawn.distanceM);
   const misfit = shopMisfit(judge, drawn.shape, scores, aim);
   const value = aimValue(scores, misfit, aim, judge.task);
-  return { value, candidate: { variant: variant.id, vector: Array.from(vector), scores, misfit } };
+  return { value, candidate: { variant: variant.id, vector: Array.from(vector), scores, misfit }, ratios };
 }
 
 function shopMisfit(judge: Judge, shape: Shape, scores: Scores, aim: Aim): number {

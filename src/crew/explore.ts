@@ -2,14 +2,15 @@ import type { RandomSource } from '../base/random.ts';
 import { randomStream } from '../base/random.ts';
 import type { Variant } from '../outline/families/family.ts';
 import type { Aim } from '../score/aim.ts';
-import { missedLimits } from '../score/aim.ts';
 import type { Judge } from '../score/judge.ts';
+import { leastRadialMask, maskRims } from '../score/radialMask.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
 import { CmaEs } from '../search/cmaEs.ts';
 import { nelderMead } from '../search/nelderMead.ts';
-import { ParetoArchive } from '../search/paretoArchive.ts';
 import type { Candidate } from './candidate.ts';
-import { tryCandidate } from './candidate.ts';
+import { distanceAt } from './candidate.ts';
+import { descend } from './descend.ts';
+import { Trials } from './trials.ts';
 
 /** One piece of searching, done by one worker without talking to the others. */
 export interface ExploreJob {
@@ -21,10 +22,16 @@ export interface ExploreJob {
   seed: number;
   /** Stream of the seed that belongs to this job alone. */
   stream: number;
-  /** Where to begin, and with which share of the usual spread; drawn by the variant if left out. */
-  from?: { vector: number[]; spread: number };
-  /** Give the last fifth of the budget to Nelder–Mead. */
-  polish: boolean;
+  /**
+   * `glance`: descents from many starts. `evolve`: CMA-ES from start after start, then a descent from its best.
+   * `refine`: descents and Nelder–Mead from `from`, at its distance and at neighbouring ones. `seed`: a descent from the
+   * rings of the least radial mask.
+   */
+  method: 'glance' | 'evolve' | 'refine' | 'seed';
+  /** Vector of the candidate to refine. */
+  from?: number[];
+  /** Place on the distance grid and gain of the mask to seed from. */
+  mask?: { place: number; gain: number };
 }
 
 export interface ExploreResult {
@@ -35,93 +42,132 @@ export interface ExploreResult {
   front: Candidate[];
 }
 
-/** Largest number of candidates that a job brings home for the front. */
-const FRONT_SIZE = 24;
+/** Share of a budget that evolution leaves to the descent after it. */
+const DESCENT_SHARE = 0.2;
 
-/** Differences that matter to the front: 5 % in correction, 3 % in time and radius. */
-const FRONT_RESOLUTION = [0.05, 0.03, 0.03];
-
-/** Share of a budget that the polish gets. */
-const POLISH_SHARE = 0.2;
-
-/** Runs CMA-ES from one start after the other until the budget is spent, then Nelder–Mead from the best if asked to. */
+/** Does one job within its budget. */
 export function explore(job: ExploreJob, judge: Judge, space: SearchSpace): ExploreResult {
   const variant = space.variants.find(({ id }) => id === job.variant) as Variant;
+  const trials = new Trials(judge, space, variant, job.aim, job.budget);
   const random = randomStream(job.seed, job.stream);
-  const box = boxOf(variant, space);
-  const archive = new ParetoArchive<Candidate>(FRONT_RESOLUTION, FRONT_SIZE);
-  let best: ExploreResult['best'] = null;
-  let evaluations = 0;
-  const value = (vector: Float64Array): number => {
-    evaluations++;
-    const { value, candidate } = tryCandidate(judge, space, variant, vector, job.aim);
-    if (candidate) {
-      if (best === null || value < best.value) best = { candidate, value };
-      if (missedLimits(candidate.scores, candidate.misfit, judge.task).length === 0) {
-        archive.add(frontObjectives(candidate), candidate);
-      }
-    }
-    return value;
-  };
-  const forCma = job.polish ? Math.ceil(job.budget * (1 - POLISH_SHARE)) : job.budget;
-  for (let run = 0; evaluations < forCma; run++) {
-    const own = drawStart(variant, space, random);
-    const given = run === 0 ? job.from : undefined;
-    const start = given ? Float64Array.from(given.vector) : own.start;
-    const cma = new CmaEs({
-      start: start.map((x, i) => Math.min(Math.max(x, box.lower[i]), box.upper[i])),
-      sigma: given?.spread ?? 1,
-      scale: own.spreads,
-      ...box,
-      random,
-      maxEvaluations: forCma - evaluations,
-    });
-    while (cma.stopReason() === undefined) {
-      const points = cma.ask();
-      // The last generation may be larger than what is left; the budget is a promise to the user.
-      cma.tell(points.map((point) => (evaluations < job.budget ? value(point) : Number.POSITIVE_INFINITY)));
-    }
-  }
-  const found = best as ExploreResult['best'];
-  if (job.polish && found !== null && evaluations < job.budget) {
-    nelderMead(value, Float64Array.from(found.candidate.vector), {
-      ...box,
-      maxEvaluations: job.budget - evaluations,
-      step: smallSteps(found.candidate.vector),
-    });
-  }
-  return { evaluations, best, front: archive.members().map(({ payload }) => payload) };
+  if (job.method === 'glance') glance(trials, random);
+  else if (job.method === 'evolve') evolve(trials, random);
+  else if (job.mask) descendFromMask(trials, job.mask);
+  else refine(trials, Float64Array.from(job.from ?? drawStart(trials, random).start), random);
+  return { evaluations: trials.spent, best: trials.best, front: trials.front };
 }
 
-/** What the front trades against each other, in logarithms: correction, time, radius. */
-export function frontObjectives({ scores }: Pick<Candidate, 'scores'>): [number, number, number] {
-  return [Math.log(scores.correction.worst), Math.log(scores.snr.time_s), Math.log(scores.radius_m)];
+/** Descents from start after start: a descent settles within a hundred evaluations or so. */
+function glance(trials: Trials, random: RandomSource): void {
+  while (trials.left > 0) {
+    const { start, scales } = drawStart(trials, random);
+    descend(trials, start, scales);
+  }
+}
+
+/** CMA-ES from one start after the other until its share is spent; a descent sharpens the best. */
+function evolve(trials: Trials, random: RandomSource): void {
+  const box = boxOf(trials);
+  const reserve = Math.floor(trials.left * DESCENT_SHARE);
+  while (trials.left > reserve) {
+    const { start, scales } = drawStart(trials, random);
+    const cma = new CmaEs({
+      start,
+      sigma: 1,
+      scale: scales,
+      ...box,
+      random,
+      maxEvaluations: trials.left - reserve,
+    });
+    while (cma.stopReason() === undefined) {
+      // The last generation may be larger than what is left; the budget is a promise to the user.
+      const tryOrPass = (point: Float64Array) =>
+        trials.left > 0 ? trials.try(point).value : Number.POSITIVE_INFINITY;
+      cma.tell(cma.ask().map(tryOrPass));
+    }
+  }
+  if (trials.best && trials.left > 0) {
+    descend(trials, Float64Array.from(trials.best.candidate.vector), drawStart(trials, random).scales);
+  }
+}
+
+/** A descent from the rings of the least radial mask, for a variant that draws as many rims. */
+function descendFromMask(trials: Trials, { place: at, gain }: { place: number; gain: number }): void {
+  const { judge, space, variant, aim } = trials;
+  const count = variant.parameters.length;
+  if (count % 2 === 1) return;
+  const distanceM = distanceAt(space, at);
+  const largestPhase = Math.min(
+    variant.parameters[0].high,
+    judge.kappa(distanceM) * judge.task.detector.radiusM[1] ** 2,
+  );
+  const mask = leastRadialMask(judge, distanceM, aim.correction, gain, largestPhase);
+  const rims = maskRims(mask, count / 2).map((rim) => Math.max(rim, variant.parameters[0].low));
+  // Where the mask has fewer rings, the rest begin without width at the outer end.
+  while (rims.length < count) rims.push(largestPhase * 0.999);
+  descend(trials, Float64Array.from([...rims, ...place(space, at)]), new Float64Array(count).fill(0.1));
+}
+
+/** Descents from a candidate, walking along the distances while that helps; Nelder–Mead has the last word. */
+function refine(trials: Trials, from: Float64Array, random: RandomSource): void {
+  const { scales } = drawStart(trials, random);
+  const steps = scales.map((scale) => 0.5 * scale);
+  let at = descend(trials, from, steps);
+  const place = at.length - 1;
+  for (
+    let stride = trials.space.distances.length > 1 ? 0.16 : 0;
+    stride > 0.005 && trials.left > 0;
+    stride /= 2
+  ) {
+    for (const sign of [1, -1]) {
+      let improved = true;
+      while (improved && trials.left > 0) {
+        const before = trials.best?.value ?? Number.POSITIVE_INFINITY;
+        const moved = at.slice();
+        moved[place] = Math.min(1, Math.max(0, at[place] + sign * stride));
+        const reached = descend(trials, moved, steps);
+        improved = (trials.best?.value ?? before) < before - 1e-6;
+        if (improved) at = reached;
+      }
+    }
+  }
+  const { best } = trials;
+  if (best === null || trials.left <= 2 * at.length) return;
+  nelderMead(
+    (vector) => (trials.left > 0 ? trials.try(vector).value : best.value + 1),
+    Float64Array.from(best.candidate.vector),
+    {
+      ...boxOf(trials),
+      maxEvaluations: trials.left,
+      step: Float64Array.from(best.candidate.vector, (x) => Math.max(1e-3 * Math.abs(x), 1e-4)),
+      tolX: 1e-6,
+      tolFun: 1e-6,
+    },
+  );
 }
 
 /** Ranges of the parameters, and of the distance's place where there is a choice. */
-function boxOf(variant: Variant, space: SearchSpace): { lower: Float64Array; upper: Float64Array } {
-  const { parameters } = variant;
+function boxOf({ variant, space }: Trials): { lower: Float64Array; upper: Float64Array } {
   return {
-    lower: Float64Array.from([...parameters.map(({ low }) => low), ...place(space, 0)]),
-    upper: Float64Array.from([...parameters.map(({ high }) => high), ...place(space, 1)]),
+    lower: Float64Array.from([...variant.parameters.map(({ low }) => low), ...place(space, 0)]),
+    upper: Float64Array.from([...variant.parameters.map(({ high }) => high), ...place(space, 1)]),
   };
 }
 
-/** A start of the variant's own, anywhere on the distance grid. */
-function drawStart(variant: Variant, space: SearchSpace, random: RandomSource) {
+/** A start of the variant's own within its ranges, anywhere on the distance grid, and natural lengths around it. */
+function drawStart({ variant, space }: Trials, random: RandomSource) {
   const { values, spreads } = variant.start(random);
+  const within = values.map((value, i) => {
+    const { low, high } = variant.parameters[i];
+    return Math.min(Math.max(value, low), high);
+  });
   return {
-    start: Float64Array.from([...values, ...place(space, random.uniform())]),
-    spreads: Float64Array.from([...spreads, ...place(space, 0.2)]),
+    start: Float64Array.from([...within, ...place(space, random.uniform())]),
+    scales: Float64Array.from([...spreads, ...place(space, 0.2)]),
   };
 }
 
 /** A coordinate for the distance, or none where the brief fixes it. */
 function place(space: SearchSpace, value: number): number[] {
   return space.distances.length > 1 ? [value] : [];
-}
-
-/** Steps of a thousandth, and of one ten-thousandth for parameters near zero; the distance has found its place. */
-function smallSteps(vector: readonly number[]): Float64Array {
-  return Float64Array.from(vector, (x) => Math.max(1e-3 * Math.abs(x), 1e-4));
 }

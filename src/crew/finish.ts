@@ -32,7 +32,7 @@ export function finish(job: FinishJob, judge: Judge, space: SearchSpace): Finish
         family: variant.family,
         distanceM: drawn.distanceM,
         elements,
-        scores: judge.scoreOutline(elements, drawn.distanceM, drawn.shape),
+        scores: judge.scoreOutline(elements, drawn.distanceM, drawn.shape).scores,
         shop: askShop(elements, judge.task.shop),
       };
     }),

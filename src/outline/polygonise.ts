@@ -41,7 +41,9 @@ function onGrid(metres: number): number {
 function pieceCount(segment: Segment, verticesPerTurn: number): number {
   if (segment.kind === 'line') return 1;
   const turns = Math.abs(segment.to - segment.from) / (2 * Math.PI);
-  const pieces = Math.max(2, Math.ceil(turns * verticesPerTurn));
+  // A polar curve bends several times in a turn, and no stretch makes up for what its chords cut off.
+  const density = segment.kind === 'polar' ? 4 : 1;
+  const pieces = Math.max(2, Math.ceil(turns * verticesPerTurn * density));
   // A whole number of vertices a fold keeps the polygon as symmetric as the curve.
   return segment.kind === 'polar' && isClosed(segment)
     ? segment.folds * Math.ceil(pieces / segment.folds)

@@ -29,15 +29,15 @@ export function samplePositions(
   const positions = [0, 0];
   if (offsetM > 0) {
     const reach = offsetM * phasePerMetre;
-    const circles = Math.max(2, Math.ceil(reach / spacing));
+    const circles = Math.max(3, Math.ceil(reach / spacing));
     const wedge = Number.isFinite(symmetry.folds)
       ? ((symmetry.mirror ? 1 : 2) * Math.PI) / symmetry.folds
       : 0;
     for (let i = 1; i <= circles; i++) {
       const radius = (offsetM * i) / circles;
       const arc = radius * phasePerMetre * wedge;
-      // An n-fold outline makes an n-fold pattern, weak until the phase across the disc reaches n.
-      const least = reach < symmetry.folds / 2 ? 2 : symmetry.mirror ? 3 : 5;
+      // An n-fold outline makes an n-fold pattern, whatever the phase: three steps to half a period at the least.
+      const least = symmetry.mirror ? 4 : 7;
       const steps = wedge === 0 ? 1 : Math.max(least, Math.ceil(arc / spacing) + 1);
       for (let j = 0; j < steps; j++) {
         const angle = steps === 1 ? 0 : (wedge * j) / (steps - 1);

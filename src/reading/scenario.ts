@@ -62,6 +62,9 @@ export function buildScenarios(
   );
 }
 
+/** Colours farther out than this many σ (two full widths) carry less than 3e-6 of the light. */
+const LINE_REACH = 2 / SIGMA_PER_FWHM;
+
 /** Gauss–Hermite colours of the line. A phase η spreads by η σ/λ over it; n nodes follow cos up to about √(2n) − 1. */
 function lineColours(light: Light, wavelengthM: number, largestPhase: number) {
   const sigmaM = light.linewidthM * SIGMA_PER_FWHM;
@@ -69,7 +72,9 @@ function lineColours(light: Light, wavelengthM: number, largestPhase: number) {
   const spread = (largestPhase * sigmaM) / wavelengthM;
   const count = Math.min(60, Math.ceil(4 + 2 * spread + spread * spread));
   const { nodes, weights } = gaussHermite(count);
-  return Array.from(nodes, (node, i) => ({ weight: weights[i], colourM: wavelengthM + sigmaM * node }));
+  const within = [...nodes.keys()].filter((i) => Math.abs(nodes[i]) <= LINE_REACH);
+  const total = within.reduce((sum, i) => sum + weights[i], 0);
+  return within.map((i) => ({ weight: weights[i] / total, colourM: wavelengthM + sigmaM * nodes[i] }));
 }
 
 /** κ = k/(2z), 1/m², in the medium at the given vacuum wavelength. */

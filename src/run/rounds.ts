@@ -1,7 +1,7 @@
 import type { Candidate } from '../crew/candidate.ts';
 import type { Crew } from '../crew/crew.ts';
 import type { ExploreJob, ExploreResult } from '../crew/explore.ts';
-import { frontObjectives } from '../crew/explore.ts';
+import { FRONT_RESOLUTION, frontObjectives } from '../crew/trials.ts';
 import type { Variant } from '../outline/families/family.ts';
 import type { Aim } from '../score/aim.ts';
 import { missedLimits } from '../score/aim.ts';
@@ -37,8 +37,33 @@ export interface Findings {
   front: Candidate[];
 }
 
-/** Shares of the budget: looking everywhere, digging where it pays, and refining what was found. */
-const SHARES = { scout: 0.35, dig: 0.35, refine: 0.3 };
+/** Shares of the budget that the seeds and the first look get; laps of digging and refining share the rest. */
+const SHARES = { seed: 0.1, scout: 0.25 };
+
+/** Share of the budget that is kept for refining once more what finer judging finds a little beyond the target. */
+const RESERVE = 0.08;
+
+/** Laps that the budget is planned for, and the most there are where refinement settles early. */
+const LAPS = 3;
+const MOST_LAPS = 12;
+
+/** Share of a lap that goes to new starts. */
+const DIG_SHARE = 0.65;
+
+/** Candidates refined for each aim, and the evaluations below which a refinement is not worth its start. */
+const FEW = 4;
+const LEAST_REFINE = 250;
+
+/** Evaluations for one candidate that is refined once more. */
+const AGAIN_BUDGET = 400;
+
+/** Variants that are seeded from the least radial masks, and the distances (by place) and gains to solve those for. */
+const SEEDED = ['rings-2', 'rings-4'];
+const SEED_PLACES = [0, 0.33, 0.67, 1];
+const SEED_GAINS = [0.5, 1, 2];
+
+/** Evaluations that a seed's descent may take. */
+const SEED_BUDGET = 300;
 
 /** Evaluations of one job when digging; a run of CMA-ES in a handful of dimensions comes to rest in about as many. */
 const DIG = 1200;
@@ -59,7 +84,7 @@ export class Rounds {
   readonly #crew: Pick<Crew, 'do'>;
   readonly #onProgress: (progress: Progress) => void;
   readonly #best: Map<string, { candidate: Candidate; value: number }>[];
-  readonly #archive = new ParetoArchive<Candidate>([0.05, 0.03, 0.03], 60);
+  readonly #archive = new ParetoArchive<Candidate>(FRONT_RESOLUTION, 60);
   #evaluations = 0;
   #stream = 0;
   /** The best for the main aim that a report has shown. */
@@ -75,8 +100,28 @@ export class Rounds {
   /** Runs all rounds. When the crew is dismissed in between, what has been found stays in `findings`. */
   async run(): Promise<void> {
     await this.#round(this.#scout());
-    await this.#round(this.#dig());
-    await this.#round(this.#refine());
+    for (let lap = 0; lap < MOST_LAPS && this.#left > 0.03 * this.#quest.candidates; lap++) {
+      // Early laps leave something for later ones, which start from what is found by then.
+      const share = this.#left / Math.max(1, LAPS - lap);
+      await this.#round(this.#dig(DIG_SHARE * share));
+      await this.#round(this.#refine((1 - DIG_SHARE) * share));
+    }
+  }
+
+  /** Refines candidates once more for aims of their own, such as a correction that leaves more room. */
+  async again(asked: readonly { candidate: Candidate; aim: Aim }[]): Promise<ExploreResult[]> {
+    const left = this.#quest.candidates - this.#evaluations;
+    const budget = Math.min(AGAIN_BUDGET, left / asked.length);
+    if (budget < LEAST_LOOK) return [];
+    const jobs = asked.map(({ candidate, aim }) => ({
+      ...this.#job(candidate.variant, 0, budget),
+      aim,
+      method: 'refine' as const,
+      from: candidate.vector,
+    }));
+    const results = await Promise.all(jobs.map((job) => this.#crew.do(job)));
+    for (const { evaluations } of results) this.#evaluations += evaluations;
+    return results;
   }
 
   get findings(): Findings {
@@ -87,8 +132,24 @@ export class Rounds {
     };
   }
 
-  /** Every family gets the same share, split over its variants. */
+  /** Every family gets the same share, split over its variants; rings are also seeded from the least masks. */
   #scout(): ExploreJob[] {
+    return [...this.#seeds(), ...this.#glances()];
+  }
+
+  #seeds(): ExploreJob[] {
+    const { variants, candidates, task } = this.#quest;
+    const places = task.detector.distanceM[0] === task.detector.distanceM[1] ? [0] : SEED_PLACES;
+    const gains = task.target.gain === 'one' ? [1] : SEED_GAINS;
+    const rings = variants.filter(({ id }) => SEEDED.includes(id));
+    const jobs = rings.flatMap(({ id }) =>
+      places.flatMap((place) => gains.map((gain) => ({ id, mask: { place, gain } }))),
+    );
+    const budget = Math.min(SEED_BUDGET, (SHARES.seed * candidates) / jobs.length);
+    return jobs.map(({ id, mask }) => ({ ...this.#job(id, 0, budget), method: 'seed' as const, mask }));
+  }
+
+  #glances(): ExploreJob[] {
     const { variants, candidates } = this.#quest;
     const families = new Set(variants.map(({ family }) => family));
     const perFamily = (SHARES.scout * candidates) / families.size;
@@ -99,42 +160,40 @@ export class Rounds {
   }
 
   /** New starts go to the variants that look best for the main aim, the better the more often. */
-  #dig(): ExploreJob[] {
+  #dig(budget: number): ExploreJob[] {
     const ranked = this.findings.best[0].map(({ candidate }) => candidate.variant);
     if (ranked.length === 0) return [];
-    const count = Math.max(2, Math.round(this.#left(SHARES.dig) / DIG));
+    const count = Math.max(2, Math.round(budget / DIG));
     const jobs: ExploreJob[] = [];
-    for (let lap = 1; jobs.length < count; lap++) {
+    for (let reach = 1; jobs.length < count; reach++) {
       // 1, then 1 2, then 1 2 3 …: the first comes up most often, and every one in the end.
-      for (let i = 0; i < Math.min(lap, ranked.length) && jobs.length < count; i++) {
-        jobs.push(
-          this.#job(ranked[i], jobs.length % this.#quest.aims.length, this.#left(SHARES.dig) / count),
-        );
+      for (let i = 0; i < Math.min(reach, ranked.length) && jobs.length < count; i++) {
+        const aim = jobs.length % this.#quest.aims.length;
+        jobs.push({ ...this.#job(ranked[i], aim, budget / count), method: 'evolve' });
       }
     }
     return jobs;
   }
 
   /** The best candidates of every aim are refined from where they stand. */
-  #refine(): ExploreJob[] {
+  #refine(budget: number): ExploreJob[] {
     const { aims } = this.#quest;
-    const left = this.#quest.candidates - this.#evaluations;
-    const perAim = Math.max(1, Math.min(4, Math.floor(left / (500 * aims.length))));
+    const perAim = Math.max(1, Math.min(FEW, Math.floor(budget / (LEAST_REFINE * aims.length))));
     const main = this.findings.best[0];
     return aims.flatMap((_, k) => {
       const own = this.findings.best[k];
       const starts = (own.length > 0 ? own : main).slice(0, perAim);
       return starts.map(({ candidate }) => ({
-        ...this.#job(candidate.variant, k, left / (perAim * aims.length)),
-        from: { vector: candidate.vector, spread: 0.15 },
-        polish: true,
+        ...this.#job(candidate.variant, k, budget / (perAim * aims.length)),
+        method: 'refine' as const,
+        from: candidate.vector,
       }));
     });
   }
 
-  /** Budget left for a share of all candidates. */
-  #left(share: number): number {
-    return Math.max(0, Math.min(share * this.#quest.candidates, this.#quest.candidates - this.#evaluations));
+  /** What the rounds may still spend. */
+  get #left(): number {
+    return (1 - RESERVE) * this.#quest.candidates - this.#evaluations;
   }
 
   #job(variant: string, aim: number, budget: number): ExploreJob {
@@ -145,7 +204,7 @@ export class Rounds {
       budget: Math.floor(budget),
       seed: this.#quest.seed,
       stream: this.#stream++,
-      polish: false,
+      method: 'glance',
     };
   }
 

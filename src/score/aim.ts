@@ -31,25 +31,39 @@ export interface Miss {
   factor: number;
 }
 
-/** The brief's limits other than the correction that a design misses. */
-export function missedLimits(scores: Scores, misfit: number, task: Task): Miss[] {
+/** Every limit of the brief other than the correction, with the factor by which a design uses it up: 1 is just met. */
+export function limitFactors(scores: Scores, misfit: number, task: Task): Miss[] {
   const { target, detector } = task;
-  const all: Miss[] = [
+  return [
     { limit: 'target.lobe', factor: target.lobe === null ? 0 : scores.lobe.ratio / target.lobe },
     { limit: 'target.time', factor: target.timeS === null ? 0 : scores.snr.time_s / target.timeS },
     { limit: 'detector.radius', factor: scores.radius_m / detector.radiusM[1] },
     { limit: 'detector.radius', factor: detector.radiusM[0] / scores.radius_m },
     { limit: 'shop', factor: 1 + misfit },
   ];
+}
+
+/** The limits other than the correction that a design misses. */
+export function missedLimits(scores: Scores, misfit: number, task: Task): Miss[] {
   // Coordinates are written to a nanometre, which may take a radius over its limit by that much.
-  return all.filter(({ factor }) => factor > 1 + 1e-5);
+  return limitFactors(scores, misfit, task).filter(({ factor }) => factor > 1 + 1e-5);
 }
 
 /**
  * Weight of a missed limit against the measure. Halving the allowed correction costs less than a factor of two in area on
  * every brief tried, so at 2 no run gains by missing a limit for long.
  */
-const MISS_WEIGHT = 2;
+export const MISS_WEIGHT = 2;
+
+/**
+ * The limits that bear on an aim. One on the very measure that is made small is left out: it is met if anything can meet
+ * it, and as a penalty it would only outweigh the others.
+ */
+export function limitsBeside(scores: Scores, misfit: number, aim: Aim, task: Task): Miss[] {
+  return limitFactors(scores, misfit, task).filter(
+    ({ limit }) => !(aim.measure === 'time' && limit === 'target.time'),
+  );
+}
 
 /**
  * The number that a search makes small: the logarithm of the measure, and a penalty for the logarithm of each factor by
@@ -57,6 +71,6 @@ const MISS_WEIGHT = 2;
  */
 export function aimValue(scores: Scores, misfit: number, aim: Aim, task: Task): number {
   let penalty = Math.max(0, Math.log(scores.correction.worst / aim.correction));
-  for (const { factor } of missedLimits(scores, misfit, task)) penalty += Math.log(factor);
+  for (const { factor } of limitsBeside(scores, misfit, aim, task)) penalty += Math.log(Math.max(1, factor));
   return Math.log(measureOf(scores, aim.measure)) + MISS_WEIGHT * penalty;
 }

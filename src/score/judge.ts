@@ -36,6 +36,12 @@ export const SEARCH_FINENESS: Fineness = { spacing: 0.5, drifts: 3, depths: 3, p
 /** For what is reported: ten times denser in position, and finer in the rest. */
 export const REPORT_FINENESS: Fineness = { spacing: 0.16, drifts: 5, depths: 5, perRadian: 0.9 };
 
+/** Scores, and the ratios reading/extinction that they come from: one for each scenario, depth and position. */
+export interface Judgement {
+  scores: Scores;
+  ratios: Float64Array;
+}
+
 /** One detector element ready for integration. */
 interface ElementNodes extends ElementArea {
   nodes: Float64Array;
@@ -68,13 +74,9 @@ export class Judge {
     return Math.PI / (this.wavelengthM * distanceM);
   }
 
-  /** Scores a shape as its family draws it. */
-  scoreShape(shape: Shape, distanceM: number): Scores {
-    const density = this.#density(distanceM);
-    const elements = shape.elements.map(({ weight, loops }) =>
-      withArea(weight, boundaryNodes(loops, density, this.#rules)),
-    );
-    return this.#score(elements, shapeRadius(shape), distanceM, shape);
+  /** Scores a shape as its family draws it; the ratios reading/extinction behind the correction come along. */
+  scoreShape(shape: Shape, distanceM: number): Judgement {
+    return this.#score(this.#shapeNodes(shape, distanceM), shapeRadius(shape), distanceM, shape);
   }
 
   /** Scores an outline given by its points. */
@@ -82,7 +84,7 @@ export class Judge {
     elements: readonly OutlineElement[],
     distanceM: number,
     symmetry: Symmetry = NO_SYMMETRY,
-  ): Scores {
+  ): Judgement {
     const radiusM = Math.max(...elements.map(({ rings }) => ringsRadius(rings)));
     return this.#score(this.#outlineNodes(elements, distanceM), radiusM, distanceM, symmetry);
   }
@@ -103,6 +105,24 @@ export class Judge {
     const places = positions ?? this.#positions(radiusM, distanceM, NO_SYMMETRY);
     const depths = positions ? [0] : this.#depths();
     return { positions: places, depths, ratios: this.#ratios(nodes, radiusM, distanceM, places, depths) };
+  }
+
+  /**
+   * Ratios reading/extinction of a shape at the sampled positions of a radius, one after the other as in a judgement.
+   *
+   * @param radiusM radius of the outline whose sampling is wanted, at least the shape's own
+   */
+  shapeRatios(shape: Shape, distanceM: number, radiusM: number): Float64Array {
+    const elements = this.#shapeNodes(shape, distanceM);
+    const positions = this.#positions(radiusM, distanceM, shape);
+    return flatten(this.#ratios(elements, radiusM, distanceM, positions, this.#depths()));
+  }
+
+  #shapeNodes(shape: Shape, distanceM: number): ElementNodes[] {
+    const density = this.#density(distanceM);
+    return shape.elements.map(({ weight, loops }) =>
+      withArea(weight, boundaryNodes(loops, density, this.#rules)),
+    );
   }
 
   #outlineNodes(elements: readonly OutlineElement[], distanceM: number): ElementNodes[] {
@@ -172,11 +192,16 @@ export class Judge {
     return ratios;
   }
 
-  #score(elements: readonly ElementNodes[], radiusM: number, distanceM: number, symmetry: Symmetry): Scores {
+  #score(
+    elements: readonly ElementNodes[],
+    radiusM: number,
+    distanceM: number,
+    symmetry: Symmetry,
+  ): Judgement {
     const { target, detector, light } = this.task;
     const positions = this.#positions(radiusM, distanceM, symmetry);
-    const ratios = this.#ratios(elements, radiusM, distanceM, positions, this.#depths());
-    const { gain, worst, rms } = correctionOf(flatten(ratios), target.gain);
+    const ratios = flatten(this.#ratios(elements, radiusM, distanceM, positions, this.#depths()));
+    const { gain, worst, rms } = correctionOf(ratios, target.gain);
     if (!Number.isFinite(worst)) {
       throw new RimwrightError(
         'machine',
@@ -185,7 +210,7 @@ export class Judge {
     }
     const electronics = { ...detector, ...light };
     const extinctionM2 = this.#leastExtinctionM2;
-    return {
+    const scores: Scores = {
       gain,
       correction: { worst, rms },
       lobe: { ratio: lobeRatio(radiusM, distanceM, this.wavelengthM, this.#largestDiameterM) },
@@ -197,6 +222,7 @@ export class Judge {
       radius_m: radiusM,
       areaOverFloor: areaOverFloor(elements, gain, this.wavelengthM, distanceM),
     };
+    return { scores, ratios };
   }
 }
 

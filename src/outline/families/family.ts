@@ -34,6 +34,8 @@ export interface Variant {
   parameters: readonly Parameter[];
   /** Draws the outline; `values` run in the order of `parameters`, each within its range. */
   draw(values: ArrayLike<number>, unitM: number): Shape | Misdrawn;
+  /** Numbers that must all be 0 or above for the outline to be drawn, smooth in the values; none where any values do. */
+  margins?(values: ArrayLike<number>): Float64Array;
   /** A promising place to start from, and how far around it to look, both in the parameters' own units. */
   start(random: RandomSource): { values: number[]; spreads: number[] };
 }

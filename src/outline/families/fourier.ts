@@ -18,8 +18,8 @@ interface Expansion {
  */
 export function fourierVariants(limits: PhaseLimits): Variant[] {
   const expansions: Expansion[] = [
-    ...[2, 3, 4, 5, 6, 8].map((folds) => ({ of: 'square', folds, terms: 5, sines: false }) as const),
-    ...[3, 5].map((folds) => ({ of: 'radius', folds, terms: 5, sines: false }) as const),
+    ...[2, 3, 4, 5, 6, 8].map((folds) => ({ of: 'square', folds, terms: 6, sines: false }) as const),
+    ...[3, 5].map((folds) => ({ of: 'radius', folds, terms: 6, sines: false }) as const),
     ...[3, 5].map((folds) => ({ of: 'square', folds, terms: 3, sines: true }) as const),
     { of: 'square', folds: 1, terms: 6, sines: true },
   ];
@@ -40,50 +40,64 @@ function fourierVariant(expansion: Expansion, limits: PhaseLimits): Variant {
     id: `fourier-${of}-${folds}-fold-${terms}${sines ? '-sines' : ''}`,
     parameters,
     draw: (values, unitM) => drawFourier(values, expansion, unitM),
+    margins: (values) => seriesMargins(values, expansion),
     start: (random) => startFourier(random, expansion, limits),
   };
 }
 
-function drawFourier(values: ArrayLike<number>, expansion: Expansion, unitM: number): Shape | Misdrawn {
+/** The series and its derivative in φ, into out[0] and out[1]. */
+function sumSeries(
+  values: ArrayLike<number>,
+  { folds, terms, sines }: Expansion,
+  phi: number,
+  out: Float64Array,
+): void {
+  let value = values[0];
+  let slope = 0;
+  // cos kα and sin kα by rotation: one pair of trigonometric calls serves all harmonics.
+  const cos1 = Math.cos(folds * phi);
+  const sin1 = Math.sin(folds * phi);
+  let cos = 1;
+  let sin = 0;
+  for (let k = 1; k < terms; k++) {
+    const next = cos * cos1 - sin * sin1;
+    sin = sin * cos1 + cos * sin1;
+    cos = next;
+    const c = values[k];
+    const s = sines ? values[terms - 1 + k] : 0;
+    value += c * cos + s * sin;
+    slope += k * folds * (s * cos - c * sin);
+  }
+  out[0] = value;
+  out[1] = slope;
+}
+
+/** How far the series stays above its least value, at even azimuths over one fold (half a fold where it is a mirror). */
+function seriesMargins(values: ArrayLike<number>, expansion: Expansion): Float64Array {
   const { of, folds, terms, sines } = expansion;
   const out = new Float64Array(2);
-  const series = (phi: number, target: Float64Array) => {
-    let value = values[0];
-    let slope = 0;
-    // cos kα and sin kα by rotation: one pair of trigonometric calls serves all harmonics.
-    const cos1 = Math.cos(folds * phi);
-    const sin1 = Math.sin(folds * phi);
-    let cos = 1;
-    let sin = 0;
-    for (let k = 1; k < terms; k++) {
-      const next = cos * cos1 - sin * sin1;
-      sin = sin * cos1 + cos * sin1;
-      cos = next;
-      const c = values[k];
-      const s = sines ? values[terms - 1 + k] : 0;
-      value += c * cos + s * sin;
-      slope += k * folds * (s * cos - c * sin);
-    }
-    target[0] = value;
-    target[1] = slope;
-  };
-  let least = Number.POSITIVE_INFINITY;
-  const probes = 12 * terms;
-  for (let i = 0; i < probes; i++) {
-    series((2 * Math.PI * i) / (probes * folds), out);
-    least = Math.min(least, of === 'square' ? out[0] : out[0] * Math.abs(out[0]));
-  }
-  if (least < LEAST) return { misdrawnBy: LEAST - least };
+  const probes = (sines ? 12 : 6) * terms;
+  const least = of === 'square' ? LEAST : Math.sqrt(LEAST);
+  return Float64Array.from({ length: probes + 1 }, (_, i) => {
+    sumSeries(values, expansion, ((sines ? 2 : 1) * Math.PI * i) / (probes * folds), out);
+    return out[0] - least;
+  });
+}
+
+function drawFourier(values: ArrayLike<number>, expansion: Expansion, unitM: number): Shape | Misdrawn {
+  const { of, folds, sines } = expansion;
+  const least = Math.min(...seriesMargins(values, expansion));
+  if (least < 0) return { misdrawnBy: -least };
   const area = unitM * unitM;
-  const squared = (phi: number, target: Float64Array) => {
-    series(phi, target);
+  const squared = (phi: number, out: Float64Array) => {
+    sumSeries(values, expansion, phi, out);
     if (of === 'radius') {
-      target[1] *= 2 * target[0];
-      target[0] *= target[0];
+      out[1] *= 2 * out[0];
+      out[0] *= out[0];
     }
     // Between the probes the boundary may dip a little lower, but never to the axis.
-    target[0] = Math.max(target[0], LEAST / 4) * area;
-    target[1] *= area;
+    out[0] = Math.max(out[0], LEAST / 4) * area;
+    out[1] *= area;
   };
   const loop = [{ kind: 'polar', from: 0, to: 2 * Math.PI, folds, squared }] as const;
   return { elements: [{ weight: 1, loops: [loop] }], folds, mirror: !sines };

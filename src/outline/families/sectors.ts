@@ -31,6 +31,7 @@ function hubVariant(folds: number, count: number, limits: PhaseLimits): Variant 
     id: `sectors-hub-${folds}-fold-${count}`,
     parameters,
     draw: (values, unitM) => drawHub(Array.from(values), folds, count, unitM),
+    margins: (values) => closedShare(Array.from(values).filter((_, i) => i % 2 === 1)),
     start(random) {
       const values = [0.05 + 0.2 * random.uniform()];
       const spreads = [0.1];
@@ -82,6 +83,7 @@ function arcVariant(folds: number, count: number, limits: PhaseLimits): Variant 
     id: `sectors-arc-${folds}-fold-${count}`,
     parameters,
     draw: (values, unitM) => drawArcs(Array.from(values), folds, count, unitM),
+    margins: (values) => closedShare(Array.from(values).filter((_, i) => i % 3 === 0)),
     start(random) {
       const values: number[] = [];
       const spreads: number[] = [];
@@ -101,9 +103,9 @@ function arcVariant(folds: number, count: number, limits: PhaseLimits): Variant 
 
 function drawArcs(values: number[], folds: number, count: number, unitM: number): Shape | Misdrawn {
   const shares = values.filter((_, i) => i % 3 === 0);
-  const open = shares.reduce((sum, share) => sum + share, 0);
-  if (open > 1 - count * LEAST_SHARE) return { misdrawnBy: open - (1 - count * LEAST_SHARE) };
-  const closed = (1 - open) / count;
+  const [spare] = closedShare(shares);
+  if (spare < 0) return { misdrawnBy: -spare };
+  const closed = spare / count + LEAST_SHARE;
   const fold = (2 * Math.PI) / folds;
   const loops: Loop[] = [];
   for (let n = 0; n < folds; n++) {
@@ -124,6 +126,11 @@ function drawArcs(values: number[], folds: number, count: number, unitM: number)
     }
   }
   return { elements: [{ weight: 1, loops }], folds, mirror: true };
+}
+
+/** What is left of a fold when every sector and the least gap beside it have their share. */
+function closedShare(shares: readonly number[]): Float64Array {
+  return Float64Array.of(shares.reduce((left, share) => left - share - LEAST_SHARE, 1));
 }
 
 /** A phase near an odd multiple of π, mostly the first, where a rim counts twice. */

@@ -1,0 +1,132 @@
+import type { Candidate } from '../crew/candidate.ts';
+import { Crew } from '../crew/crew.ts';
+import type { FinishJob } from '../crew/finish.ts';
+import type { Job, Orders, ResultOf } from '../crew/messages.ts';
+import { Workshop } from '../crew/workshop.ts';
+import type { Aim } from '../score/aim.ts';
+import type { Design } from '../score/design.ts';
+import type { Brief } from './brief.ts';
+import { missesOf } from './ranking.ts';
+import type { Findings, Progress } from './rounds.ts';
+import { Rounds } from './rounds.ts';
+
+export interface CourseOptions {
+  /** Worker threads, 1 or more. */
+  workers: number;
+  onProgress?: (progress: Progress) => void;
+  /** Ends the search early; what was found so far is still finished and ranked. */
+  signal?: AbortSignal;
+  /** Absolute path of the compiled worker, for tests that run from the sources. */
+  workerEntry?: string;
+}
+
+/** How candidates become designs when the rounds are over. */
+export interface Finish {
+  findings: Findings;
+  /** Draws and judges candidates finely, for better or worse. */
+  asTheyAre(candidates: readonly Candidate[]): Promise<Design[]>;
+  /** The same for the best `count` of an aim; those that finer judging finds a little beyond the target are refined with more room. */
+  untilMet(aim: number, count: number): Promise<Design[]>;
+}
+
+export interface CourseResult {
+  designs: Design[];
+  evaluations: number;
+  seconds: number;
+  /** Set where the search was stopped before its budget was spent. */
+  stopped: boolean;
+}
+
+/** Times that a candidate beyond the target is refined once more, and how far beyond it may be for that. */
+const REPAIRS = 3;
+const REPAIRABLE = 1.3;
+
+/** Candidates of one finishing job. */
+const BATCH = 3;
+
+/** Runs a search from the first look to finished designs, with a crew of its own. */
+export async function runCourse(
+  brief: Brief,
+  aims: readonly Aim[],
+  options: CourseOptions,
+  conclude: (finish: Finish) => Promise<Design[]>,
+): Promise<CourseResult> {
+  const started = performance.now();
+  const { task, families } = brief;
+  const orders: Orders = { task, families };
+  // The variants are what the main thread needs of it; it also finishes what a stopped crew has left.
+  const workshop = new Workshop(orders);
+  const crew = await Crew.start(options.workers, orders, options.workerEntry);
+  const stop = () => void crew.dismiss();
+  options.signal?.addEventListener('abort', stop, { once: true });
+  try {
+    const quest = { task, variants: workshop.variants, aims, ...brief.search };
+    const rounds = new Rounds(quest, crew, options.onProgress ?? (() => {}));
+    const stopped = await ranToItsEnd(rounds, options.signal);
+    const designs = await conclude(
+      finishing(rounds, brief, aims, stopped ? handsOf(workshop) : crew, !stopped),
+    );
+    const seconds = (performance.now() - started) / 1000;
+    return { designs, evaluations: rounds.findings.evaluations, seconds, stopped };
+  } finally {
+    options.signal?.removeEventListener('abort', stop);
+    await crew.dismiss();
+  }
+}
+
+/** True where the user stopped the rounds. */
+async function ranToItsEnd(rounds: Rounds, signal: AbortSignal | undefined): Promise<boolean> {
+  try {
+    await rounds.run();
+    return false;
+  } catch (error) {
+    if (signal?.aborted) return true;
+    throw error;
+  }
+}
+
+type Hands = Pick<Crew, 'do'>;
+
+function handsOf(workshop: Workshop): Hands {
+  return { do: async <J extends Job>(job: J): Promise<ResultOf<J>> => workshop.do(job) };
+}
+
+function finishing(
+  rounds: Rounds,
+  brief: Brief,
+  aims: readonly Aim[],
+  hands: Hands,
+  mayRepair: boolean,
+): Finish {
+  const asTheyAre = async (candidates: readonly Candidate[]) => {
+    const jobs: FinishJob[] = [];
+    for (let i = 0; i < candidates.length; i += BATCH) {
+      jobs.push({ kind: 'finish', candidates: candidates.slice(i, i + BATCH) });
+    }
+    const results = await Promise.all(jobs.map((job) => hands.do(job)));
+    return results.flatMap(({ designs }) => designs);
+  };
+  const untilMet = async (k: number, count: number) => {
+    let candidates = rounds.findings.best[k].slice(0, count).map(({ candidate }) => candidate);
+    let corrections = candidates.map(() => aims[k].correction);
+    let designs = await asTheyAre(candidates);
+    const all = [...designs];
+    for (let repair = 0; mayRepair && repair < REPAIRS; repair++) {
+      const asked = candidates.flatMap((candidate, i) => {
+        const misses = missesOf(designs[i], brief.task);
+        const only = misses.length === 1 && misses[0].limit === 'target.correction' ? misses[0].factor : 0;
+        if (only === 0 || only > REPAIRABLE) return [];
+        return [{ candidate, aim: { ...aims[k], correction: corrections[i] / (only * 1.002) } }];
+      });
+      if (asked.length === 0) break;
+      const results = await rounds.again(asked);
+      if (results.length === 0) break;
+      candidates = results.flatMap(({ best }) => (best ? [best.candidate] : []));
+      corrections = results.flatMap(({ best }, i) => (best ? [asked[i].aim.correction] : []));
+      designs = await asTheyAre(candidates);
+      all.push(...designs);
+    }
+    return all;
+  };
+  return { findings: rounds.findings, asTheyAre, untilMet };
+}

@@ -1,0 +1,100 @@
+import type { Miss } from '../score/aim.ts';
+import { missedLimits } from '../score/aim.ts';
+import type { Design } from '../score/design.ts';
+import type { Task } from '../score/task.ts';
+import { crowdingDistances, nonDominatedRanks } from '../search/pareto.ts';
+
+/** A design of a front. */
+export interface RankedDesign extends Design {
+  /** `rings-2`: the family, and its number within the front. */
+  id: string;
+  /** 1 is the front; 2 would be if the front were taken away, and so on. */
+  rank: number;
+  meetsTarget: boolean;
+}
+
+/** Most designs that a front keeps. */
+const FRONT_SIZE = 24;
+
+/** Every limit of the brief that a design misses, the correction included, the worst first. */
+export function missesOf(design: Design, task: Task): Miss[] {
+  const misses = missedLimits(design.scores, design.shop.misfit, task);
+  const factor = design.scores.correction.worst / task.target.correction;
+  if (factor > 1) misses.push({ limit: 'target.correction', factor });
+  return misses.sort((a, b) => b.factor - a.factor);
+}
+
+/** Ranks by correction, time and radius those designs that keep every other limit. */
+export function rankFront(designs: readonly Design[], task: Task): RankedDesign[] {
+  const within = designs.filter(
+    ({ scores, shop }) => shop.fits && missedLimits(scores, shop.misfit, task).length === 0,
+  );
+  const front = thin(distinct(within));
+  return rankAll([...front, ...familyBests(within, front, task)], task);
+}
+
+/** For each family that is not on the front, what comes nearest to it: the fastest on target, or else the truest. */
+function familyBests(designs: readonly Design[], front: readonly Design[], task: Task): Design[] {
+  const worth = ({ scores }: Design) =>
+    Math.log(scores.snr.time_s) +
+    10 * Math.log(Math.max(1, scores.correction.worst / task.target.correction));
+  const present = new Set(front.map(({ family }) => family));
+  const bests = new Map<string, Design>();
+  for (const design of designs) {
+    const held = bests.get(design.family);
+    if (!present.has(design.family) && (!held || worth(design) < worth(held)))
+      bests.set(design.family, design);
+  }
+  return [...bests.values()];
+}
+
+function objectives({ scores }: Design): number[] {
+  return [scores.correction.worst, scores.snr.time_s, scores.radius_m];
+}
+
+/** One design of each handful that agree to a hundredth in all objectives: nobody chooses between those. */
+function distinct(designs: readonly Design[]): Design[] {
+  const seen = new Set<string>();
+  return designs.filter((design) => {
+    const key = objectives(design)
+      .map((value) => Math.round(Math.log(value) * 100))
+      .join(' ');
+    if (seen.has(key)) return false;
+    seen.add(key);
+    return true;
+  });
+}
+
+/** Keeps the first ranks, and of the last one that still has room those that lie farthest from their neighbours. */
+function thin(designs: readonly Design[]): Design[] {
+  const values = designs.map((design) => objectives(design).map(Math.log));
+  const ranks = nonDominatedRanks(values);
+  const kept: number[] = [];
+  for (let rank = 1; kept.length < FRONT_SIZE && ranks.includes(rank); rank++) {
+    const members = [...ranks.keys()].filter((i) => ranks[i] === rank);
+    const distances = crowdingDistances(values, members);
+    const order = [...members.keys()].sort((a, b) => distances[b] - distances[a] || a - b);
+    kept.push(...order.slice(0, FRONT_SIZE - kept.length).map((i) => members[i]));
+  }
+  return kept.sort((a, b) => a - b).map((i) => designs[i]);
+}
+
+/** Gives every design its rank and name. */
+export function rankAll(designs: readonly Design[], task: Task): RankedDesign[] {
+  const ranks = nonDominatedRanks(designs.map(objectives));
+  const order = [...designs.keys()].sort(
+    (a, b) => ranks[a] - ranks[b] || designs[a].scores.snr.time_s - designs[b].scores.snr.time_s || a - b,
+  );
+  const counts = new Map<string, number>();
+  return order.map((i) => {
+    const design = designs[i];
+    const number = (counts.get(design.family) ?? 0) + 1;
+    counts.set(design.family, number);
+    return {
+      ...design,
+      id: `${design.family}-${number}`,
+      rank: ranks[i],
+      meetsTarget: missesOf(design, task).length === 0,
+    };
+  });
+}
