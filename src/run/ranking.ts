@@ -13,6 +13,9 @@ export interface RankedDesign extends Design {
   meetsTarget: boolean;
 }
 
+/** Designs whose correction is beyond this many times the target are of no use to anyone. */
+export const FRONT_REACH = 4;
+
 /** Most designs that a front keeps. */
 const FRONT_SIZE = 24;
 
@@ -24,10 +27,12 @@ export function missesOf(design: Design, task: Task): Miss[] {
   return misses.sort((a, b) => b.factor - a.factor);
 }
 
-/** Ranks by correction, time and radius those designs that keep every other limit. */
+/** Ranks by correction, time and radius those designs that keep every other limit, and are not far off the target. */
 export function rankFront(designs: readonly Design[], task: Task): RankedDesign[] {
   const within = designs.filter(
-    ({ scores, shop }) => shop.fits && missedLimits(scores, shop.misfit, task).length === 0,
+    ({ scores, shop }) =>
+      scores.correction.worst <= FRONT_REACH * task.target.correction &&
+      missedLimits(scores, shop.misfit, task).length === 0,
   );
   const front = thin(distinct(within));
   return rankAll([...front, ...familyBests(within, front, task)], task);

@@ -7,6 +7,7 @@ import type { Aim } from '../score/aim.ts';
 import { missedLimits } from '../score/aim.ts';
 import type { Task } from '../score/task.ts';
 import { ParetoArchive } from '../search/paretoArchive.ts';
+import { FRONT_REACH } from './ranking.ts';
 
 /** What a search is asked. */
 export interface Quest {
@@ -68,9 +69,6 @@ const SEED_BUDGET = 300;
 /** Evaluations of one job when digging; a run of CMA-ES in a handful of dimensions comes to rest in about as many. */
 const DIG = 1200;
 
-/** Candidates whose correction is beyond this many times the target are of no use to anyone. */
-const FRONT_REACH = 4;
-
 /** Evaluations per variant below which a first look tells nothing. */
 const LEAST_LOOK = 40;
 
@@ -103,7 +101,7 @@ export class Rounds {
     for (let lap = 0; lap < MOST_LAPS && this.#left > 0.03 * this.#quest.candidates; lap++) {
       // Early laps leave something for later ones, which start from what is found by then.
       const share = this.#left / Math.max(1, LAPS - lap);
-      await this.#round(this.#dig(DIG_SHARE * share));
+      await this.#round(this.#dig(DIG_SHARE * share, lap === 0));
       await this.#round(this.#refine((1 - DIG_SHARE) * share));
     }
   }
@@ -159,20 +157,30 @@ export class Rounds {
     });
   }
 
-  /** New starts go to the variants that look best for the main aim, the better the more often. */
-  #dig(budget: number): ExploreJob[] {
+  /**
+   * New starts go to the variants that look best for the main aim, the better the more often; in the first lap every
+   * family's best variant has its turn.
+   */
+  #dig(budget: number, everyFamily: boolean): ExploreJob[] {
     const ranked = this.findings.best[0].map(({ candidate }) => candidate.variant);
     if (ranked.length === 0) return [];
-    const count = Math.max(2, Math.round(budget / DIG));
-    const jobs: ExploreJob[] = [];
-    for (let reach = 1; jobs.length < count; reach++) {
+    const turns = everyFamily ? this.#firstOfFamily(ranked) : [];
+    const count = Math.max(2, turns.length, Math.round(budget / DIG));
+    for (let reach = 1; turns.length < count; reach++) {
       // 1, then 1 2, then 1 2 3 …: the first comes up most often, and every one in the end.
-      for (let i = 0; i < Math.min(reach, ranked.length) && jobs.length < count; i++) {
-        const aim = jobs.length % this.#quest.aims.length;
-        jobs.push({ ...this.#job(ranked[i], aim, budget / count), method: 'evolve' });
-      }
+      turns.push(...ranked.slice(0, reach));
     }
-    return jobs;
+    return turns.slice(0, count).map((variant, i) => {
+      const aim = everyFamily ? 0 : i % this.#quest.aims.length;
+      return { ...this.#job(variant, aim, budget / count), method: 'evolve' };
+    });
+  }
+
+  /** Of variants in order of rank, those that are the first of their family. */
+  #firstOfFamily(ranked: readonly string[]): string[] {
+    const familyOf = new Map(this.#quest.variants.map(({ id, family }) => [id, family]));
+    const seen = new Set<string | undefined>();
+    return ranked.filter((id) => !seen.has(familyOf.get(id)) && seen.add(familyOf.get(id)));
   }
 
   /** The best candidates of every aim are refined from where they stand. */
