@@ -1,0 +1,45 @@
+import { availableParallelism, cpus } from 'node:os';
+import { benchBaseline } from './baseline.ts';
+import { benchCandidates } from './candidates.ts';
+import { benchReadings } from './readings.ts';
+
+/** `npm run bench`: a table; `npm run bench -- --json`: one JSON document. Medians of seeded, warmed runs. */
+const readings = await benchReadings();
+const candidates = await benchCandidates();
+const roadDust = await benchCandidates('road-dust');
+const baseline = await benchBaseline();
+const machine = { node: process.version, cores: availableParallelism(), processor: cpus()[0]?.model };
+
+if (process.argv.includes('--json')) {
+  const { twoWorkersOverOne, candidatesPerSecond } = candidates;
+  console.log(
+    JSON.stringify(
+      { ...readings, candidatesPerSecond, twoWorkersOverOne, roadDust, baseline, machine },
+      null,
+      2,
+    ),
+  );
+} else {
+  const row = (what: string, value: number | string) =>
+    console.log(`${what.padEnd(58)}${String(value).padStart(14)}`);
+  row('readings per second and core, 512-node outline', readings.readingsPerSecond);
+  row(
+    `plane quadratures per second (${readings.quadraturePoints} points, error 1e-4)`,
+    readings.quadraturesPerSecond,
+  );
+  row('ratio of the two', readings.ratioToQuadrature);
+  row('radial table to 0.45 mm, ms', readings.tableMs.toFixed(2));
+  for (const [name, { candidatesPerSecond, twoWorkersOverOne }] of Object.entries({
+    offset: candidates,
+    'road dust': roadDust,
+  })) {
+    row(`candidates per second, ${name}, one worker`, candidatesPerSecond[0]);
+    row(`candidates per second, ${name}, two workers`, candidatesPerSecond[1]);
+    row('  two over one, median of the rounds', twoWorkersOverOne.toFixed(2));
+  }
+  for (const { variant, ours, optimizationJs } of baseline) {
+    row(`area over λz by ${variant}, 2000 evaluations, ours`, ours.toPrecision(4));
+    row('  optimization-js', optimizationJs.toPrecision(4));
+  }
+  console.log(`Node ${machine.node}, ${machine.cores} cores, ${machine.processor}`);
+}
