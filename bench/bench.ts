@@ -21,13 +21,14 @@ if (process.argv.includes('--json')) {
   );
 } else {
   const row = (what: string, value: number | string) =>
-    console.log(`${what.padEnd(58)}${String(value).padStart(14)}`);
+    console.log(`${what.padEnd(54)}${String(value).padStart(24)}`);
   row('readings per second and core, 512-node outline', readings.readingsPerSecond);
-  row(
-    `plane quadratures per second (${readings.quadraturePoints} points, error 1e-4)`,
-    readings.quadraturesPerSecond,
-  );
-  row('ratio of the two', readings.ratioToQuadrature);
+  const plane = ({ points, perSecond }: { points: number; perSecond: number }) =>
+    `${perSecond.toPrecision(3)} (${points} points)`;
+  row('polar grids per second, error 1e-4', plane(readings.quadrature));
+  row('  readings over grids', readings.ratioToQuadrature);
+  row('Gauss–Legendre spokes per second, error 1e-4', plane(readings.gaussQuadrature));
+  row('  readings over spokes', readings.ratioToGaussQuadrature);
   row('radial table to 0.45 mm, ms', readings.tableMs.toFixed(2));
   for (const [name, { candidatesPerSecond, twoWorkersOverOne }] of Object.entries({
     offset: candidates,
