@@ -38,8 +38,8 @@ if (process.argv.includes('--json')) {
     row(`candidates per second, ${name}, two workers`, candidatesPerSecond[1]);
     row('  two over one, median of the rounds', twoWorkersOverOne.toFixed(2));
   }
-  for (const { variant, ours, optimizationJs } of baseline) {
-    row(`area over λz by ${variant}, 2000 evaluations, ours`, ours.toPrecision(4));
+  for (const { family, evaluations, ours, optimizationJs } of baseline) {
+    row(`area over λz, ${family}, ${evaluations} evaluations`, ours.toPrecision(4));
     row('  optimization-js', optimizationJs.toPrecision(4));
   }
   console.log(`Node ${machine.node}, ${machine.cores} cores, ${machine.processor}`);
