@@ -64,14 +64,24 @@ function nodeCount(segment: Segment, density: NodeDensity): number {
   if (segment.kind === 'polar' && isClosed(segment)) {
     // One fold is probed, and every fold gets the same whole number of nodes.
     const probes = 4 * PROBES;
+    const step = (2 * Math.PI) / (segment.folds * probes);
     let own = 0;
     let largest = 0;
+    let slopes = 0;
+    let bends = 0;
+    segment.squared(segment.from - step / 2, point);
     for (let i = 0; i < probes; i++) {
-      segment.squared(segment.from + ((i + 0.5) * 2 * Math.PI) / (segment.folds * probes), point);
+      const before = point[1];
+      segment.squared(segment.from + (i + 0.5) * step, point);
       own = Math.max(own, Math.abs(point[1]));
       largest = Math.max(largest, point[0]);
+      slopes += point[1] ** 2;
+      bends += ((point[1] - before) / step) ** 2;
     }
-    const perTurn = kappa * own * 2 * Math.PI + 4 * Math.PI * kappa * offsetM * Math.sqrt(largest);
+    // Carson's rule (1922): a phase that runs at up to B, and changes its pace at the rate ω, takes the bandwidth B + ω.
+    // This ω is a root mean square; half as much again covers the highest harmonics that count.
+    const pace = slopes > 0 ? 1.5 * Math.sqrt(bends / slopes) : 0;
+    const perTurn = 2 * Math.PI * (kappa * own + pace + 2 * kappa * offsetM * Math.sqrt(largest));
     const perFold = Math.ceil((least + perRadian * perTurn) / segment.folds);
     return segment.folds * Math.max(perFold, 4);
   }
@@ -89,6 +99,10 @@ function nodeCount(segment: Segment, density: NodeDensity): number {
   }
   // An offset particle adds the phase 2κ p·r; the azimuth seen from the particle must be resolved as well.
   phase += 2 * kappa * offsetM * Math.min(length, 2 * Math.sqrt(farthest) * Math.PI);
-  const turn = Math.min(Math.PI, length / Math.sqrt(farthest));
-  return Math.ceil(least * Math.max(0.25, turn / Math.PI) + perRadian * phase);
+  // An arc bends by its own angle, which for a small one is far more than what it spans as seen from the axis.
+  const turn = segment.kind === 'arc' ? Math.abs(segment.to - segment.from) : length / Math.sqrt(farthest);
+  // Along a ramp or an arc about the axis the phase runs evenly; elsewhere its pace changes, which takes some more.
+  const isEven = segment.kind === 'polar' || (segment.kind === 'arc' && Math.hypot(...segment.centre) === 0);
+  const bend = isEven ? Math.max(0.25, turn / Math.PI) : 0.25 + turn / Math.PI;
+  return Math.ceil(least * Math.min(1, bend) + perRadian * phase);
 }
