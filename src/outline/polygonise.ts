@@ -33,6 +33,9 @@ export function polygonise(loop: Loop, verticesPerTurn: number): Float64Array {
   return Float64Array.from(points);
 }
 
+/** Shorter chords would be steps of the grid, not of the curve. */
+const LEAST_CHORD_M = 1e-8;
+
 /** Coordinates are written in mm with six decimals: one nanometre, far below what any shop holds. */
 function onGrid(metres: number): number {
   return Math.round(metres * 1e9) / 1e9;
@@ -43,7 +46,10 @@ function pieceCount(segment: Segment, verticesPerTurn: number): number {
   const turns = Math.abs(segment.to - segment.from) / (2 * Math.PI);
   // A polar curve bends several times in a turn, and no stretch makes up for what its chords cut off.
   const density = segment.kind === 'polar' ? 4 : 1;
-  const pieces = Math.max(2, Math.ceil(turns * verticesPerTurn * density));
+  const wanted = Math.ceil(turns * verticesPerTurn * density);
+  const fitting =
+    segment.kind === 'arc' ? Math.floor((turns * 2 * Math.PI * segment.radius) / LEAST_CHORD_M) : wanted;
+  const pieces = Math.max(2, Math.min(wanted, fitting));
   // A whole number of vertices a fold keeps the polygon as symmetric as the curve.
   return segment.kind === 'polar' && isClosed(segment)
     ? segment.folds * Math.ceil(pieces / segment.folds)

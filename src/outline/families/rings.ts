@@ -5,6 +5,9 @@ import type { Misdrawn, PhaseLimits, Variant } from './family.ts';
 /** Thinnest ring and gap that are drawn, in phase: thinner ones are merged with their neighbours. */
 const THINNEST = 1e-3;
 
+/** And in metres: on the files' grid of 1 nm the rims of a thinner one could touch. */
+const THINNEST_M = 1e-8;
+
 /** A circle about the axis: sense +1 for an outer rim, −1 for a hole. */
 export function ringLoop(radiusM: number, sense: 1 | -1): Loop {
   return [{ kind: 'arc', centre: [0, 0], radius: radiusM, from: 0, to: sense * 2 * Math.PI }];
@@ -37,7 +40,7 @@ function ringsVariant(count: number, open: boolean, limits: PhaseLimits): Varian
 }
 
 function drawRings(values: number[], open: boolean, unitM: number): Shape | Misdrawn {
-  const rims = mergeThin(open ? [0, ...values] : values);
+  const rims = mergeThin(open ? [0, ...values] : values, unitM);
   if (rims.length === 0) return { misdrawnBy: 1 };
   const loops: Loop[] = [];
   for (let i = rims.length - 1; i >= 0; i--) {
@@ -47,11 +50,12 @@ function drawRings(values: number[], open: boolean, unitM: number): Shape | Misd
 }
 
 /** Sorted rims without the pairs that enclose next to nothing. */
-function mergeThin(values: number[]): number[] {
-  const sorted = values.sort((a, b) => a - b);
+function mergeThin(values: number[], unitM: number): number[] {
+  const isThin = (inner: number, outer: number) =>
+    outer - inner < THINNEST || (Math.sqrt(outer) - Math.sqrt(inner)) * unitM < THINNEST_M;
   const kept: number[] = [];
-  for (const rim of sorted) {
-    if (kept.length > 0 && rim - kept[kept.length - 1] < THINNEST) kept.pop();
+  for (const rim of values.sort((a, b) => a - b)) {
+    if (kept.length > 0 && isThin(kept[kept.length - 1], rim)) kept.pop();
     else kept.push(rim);
   }
   return kept;

@@ -1,11 +1,15 @@
 import type { Segment } from '../segment.ts';
 import type { Loop } from '../shape.ts';
 
+/** Corners are left sharp below this: no shop cuts finer, and on the files' grid of 1 nm a tighter arc would fold over. */
+const LEAST_RADIUS_M = 1e-7;
+
 /**
  * A closed polygon with every corner rounded by an arc that touches both edges.
  *
  * @param points flat [x0, y0, …], counter-clockwise, metres
- * @param radiusM wanted radius; a corner whose edges are too short gets the largest that fits half of each
+ * @param radiusM wanted radius; a corner whose edges are too short gets the largest that fits half of each, and one that
+ *   would come below a tenth of a micrometre stays sharp
  */
 export function roundCorners(points: readonly number[], radiusM: number): Loop {
   const n = points.length;
@@ -39,7 +43,7 @@ function roundCorner(points: readonly number[], before: number, at: number, afte
   // The arc touches each edge at radius·tan(turn/2) from the corner.
   const perRadius = Math.tan(turn / 2);
   const radius = Math.min(radiusM, (0.499 * Math.min(back, on)) / perRadius);
-  if (!(radius > 1e-12) || turn < 1e-9) return { start: here, end: here, arc: null };
+  if (radius < LEAST_RADIUS_M || turn < 1e-9) return { start: here, end: here, arc: null };
   const cut = radius * perRadius;
   const start: readonly [number, number] = [x + (backX / back) * cut, y + (backY / back) * cut];
   const end: readonly [number, number] = [x + (onX / on) * cut, y + (onY / on) * cut];
