@@ -11,7 +11,7 @@ export interface PhaseLimits {
   high: number;
 }
 
-/** One number that a family varies, with the range outside of which it is refused. */
+/** One number that a family varies, with the range to which every method of the search keeps it. */
 export interface Parameter {
   name: string;
   low: number;

@@ -95,9 +95,10 @@ function drawFourier(values: ArrayLike<number>, expansion: Expansion, unitM: num
       out[1] *= 2 * out[0];
       out[0] *= out[0];
     }
-    // Between the probes the boundary may dip a little lower, but never to the axis.
-    out[0] = Math.max(out[0], LEAST / 4) * area;
-    out[1] *= area;
+    // Between the probes the boundary may dip a little lower, but never to the axis: there it keeps to a small circle.
+    const isCut = out[0] < LEAST / 4;
+    out[0] = isCut ? (LEAST / 4) * area : out[0] * area;
+    out[1] = isCut ? 0 : out[1] * area;
   };
   const loop = [{ kind: 'polar', from: 0, to: 2 * Math.PI, folds, squared }] as const;
   return { elements: [{ weight: 1, loops: [loop] }], folds, mirror: !sines };

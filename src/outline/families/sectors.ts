@@ -31,7 +31,7 @@ function hubVariant(folds: number, count: number, limits: PhaseLimits): Variant 
     id: `sectors-hub-${folds}-fold-${count}`,
     parameters,
     draw: (values, unitM) => drawHub(Array.from(values), folds, count, unitM),
-    margins: (values) => closedShare(Array.from(values).filter((_, i) => i % 2 === 1)),
+    margins: (values) => Float64Array.of(spareShare(Array.from(values).filter((_, i) => i % 2 === 1))),
     start(random) {
       const values = [0.05 + 0.2 * random.uniform()];
       const spreads = [0.1];
@@ -46,10 +46,10 @@ function hubVariant(folds: number, count: number, limits: PhaseLimits): Variant 
 
 function drawHub(values: number[], folds: number, count: number, unitM: number): Shape | Misdrawn {
   const shares = values.filter((_, i) => i % 2 === 1);
-  const open = shares.reduce((sum, share) => sum + share, 0);
-  if (open > 1 - count * LEAST_SHARE) return { misdrawnBy: open - (1 - count * LEAST_SHARE) };
+  const spare = spareShare(shares);
+  if (spare < 0) return { misdrawnBy: -spare };
   const hub = Math.sqrt(values[0]) * unitM;
-  const closed = (1 - open) / count;
+  const closed = spare / count + LEAST_SHARE;
   const fold = (2 * Math.PI) / folds;
   const segments: Segment[] = [];
   for (let n = 0; n < folds; n++) {
@@ -83,7 +83,7 @@ function arcVariant(folds: number, count: number, limits: PhaseLimits): Variant 
     id: `sectors-arc-${folds}-fold-${count}`,
     parameters,
     draw: (values, unitM) => drawArcs(Array.from(values), folds, count, unitM),
-    margins: (values) => closedShare(Array.from(values).filter((_, i) => i % 3 === 0)),
+    margins: (values) => arcMargins(Array.from(values)),
     start(random) {
       const values: number[] = [];
       const spreads: number[] = [];
@@ -102,17 +102,16 @@ function arcVariant(folds: number, count: number, limits: PhaseLimits): Variant 
 }
 
 function drawArcs(values: number[], folds: number, count: number, unitM: number): Shape | Misdrawn {
+  const least = Math.min(...arcMargins(values));
+  if (least < 0) return { misdrawnBy: -least };
   const shares = values.filter((_, i) => i % 3 === 0);
-  const [spare] = closedShare(shares);
-  if (spare < 0) return { misdrawnBy: -spare };
-  const closed = spare / count + LEAST_SHARE;
+  const closed = spareShare(shares) / count + LEAST_SHARE;
   const fold = (2 * Math.PI) / folds;
   const loops: Loop[] = [];
   for (let n = 0; n < folds; n++) {
     let angle = (n - shares[0] / 2) * fold;
     for (let i = 0; i < count; i++) {
       const [low, high] = [values[3 * i + 1], values[3 * i + 2]].sort((a, b) => a - b);
-      if (high - low < LEAST_PHASE) return { misdrawnBy: LEAST_PHASE - (high - low) };
       const inner = Math.sqrt(low) * unitM;
       const outer = Math.sqrt(high) * unitM;
       const after = angle + shares[i] * fold;
@@ -129,8 +128,16 @@ function drawArcs(values: number[], folds: number, count: number, unitM: number)
 }
 
 /** What is left of a fold when every sector and the least gap beside it have their share. */
-function closedShare(shares: readonly number[]): Float64Array {
-  return Float64Array.of(shares.reduce((left, share) => left - share - LEAST_SHARE, 1));
+function spareShare(shares: readonly number[]): number {
+  return shares.reduce((left, share) => left - share - LEAST_SHARE, 1);
+}
+
+/** The spare share, and for every sector what its rims lie apart beyond the least. */
+function arcMargins(values: readonly number[]): Float64Array {
+  const margins = [spareShare(values.filter((_, i) => i % 3 === 0))];
+  for (let i = 0; i < values.length; i += 3)
+    margins.push(Math.abs(values[i + 2] - values[i + 1]) - LEAST_PHASE);
+  return Float64Array.from(margins);
 }
 
 /** A phase near an odd multiple of π, mostly the first, where a rim counts twice. */
