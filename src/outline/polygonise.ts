@@ -46,7 +46,8 @@ function pieceCount(segment: Segment, verticesPerTurn: number): number {
   const turns = Math.abs(segment.to - segment.from) / (2 * Math.PI);
   // A polar curve bends several times in a turn, and no stretch makes up for what its chords cut off.
   const density = segment.kind === 'polar' ? 4 : 1;
-  const wanted = Math.ceil(turns * verticesPerTurn * density);
+  // A rounding error in the angles must not give one fold a vertex more than the next.
+  const wanted = Math.ceil(turns * verticesPerTurn * density - 1e-9);
   const fitting =
     segment.kind === 'arc' ? Math.floor((turns * 2 * Math.PI * segment.radius) / LEAST_CHORD_M) : wanted;
   const pieces = Math.max(2, Math.min(wanted, fitting));

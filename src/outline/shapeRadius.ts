@@ -1,10 +1,10 @@
 import type { Segment } from './segment.ts';
-import { pointOn } from './segment.ts';
+import { isClosed, pointOn } from './segment.ts';
 import type { Shape } from './shape.ts';
 
 const PROBES = 24;
 
-/** Radius of the circle about the axis around a shape, metres; curves are probed finely and the best probe refined. */
+/** Radius of the circle about the axis around a shape, metres; curves are probed and the best probe refined, to 1e-6 or so. */
 export function shapeRadius(shape: Shape): number {
   let squared = 0;
   for (const { loops } of shape.elements) {
@@ -25,19 +25,29 @@ function farthestSquared(segment: Segment): number {
     return segment.radius ** 2;
   // A repeating curve need only be searched over one of its folds.
   const span = segment.kind === 'polar' ? 1 / segment.folds : 1;
+  // A closed curve goes on beyond its ends.
+  const within = (t: number) => (isClosed(segment) ? t : Math.min(span, Math.max(0, t)));
   let best = 0;
   let place = 0;
   for (let i = 0; i <= PROBES; i++) {
     const value = squaredAt((span * i) / PROBES);
     if (value > best) {
       best = value;
-      place = i;
+      place = (span * i) / PROBES;
     }
   }
-  // One step of a parabola through the best probe and its neighbours.
-  const before = squaredAt((span * Math.max(0, place - 1)) / PROBES);
-  const after = squaredAt((span * Math.min(PROBES, place + 1)) / PROBES);
-  const bend = before - 2 * best + after;
-  const shift = bend < 0 ? (before - after) / (2 * bend) : 0;
-  return Math.max(best, squaredAt((span * Math.min(PROBES, Math.max(0, place + shift))) / PROBES));
+  // Parabolas through the best place and its neighbours, ever closer together.
+  for (let step = span / PROBES; step > 1e-3 * span; step /= 4) {
+    const before = squaredAt(within(place - step));
+    const after = squaredAt(within(place + step));
+    const bend = before - 2 * best + after;
+    const shift = bend < 0 ? (step * (before - after)) / (2 * bend) : 0;
+    const moved = within(place + shift);
+    const value = squaredAt(moved);
+    if (value > best) {
+      best = value;
+      place = moved;
+    }
+  }
+  return best;
 }

@@ -39,7 +39,8 @@ function roundCorner(points: readonly number[], before: number, at: number, afte
   const back = Math.hypot(backX, backY);
   const on = Math.hypot(onX, onY);
   const here: readonly [number, number] = [x, y];
-  const turn = Math.PI - Math.acos(Math.max(-1, Math.min(1, (backX * onX + backY * onY) / (back * on))));
+  const leftward = backY * onX - backX * onY;
+  const turn = Math.atan2(Math.abs(leftward), -backX * onX - backY * onY);
   // The arc touches each edge at radius·tan(turn/2) from the corner.
   const perRadius = Math.tan(turn / 2);
   const radius = Math.min(radiusM, (0.499 * Math.min(back, on)) / perRadius);
@@ -47,7 +48,7 @@ function roundCorner(points: readonly number[], before: number, at: number, afte
   const cut = radius * perRadius;
   const start: readonly [number, number] = [x + (backX / back) * cut, y + (backY / back) * cut];
   const end: readonly [number, number] = [x + (onX / on) * cut, y + (onY / on) * cut];
-  const left = backX * onY - backY * onX < 0 ? 1 : -1;
+  const left = leftward > 0 ? 1 : -1;
   // The centre lies at a right angle to the incoming edge, on the inner side of the turn.
   const centreX = start[0] + (left * backY * radius) / back;
   const centreY = start[1] - (left * backX * radius) / back;
