@@ -163,14 +163,14 @@ describe('every variant', () => {
   );
 });
 
-/** Each area in phase over λz: A = λz · η/π for a disc of phase η, since η = πρ²/(λz). */
+/** Areas over λz: a disc of phase η covers λz · η, since η = πρ²/(λz). */
 describe('areas in closed form', () => {
-  const areaPerPhase = Math.PI * UNIT_M * UNIT_M;
+  const lambdaZ = Math.PI * UNIT_M * UNIT_M;
   const areas = (id: string, values: number[]) => {
     const shape = drawn(variantNamed(id), values);
     const nodes = nodesArea(nodesOf(shape.elements[0]));
     const polygon = ringsOf(shape, 1440).reduce((sum, ring) => sum + ringArea(ring), 0);
-    return { nodes: nodes / areaPerPhase, polygon: polygon / areaPerPhase };
+    return { nodes: nodes / lambdaZ, polygon: polygon / lambdaZ };
   };
   const cases: [id: string, values: number[], phase: number, tolerance: number][] = [
     ['disc', [Math.PI], Math.PI, 1e-5],
@@ -195,7 +195,7 @@ describe('areas in closed form', () => {
     ['sectors-arc-5-fold-2', [0.5, 1, 3, 0.25, 8, 4], 1 + 1, 1e-5],
   ];
 
-  it.each(cases)('%s of %j covers %f λz/π', (id, values, phase, tolerance) => {
+  it.each(cases)('%s of %j covers %f λz', (id, values, phase, tolerance) => {
     const { nodes, polygon } = areas(id, values);
     expect(nodes).toBeCloseTo(phase, 10);
     expect(Math.abs(polygon / phase - 1)).toBeLessThan(tolerance);
