@@ -1,0 +1,83 @@
+import type { Problem } from '../base/errors.ts';
+import { inputError, RimwrightError } from '../base/errors.ts';
+import { designToJson } from '../run/designJson.ts';
+import { jsonText } from '../run/jsonText.ts';
+import { judgeOutline } from '../run/judgeOutline.ts';
+import { openBrief } from '../run/openBrief.ts';
+import type { RankedDesign } from '../run/ranking.ts';
+import { readDesignFile } from '../run/readDesignFile.ts';
+import { rankGiven, scoreGiven } from '../run/scoreGiven.ts';
+import { distanceWarning, farZoneWarning, present } from '../run/warnings.ts';
+import type { Task } from '../score/task.ts';
+import { DESIGN_COLUMNS, MEETS_COLUMN, shopColumn } from './designColumns.ts';
+import { EXIT } from './exit.ts';
+import { noteDefaults, print, printWrapped, warn } from './notes.ts';
+import { readDistance } from './quantityOptions.ts';
+import { table } from './table.ts';
+
+/** A design and the file that it came from. */
+type Compared = RankedDesign & { file: string };
+
+/** Runs `rimwright compare` and gives its exit code. */
+export async function run(
+  place: string,
+  files: readonly string[],
+  options: { distance?: string; json?: true },
+): Promise<number> {
+  const distance = await readDistance(options.distance);
+  const { brief } = await openBrief(place);
+  const { task } = brief;
+  const designs = rankGiven(scoreAll(files, task, distance));
+  const distances = designs.map(({ distanceM }) => distanceM);
+  const warnings = present([
+    farZoneWarning(task, distances),
+    ...distances.map((distanceM) => distanceWarning(task, distanceM)),
+  ]);
+  if (!options.json) noteDefaults(brief.defaults);
+  warn(warnings);
+  if (options.json) {
+    const plain = designs.map((design) => ({ file: design.file, ...designToJson(design) }));
+    print(jsonText({ brief, designs: plain, warnings }));
+  } else printComparison(designs, task);
+  return EXIT.done;
+}
+
+/** Scores every file. Where some are broken, all of their messages come together, and no scores. */
+function scoreAll(files: readonly string[], task: Task, distance: number | null): Compared[] {
+  const problems: Problem[] = [];
+  const designs: Compared[] = [];
+  for (const file of files) {
+    try {
+      const given = readDesignFile(file);
+      designs.push({ ...scoreGiven(task, given, judgeOutline(task, given, distance)), file });
+    } catch (error) {
+      if (!(error instanceof RimwrightError) || error.code !== 'input') throw error;
+      problems.push(...error.problems);
+    }
+  }
+  if (problems.length > 0) throw inputError(problems);
+  return designs;
+}
+
+function printComparison(designs: readonly Compared[], task: Task): void {
+  const { worst, rms, gain, lobe, snr, time, area } = DESIGN_COLUMNS;
+  const place = { title: [], cell: ({ rank }: Compared) => String(rank) };
+  const name = {
+    title: ['design'],
+    cell: ({ id }: Compared) => id,
+    align: 'left' as const,
+    flexible: true,
+  };
+  print(
+    table(
+      [place, name, worst, rms, gain, lobe, snr, time, area, shopColumn(task.shop !== null), MEETS_COLUMN],
+      designs,
+    ),
+  );
+  print('');
+  const width = String(designs.length).length;
+  for (const { rank, file, shop } of designs) {
+    const [note] = shop.notes;
+    printWrapped(note === undefined ? file : `${file}: ${note}`, `${String(rank).padStart(width)}  `);
+  }
+}

@@ -1,0 +1,109 @@
+import { formatQuantity } from '../base/quantity.ts';
+import { countText } from '../draw/quantityText.ts';
+import { designToJson } from '../run/designJson.ts';
+import type { GivenDesign } from '../run/givenDesign.ts';
+import { jsonText } from '../run/jsonText.ts';
+import type { OutlineJudge } from '../run/judgeOutline.ts';
+import { judgeOutline } from '../run/judgeOutline.ts';
+import { openBrief } from '../run/openBrief.ts';
+import type { RankedDesign } from '../run/ranking.ts';
+import { readDesignFile } from '../run/readDesignFile.ts';
+import type { ReadingSummary } from '../run/readings.ts';
+import { listReadings, summariseReadings } from '../run/readings.ts';
+import { scoreGiven } from '../run/scoreGiven.ts';
+import { distanceWarning, farZoneWarning, present } from '../run/warnings.ts';
+import { shortCount } from './designColumns.ts';
+import { EXIT } from './exit.ts';
+import { noteDefaults, print, printWrapped, warn } from './notes.ts';
+import { readDistance, readPosition } from './quantityOptions.ts';
+import { scoreText } from './scoreText.ts';
+import type { Column } from './table.ts';
+import { table } from './table.ts';
+
+interface Options {
+  outline: string;
+  design?: string;
+  distance?: string;
+  position?: string;
+  json?: true;
+}
+
+/** Runs `rimwright reading` and gives its exit code. */
+export async function run(place: string, options: Options): Promise<number> {
+  const distance = await readDistance(options.distance);
+  const position = await readPosition(options.position);
+  const { brief } = await openBrief(place);
+  const { task } = brief;
+  const given = readDesignFile(options.outline, options.design);
+  const judged = judgeOutline(task, given, distance, position);
+  const { judge, distanceM } = judged;
+  // At one place there is no worst and no mean over places: the scores are left out.
+  const design = position === null ? scoreGiven(task, given, judged) : null;
+  const warnings = present([farZoneWarning(task, [distanceM]), distanceWarning(task, distanceM)]);
+  if (!options.json) noteDefaults(brief.defaults);
+  warn(warnings);
+  if (options.json) {
+    const places = position === null ? undefined : Float64Array.from(position);
+    const readings = listReadings(judge, given.elements, distanceM, places);
+    print(jsonText({ readings, design: design && designToJson(design), brief, warnings }));
+    return EXIT.done;
+  }
+  printReadings(given, judged, position, design);
+  if (design !== null) printWrapped(scoreText(design, task));
+  return EXIT.done;
+}
+
+/** Prints a table with one row for each particle and wavelength. */
+function printReadings(
+  given: GivenDesign,
+  { judge, distanceM }: OutlineJudge,
+  position: [x: number, y: number] | null,
+  design: RankedDesign | null,
+): void {
+  const places = position === null ? undefined : Float64Array.from(position);
+  const summaries = summariseReadings(judge, given.elements, distanceM, places);
+  const where = position?.map((metres) => formatQuantity(metres, 'length')).join(', ');
+  const [{ places: count }] = summaries;
+  const at = where !== undefined ? `at ${where}` : count > 1 ? `at ${count} places` : 'on the axis';
+  printWrapped(`${given.file}, ${formatQuantity(distanceM, 'length')} behind the particle, which is ${at}:`);
+  print('');
+  const gain = judge.task.target.gain === 'free' ? design?.scores.gain : undefined;
+  print(`${table([...columnsAt(where), ...worstColumns(where, gain)], summaries)}\n`);
+}
+
+function columnsAt(where: string | undefined): Column<ReadingSummary>[] {
+  const at = where === undefined ? 'on axis' : 'there';
+  return [
+    {
+      title: ['particle'],
+      cell: ({ first: { particle } }) =>
+        `${formatQuantity(particle.diameter_m, 'length', 3)} ${particle.material}`,
+      align: 'left',
+      flexible: true,
+    },
+    {
+      title: ['light', 'nm'],
+      cell: ({ first }) => String(Number((first.wavelength_m * 1e9).toPrecision(5))),
+    },
+    { title: ['extinction', 'µm²'], cell: ({ first }) => shortCount(first.extinction_m2 * 1e12) },
+    { title: ['reading', at, 'µm²'], cell: ({ first }) => shortCount(first.reading_m2 * 1e12) },
+    { title: ['correction', at, '%'], cell: ({ first }) => countText(100 * first.correction) },
+  ];
+}
+
+/** What is farthest from the extinction over all places, and what is left of it once the gain is taken out. */
+function worstColumns(where: string | undefined, gain: number | undefined): Column<ReadingSummary>[] {
+  if (where !== undefined) return [];
+  const farthest = ({ leastRatio, mostRatio }: ReadingSummary, from: number) =>
+    Math.abs(mostRatio - from) > Math.abs(leastRatio - from) ? mostRatio : leastRatio;
+  const columns: Column<ReadingSummary>[] = [
+    { title: ['worst', 'place', '%'], cell: (summary) => countText(100 * (farthest(summary, 1) - 1)) },
+  ];
+  if (gain !== undefined) {
+    columns.push({
+      title: ['with', 'gain', '%'],
+      cell: (summary) => countText(100 * (farthest(summary, gain) / gain - 1)),
+    });
+  }
+  return columns;
+}

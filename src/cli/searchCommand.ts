@@ -1,0 +1,85 @@
+import { jsonText } from '../run/jsonText.ts';
+import type { OpenedBrief } from '../run/openBrief.ts';
+import { missesOf } from '../run/ranking.ts';
+import type { Nearest } from '../run/results.ts';
+import { searchToJson } from '../run/results.ts';
+import { prepareFolder, writeResultsFolder } from '../run/resultsFolder.ts';
+import type { SearchResult } from '../run/search.ts';
+import { search, smallest } from '../run/search.ts';
+import { slug } from '../run/slug.ts';
+import { farZoneWarning, present } from '../run/warnings.ts';
+import { EXIT } from './exit.ts';
+import { printFront } from './front.ts';
+import { interruptible, uninterrupted } from './interrupt.ts';
+import { note, print, warn } from './notes.ts';
+import { resultFiles } from './resultFiles.ts';
+import type { SearchingOptions } from './searching.ts';
+import { openForSearch, withProgress, workersOf } from './searching.ts';
+
+/** Share of the candidates that looking for the nearest design gets, where nothing keeps the brief's limits. */
+const NEAREST_SHARE = 0.25;
+const LEAST_CANDIDATES = 100;
+
+interface Options extends SearchingOptions {
+  out: string;
+}
+
+/** Runs `rimwright search` and gives its exit code. */
+export async function run(place: string, options: Options): Promise<number> {
+  const opened = await openForSearch(place, options);
+  const { brief } = opened;
+  prepareFolder(options.out);
+  const { result, nearest } = await interruptible((signal) => searchOrNearest(opened, options, signal));
+  const { designs } = result;
+  const warnings = present(
+    designs.length > 0
+      ? [
+          farZoneWarning(
+            brief.task,
+            designs.map(({ distanceM }) => distanceM),
+          ),
+        ]
+      : [],
+  );
+  const json = searchToJson(brief, result, nearest, warnings);
+  const files = resultFiles(opened, result, json, workersOf(options));
+  const folder = uninterrupted(() => writeResultsFolder(options.out, slug(brief.title), files));
+  warn(warnings);
+  if (options.json) {
+    print(jsonText(json));
+    if (!options.quiet) note(`Written to ${folder}`);
+  } else {
+    printFront(brief, result, nearest);
+    print(`\n${folder}/ holds report.html, front.json, front.csv, run.json, drawings/`);
+  }
+  return designs.some(({ meetsTarget }) => meetsTarget) ? EXIT.done : EXIT.target;
+}
+
+/** Searches; where no design keeps the brief's limits at all, looks for the one that comes nearest. */
+async function searchOrNearest(
+  { brief }: OpenedBrief,
+  options: Options,
+  signal: AbortSignal,
+): Promise<{ result: SearchResult; nearest: Nearest | null }> {
+  const result = await withProgress(brief, options, signal, (course) => search(brief, course));
+  const { designs } = result;
+  if (designs.some(({ meetsTarget }) => meetsTarget)) return { result, nearest: null };
+  const [best] = designs.toSorted((a, b) => a.scores.correction.worst - b.scores.correction.worst);
+  if (best !== undefined) return { result, nearest: { design: best, misses: missesOf(best, brief.task) } };
+  if (result.stopped) return { result, nearest: null };
+  if (!options.quiet)
+    note('No design keeps the limits of this brief. Looking for the one that comes nearest.');
+  const candidates = Math.max(LEAST_CANDIDATES, Math.round(NEAREST_SHARE * brief.search.candidates));
+  const shorter = { ...brief, search: { ...brief.search, candidates } };
+  const more = await withProgress(shorter, options, signal, (course) => smallest(shorter, 'time', course));
+  const { nearest: design, misses } = more;
+  return {
+    result: {
+      designs: more.design === null ? [] : [more.design],
+      evaluations: result.evaluations + more.evaluations,
+      seconds: result.seconds + more.seconds,
+      stopped: more.stopped,
+    },
+    nearest: design && more.design === null ? { design, misses } : null,
+  };
+}

@@ -1,0 +1,43 @@
+import type { FamilyName } from '../outline/families/family.ts';
+import type { OutlineElement } from '../outline/shape.ts';
+import type { Scores } from '../score/scores.ts';
+import type { RankedDesign } from './ranking.ts';
+
+/** A design as results hold it: SI units in the keys' names, coordinates in mm. */
+export interface DesignJson {
+  id: string;
+  family: FamilyName | 'given';
+  distance_m: number;
+  elements: { weight: number; rings_mm: [x: number, y: number][][] }[];
+  scores: Scores & { shop: { fits: boolean; notes: readonly string[] } };
+  /** 1 is the front. */
+  rank: number;
+  meetsTarget: boolean;
+}
+
+/** Decimals of a coordinate in mm: one nanometre, the grid on which a search draws. */
+const DECIMALS = 6;
+
+/** The plain form of a design: what front.json and a design's own file hold. */
+export function designToJson(design: RankedDesign): DesignJson {
+  const { id, family, distanceM, elements, scores, shop, rank, meetsTarget } = design;
+  return {
+    id,
+    family,
+    distance_m: distanceM,
+    elements: elements.map(elementToJson),
+    scores: { ...scores, shop: { fits: shop.fits, notes: shop.notes } },
+    rank,
+    meetsTarget,
+  };
+}
+
+function elementToJson({ weight, rings }: OutlineElement): DesignJson['elements'][number] {
+  const inMm = (metres: number) => Number((metres * 1e3).toFixed(DECIMALS)) + 0;
+  return {
+    weight,
+    rings_mm: rings.map((ring) =>
+      Array.from({ length: ring.length / 2 }, (_, k) => [inMm(ring[2 * k]), inMm(ring[2 * k + 1])]),
+    ),
+  };
+}

@@ -1,0 +1,36 @@
+import type { RankedDesign } from './ranking.ts';
+
+type Cell = string | number | boolean;
+
+const COLUMNS: readonly [title: string, cell: (design: RankedDesign) => Cell][] = [
+  ['id', ({ id }) => id],
+  ['family', ({ family }) => family],
+  ['rank', ({ rank }) => rank],
+  ['meets_target', ({ meetsTarget }) => meetsTarget],
+  ['distance_m', ({ distanceM }) => distanceM],
+  ['radius_m', ({ scores }) => scores.radius_m],
+  ['area_m2', ({ scores }) => scores.area_m2],
+  ['gain', ({ scores }) => scores.gain],
+  ['correction_worst', ({ scores }) => scores.correction.worst],
+  ['correction_rms', ({ scores }) => scores.correction.rms],
+  ['lobe_ratio', ({ scores }) => scores.lobe.ratio],
+  ['snr_required', ({ scores }) => scores.snr.required],
+  ['time_s', ({ scores }) => scores.snr.time_s],
+  ['area_over_floor', ({ scores }) => scores.areaOverFloor],
+  ['shop_fits', ({ shop }) => shop.fits],
+  ['shop_notes', ({ shop }) => shop.notes.join('; ')],
+];
+
+/** The designs as CSV (RFC 4180), one row a design; no cell can be taken for a formula. */
+export function frontCsv(designs: readonly RankedDesign[]): string {
+  const header = COLUMNS.map(([title]) => title);
+  const rows = designs.map((design) => COLUMNS.map(([, cell]) => cellText(cell(design))));
+  return [header, ...rows].map((row) => `${row.join(',')}\r\n`).join('');
+}
+
+/** Spreadsheets run a text that begins like a formula; a leading apostrophe keeps it a text. */
+export function cellText(cell: Cell): string {
+  if (typeof cell !== 'string') return String(cell);
+  const harmless = /^[\s]*[=+\-@|%]|^[\t\r\n]/.test(cell) ? `'${cell}` : cell;
+  return /[",\r\n]/.test(harmless) ? `"${harmless.replaceAll('"', '""')}"` : harmless;
+}

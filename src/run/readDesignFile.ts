@@ -1,0 +1,74 @@
+import { existsSync } from 'node:fs';
+import { basename, extname } from 'node:path';
+import { inputError } from '../base/errors.ts';
+import { nearestName } from '../base/nearestName.ts';
+import { orientByNesting } from '../outline/nesting.ts';
+import { readOutlineCsv } from '../outline/readOutlineCsv.ts';
+import type { GivenDesign } from './givenDesign.ts';
+import { readDesignJson } from './readDesignJson.ts';
+import { readTextFile } from './readTextFile.ts';
+import { slug } from './slug.ts';
+
+const MOST_BYTES = 20_000_000;
+
+/**
+ * Reads an outline from a file: CSV, a design's own JSON, or one of the designs of a front.json.
+ *
+ * @param place a path, or a path and a design's id: `front.json#rings-2`
+ * @param id which design of a front, unless `place` says so; not needed where there is only one
+ * @throws RimwrightError `input` for what is missing, too long or broken; `machine` where the disk fails
+ */
+export function readDesignFile(place: string, id?: string): GivenDesign {
+  const { path, wanted } = splitPlace(place, id);
+  const text = readTextFile(path, MOST_BYTES);
+  const isJson = extname(path).toLowerCase() === '.json' || /^\s*\{/.test(text);
+  if (isJson) return readDesignJson(oneDesign(parseJson(text, path), wanted, path), place);
+  if (wanted !== undefined) {
+    throw inputError([
+      { file: place, found: `the id ${JSON.stringify(wanted)}`, expected: 'a front.json with it' },
+    ]);
+  }
+  const ring = readOutlineCsv(text, path);
+  return {
+    id: slug(basename(path, extname(path))),
+    family: 'given',
+    distanceM: null,
+    elements: [{ weight: 1, rings: orientByNesting([ring]) }],
+    file: place,
+  };
+}
+
+/** A file's name may hold a `#` of its own. */
+function splitPlace(place: string, id: string | undefined): { path: string; wanted: string | undefined } {
+  const at = place.lastIndexOf('#');
+  if (at <= 0 || existsSync(place)) return { path: place, wanted: id };
+  return { path: place.slice(0, at), wanted: place.slice(at + 1) };
+}
+
+function parseJson(text: string, file: string): unknown {
+  try {
+    return JSON.parse(text.replace(/^\uFEFF/, ''));
+  } catch (error) {
+    // The parser quotes the file, which may hold line breaks.
+    const reason = (error as Error).message.replace(/\s+/g, ' ').slice(0, 200);
+    throw inputError([
+      { file, found: `text that is not JSON (${reason})`, expected: 'a design or a front.json' },
+    ]);
+  }
+}
+
+/** The design itself, one of a front's, or that of `rimwright smallest --json`. */
+function oneDesign(value: unknown, id: string | undefined, file: string): unknown {
+  const { designs, design } = (value ?? {}) as { designs?: unknown; design?: unknown };
+  if (!Array.isArray(designs)) return design ?? value;
+  const ids = designs.map((one: unknown) => String((one as { id?: unknown } | null)?.id));
+  if (id === undefined && designs.length === 1) return designs[0];
+  const at = id === undefined ? -1 : ids.indexOf(id);
+  if (at >= 0) return designs[at];
+  const nearest = id === undefined ? undefined : nearestName(id, ids);
+  const hint = nearest === undefined ? '' : ` (did you mean ${nearest}?)`;
+  const found = id === undefined ? `${designs.length} designs and no id` : `the id ${JSON.stringify(id)}`;
+  const known =
+    ids.length === 0 ? 'a front with designs' : `one of the ids ${ids.slice(0, 30).join(', ')}${hint}`;
+  throw inputError([{ file, found, expected: known }]);
+}
