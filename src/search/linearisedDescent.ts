@@ -58,9 +58,12 @@ export function linearisedDescent(
   let trust = 1;
   while (trust > tolStep) {
     if (evaluations + n + 1 > maxEvaluations) return { x, value, evaluations, stop: 'maxEvaluations' };
-    const slopes = differences(evaluate, x, here, options);
+    const slopes = differences(evaluate, x, here, options, maxEvaluations - evaluations);
     evaluations += slopes.evaluations;
-    if (slopes.columns === null) return { x, value, evaluations, stop: 'stuck' };
+    if (slopes.columns === null) {
+      const stop = evaluations < maxEvaluations ? 'stuck' : 'maxEvaluations';
+      return { x, value, evaluations, stop };
+    }
     let moved = false;
     while (!moved && trust > tolStep) {
       if (evaluations >= maxEvaluations) return { x, value, evaluations, stop: 'maxEvaluations' };
@@ -85,22 +88,28 @@ export function linearisedDescent(
   }
   return { x, value, evaluations, stop: 'settled' };
 
-  /** Columns of derivatives times the scale: the objective first, then the limits. */
+  /**
+   * Columns of derivatives times the scale: the objective first, then the limits; null where a coordinate has none, or
+   * where more than `allowed` evaluations would be needed.
+   */
   function differences(
     evaluateAt: typeof evaluate,
     at: Float64Array,
     from: Outcome,
     { lower: low, upper: high, scale: length }: DescentOptions,
+    allowed: number,
   ): { columns: Float64Array[] | null; evaluations: number } {
     const columns: Float64Array[] = [];
     let spent = 0;
     for (let j = 0; j < n; j++) {
-      let column: Float64Array | null = null;
+      // What its bounds hold in place has no say.
+      let column = low[j] < high[j] ? null : new Float64Array(1 + from.limits.length);
       for (const side of at[j] + DIFFERENCE * length[j] <= high[j] ? [1, -1] : [-1]) {
         const moved = at.slice();
         moved[j] = Math.max(low[j], at[j] + side * DIFFERENCE * length[j]);
         const share = (moved[j] - at[j]) / length[j];
         if (share === 0) continue;
+        if (spent === allowed) return { columns: null, evaluations: spent };
         const outcome = evaluateAt(moved);
         spent++;
         if (outcome === null) continue;
