@@ -15,7 +15,7 @@ export function printFront(
   nearest: Nearest | null,
 ): void {
   const shown = designs.length === 0 && nearest !== null ? [nearest.design] : designs;
-  if (shown.length > 0) print(`${designTable(shown)}\n`);
+  if (shown.length > 0) print(`${designTable(shown)}\n\n`);
   const meeting = designs.filter(({ meetsTarget }) => meetsTarget).length;
   if (meeting > 0) {
     const shop = task.shop === null ? '' : `, and the shop (${task.shop.name}) can cut all of them`;

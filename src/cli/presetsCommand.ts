@@ -54,14 +54,14 @@ function entriesOf(shelf: Shelf, folder: string): Entry[] {
     case 'materials':
       return LISTS[shelf](folder).map(({ name, title, rangeM, source }) => {
         const [least, most] = rangeM.map((metres) => formatQuantity(metres, 'length'));
-        return { name, title, details: `Light from ${least} to ${most}. ${source}` };
+        return { name, title, details: `Light from ${least} to ${most}. Source: ${source}` };
       });
     case 'shops':
       return LISTS.shops(folder).map(({ name, title, smallestOpeningM, smallestWebM, source }) => {
         const [opening, web] = [smallestOpeningM, smallestWebM].map((metres) =>
           formatQuantity(metres, 'length'),
         );
-        return { name, title, details: `Openings from ${opening}, webs from ${web}. ${source}` };
+        return { name, title, details: `Openings from ${opening}, webs from ${web}. Source: ${source}` };
       });
     case 'briefs':
       return LISTS.briefs(folder).map(({ name, title, about }) => ({ name, title, details: about }));

@@ -49,7 +49,10 @@ export async function run(place: string, options: Options): Promise<number> {
     return EXIT.done;
   }
   printReadings(given, judged, position, design);
-  if (design !== null) printWrapped(scoreText(design, task));
+  if (design !== null) {
+    print('');
+    printWrapped(scoreText(design, task));
+  }
   return EXIT.done;
 }
 
@@ -68,7 +71,7 @@ function printReadings(
   printWrapped(`${given.file}, ${formatQuantity(distanceM, 'length')} behind the particle, which is ${at}:`);
   print('');
   const gain = judge.task.target.gain === 'free' ? design?.scores.gain : undefined;
-  print(`${table([...columnsAt(where), ...worstColumns(where, gain)], summaries)}\n`);
+  print(`${table([...columnsAt(where), ...worstColumns(where, gain)], summaries)}`);
 }
 
 function columnsAt(where: string | undefined): Column<ReadingSummary>[] {

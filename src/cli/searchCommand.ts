@@ -50,7 +50,7 @@ export async function run(place: string, options: Options): Promise<number> {
     if (!options.quiet) note(`Written to ${folder}`);
   } else {
     printFront(brief, result, nearest);
-    print(`\n${folder}/ holds report.html, front.json, front.csv, run.json, drawings/`);
+    print(`\nWritten to ${folder}/\n  report.html  front.json  front.csv  run.json  drawings/`);
   }
   return designs.some(({ meetsTarget }) => meetsTarget) ? EXIT.done : EXIT.target;
 }

@@ -44,7 +44,7 @@ export async function run(place: string, { by, out, force, ...options }: Options
   warn(warnings);
   if (options.json) print(jsonText(smallestToJson(brief, result, warnings)));
   else {
-    if (shown !== null) print(`${designTable([shown])}\n`);
+    if (shown !== null) print(`${designTable([shown])}\n\n`);
     if (design !== null)
       printWrapped(`The smallest by ${by} that meets the target: ${measureText(design, by)}.`);
     else printNearest(nearest && { design: nearest, misses }, brief.task, result.stopped);

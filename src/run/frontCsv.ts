@@ -29,7 +29,7 @@ export function frontCsv(designs: readonly RankedDesign[]): string {
 }
 
 /** Spreadsheets run a text that begins like a formula; a leading apostrophe keeps it a text. */
-export function cellText(cell: Cell): string {
+function cellText(cell: Cell): string {
   if (typeof cell !== 'string') return String(cell);
   const harmless = /^[\s]*[=+\-@|%]|^[\t\r\n]/.test(cell) ? `'${cell}` : cell;
   return /[",\r\n]/.test(harmless) ? `"${harmless.replaceAll('"', '""')}"` : harmless;

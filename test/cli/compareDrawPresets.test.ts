@@ -136,7 +136,7 @@ describe('rimwright presets', () => {
     expect(code).toBe(0);
     for (const heading of ['MEDIA', 'MATERIALS', 'SHOPS', 'BRIEFS']) expect(stdout).toContain(`${heading}\n`);
     expect(stdout).toContain('  air  Air of a room');
-    expect(stdout).toContain('Light from 300 nm to 1.7 µm. Ciddor (1996)');
+    expect(stdout).toContain('Light from 300 nm to 1.7 µm. Source: Ciddor (1996)');
     expect(stdout).toContain('  road-dust  Road-dust monitor, extinction channel');
     for (const line of stdout.split('\n')) expect(line.length).toBeLessThanOrEqual(80);
     const json = JSON.parse((await runHere(['presets', '--json'])).stdout);
