@@ -14,23 +14,19 @@ export type BoundaryNodes = Float64Array;
  */
 export function boundaryReading(table: RadialTable, nodes: BoundaryNodes, px: number, py: number): number {
   return table.twofold === null
-    ? unpolarisedReading(table.mean, table.cellsPerM2, nodes, px, py)
+    ? unpolarisedReading(table, nodes, px, py)
     : polarisedReading(table, table.twofold, nodes, px, py);
 }
 
-function unpolarisedReading(
-  mean: Float64Array,
-  cellsPerM2: number,
-  nodes: BoundaryNodes,
-  px: number,
-  py: number,
-): number {
+function unpolarisedReading(table: RadialTable, nodes: BoundaryNodes, px: number, py: number): number {
+  const { mean, cells, cellsPerM2 } = table;
   let sum = 0;
   for (let i = 0; i < nodes.length; i += 4) {
     const x = nodes[i] - px;
     const y = nodes[i + 1] - py;
     const position = (x * x + y * y) * cellsPerM2;
-    const cell = position | 0;
+    // Past the last cell there is no number, so the sum becomes NaN.
+    const cell = position < cells ? position | 0 : cells;
     const t = position - cell;
     const c = cell << 2;
     const value = mean[c] + t * (mean[c + 1] + t * (mean[c + 2] + t * mean[c + 3]));
@@ -46,13 +42,13 @@ function polarisedReading(
   px: number,
   py: number,
 ): number {
-  const { mean, cellsPerM2, axis } = table;
+  const { mean, cells, cellsPerM2, axis } = table;
   let sum = 0;
   for (let i = 0; i < nodes.length; i += 4) {
     const x = nodes[i] - px;
     const y = nodes[i + 1] - py;
     const position = (x * x + y * y) * cellsPerM2;
-    const cell = position | 0;
+    const cell = position < cells ? position | 0 : cells;
     const t = position - cell;
     const c = cell << 2;
     const even = mean[c] + t * (mean[c + 1] + t * (mean[c + 2] + t * mean[c + 3]));
