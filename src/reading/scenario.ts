@@ -1,3 +1,4 @@
+import { evenNormal } from '../numeric/evenNormal.ts';
 import { gaussHermite } from '../numeric/gaussHermite.ts';
 import type { IndexModel } from '../optics/indexModel.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
@@ -65,16 +66,36 @@ export function buildScenarios(
 /** Colours farther out than this many σ (two full widths) carry less than 3e-6 of the light. */
 const LINE_REACH = 2 / SIGMA_PER_FWHM;
 
-/** Gauss–Hermite colours of the line. A phase η spreads by η σ/λ over it; n nodes follow cos up to about √(2n) − 1. */
+/** Rms phase over the line at which its colours have cancelled: e^−25. */
+const CANCELLED = Math.sqrt(50);
+
+/**
+ * Colours of the line. A phase η spreads by η σ/λ over it: n Gauss–Hermite nodes follow cos up to about √(2n) − 1, and
+ * for wide spreads evenly spaced ones are fewer. Beyond CANCELLED no colours need to be told apart: see `coherentPhase`.
+ */
 function lineColours(light: Light, wavelengthM: number, largestPhase: number) {
   const sigmaM = light.linewidthM * SIGMA_PER_FWHM;
   if (sigmaM === 0) return [{ weight: 1, colourM: wavelengthM }];
-  const spread = (largestPhase * sigmaM) / wavelengthM;
-  const count = Math.min(60, Math.ceil(4 + 2 * spread + spread * spread));
-  const { nodes, weights } = gaussHermite(count);
+  const spread = Math.min((largestPhase * sigmaM) / wavelengthM, CANCELLED);
+  const hermite = Math.ceil(4 + 2 * spread + spread * spread);
+  const even = Math.ceil((LINE_REACH * (spread + 6)) / Math.PI) + 1;
+  const { nodes, weights } = hermite < even ? gaussHermite(hermite) : evenNormal(even, LINE_REACH);
   const within = [...nodes.keys()].filter((i) => Math.abs(nodes[i]) <= LINE_REACH);
   const total = within.reduce((sum, i) => sum + weights[i], 0);
   return within.map((i) => ({ weight: weights[i] / total, colourM: wavelengthM + sigmaM * nodes[i] }));
+}
+
+/**
+ * Phase k(r − z) beyond which the crossed flux of the line's colours cancels; Infinity for a single colour.
+ * A finite number of colours would come back into step farther out: a real line never does.
+ */
+export function coherentPhase({ colours }: Scenario): number {
+  const mean = colours.reduce((sum, { weight, sphere }) => sum + weight * sphere.wavenumber, 0);
+  const variance = colours.reduce(
+    (sum, { weight, sphere }) => sum + weight * (sphere.wavenumber / mean - 1) ** 2,
+    0,
+  );
+  return variance === 0 ? Number.POSITIVE_INFINITY : CANCELLED / Math.sqrt(variance);
 }
 
 /** κ = k/(2z), 1/m², in the medium at the given vacuum wavelength. */
