@@ -62,3 +62,46 @@ export function chebyshevFour(coefficients: Float64Array, count: number, t: numb
   out[2] = coefficients[2] + t * c1 - c2;
   out[3] = coefficients[3] + t * d1 - d2;
 }
+
+/**
+ * Clenshaw's sum of two complex series at a complex t, such as just beside [−1, 1].
+ *
+ * @param coefficients as from `chebyshevFit` with width 4: the first pair is one complex function, the second another
+ * @param out receives the two sums as re, im, re, im
+ */
+export function chebyshevPairs(
+  coefficients: Float64Array,
+  count: number,
+  tRe: number,
+  tIm: number,
+  out: Float64Array,
+): void {
+  let aRe1 = 0;
+  let aIm1 = 0;
+  let aRe2 = 0;
+  let aIm2 = 0;
+  let bRe1 = 0;
+  let bIm1 = 0;
+  let bRe2 = 0;
+  let bIm2 = 0;
+  const twiceRe = 2 * tRe;
+  const twiceIm = 2 * tIm;
+  for (let n = (count - 1) * 4; n > 0; n -= 4) {
+    const aRe = coefficients[n] + twiceRe * aRe1 - twiceIm * aIm1 - aRe2;
+    const aIm = coefficients[n + 1] + twiceRe * aIm1 + twiceIm * aRe1 - aIm2;
+    aRe2 = aRe1;
+    aIm2 = aIm1;
+    aRe1 = aRe;
+    aIm1 = aIm;
+    const bRe = coefficients[n + 2] + twiceRe * bRe1 - twiceIm * bIm1 - bRe2;
+    const bIm = coefficients[n + 3] + twiceRe * bIm1 + twiceIm * bRe1 - bIm2;
+    bRe2 = bRe1;
+    bIm2 = bIm1;
+    bRe1 = bRe;
+    bIm1 = bIm;
+  }
+  out[0] = coefficients[0] + tRe * aRe1 - tIm * aIm1 - aRe2;
+  out[1] = coefficients[1] + tRe * aIm1 + tIm * aRe1 - aIm2;
+  out[2] = coefficients[2] + tRe * bRe1 - tIm * bIm1 - bRe2;
+  out[3] = coefficients[3] + tRe * bIm1 + tIm * bRe1 - bIm2;
+}

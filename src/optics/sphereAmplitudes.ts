@@ -1,9 +1,9 @@
 import { RimwrightError } from '../base/errors.ts';
-import { chebyshevFit, chebyshevFour } from '../numeric/chebyshev.ts';
-import { refractiveIndex } from './indexModel.ts';
+import { chebyshevFit, chebyshevFour, chebyshevPairs } from '../numeric/chebyshev.ts';
 import type { IndexModel } from './indexModel.ts';
-import { mieCoefficients } from './mieCoefficients.ts';
+import { refractiveIndex } from './indexModel.ts';
 import { forwardAmplitude, scatteringAmplitudes } from './mieAmplitudes.ts';
+import { mieCoefficients } from './mieCoefficients.ts';
 import type { Particle } from './particle.ts';
 
 /** How one sphere scatters light of one colour into a forward cone. */
@@ -44,7 +44,8 @@ export function sphereAmplitudes(
   const coefficients = mieCoefficients(sizeParameter, [index[0] / mediumIndex, index[1] / mediumIndex]);
   const forward = forwardAmplitude(coefficients);
   const cosLimit = Math.cos(halfAngle);
-  const sample = (cosTheta: number, out: Float64Array) => scatteringAmplitudes(coefficients, cosTheta, out, 0);
+  const sample = (cosTheta: number, out: Float64Array) =>
+    scatteringAmplitudes(coefficients, cosTheta, out, 0);
   const { series, terms } = fitSeries(sample, cosLimit, coefficients.order + 1);
   return {
     wavenumber,
@@ -62,6 +63,18 @@ export function sphereAmplitudes(
 export function amplitudesAt(sphere: SphereAmplitudes, cosTheta: number, out: Float64Array): void {
   const middle = (1 + sphere.cosLimit) / 2;
   chebyshevFour(sphere.series, sphere.terms, (cosTheta - middle) / (1 - middle), out);
+}
+
+/** S1 and S2 as re, im, re, im, continued to a complex cosθ near [cosLimit, 1]. */
+export function amplitudesBeside(
+  sphere: SphereAmplitudes,
+  cosRe: number,
+  cosIm: number,
+  out: Float64Array,
+): void {
+  const middle = (1 + sphere.cosLimit) / 2;
+  const half = 1 - middle;
+  chebyshevPairs(sphere.series, sphere.terms, (cosRe - middle) / half, cosIm / half, out);
 }
 
 /** Doubles the number of terms until the last ones carry nothing; the amplitudes are polynomials in cosθ of degree `most` − 1. */

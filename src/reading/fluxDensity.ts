@@ -1,6 +1,17 @@
 import type { SphereAmplitudes } from '../optics/sphereAmplitudes.ts';
 import { amplitudesAt } from '../optics/sphereAmplitudes.ts';
 
+/** Radial samples of the flux density on a uniform grid of s = ρ². */
+export interface FluxSamples {
+  /** Grid step in s, m². */
+  stepM2: number;
+  /** Values at 0, step, 2·step …: mean over azimuth, and factor of cos 2φ. */
+  mean: Float64Array;
+  twofold: Float64Array;
+  /** Phase k(r − z) beyond which the colours of the line cancel, and only the scattered flux is left. */
+  coherentPhase: number;
+}
+
 /**
  * The integrand w of the reading for a plane wave of unit irradiance: extinguished minus scattered flux through a unit
  * area of the detector plane, for a sphere on the z axis a distance z before it.

@@ -1,8 +1,11 @@
+import { RimwrightError } from '../base/errors.ts';
 import { cellIntegrals, hermitePieces, slopeAtStart } from '../numeric/uniformTable.ts';
+import type { SphereAmplitudes } from '../optics/sphereAmplitudes.ts';
+import type { FluxSamples } from './fluxDensity.ts';
 import { fluxDensity } from './fluxDensity.ts';
-import type { FluxSamples } from './randomSpread.ts';
-import { averageOverSpread } from './randomSpread.ts';
+import { addSpreadFlux, FARTHEST_SPREAD } from './randomSpread.ts';
 import type { Scenario } from './scenario.ts';
+import { coherentPhase } from './scenario.ts';
 
 /**
  * The cumulative flux of one scenario at one distance, ready for boundary integrals.
@@ -31,6 +34,8 @@ const PHASE_STEP = 1 / 8;
  * @param distanceM from particle to detector plane, metres
  * @param radiusM largest distance from the particle's axis that will be asked for, metres
  * @param spreadM rms random motion per axis, metres
+ * @throws RimwrightError `input` where that radius, with 7 times the spread, lies outside the cone that the spheres are solved for,
+ *   or a sphere is far too near for its far-zone fields
  */
 export function buildRadialTable(
   scenario: Scenario,
@@ -39,22 +44,31 @@ export function buildRadialTable(
   spreadM: number,
 ): RadialTable {
   const sphere = scenario.colours[0].sphere;
+  checkCone(sphere, distanceM, radiusM + FARTHEST_SPREAD * spreadM);
   const kappa = sphere.wavenumber / (2 * distanceM);
   const stepM2 = phaseStep(sphere.forward) / kappa;
   const cells = Math.floor((radiusM * radiusM) / stepM2) + 2;
-  const samples = sampleFlux(scenario, distanceM, stepM2, cells + 4, spreadM, kappa);
-  const mean = add(samples.crossedMean, samples.scatteredMean);
+  const { mean, twofold } = sampleFlux(scenario, distanceM, stepM2, cells + 4, spreadM);
   const angle = scenario.polarizationRad;
   return {
     cellsPerM2: 1 / stepM2,
     cells,
     mean: cumulativePieces(mean, stepM2, cells, 1),
-    twofold:
-      angle === null
-        ? null
-        : cumulativePieces(add(samples.crossedTwofold, samples.scatteredTwofold), stepM2, cells, 2),
+    twofold: angle === null ? null : cumulativePieces(twofold, stepM2, cells, 2),
     axis: angle === null ? [0, 0] : [Math.cos(2 * angle), Math.sin(2 * angle)],
   };
+}
+
+/** Outside their cone the amplitudes' series mean nothing, and grow without bound. */
+function checkCone({ cosLimit }: SphereAmplitudes, distanceM: number, reachM: number): void {
+  const halfAngle = Math.atan(reachM / distanceM);
+  const limit = Math.acos(cosLimit);
+  if (halfAngle <= limit * (1 + 1e-9)) return;
+  const [found, most] = [halfAngle, limit].map((angle) => `${((angle * 180) / Math.PI).toPrecision(4)} deg`);
+  throw new RimwrightError(
+    'input',
+    `light is asked for out to a half-angle of ${found} (radius, offset and random motion together), and known to ${most}`,
+  );
 }
 
 /** The interpolation error h⁴/384 counts relative to |S|; where the extinction is a small part of |S| the step shrinks. */
@@ -63,45 +77,40 @@ function phaseStep(forward: readonly [number, number]): number {
   return Math.max(PHASE_STEP / 8, PHASE_STEP / ratio ** 0.25);
 }
 
+/** Samples of the flux density, summed over the colours of the line. */
 function sampleFlux(
   scenario: Scenario,
   distanceM: number,
   stepM2: number,
   count: number,
   spreadM: number,
-  kappa: number,
 ): FluxSamples {
-  if (spreadM === 0) return sampleLine(scenario, distanceM, stepM2, count);
-  const reach = (Math.sqrt(count * stepM2) + 7.5 * spreadM) ** 2;
-  const fine = sampleLine(scenario, distanceM, stepM2 / 2, Math.ceil((2 * reach) / stepM2) + 4);
-  return averageOverSpread(fine, kappa, spreadM, count);
-}
-
-/** Samples of the flux density, summed over the colours of the line. */
-function sampleLine(scenario: Scenario, distanceM: number, stepM2: number, count: number): FluxSamples {
   const samples: FluxSamples = {
     stepM2,
-    crossedMean: new Float64Array(count),
-    crossedTwofold: new Float64Array(count),
-    scatteredMean: new Float64Array(count),
-    scatteredTwofold: new Float64Array(count),
+    mean: new Float64Array(count),
+    twofold: new Float64Array(count),
+    coherentPhase: coherentPhase(scenario),
   };
-  const out = new Float64Array(4);
-  const work = new Float64Array(4);
   for (const { weight, sphere } of scenario.colours) {
-    for (let i = 0; i < count; i++) {
-      fluxDensity(sphere, distanceM, i * stepM2, out, work);
-      samples.crossedMean[i] += weight * out[0];
-      samples.crossedTwofold[i] += weight * out[1];
-      samples.scatteredMean[i] += weight * out[2];
-      samples.scatteredTwofold[i] += weight * out[3];
-    }
+    if (spreadM > 0) addSpreadFlux(sphere, distanceM, spreadM, weight, samples);
+    else addFlux(sphere, distanceM, weight, samples);
   }
   return samples;
 }
 
-function add(a: Float64Array, b: Float64Array): Float64Array {
-  return a.map((value, i) => value + b[i]);
+function addFlux(sphere: SphereAmplitudes, distanceM: number, weight: number, samples: FluxSamples): void {
+  const { stepM2, mean, twofold, coherentPhase } = samples;
+  // k(r − z) = phase, solved for s = r² − z²
+  const path = coherentPhase / sphere.wavenumber;
+  const crossedLimit = (path * (path + 2 * distanceM)) / stepM2;
+  const out = new Float64Array(4);
+  const work = new Float64Array(4);
+  for (let i = 0; i < mean.length; i++) {
+    fluxDensity(sphere, distanceM, i * stepM2, out, work);
+    const lit = i < crossedLimit ? weight : 0;
+    mean[i] += lit * out[0] + weight * out[2];
+    twofold[i] += lit * out[1] + weight * out[3];
+  }
 }
 
 /** Cubic pieces of G/s^power, where dG/ds = w/2. */

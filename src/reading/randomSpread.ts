@@ -1,102 +1,148 @@
-/** Radial samples of the flux density on a uniform grid of s = ρ². */
-export interface FluxSamples {
-  /** Grid step in s, m². */
-  stepM2: number;
-  /** Values at 0, step, 2·step …, by part. */
-  crossedMean: Float64Array;
-  crossedTwofold: Float64Array;
-  scatteredMean: Float64Array;
-  scatteredTwofold: Float64Array;
-}
+import { RimwrightError } from '../base/errors.ts';
+import { evenNormal } from '../numeric/evenNormal.ts';
+import { gaussHermite } from '../numeric/gaussHermite.ts';
+import type { QuadratureRule } from '../numeric/gaussLegendre.ts';
+import { sparseSamples } from '../numeric/sparseSamples.ts';
+import type { SphereAmplitudes } from '../optics/sphereAmplitudes.ts';
+import { crossedAverage, stillPoint } from './crossedAverage.ts';
+import type { FluxSamples } from './fluxDensity.ts';
+import { fluxDensity } from './fluxDensity.ts';
 
-/** Averages this small are left out. */
+/** Crossed flux damped by more than e^−25 is left at zero. */
 const NEGLIGIBLE_EXPONENT = 25;
+/**
+ * Numbers of quadrature nodes an axis, tried until two agree: Gauss–Hermite, then for the scattered lobes of large spheres evenly
+ * spaced. All even, so that none falls on the detector's centre.
+ */
+const HERMITE = [2, 4, 8, 16, 32, 60];
+const EVEN = [32, 64, 128, 256];
+/** How far two may differ, over the forward flux. Doubling the nodes about squares the error. */
+const SETTLED = 1e-5;
+/** Places farther off than this many σ carry less than 1e-10 of the particle, and are left out. */
+export const FARTHEST_SPREAD = 7;
 
 /**
- * Averages the flux density over a normal spread of the particle's transverse position.
+ * Adds the flux density of one sphere, averaged over a normal spread of its transverse position, to the samples.
  *
- * At distance ρ the average is ∬ w(ρ + ξ) N(ξ; σ) d²ξ, taken by the trapezoid rule, which converges exponentially for a
- * Gaussian weight once its step resolves the integrand's phase. The crossed part oscillates with the paraxial phase κρ²
- * and its average has the modulus exp(−2κ²σ²ρ²/(1 + 4κ²σ⁴)): where that is below e^−25 it is left at zero.
+ * At distance ρ the average is ∬ w(ρ + ξ) N(ξ; σ) d²ξ. The crossed part turns and fades as e^{ψ(q)} (see `StillPoint`);
+ * what is left of it, and the scattered part, are slow: both are computed at every eighth sample, and interpolated.
  *
- * @param fine samples on half of the wanted step, reaching at least (ρmax + 7σ)²
- * @param kappa k/(2z), 1/m²
- * @param count number of wanted samples
+ * @param spreadM σ per axis, metres, above 0
+ * @param weight of this sphere in the sum
+ * @throws RimwrightError `input` where the average does not settle: the sphere is far inside its near zone, or σ about as large as z
  */
-export function averageOverSpread(
-  fine: FluxSamples,
-  kappa: number,
+export function addSpreadFlux(
+  sphere: SphereAmplitudes,
+  distanceM: number,
   spreadM: number,
-  count: number,
-): FluxSamples {
-  const stepM2 = fine.stepM2 * 2;
-  const averaged: FluxSamples = {
-    stepM2,
-    crossedMean: new Float64Array(count),
-    crossedTwofold: new Float64Array(count),
-    scatteredMean: new Float64Array(count),
-    scatteredTwofold: new Float64Array(count),
-  };
-  const chirp = 2 * kappa * spreadM * spreadM;
-  const pair = new Float64Array(2);
-  for (let i = 0; i < count; i++) {
-    const rho = Math.sqrt(i * stepM2);
-    const phasePerSpread = 2 * kappa * rho * spreadM;
-    // The scattered part varies slowly: the coarsest grid serves.
-    average(fine.scatteredMean, fine.scatteredTwofold, fine.stepM2, rho, spreadM, 9, pair);
-    averaged.scatteredMean[i] = pair[0];
-    averaged.scatteredTwofold[i] = pair[1];
-    if ((phasePerSpread * phasePerSpread) / (2 * (1 + chirp * chirp)) > NEGLIGIBLE_EXPONENT) continue;
-    const highest = phasePerSpread + 7 * chirp;
-    average(fine.crossedMean, fine.crossedTwofold, fine.stepM2, rho, spreadM, 9 + highest, pair);
-    averaged.crossedMean[i] = pair[0];
-    averaged.crossedTwofold[i] = pair[1];
+  weight: number,
+  samples: FluxSamples,
+): void {
+  const { stepM2, mean, twofold } = samples;
+  const stride = slowStride(sphere, distanceM);
+  const forward = Math.hypot(...sphere.forward) / (sphere.wavenumber * distanceM);
+  const work = new Float64Array(4);
+  const hermite = HERMITE.map(gaussHermite);
+  const lit = crossedCount(sphere, distanceM, spreadM, samples);
+  const crossed = sparseSamples(lit, 6, stride, (place, out) => {
+    const still = stillPoint(sphere.wavenumber, distanceM, spreadM, Math.sqrt(place * stepM2));
+    out.set(still.exponent, 4);
+    settle(hermite, out, 2 * forward * Math.exp(-still.exponent[0]), (rule) => {
+      const [even, odd] = crossedAverage(sphere, distanceM, spreadM, still, rule, work);
+      out.set(even);
+      out.set(odd, 2);
+    });
+  });
+  for (let i = 0; i < lit; i++) {
+    const [evenRe, evenIm, oddRe, oddIm, damping, phase] = crossed.subarray(6 * i, 6 * i + 6);
+    const cos = weight * Math.exp(damping) * Math.cos(phase);
+    const sin = weight * Math.exp(damping) * Math.sin(phase);
+    mean[i] += evenRe * sin + evenIm * cos;
+    twofold[i] += oddRe * sin + oddIm * cos;
   }
-  return averaged;
+
+  const rules = [...hermite.slice(0, 4), ...EVEN.map((count) => evenNormal(count, FARTHEST_SPREAD))];
+  // Averaged over places, nothing changes faster than the spread itself.
+  const wide = Math.max(stride, (spreadM * spreadM) / (4 * stepM2));
+  const scattered = sparseSamples(mean.length, 2, wide, (place, out) => {
+    const rho = Math.sqrt(place * stepM2);
+    settle(rules, out, forward * forward, (rule) =>
+      scatteredAverage(sphere, distanceM, spreadM, rho, rule, out, work),
+    );
+  });
+  for (let i = 0; i < mean.length; i++) {
+    mean[i] += weight * scattered[2 * i];
+    twofold[i] += weight * scattered[2 * i + 1];
+  }
 }
 
-/** Means of f(s) and of g(s)·cos 2φ about the point (ρ, 0); the grid resolves `frequency` radians a spread. */
-function average(
-  f: Float64Array,
-  g: Float64Array,
-  stepM2: number,
-  rho: number,
+/** The slow parts turn by at most ka²/z radians a radian of η, and a sample is an eighth of one. */
+function slowStride({ sizeParameter, wavenumber }: SphereAmplitudes, distanceM: number): number {
+  const nearness = sizeParameter ** 2 / (wavenumber * distanceM);
+  return Math.max(1, Math.min(8, 3 / nearness));
+}
+
+/** Number of samples with crossed flux: damping and phase grow steadily with ρ. */
+function crossedCount(
+  { wavenumber }: SphereAmplitudes,
+  distanceM: number,
   spreadM: number,
-  frequency: number,
+  { stepM2, mean, coherentPhase }: FluxSamples,
+): number {
+  let low = 1;
+  let high = mean.length;
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    const { exponent, path } = stillPoint(wavenumber, distanceM, spreadM, Math.sqrt(middle * stepM2));
+    const isGone = exponent[0] < -NEGLIGIBLE_EXPONENT || wavenumber * Math.hypot(...path) > coherentPhase;
+    if (isGone) high = middle;
+    else low = middle + 1;
+  }
+  return low;
+}
+
+/** Tries finer and finer rules until two of them agree to SETTLED of `largest`. */
+function settle(
+  rules: readonly QuadratureRule[],
   out: Float64Array,
+  largest: number,
+  average: (rule: QuadratureRule) => void,
 ): void {
-  const points = Math.ceil((14 * frequency) / (2 * Math.PI));
-  const spacing = 14 / points;
-  let sumF = 0;
-  let sumG = 0;
-  let total = 0;
-  for (let i = 0; i <= points; i++) {
-    const u = -7 + i * spacing;
-    const x = rho + spreadM * u;
+  let before: Float64Array | null = null;
+  for (const rule of rules) {
+    average(rule);
+    if (before?.every((value, n) => Math.abs(out[n] - value) < SETTLED * largest)) return;
+    before = out.slice();
+  }
+  throw new RimwrightError(
+    'input',
+    'random motion too wide to be averaged, or a particle too large for its far zone at this distance',
+  );
+}
+
+/** Mean and twofold part of the averaged scattered flux. */
+function scatteredAverage(
+  sphere: SphereAmplitudes,
+  distanceM: number,
+  spreadM: number,
+  rho: number,
+  { nodes, weights }: QuadratureRule,
+  out: Float64Array,
+  work: Float64Array,
+): void {
+  const flux = new Float64Array(4);
+  out.fill(0);
+  for (let i = 0; i < nodes.length; i++) {
+    const x = rho + spreadM * nodes[i];
     // The lower half plane mirrors the upper one.
-    for (let v = 0; v <= 7; v += spacing) {
-      const y = spreadM * v;
-      const weight = Math.exp(-(u * u + v * v) / 2) * (v === 0 ? 1 : 2);
-      total += weight;
+    for (let j = nodes.length >> 1; j < nodes.length; j++) {
+      if (nodes[i] ** 2 + nodes[j] ** 2 > FARTHEST_SPREAD ** 2) continue;
+      const y = spreadM * nodes[j];
       const s = x * x + y * y;
-      sumF += weight * cubicAt(f, s / stepM2);
-      if (s > 0) sumG += (weight * cubicAt(g, s / stepM2) * (x * x - y * y)) / s;
+      fluxDensity(sphere, distanceM, s, flux, work);
+      const share = 2 * weights[i] * weights[j];
+      out[0] += share * flux[2];
+      out[1] += (share * flux[3] * (x * x - y * y)) / s;
     }
   }
-  out[0] = sumF / total;
-  out[1] = sumG / total;
-}
-
-/** Four-point Lagrange interpolation of uniform samples at `position` steps from the first. */
-function cubicAt(values: Float64Array, position: number): number {
-  const cell = Math.max(1, Math.min(Math.floor(position), values.length - 3));
-  const t = position - cell;
-  const a = values[cell - 1];
-  const b = values[cell];
-  const c = values[cell + 1];
-  const d = values[cell + 2];
-  const linear = c - a / 3 - b / 2 - d / 6;
-  const square = (a + c) / 2 - b;
-  const cube = (d - a) / 6 + (b - c) / 2;
-  return b + t * (linear + t * (square + t * cube));
 }
