@@ -31,28 +31,28 @@ export async function run(place: string, options: Options): Promise<number> {
   prepareFolder(options.out);
   const { result, nearest } = await interruptible((signal) => searchOrNearest(opened, options, signal));
   const { designs } = result;
-  const warnings = present(
-    designs.length > 0
-      ? [
-          farZoneWarning(
-            brief.task,
-            designs.map(({ distanceM }) => distanceM),
-          ),
-        ]
-      : [],
-  );
+  const distances = designs.map(({ distanceM }) => distanceM);
+  const warnings = present([farZoneWarning(brief.task, distances)]);
   const json = searchToJson(brief, result, nearest, warnings);
   const files = resultFiles(opened, result, json, workersOf(options));
-  const folder = uninterrupted(() => writeResultsFolder(options.out, slug(brief.title), files));
+  const written = tried(() => uninterrupted(() => writeResultsFolder(options.out, slug(brief.title), files)));
   warn(warnings);
-  if (options.json) {
-    print(jsonText(json));
-    if (!options.quiet) note(`Written to ${folder}`);
-  } else {
-    printFront(brief, result, nearest);
-    print(`\nWritten to ${folder}/\n  report.html  front.json  front.csv  run.json  drawings/`);
-  }
+  if (options.json) print(jsonText(json));
+  else printFront(brief, result, nearest);
+  // A long search is not lost where the disk fails: what it found has been printed.
+  if ('fault' in written) throw written.fault;
+  const parts = '  report.html  front.json  front.csv  run.json  drawings/';
+  if (!options.json) print(`\nWritten to ${written.value}/\n${parts}`);
+  else if (!options.quiet) note(`Written to ${written.value}`);
   return designs.some(({ meetsTarget }) => meetsTarget) ? EXIT.done : EXIT.target;
+}
+
+function tried<T>(work: () => T): { value: T } | { fault: unknown } {
+  try {
+    return { value: work() };
+  } catch (fault) {
+    return { fault };
+  }
 }
 
 /** Searches; where no design keeps the brief's limits at all, looks for the one that comes nearest. */
@@ -66,7 +66,7 @@ async function searchOrNearest(
   if (designs.some(({ meetsTarget }) => meetsTarget)) return { result, nearest: null };
   const [best] = designs.toSorted((a, b) => a.scores.correction.worst - b.scores.correction.worst);
   if (best !== undefined) return { result, nearest: { design: best, misses: missesOf(best, brief.task) } };
-  if (result.stopped) return { result, nearest: null };
+  if (result.stopped || signal.aborted) return { result, nearest: null };
   if (!options.quiet)
     note('No design keeps the limits of this brief. Looking for the one that comes nearest.');
   const candidates = Math.max(LEAST_CANDIDATES, Math.round(NEAREST_SHARE * brief.search.candidates));

@@ -8,7 +8,7 @@ const WORTH_SAYING = 0.1;
 /**
  * What the far-zone form leaves out: its phase errs by about k(d/2)²/(2z), and readings by about as much of the extinction.
  *
- * @param distancesM distances of the designs in question, one or more
+ * @param distancesM distances of the designs in question
  * @returns a warning where that exceeds a tenth of the target correction for any particle, else null
  */
 export function farZoneWarning(task: Task, distancesM: readonly number[]): string | null {
