@@ -21,6 +21,9 @@ export function ringNodes(
   return Float64Array.from(nodes);
 }
 
+/** Gauss–Legendre nodes that an edge wants beyond 2 + perRadian · phase, over perRadian, once its phase is several radians. */
+const EXTRA = 3.3;
+
 function addEdge(
   nodes: number[],
   x0: number,
@@ -33,12 +36,15 @@ function addEdge(
   const dx = x1 - x0;
   const dy = y1 - y0;
   const length = Math.hypot(dx, dy);
+  if (length === 0) return;
   // ρ² is a parabola along the edge; past its vertex it rises again, so both branches count.
   const start = (x0 * dx + y0 * dy) / length;
   const end = start + length;
   const run = start * end < 0 ? start * start + end * end : Math.abs(end * end - start * start);
   const phase = kappa * (run + 2 * offsetM * length);
-  const { nodes: places, weights } = rules.rule(2 + Math.ceil(perRadian * phase));
+  // A few radians want more nodes each than many do.
+  const count = 2 + Math.ceil(perRadian * phase * (1 + EXTRA / (1 + phase)));
+  const { nodes: places, weights } = rules.rule(count);
   for (let k = 0; k < places.length; k++) {
     const t = (1 + places[k]) / 2;
     const weight = weights[k] / 2;

@@ -63,7 +63,7 @@ export function buildRadialTable(
 function checkCone({ cosLimit }: SphereAmplitudes, distanceM: number, reachM: number): void {
   const halfAngle = Math.atan(reachM / distanceM);
   const limit = Math.acos(cosLimit);
-  if (halfAngle <= limit * (1 + 1e-9)) return;
+  if (halfAngle <= limit * (1 + 1e-6)) return;
   const [found, most] = [halfAngle, limit].map((angle) => `${((angle * 180) / Math.PI).toPrecision(4)} deg`);
   throw new RimwrightError(
     'input',
