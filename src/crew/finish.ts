@@ -40,7 +40,7 @@ export function finish(job: FinishJob, judge: Judge, space: SearchSpace): Finish
 }
 
 /** The shop's word on an outline; without a shop everything fits. */
-export function askShop(elements: readonly OutlineElement[], shop: ShopRules | null): ShopReport {
+function askShop(elements: readonly OutlineElement[], shop: ShopRules | null): ShopReport {
   return shop === null ? { fits: true, notes: [], misfit: 0 } : inspectOutline(elements, shop);
 }
 

@@ -1,5 +1,5 @@
 /** A straight edge. */
-export interface LineSegment {
+interface LineSegment {
   kind: 'line';
   from: readonly [x: number, y: number];
   to: readonly [x: number, y: number];
@@ -18,7 +18,7 @@ export interface ArcSegment {
  * A curve ρ(φ) about the origin, given by ρ² and its derivative, smooth between the two azimuths. A closed one spans ±2π.
  * `folds` tells how often a closed one repeats itself in a turn.
  */
-export interface PolarSegment {
+interface PolarSegment {
   kind: 'polar';
   from: number;
   to: number;

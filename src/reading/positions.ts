@@ -9,6 +9,13 @@ export interface Symmetry {
 }
 
 /**
+ * Most circles, and most places on one. So many spacings out a reading has swung through all it can; further ones would
+ * only take time.
+ */
+const MOST_CIRCLES = 60;
+const MOST_STEPS = 120;
+
+/**
  * Places where the particle is tried: the axis, and circles out to the offset, each sampled over the outline's smallest
  * wedge, both ends included.
  *
@@ -29,7 +36,7 @@ export function samplePositions(
   const positions = [0, 0];
   if (offsetM > 0) {
     const reach = offsetM * phasePerMetre;
-    const circles = Math.max(3, Math.ceil(reach / spacing));
+    const circles = Math.min(MOST_CIRCLES, Math.max(3, Math.ceil(reach / spacing)));
     const wedge = Number.isFinite(symmetry.folds)
       ? ((symmetry.mirror ? 1 : 2) * Math.PI) / symmetry.folds
       : 0;
@@ -38,7 +45,7 @@ export function samplePositions(
       const arc = radius * phasePerMetre * wedge;
       // An n-fold outline makes an n-fold pattern, whatever the phase: three steps to half a period at the least.
       const least = symmetry.mirror ? 4 : 7;
-      const steps = wedge === 0 ? 1 : Math.max(least, Math.ceil(arc / spacing) + 1);
+      const steps = wedge === 0 ? 1 : Math.min(MOST_STEPS, Math.max(least, Math.ceil(arc / spacing) + 1));
       for (let j = 0; j < steps; j++) {
         const angle = steps === 1 ? 0 : (wedge * j) / (steps - 1);
         positions.push(radius * Math.cos(angle), radius * Math.sin(angle));
@@ -48,13 +55,16 @@ export function samplePositions(
   return Float64Array.from(positions);
 }
 
+/** Most points of one flight: phases beyond a thousand radians average to nothing anyway. */
+const MOST_FLIGHT = 2000;
+
 /**
  * Points of a straight flight, relative to its middle, at equal times: the mean of their readings is the flight's.
  * Without a crossing it is the one point where the particle stays.
  */
 export function flightPoints(crossing: Placement['crossing'], phasePerMetre: number): Float64Array {
   if (crossing === null) return new Float64Array(2);
-  const count = Math.ceil((crossing.spanM * phasePerMetre) / 0.5) + 8;
+  const count = Math.min(MOST_FLIGHT, Math.ceil((crossing.spanM * phasePerMetre) / 0.5) + 8);
   const points = new Float64Array(2 * count);
   for (let i = 0; i < count; i++) {
     const along = crossing.spanM * ((i + 0.5) / count - 0.5);

@@ -97,8 +97,3 @@ export function coherentPhase({ colours }: Scenario): number {
   );
   return variance === 0 ? Number.POSITIVE_INFINITY : CANCELLED / Math.sqrt(variance);
 }
-
-/** κ = k/(2z), 1/m², in the medium at the given vacuum wavelength. */
-export function paraxialKappa(medium: IndexModel, vacuumWavelengthM: number, distanceM: number): number {
-  return (Math.PI * refractiveIndex(medium, vacuumWavelengthM)[0]) / (vacuumWavelengthM * distanceM);
-}

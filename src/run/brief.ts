@@ -1,7 +1,7 @@
 import type { FamilyName } from '../outline/families/family.ts';
 import type { Task } from '../score/task.ts';
 
-export { FAMILY_NAMES, type FamilyName } from '../outline/families/family.ts';
+export { FAMILY_NAMES } from '../outline/families/family.ts';
 
 /** A brief as checked: every key filled, every quantity in SI units. */
 export interface Brief {

@@ -62,11 +62,16 @@ export async function runCourse(
   try {
     const quest = { task, variants: workshop.variants, aims, ...brief.search };
     const rounds = new Rounds(quest, crew, options.onProgress ?? (() => {}));
-    const stopped = await ranToItsEnd(rounds, options.signal);
-    const designs = await conclude(
-      finishing(rounds, brief, aims, stopped ? handsOf(workshop) : crew, !stopped),
+    await runRounds(rounds, options.signal);
+    const finishWith = (hands: Hands, mayRepair: boolean) =>
+      conclude(finishing(rounds, brief, aims, hands, mayRepair));
+    const designs = await untilStopped(
+      () => finishWith(crew, true),
+      () => finishWith(handsOf(workshop), false),
+      options.signal,
     );
     const seconds = (performance.now() - started) / 1000;
+    const stopped = options.signal?.aborted ?? false;
     return { designs, evaluations: rounds.findings.evaluations, seconds, stopped };
   } finally {
     options.signal?.removeEventListener('abort', stop);
@@ -74,13 +79,26 @@ export async function runCourse(
   }
 }
 
-/** True where the user stopped the rounds. */
-async function ranToItsEnd(rounds: Rounds, signal: AbortSignal | undefined): Promise<boolean> {
+/** Runs the rounds to their end, or until the user stops them. */
+async function runRounds(rounds: Rounds, signal: AbortSignal | undefined): Promise<void> {
   try {
     await rounds.run();
-    return false;
   } catch (error) {
-    if (signal?.aborted) return true;
+    if (!signal?.aborted) throw error;
+  }
+}
+
+/** Does a thing with the crew; where the user has dismissed that, before or meanwhile, does it without. */
+async function untilStopped<Result>(
+  withCrew: () => Promise<Result>,
+  without: () => Promise<Result>,
+  signal: AbortSignal | undefined,
+): Promise<Result> {
+  if (signal?.aborted) return without();
+  try {
+    return await withCrew();
+  } catch (error) {
+    if (signal?.aborted) return without();
     throw error;
   }
 }

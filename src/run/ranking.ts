@@ -57,17 +57,18 @@ function objectives({ scores }: Design): number[] {
   return [scores.correction.worst, scores.snr.time_s, scores.radius_m];
 }
 
-/** One design of each handful that agree to a hundredth in all objectives: nobody chooses between those. */
+/** Designs that agree to this share in every objective are one to whoever chooses. */
+const SAME = 0.03;
+
+/** Leaves out designs that another one before them is as good as. */
 function distinct(designs: readonly Design[]): Design[] {
-  const seen = new Set<string>();
-  return designs.filter((design) => {
-    const key = objectives(design)
-      .map((value) => Math.round(Math.log(value) * 100))
-      .join(' ');
-    if (seen.has(key)) return false;
-    seen.add(key);
-    return true;
-  });
+  const kept: { design: Design; at: number[] }[] = [];
+  for (const design of designs) {
+    const at = objectives(design).map(Math.log);
+    if (!kept.some((held) => held.at.every((value, j) => Math.abs(value - at[j]) < SAME)))
+      kept.push({ design, at });
+  }
+  return kept.map(({ design }) => design);
 }
 
 /** Keeps the first ranks, and of the last one that still has room those that lie farthest from their neighbours. */

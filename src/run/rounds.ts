@@ -149,11 +149,13 @@ export class Rounds {
 
   #glances(): ExploreJob[] {
     const { variants, candidates } = this.#quest;
-    const families = new Set(variants.map(({ family }) => family));
-    const perFamily = (SHARES.scout * candidates) / families.size;
-    return variants.map((variant) => {
-      const siblings = variants.filter(({ family }) => family === variant.family).length;
-      return this.#job(variant.id, 0, Math.max(LEAST_LOOK, Math.floor(perFamily / siblings)));
+    const families = [...new Set(variants.map(({ family }) => family))];
+    const perFamily = (SHARES.scout * candidates) / families.length;
+    // A budget too small for all variants looks at the first of each family.
+    const most = Math.max(1, Math.floor(perFamily / LEAST_LOOK));
+    return families.flatMap((name) => {
+      const looked = variants.filter(({ family }) => family === name).slice(0, most);
+      return looked.map(({ id }) => this.#job(id, 0, perFamily / looked.length));
     });
   }
 

@@ -69,7 +69,9 @@ export async function smallest(
   const target: Aim = { measure, correction: task.target.correction };
   const worth = ({ scores, shop }: Design) => aimValue(scores, shop.misfit, target, task);
   const ranked = rankAll(course.designs, task).sort((a, b) => worth(a) - worth(b));
-  const design = ranked.find(({ meetsTarget }) => meetsTarget) ?? null;
-  const nearest = design ?? ranked[0] ?? null;
+  const chosen = ranked.find(({ meetsTarget }) => meetsTarget) ?? ranked[0];
+  // It stands alone: the others that were judged do not number it.
+  const nearest = chosen ? { ...chosen, id: `${chosen.family}-1`, rank: 1 } : null;
+  const design = nearest?.meetsTarget ? nearest : null;
   return { ...course, design, nearest, misses: nearest ? missesOf(nearest, task) : [] };
 }

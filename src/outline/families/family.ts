@@ -12,7 +12,7 @@ export interface PhaseLimits {
 }
 
 /** One number that a family varies, with the range to which every method of the search keeps it. */
-export interface Parameter {
+interface Parameter {
   name: string;
   low: number;
   high: number;
