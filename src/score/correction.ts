@@ -12,7 +12,8 @@ export const LEAST_GAIN = 0.5;
 /**
  * Gain and correction from the ratios reading/extinction.
  *
- * A free gain is the value of at least 0.5 that makes the worst correction smallest: the middle of the extremes.
+ * A free gain is the value of at least 0.5 that makes the worst correction smallest: the middle of the extremes. (Where a
+ * reading is below nothing, every gain leaves the worst above 1, and the middle is as good as any.)
  *
  * @param ratios at least one finite number
  */
