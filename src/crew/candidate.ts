@@ -30,8 +30,11 @@ const MISDRAWN = 1e3;
 /** Vertices a turn for asking the shop in a search. */
 const SHOP_VERTICES = 96;
 
-/** Beyond this many times the allowed correction a candidate is not shown to the shop: it has other troubles. */
-const SHOP_FROM = 2;
+/**
+ * Beyond this many times the allowed correction a candidate has other troubles than the shop's rules: it is taken to fit
+ * until it comes nearer. Measuring openings and webs costs as much as a score.
+ */
+const SHOP_FROM = 1.5;
 
 /** The distance that a place from 0 to 1 on the grid stands for. */
 export function distanceAt(space: SearchSpace, place: number): number {
@@ -72,7 +75,7 @@ export function tryCandidate(
 function shopMisfit(judge: Judge, shape: Shape, scores: Scores, aim: Aim): number {
   const { shop } = judge.task;
   if (shop === null) return 0;
-  if (scores.correction.worst > SHOP_FROM * aim.correction) return 1;
+  if (scores.correction.worst > SHOP_FROM * aim.correction) return 0;
   const elements = shape.elements.map(({ loops }) => ({
     rings: loops.map((loop) => polygonise(loop, SHOP_VERTICES)),
   }));

@@ -1,7 +1,6 @@
 import { evenNormal } from '../numeric/evenNormal.ts';
 import { gaussHermite } from '../numeric/gaussHermite.ts';
 import type { IndexModel } from '../optics/indexModel.ts';
-import { refractiveIndex } from '../optics/indexModel.ts';
 import type { Light } from '../optics/light.ts';
 import type { Particle } from '../optics/particle.ts';
 import type { SphereAmplitudes } from '../optics/sphereAmplitudes.ts';
