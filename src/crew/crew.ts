@@ -67,9 +67,10 @@ export class Crew {
     });
     worker.on('message', (reply: Reply) => this.#settle(worker, reply));
     worker.on('error', (error) => this.#fail(asCrewError(error)));
-    worker.on('exit', (code) => {
-      if (code !== 0) this.#fail(new RimwrightError('machine', `a worker ended with exit code ${code}`));
-    });
+    // Whatever its code says, a worker that ends by itself leaves its job undone; after a dismissal this changes nothing.
+    worker.on('exit', (code) =>
+      this.#fail(new RimwrightError('machine', `a worker ended with exit code ${code}`)),
+    );
     this.#workers.push(worker);
     this.#idle.push(worker);
   }
