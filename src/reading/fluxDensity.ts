@@ -8,8 +8,8 @@ export interface FluxSamples {
   /** Values at 0, step, 2·step …: mean over azimuth, and factor of cos 2φ. */
   mean: Float64Array;
   twofold: Float64Array;
-  /** Phase k(r − z) beyond which the colours of the line cancel, and only the scattered flux is left. */
-  coherentPhase: number;
+  /** How many of them may hold crossed flux: farther out the colours of the line cancel. */
+  crossedCount: number;
 }
 
 /**

@@ -1,11 +1,13 @@
 import { RimwrightError } from '../base/errors.ts';
+import { countWhile } from '../numeric/countWhile.ts';
 import { cellIntegrals, hermitePieces, slopeAtStart } from '../numeric/uniformTable.ts';
 import type { SphereAmplitudes } from '../optics/sphereAmplitudes.ts';
+import { stillPoint } from './crossedAverage.ts';
 import type { FluxSamples } from './fluxDensity.ts';
 import { fluxDensity } from './fluxDensity.ts';
 import { addSpreadFlux, FARTHEST_SPREAD } from './randomSpread.ts';
 import type { Scenario } from './scenario.ts';
-import { coherentPhase } from './scenario.ts';
+import { coherence } from './scenario.ts';
 
 /**
  * The cumulative flux of one scenario at one distance, ready for boundary integrals.
@@ -89,7 +91,7 @@ function sampleFlux(
     stepM2,
     mean: new Float64Array(count),
     twofold: new Float64Array(count),
-    coherentPhase: coherentPhase(scenario),
+    crossedCount: coherentCount(scenario, distanceM, stepM2, count, spreadM),
   };
   for (const { weight, sphere } of scenario.colours) {
     if (spreadM > 0) addSpreadFlux(sphere, distanceM, spreadM, weight, samples);
@@ -98,16 +100,29 @@ function sampleFlux(
   return samples;
 }
 
+/** Samples before the line's colours cancel: the same for every colour, or what is left of them would not. */
+function coherentCount(
+  scenario: Scenario,
+  distanceM: number,
+  stepM2: number,
+  count: number,
+  spreadM: number,
+): number {
+  const { pathM, wavenumber } = coherence(scenario);
+  if (pathM === Number.POSITIVE_INFINITY) return count;
+  return countWhile(count, (i) => {
+    const { path } = stillPoint(wavenumber, distanceM, spreadM, Math.sqrt(i * stepM2));
+    return Math.hypot(...path) < pathM;
+  });
+}
+
 function addFlux(sphere: SphereAmplitudes, distanceM: number, weight: number, samples: FluxSamples): void {
-  const { stepM2, mean, twofold, coherentPhase } = samples;
-  // k(r − z) = phase, solved for s = r² − z²
-  const path = coherentPhase / sphere.wavenumber;
-  const crossedLimit = (path * (path + 2 * distanceM)) / stepM2;
+  const { stepM2, mean, twofold, crossedCount } = samples;
   const out = new Float64Array(4);
   const work = new Float64Array(4);
   for (let i = 0; i < mean.length; i++) {
     fluxDensity(sphere, distanceM, i * stepM2, out, work);
-    const lit = i < crossedLimit ? weight : 0;
+    const lit = i < crossedCount ? weight : 0;
     mean[i] += lit * out[0] + weight * out[2];
     twofold[i] += lit * out[1] + weight * out[3];
   }

@@ -1,4 +1,5 @@
 import { RimwrightError } from '../base/errors.ts';
+import { countWhile } from '../numeric/countWhile.ts';
 import { evenNormal } from '../numeric/evenNormal.ts';
 import { gaussHermite } from '../numeric/gaussHermite.ts';
 import type { QuadratureRule } from '../numeric/gaussLegendre.ts';
@@ -43,7 +44,11 @@ export function addSpreadFlux(
   const forward = Math.hypot(...sphere.forward) / (sphere.wavenumber * distanceM);
   const work = new Float64Array(4);
   const hermite = HERMITE.map(gaussHermite);
-  const lit = crossedCount(sphere, distanceM, spreadM, samples);
+  // The damping grows steadily with ρ.
+  const lit = countWhile(samples.crossedCount, (i) => {
+    const { exponent } = stillPoint(sphere.wavenumber, distanceM, spreadM, Math.sqrt(i * stepM2));
+    return exponent[0] > -NEGLIGIBLE_EXPONENT;
+  });
   const crossed = sparseSamples(lit, 6, stride, (place, out) => {
     const still = stillPoint(sphere.wavenumber, distanceM, spreadM, Math.sqrt(place * stepM2));
     out.set(still.exponent, 4);
@@ -80,25 +85,6 @@ export function addSpreadFlux(
 function slowStride({ sizeParameter, wavenumber }: SphereAmplitudes, distanceM: number): number {
   const nearness = sizeParameter ** 2 / (wavenumber * distanceM);
   return Math.max(1, Math.min(8, 3 / nearness));
-}
-
-/** Number of samples with crossed flux: damping and phase grow steadily with ρ. */
-function crossedCount(
-  { wavenumber }: SphereAmplitudes,
-  distanceM: number,
-  spreadM: number,
-  { stepM2, mean, coherentPhase }: FluxSamples,
-): number {
-  let low = 1;
-  let high = mean.length;
-  while (low < high) {
-    const middle = (low + high) >> 1;
-    const { exponent, path } = stillPoint(wavenumber, distanceM, spreadM, Math.sqrt(middle * stepM2));
-    const isGone = exponent[0] < -NEGLIGIBLE_EXPONENT || wavenumber * Math.hypot(...path) > coherentPhase;
-    if (isGone) high = middle;
-    else low = middle + 1;
-  }
-  return low;
 }
 
 /** Tries finer and finer rules until two of them agree to SETTLED of `largest`. */

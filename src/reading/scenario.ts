@@ -1,6 +1,7 @@
 import { evenNormal } from '../numeric/evenNormal.ts';
 import { gaussHermite } from '../numeric/gaussHermite.ts';
 import type { IndexModel } from '../optics/indexModel.ts';
+import { refractiveIndex } from '../optics/indexModel.ts';
 import type { Light } from '../optics/light.ts';
 import type { Particle } from '../optics/particle.ts';
 import type { SphereAmplitudes } from '../optics/sphereAmplitudes.ts';
@@ -47,10 +48,14 @@ export function buildScenarios(
 ): Scenario[] {
   return particles.flatMap((particle) =>
     wavelengths.map((wavelengthM) => {
-      const colours = lineColours(light, wavelengthM, largestPhase).map(({ weight, colourM }) => ({
-        weight,
-        sphere: sphereAmplitudes(particle, medium, colourM, halfAngle),
-      }));
+      const mediumIndex = refractiveIndex(medium, wavelengthM)[0];
+      const sizeParameter = (Math.PI * mediumIndex * particle.diameterM) / wavelengthM;
+      const colours = lineColours(light, wavelengthM, largestPhase, sizeParameter).map(
+        ({ weight, colourM }) => ({
+          weight,
+          sphere: sphereAmplitudes(particle, medium, colourM, halfAngle),
+        }),
+      );
       return {
         particle,
         wavelengthM,
@@ -68,31 +73,43 @@ const LINE_REACH = 2 / SIGMA_PER_FWHM;
 /** Rms phase over the line at which its colours have cancelled: e^−25. */
 const CANCELLED = Math.sqrt(50);
 
+/** Step in size parameter that the narrow resonances of a clear sphere take, and the most colours that are spent on them. */
+const RESONANCE_STEP = 0.02;
+const MOST_FOR_RESONANCES = 64;
+
 /**
  * Colours of the line. A phase η spreads by η σ/λ over it: n Gauss–Hermite nodes follow cos up to about √(2n) − 1, and
- * for wide spreads evenly spaced ones are fewer. Beyond CANCELLED no colours need to be told apart: see `coherentPhase`.
+ * for wide spreads evenly spaced ones are fewer. Beyond CANCELLED no colours need to be told apart: see `coherence`.
+ * Where the line is wide enough for a sphere's resonances, they decide.
  */
-function lineColours(light: Light, wavelengthM: number, largestPhase: number) {
+function lineColours(light: Light, wavelengthM: number, largestPhase: number, sizeParameter: number) {
   const sigmaM = light.linewidthM * SIGMA_PER_FWHM;
   if (sigmaM === 0) return [{ weight: 1, colourM: wavelengthM }];
-  const spread = Math.min((largestPhase * sigmaM) / wavelengthM, CANCELLED);
+  const relative = sigmaM / wavelengthM;
+  const spread = Math.min(largestPhase * relative, CANCELLED);
   const hermite = Math.ceil(4 + 2 * spread + spread * spread);
   const even = Math.ceil((LINE_REACH * (spread + 6)) / Math.PI) + 1;
-  const { nodes, weights } = hermite < even ? gaussHermite(hermite) : evenNormal(even, LINE_REACH);
+  const wanted = Math.ceil((2 * LINE_REACH * sizeParameter * relative) / RESONANCE_STEP);
+  const resonant = Math.min(MOST_FOR_RESONANCES, wanted);
+  const isNarrow = hermite < even && resonant <= hermite;
+  const { nodes, weights } = isNarrow
+    ? gaussHermite(hermite)
+    : evenNormal(Math.max(even, resonant), LINE_REACH);
   const within = [...nodes.keys()].filter((i) => Math.abs(nodes[i]) <= LINE_REACH);
   const total = within.reduce((sum, i) => sum + weights[i], 0);
   return within.map((i) => ({ weight: weights[i] / total, colourM: wavelengthM + sigmaM * nodes[i] }));
 }
 
 /**
- * Phase k(r − z) beyond which the crossed flux of the line's colours cancels; Infinity for a single colour.
- * A finite number of colours would come back into step farther out: a real line never does.
+ * Path r − z beyond which the crossed flux of the line's colours cancels (Infinity for a single colour), and their mean
+ * wavenumber, 1/m. A finite number of colours would come back into step farther out: a real line never does.
+ * All of them must be left out from the same place on: what is left of some would not cancel.
  */
-export function coherentPhase({ colours }: Scenario): number {
-  const mean = colours.reduce((sum, { weight, sphere }) => sum + weight * sphere.wavenumber, 0);
+export function coherence({ colours }: Scenario): { pathM: number; wavenumber: number } {
+  const wavenumber = colours.reduce((sum, { weight, sphere }) => sum + weight * sphere.wavenumber, 0);
   const variance = colours.reduce(
-    (sum, { weight, sphere }) => sum + weight * (sphere.wavenumber / mean - 1) ** 2,
+    (sum, { weight, sphere }) => sum + weight * (sphere.wavenumber - wavenumber) ** 2,
     0,
   );
-  return variance === 0 ? Number.POSITIVE_INFINITY : CANCELLED / Math.sqrt(variance);
+  return { pathM: variance === 0 ? Number.POSITIVE_INFINITY : CANCELLED / Math.sqrt(variance), wavenumber };
 }
