@@ -5,7 +5,8 @@ import type { Loop } from './shape.ts';
 /**
  * Turns a loop into the points that go to files, on a grid of 1 nm.
  *
- * A whole circle becomes a regular polygon of the same area, so that the mean of ρ² over its rim, hence the phase, stays.
+ * Circles and arcs about any centre keep their area, and with it the mean of ρ² along them, hence the phase: their points
+ * lie a little outside of them.
  *
  * @param verticesPerTurn vertices for a whole turn of curved segments, 16 or more
  * @returns flat [x0, y0, x1, y1, …], metres
@@ -15,10 +16,10 @@ export function polygonise(loop: Loop, verticesPerTurn: number): Float64Array {
   const point = new Float64Array(4);
   for (const segment of loop) {
     const pieces = pieceCount(segment, verticesPerTurn);
-    const stretch = isClosed(segment) && segment.kind === 'arc' ? equalAreaStretch(pieces) : 1;
+    const stretch = equalAreaStretch(segment, pieces);
     for (let i = 0; i < pieces; i++) {
       pointOn(segment, i / pieces, point);
-      if (segment.kind === 'arc' && stretch !== 1) {
+      if (segment.kind === 'arc' && (i > 0 || isClosed(segment))) {
         point[0] = segment.centre[0] + (point[0] - segment.centre[0]) * stretch;
         point[1] = segment.centre[1] + (point[1] - segment.centre[1]) * stretch;
       }
@@ -57,7 +58,13 @@ function pieceCount(segment: Segment, verticesPerTurn: number): number {
     : pieces;
 }
 
-function equalAreaStretch(sides: number): number {
-  const angle = (2 * Math.PI) / sides;
-  return Math.sqrt(angle / Math.sin(angle));
+/** Factor on the radius of an arc's points that makes up for the area its chords cut off; the ends of an open arc stay. */
+function equalAreaStretch(segment: Segment, pieces: number): number {
+  if (segment.kind !== 'arc') return 1;
+  const angle = Math.abs(segment.to - segment.from) / pieces;
+  const lost = angle / Math.sin(angle);
+  if (isClosed(segment)) return Math.sqrt(lost);
+  // (n − 2) f² + 2 f = n · lost: of the n triangles about the centre, the first and the last have one end that stays.
+  const between = pieces - 2;
+  return between === 0 ? lost : (Math.sqrt(1 + between * pieces * lost) - 1) / between;
 }

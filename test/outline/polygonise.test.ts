@@ -41,6 +41,26 @@ describe('polygonise', () => {
     }
   });
 
+  it('keeps the area of arcs about any centre, outwards and inwards', () => {
+    const [outer, inner] = [100e-6, 60e-6];
+    for (const turn of [0.3, Math.PI / 2, 3]) {
+      const at = (radius: number, angle: number) =>
+        [radius * Math.cos(angle), radius * Math.sin(angle)] as const;
+      const sector = polygonise(
+        [
+          { kind: 'line', from: at(inner, 0), to: at(outer, 0) },
+          { kind: 'arc', centre: [0, 0], radius: outer, from: 0, to: turn },
+          { kind: 'line', from: at(outer, turn), to: at(inner, turn) },
+          { kind: 'arc', centre: [0, 0], radius: inner, from: turn, to: 0 },
+        ],
+        48,
+      );
+      expect(ringArea(sector) / ((turn / 2) * (outer ** 2 - inner ** 2))).toBeCloseTo(1, 4);
+      // The ends stay where the straight edges meet them.
+      expect(Array.from(sector.subarray(0, 4))).toEqual([inner, 0, outer, 0]);
+    }
+  });
+
   it('keeps the sense of rotation and the corners of straight edges', () => {
     const ring = polygonise(
       [
