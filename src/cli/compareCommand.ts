@@ -1,5 +1,6 @@
 import type { Problem } from '../base/errors.ts';
 import { inputError, RimwrightError } from '../base/errors.ts';
+import type { Fields } from '../reading/tableShelf.ts';
 import { designToJson } from '../run/designJson.ts';
 import { jsonText } from '../run/jsonText.ts';
 import { judgeOutline } from '../run/judgeOutline.ts';
@@ -22,17 +23,19 @@ type Compared = RankedDesign & { file: string };
 export async function run(
   place: string,
   files: readonly string[],
-  options: { distance?: string; json?: true },
+  options: { distance?: string; exact?: true; json?: true },
 ): Promise<number> {
   const distance = await readDistance(options.distance);
   const { brief } = await openBrief(place);
   const { task } = brief;
-  const designs = rankGiven(scoreAll(files, task, distance));
-  const distances = designs.map(({ distanceM }) => distanceM);
-  const warnings = present([
-    farZoneWarning(task, distances),
-    ...distances.map((distanceM) => distanceWarning(task, distanceM)),
-  ]);
+  const fields = options.exact ? 'exact' : 'far';
+  const designs = rankGiven(scoreAll(files, task, distance, fields));
+  const warnings = present(
+    designs.flatMap(({ distanceM }) => [
+      fields === 'far' ? farZoneWarning(task, distanceM) : null,
+      distanceWarning(task, distanceM),
+    ]),
+  );
   if (!options.json) noteDefaults(brief.defaults);
   warn(warnings);
   if (options.json) {
@@ -43,13 +46,13 @@ export async function run(
 }
 
 /** Scores every file. Where some are broken, all of their messages come together, and no scores. */
-function scoreAll(files: readonly string[], task: Task, distance: number | null): Compared[] {
+function scoreAll(files: readonly string[], task: Task, distance: number | null, fields: Fields): Compared[] {
   const problems: Problem[] = [];
   const designs: Compared[] = [];
   for (const file of files) {
     try {
       const given = readDesignFile(file);
-      designs.push({ ...scoreGiven(task, given, judgeOutline(task, given, distance)), file });
+      designs.push({ ...scoreGiven(task, given, judgeOutline(task, given, distance, null, fields)), file });
     } catch (error) {
       if (!(error instanceof RimwrightError) || error.code !== 'input') throw error;
       problems.push(...error.problems);

@@ -11,6 +11,7 @@ const WORKERS = [1, 64] as const;
 
 const BRIEF = "a brief's path, or a brief's name on the shelf";
 const OUTLINE = "CSV (x_mm,y_mm), a design's JSON, or front.json#ID";
+const EXACT = "the sphere's exact fields, for large particles near the detector";
 const AS_JSON = 'print one JSON document';
 
 // Only the command that runs loads what it works with, so that --help is there at once.
@@ -104,6 +105,7 @@ Example:
     .option('--design <id>', 'which design of a front.json')
     .option('--distance <length>', 'distance from particle to detector')
     .option('--position <x, y>', 'read at this place of the particle alone')
+    .option('--exact', EXACT)
     .option('--json', AS_JSON)
     .addHelpText(
       'after',
@@ -124,6 +126,7 @@ Example:
     .argument('<brief>', BRIEF)
     .argument('<files...>', OUTLINE)
     .option('--distance <length>', 'distance from particle to detector, for all of them')
+    .option('--exact', EXACT)
     .option('--json', AS_JSON)
     .addHelpText(
       'after',

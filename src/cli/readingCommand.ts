@@ -25,6 +25,7 @@ interface Options {
   design?: string;
   distance?: string;
   position?: string;
+  exact?: true;
   json?: true;
 }
 
@@ -35,17 +36,19 @@ export async function run(place: string, options: Options): Promise<number> {
   const { brief } = await openBrief(place);
   const { task } = brief;
   const given = readDesignFile(options.outline, options.design);
-  const judged = judgeOutline(task, given, distance, position);
+  const fields = options.exact ? 'exact' : 'far';
+  const judged = judgeOutline(task, given, distance, position, fields);
   const { judge, distanceM } = judged;
   // At one place there is no worst and no mean over places: the scores are left out.
   const design = position === null ? scoreGiven(task, given, judged) : null;
-  const warnings = present([farZoneWarning(task, [distanceM]), distanceWarning(task, distanceM)]);
+  const farZone = fields === 'far' ? farZoneWarning(task, distanceM) : null;
+  const warnings = present([farZone, distanceWarning(task, distanceM)]);
   if (!options.json) noteDefaults(brief.defaults);
   warn(warnings);
   if (options.json) {
     const places = position === null ? undefined : Float64Array.from(position);
     const readings = listReadings(judge, given.elements, distanceM, places);
-    print(jsonText({ readings, design: design && designToJson(design), brief, warnings }));
+    print(jsonText({ fields, readings, design: design && designToJson(design), brief, warnings }));
     return EXIT.done;
   }
   printReadings(given, judged, position, design);

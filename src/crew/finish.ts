@@ -2,8 +2,9 @@ import type { Variant } from '../outline/families/family.ts';
 import { polygonise } from '../outline/polygonise.ts';
 import type { OutlineElement, Shape } from '../outline/shape.ts';
 import { shapeRadius } from '../outline/shapeRadius.ts';
+import type { Fields } from '../reading/tableShelf.ts';
 import type { Design } from '../score/design.ts';
-import type { Judge } from '../score/judge.ts';
+import type { Judge, Judgement } from '../score/judge.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
 import type { ShopReport } from '../shop/inspect.ts';
 import { inspectOutline } from '../shop/inspect.ts';
@@ -21,22 +22,46 @@ export interface FinishResult {
   designs: Design[];
 }
 
+/** Two judges of the same fineness: one of the fields that lead the search, one of the others. */
+export interface FinishingJudges {
+  judge: Judge;
+  otherJudge: Judge;
+  fields: Fields;
+}
+
 /** Turns candidates into what the shop gets, and judges exactly that: the points as they stand in the files. */
-export function finish(job: FinishJob, judge: Judge, space: SearchSpace): FinishResult {
+export function finish(
+  job: FinishJob,
+  { judge, otherJudge, fields }: FinishingJudges,
+  space: SearchSpace,
+): FinishResult {
   return {
     designs: job.candidates.map(({ variant: id, vector }) => {
       const variant = space.variants.find((one) => one.id === id) as Variant;
       const drawn = drawCandidate(judge, space, variant, vector) as { shape: Shape; distanceM: number };
       const elements = toPoints(drawn.shape, judge.kappa(drawn.distanceM));
+      const judged = judge.scoreOutline(elements, drawn.distanceM, drawn.shape);
+      const other = otherJudge.scoreOutline(elements, drawn.distanceM, drawn.shape);
       return {
         family: variant.family,
         distanceM: drawn.distanceM,
         elements,
-        scores: judge.scoreOutline(elements, drawn.distanceM, drawn.shape).scores,
+        scores: judged.scores,
+        fields,
+        otherFields: { worst: other.scores.correction.worst, difference: largestDifference(judged, other) },
         shop: askShop(elements, judge.task.shop),
       };
     }),
   };
+}
+
+/** Largest difference of a reading between two judgements of the same places, over gain and extinction. */
+function largestDifference(judged: Judgement, other: Judgement): number {
+  const difference = judged.ratios.reduce(
+    (most, ratio, i) => Math.max(most, Math.abs(ratio - other.ratios[i])),
+    0,
+  );
+  return difference / judged.scores.gain;
 }
 
 /** The shop's word on an outline; without a shop everything fits. */

@@ -1,8 +1,11 @@
 import type { Variant } from '../outline/families/family.ts';
+import type { Fields } from '../reading/tableShelf.ts';
+import { leadingFields } from '../score/farZoneError.ts';
 import { Judge, REPORT_FINENESS, SEARCH_FINENESS } from '../score/judge.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
 import { searchSpace } from '../score/searchSpace.ts';
 import { explore } from './explore.ts';
+import type { FinishingJudges } from './finish.ts';
 import { finish } from './finish.ts';
 import type { Job, Orders, ResultOf } from './messages.ts';
 
@@ -10,13 +13,15 @@ import type { Job, Orders, ResultOf } from './messages.ts';
 export class Workshop {
   readonly #orders: Orders;
   readonly #judge: Judge;
-  /** Made when the first design is to be finished: it solves more wavelengths. */
-  #fineJudge: Judge | null = null;
+  readonly #fields: Fields;
+  /** Made when the first design is to be finished: they solve more wavelengths. */
+  #fine: FinishingJudges | null = null;
   readonly #space: SearchSpace;
 
   constructor(orders: Orders) {
     this.#orders = orders;
-    this.#judge = new Judge(orders.task, SEARCH_FINENESS);
+    this.#fields = leadingFields(orders.task);
+    this.#judge = new Judge(orders.task, SEARCH_FINENESS, this.#fields);
     this.#space = searchSpace(orders.task, orders.families, this.#judge);
   }
 
@@ -27,7 +32,11 @@ export class Workshop {
 
   do<J extends Job>(job: J): ResultOf<J> {
     if (job.kind === 'explore') return explore(job, this.#judge, this.#space) as ResultOf<J>;
-    this.#fineJudge ??= new Judge(this.#orders.task, REPORT_FINENESS);
-    return finish(job, this.#fineJudge, this.#space) as ResultOf<J>;
+    this.#fine ??= {
+      judge: new Judge(this.#orders.task, REPORT_FINENESS, this.#fields),
+      otherJudge: new Judge(this.#orders.task, REPORT_FINENESS, this.#fields === 'far' ? 'exact' : 'far'),
+      fields: this.#fields,
+    };
+    return finish(job, this.#fine, this.#space) as ResultOf<J>;
   }
 }

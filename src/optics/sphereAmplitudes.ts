@@ -1,8 +1,8 @@
-import { RimwrightError } from '../base/errors.ts';
 import { chebyshevFit, chebyshevFour, chebyshevPairs } from '../numeric/chebyshev.ts';
 import type { IndexModel } from './indexModel.ts';
 import { refractiveIndex } from './indexModel.ts';
 import { forwardAmplitude, scatteringAmplitudes } from './mieAmplitudes.ts';
+import type { MieCoefficients } from './mieCoefficients.ts';
 import { mieCoefficients } from './mieCoefficients.ts';
 import type { Particle } from './particle.ts';
 
@@ -23,6 +23,8 @@ export interface SphereAmplitudes {
   /** Chebyshev series in cosθ over [cosLimit, 1] of S1re, S1im, S2re, S2im. */
   series: Float64Array;
   terms: number;
+  /** What the amplitudes follow from, where they were computed here. */
+  coefficients?: MieCoefficients;
 }
 
 /**
@@ -46,7 +48,7 @@ export function sphereAmplitudes(
   const cosLimit = Math.cos(halfAngle);
   const sample = (cosTheta: number, out: Float64Array) =>
     scatteringAmplitudes(coefficients, cosTheta, out, 0);
-  const { series, terms } = fitSeries(sample, cosLimit, coefficients.order + 1);
+  const { series, terms } = fitAmplitudes(sample, cosLimit, coefficients);
   return {
     wavenumber,
     sizeParameter,
@@ -56,6 +58,7 @@ export function sphereAmplitudes(
     cosLimit,
     series,
     terms,
+    coefficients,
   };
 }
 
@@ -77,26 +80,34 @@ export function amplitudesBeside(
   chebyshevPairs(sphere.series, sphere.terms, (cosRe - middle) / half, cosIm / half, out);
 }
 
-/** Doubles the number of terms until the last ones carry nothing; the amplitudes are polynomials in cosθ of degree `most` − 1. */
-function fitSeries(sample: (x: number, out: Float64Array) => void, low: number, most: number) {
-  for (let count = Math.min(16, most); ; count = Math.min(2 * count, most)) {
-    const series = chebyshevFit(sample, 4, low, 1, count);
-    const terms = usefulTerms(series, count);
-    if (terms < count || count === most) return { series: series.slice(0, terms * 4), terms };
-    if (count > 40_000) throw new RimwrightError('machine', 'the amplitudes of a sphere did not settle');
+/**
+ * Chebyshev series in cosθ over [low, 1] of four amplitudes, as long as it takes for the last terms to carry nothing.
+ *
+ * @param sample writes S1re, S1im, S2re, S2im at cosθ
+ */
+export function fitAmplitudes(
+  sample: (cosTheta: number, out: Float64Array) => void,
+  low: number,
+  { order, x }: MieCoefficients,
+): { series: Float64Array; terms: number } {
+  // Amplitudes are polynomials in cosθ of degree `order` at most; near fields double that.
+  const most = 2 * order + 3;
+  // They vary as e^{±ixθ} over the cone, and a rounded cosθ shows in them as 1e-17 x².
+  const swing = x * Math.sqrt(1 - low);
+  const tolerance = 1e-13 + 3e-17 * x * x;
+  for (let count = Math.ceil(swing + 8 * Math.cbrt(swing) + 14); ; count = Math.ceil(1.5 * count)) {
+    const tried = Math.min(count, most);
+    const series = chebyshevFit(sample, 4, low, 1, tried);
+    const terms = usefulTerms(series, tried, tolerance);
+    // Two spare terms show that the tail has really been reached.
+    if (terms + 2 <= tried || tried === most) return { series: series.slice(0, terms * 4), terms };
   }
 }
 
-/** Number of terms before all further ones fall below 1e-13 of the largest. */
-function usefulTerms(series: Float64Array, count: number): number {
-  let largest = 0;
-  for (const value of series) largest = Math.max(largest, Math.abs(value));
-  let terms = count;
-  while (terms > 1) {
-    const last = series.subarray((terms - 1) * 4, terms * 4);
-    if (last.some((value) => Math.abs(value) > 1e-13 * largest)) break;
-    terms--;
-  }
-  // Two spare terms show that the tail has really been reached.
-  return Math.min(count, terms + 2);
+/** Number of terms before all further ones fall below the tolerance, relative to the largest. */
+function usefulTerms(series: Float64Array, count: number, tolerance: number): number {
+  const largest = series.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
+  let length = count * 4;
+  while (length > 4 && Math.abs(series[length - 1]) < tolerance * largest) length--;
+  return Math.ceil(length / 4);
 }

@@ -7,7 +7,7 @@ import { FIELD_NUMBERS, scatteredField } from '../optics/scatteredField.ts';
 export type ExactFluxSampler = (s: number, out: Float64Array) => void;
 
 /** Ex and Hy over the detector plane at azimuths 0° and 90°, as Ex0, Hy0, Ex90, Hy90, each re, im. */
-const PLANE_NUMBERS = 8;
+export const PLANE_NUMBERS = 8;
 
 /**
  * The four numbers of `fluxDensity` from the exact fields of the sphere, radial parts included: right at any distance at
@@ -82,7 +82,7 @@ function versineAt(distanceM: number, s: number): number {
 }
 
 /** Turns the spherical components to Ex and Hy, without P. At other azimuths they mix with cos²φ and sin²φ, and so does their flux. */
-function planeFields(
+export function planeFields(
   coefficients: MieCoefficients,
   kz: number,
   versine: number,
@@ -160,7 +160,7 @@ function halves(series: Float64Array, terms: number, from: number): Float64Array
   );
 }
 
-function checkDistance({ x }: MieCoefficients, wavenumber: number, distanceM: number): void {
+export function checkDistance({ x }: MieCoefficients, wavenumber: number, distanceM: number): void {
   if (wavenumber * distanceM > x) return;
   const expected = `more than the sphere's radius, ${x / wavenumber} m`;
   throw inputError([{ key: 'distanceM', found: `${distanceM} m`, expected }]);

@@ -1,6 +1,10 @@
 import type { RadialTable } from './radialTable.ts';
+import { nearAmplitudes } from './nearAmplitudes.ts';
 import { buildRadialTable } from './radialTable.ts';
 import type { Scenario } from './scenario.ts';
+
+/** Which fields of the sphere a reading is computed from: those of its far zone, or the exact ones at the detector's distance. */
+export type Fields = 'far' | 'exact';
 
 /** Numbers that all tables together may hold: 256 MB. */
 const CAPACITY = 32_000_000;
@@ -12,12 +16,14 @@ const CAPACITY = 32_000_000;
 export class TableShelf {
   readonly #scenarios: readonly Scenario[];
   readonly #spreadM: number;
+  readonly #fields: Fields;
   readonly #held = new Map<number, { radiusM: number; tables: RadialTable[]; size: number }>();
   #size = 0;
 
-  constructor(scenarios: readonly Scenario[], spreadM: number) {
+  constructor(scenarios: readonly Scenario[], spreadM: number, fields: Fields = 'far') {
     this.#scenarios = scenarios;
     this.#spreadM = spreadM;
+    this.#fields = fields;
   }
 
   /** One table a scenario, in their order, good to at least `radiusM` from the particle's axis. */
@@ -32,7 +38,7 @@ export class TableShelf {
     // Some room to grow spares a rebuild for every slightly larger outline.
     const reach = radiusM * 1.3;
     const tables = this.#scenarios.map((scenario) =>
-      buildRadialTable(scenario, distanceM, reach, this.#spreadM),
+      buildRadialTable(this.#seenFrom(scenario, distanceM), distanceM, reach, this.#spreadM),
     );
     const size = tables.reduce((sum, { mean, twofold }) => sum + mean.length + (twofold?.length ?? 0), 0);
     this.#held.set(distanceM, { radiusM: reach, tables, size });
@@ -42,6 +48,15 @@ export class TableShelf {
       this.#drop(oldest, its);
     }
     return tables;
+  }
+
+  #seenFrom(scenario: Scenario, distanceM: number): Scenario {
+    if (this.#fields === 'far') return scenario;
+    const colours = scenario.colours.map(({ weight, sphere }) => ({
+      weight,
+      sphere: nearAmplitudes(sphere, distanceM),
+    }));
+    return { ...scenario, colours };
   }
 
   #drop(distanceM: number, size: number): void {

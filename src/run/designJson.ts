@@ -1,5 +1,6 @@
 import type { FamilyName } from '../outline/families/family.ts';
 import type { OutlineElement } from '../outline/shape.ts';
+import type { Fields } from '../reading/tableShelf.ts';
 import type { Scores } from '../score/scores.ts';
 import type { RankedDesign } from './ranking.ts';
 
@@ -9,6 +10,9 @@ export interface DesignJson {
   family: FamilyName | 'given';
   distance_m: number;
   elements: { weight: number; rings_mm: [x: number, y: number][][] }[];
+  /** Fields of the sphere behind the scores, and what the others make of the design. */
+  fields: Fields;
+  otherFields?: { worst: number; difference: number };
   scores: Scores & { shop: { fits: boolean; notes: readonly string[] } };
   /** 1 is the front. */
   rank: number;
@@ -20,12 +24,14 @@ const DECIMALS = 6;
 
 /** The plain form of a design: what front.json and a design's own file hold. */
 export function designToJson(design: RankedDesign): DesignJson {
-  const { id, family, distanceM, elements, scores, shop, rank, meetsTarget } = design;
+  const { id, family, distanceM, elements, scores, fields, otherFields, shop, rank, meetsTarget } = design;
   return {
     id,
     family,
     distance_m: distanceM,
     elements: elements.map(elementToJson),
+    fields,
+    ...(otherFields && { otherFields }),
     scores: { ...scores, shop: { fits: shop.fits, notes: shop.notes } },
     rank,
     meetsTarget,

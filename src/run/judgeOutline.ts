@@ -2,6 +2,7 @@ import { inputError } from '../base/errors.ts';
 import { formatQuantity } from '../base/quantity.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
 import { ringsRadius } from '../outline/area.ts';
+import type { Fields } from '../reading/tableShelf.ts';
 import { Judge, REPORT_FINENESS } from '../score/judge.ts';
 import type { Task } from '../score/task.ts';
 import type { GivenDesign } from './givenDesign.ts';
@@ -16,6 +17,7 @@ const MOST_READINGS = 3e7;
 /** An outline at a distance, with a judge made for it. */
 export interface OutlineJudge {
   judge: Judge;
+  fields: Fields;
   distanceM: number;
   /** Largest distance of any vertex from the axis, metres. */
   radiusM: number;
@@ -26,6 +28,7 @@ export interface OutlineJudge {
  *
  * @param distanceM in place of the outline's own or the brief's
  * @param place the one place of the particle that will be asked for, metres; null for all that the brief allows
+ * @param fields of the sphere: the far zone's, or the exact ones
  * @throws RimwrightError `input` where no distance is given, or the geometry is out of reach of the far-zone form or of
  *   this machine's memory
  */
@@ -34,6 +37,7 @@ export function judgeOutline(
   given: GivenDesign,
   distanceM: number | null,
   place: readonly [x: number, y: number] | null = null,
+  fields: Fields = 'far',
 ): OutlineJudge {
   const distance = chooseDistance(task, given, distanceM);
   const radiusM = ringsRadius(given.elements.flatMap(({ rings }) => rings));
@@ -44,7 +48,7 @@ export function judgeOutline(
   };
   checkGeometry(around, given.file);
   checkEffort(around, place === null, given.file);
-  return { judge: new Judge(around, REPORT_FINENESS), distanceM: distance, radiusM };
+  return { judge: new Judge(around, REPORT_FINENESS, fields), fields, distanceM: distance, radiusM };
 }
 
 function chooseDistance({ detector }: Task, given: GivenDesign, chosen: number | null): number {

@@ -19,12 +19,16 @@ export const FRONT_REACH = 4;
 /** Most designs that a front keeps. */
 const FRONT_SIZE = 24;
 
-/** Every limit of the brief that a design misses, the correction included, the worst first. */
+/**
+ * Every limit of the brief that a design misses, the correction included, the worst first. Where the far zone's fields led,
+ * the exact ones must meet the target as well.
+ */
 export function missesOf(design: Design, task: Task): Miss[] {
   const misses = missedLimits(design.scores, design.shop.misfit, task);
-  const factor = design.scores.correction.worst / task.target.correction;
+  const exactWorst = design.fields === 'far' ? (design.otherFields?.worst ?? 0) : 0;
+  const factor = Math.max(design.scores.correction.worst, exactWorst) / task.target.correction;
   if (factor > 1) misses.push({ limit: 'target.correction', factor });
-  return misses.sort((a, b) => b.factor - a.factor);
+  return misses.sort((p, q) => q.factor - p.factor);
 }
 
 /** Ranks by correction, time and radius those designs that keep every other limit, and are not far off the target. */

@@ -6,12 +6,16 @@ import type { RankedDesign } from './ranking.ts';
 import { missesOf } from './ranking.ts';
 
 /** The scores of an outline from outside, over every particle, wavelength and position of the brief. Its rank is 1 as long as it stands alone. */
-export function scoreGiven(task: Task, given: GivenDesign, { judge, distanceM }: OutlineJudge): RankedDesign {
+export function scoreGiven(
+  task: Task,
+  given: GivenDesign,
+  { judge, distanceM, fields }: OutlineJudge,
+): RankedDesign {
   const { id, family, elements } = given;
   const { scores } = judge.scoreOutline(elements, distanceM);
   const shop =
     task.shop === null ? { fits: true, notes: [], misfit: 0 } : inspectOutline(elements, task.shop);
-  const design = { family, distanceM, elements, scores, shop };
+  const design = { family, distanceM, elements, scores, fields, shop };
   return { ...design, id, rank: 1, meetsTarget: missesOf(design, task).length === 0 };
 }
 

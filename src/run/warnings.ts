@@ -1,29 +1,39 @@
 import { formatQuantity } from '../base/quantity.ts';
-import { refractiveIndex } from '../optics/indexModel.ts';
+import type { Design } from '../score/design.ts';
+import { farZoneError } from '../score/farZoneError.ts';
 import type { Task } from '../score/task.ts';
 
 /** Share of the target correction from which the far-zone form's own error is worth a word. */
 const WORTH_SAYING = 0.1;
 
 /**
- * What the far-zone form leaves out: its phase errs by about k(d/2)²/(2z), and readings by about as much of the extinction.
+ * What the far-zone form leaves out at a distance (see `farZoneError`).
  *
- * @param distancesM distances of the designs in question
- * @returns a warning where that exceeds a tenth of the target correction for any particle, else null
+ * @returns a warning where that exceeds a tenth of the target correction, else null
  */
-export function farZoneWarning(task: Task, distancesM: readonly number[]): string | null {
-  const { light, medium, particles, placement, target } = task;
-  const distanceM = Math.min(...distancesM);
-  const nearestM = distanceM - placement.depthM;
-  const diameterM = Math.max(...particles.map((particle) => particle.diameterM));
-  const index = refractiveIndex(medium, light.wavelengthM)[0];
-  const wavenumber = (2 * Math.PI * index) / light.wavelengthM;
-  const phase = (wavenumber * (diameterM / 2) ** 2) / (2 * nearestM);
-  if (phase <= WORTH_SAYING * target.correction) return null;
+export function farZoneWarning(task: Task, distanceM: number): string | null {
+  const error = farZoneError(task, distanceM);
+  if (error <= WORTH_SAYING * task.target.correction) return null;
+  const diameterM = Math.max(...task.particles.map((particle) => particle.diameterM));
   const particle = `particles of ${formatQuantity(diameterM, 'length', 3)} at ${formatQuantity(distanceM, 'length', 3)}`;
-  const error = formatQuantity(phase, 'ratio', 2);
-  const allowed = formatQuantity(target.correction, 'ratio', 3);
-  return `The far-zone form may be off by about ${error} of the extinction for ${particle}, and the target allows ${allowed}`;
+  const about = formatQuantity(error, 'ratio', 2);
+  const allowed = formatQuantity(task.target.correction, 'ratio', 3);
+  return `The far-zone form may be off by about ${about} of the extinction for ${particle}, and the target allows ${allowed}: --exact tells`;
+}
+
+/**
+ * How far the far zone's fields and the exact ones are apart for designs that were judged by both.
+ *
+ * @returns a warning where that exceeds a tenth of the target correction for any of them, else null
+ */
+export function fieldsWarning(task: Task, designs: readonly Design[]): string | null {
+  const difference = Math.max(0, ...designs.map(({ otherFields }) => otherFields?.difference ?? 0));
+  if (difference <= WORTH_SAYING * task.target.correction) return null;
+  const leading =
+    designs[0].fields === 'far'
+      ? 'the far zone, and the exact ones meet the target where it is said to be met'
+      : 'the exact solution';
+  return `Far-zone and exact fields differ by up to ${formatQuantity(difference, 'ratio', 2)} of the extinction for these designs. Scores are of ${leading}`;
 }
 
 /** Where a distance in use lies outside of those that the brief allows. */

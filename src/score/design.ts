@@ -1,5 +1,6 @@
 import type { FamilyName } from '../outline/families/family.ts';
 import type { OutlineElement } from '../outline/shape.ts';
+import type { Fields } from '../reading/tableShelf.ts';
 import type { ShopReport } from '../shop/inspect.ts';
 import type { Scores } from './scores.ts';
 
@@ -9,5 +10,12 @@ export interface Design {
   distanceM: number;
   elements: readonly OutlineElement[];
   scores: Scores;
+  /** Which fields of the sphere the scores were computed from. */
+  fields: Fields;
+  /**
+   * The same design judged by the other fields, where that was done: the worst correction then, and the largest difference
+   * of a reading between the two, over gain and extinction.
+   */
+  otherFields?: { worst: number; difference: number };
   shop: ShopReport;
 }

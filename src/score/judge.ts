@@ -12,6 +12,7 @@ import type { Symmetry } from '../reading/positions.ts';
 import { flightPoints, samplePositions } from '../reading/positions.ts';
 import type { Scenario } from '../reading/scenario.ts';
 import { buildScenarios, driftedWavelengths } from '../reading/scenario.ts';
+import type { Fields } from '../reading/tableShelf.ts';
 import { TableShelf } from '../reading/tableShelf.ts';
 import { correctionOf } from './correction.ts';
 import type { ElementArea } from './cost.ts';
@@ -59,12 +60,13 @@ export class Judge {
   readonly #leastExtinctionM2: number;
   readonly #largestDiameterM: number;
 
-  constructor(task: Task, fineness: Fineness) {
+  /** @param fields those of the far zone, or the exact ones: see `farZoneError` for when that matters */
+  constructor(task: Task, fineness: Fineness, fields: Fields = 'far') {
     this.task = task;
     this.#fineness = fineness;
     this.wavelengthM = task.light.wavelengthM / refractiveIndex(task.medium, task.light.wavelengthM)[0];
     this.scenarios = scenariosOf(task, fineness.drifts);
-    this.#shelf = new TableShelf(this.scenarios, task.placement.spreadM);
+    this.#shelf = new TableShelf(this.scenarios, task.placement.spreadM, fields);
     this.#leastExtinctionM2 = Math.min(...this.scenarios.map(({ extinctionM2 }) => extinctionM2));
     this.#largestDiameterM = Math.max(...task.particles.map(({ diameterM }) => diameterM));
   }

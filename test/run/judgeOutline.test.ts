@@ -99,19 +99,19 @@ describe('rankGiven', () => {
 });
 
 describe('farZoneWarning', () => {
-  it('speaks where k(d/2)²/(2z) exceeds a tenth of the target', () => {
+  it('speaks where half of k(d/2)²/(2z) exceeds a tenth of the target', () => {
     // k(d/2)²/(2z) = 2π/635 nm · (1 µm)² / (2 · 20 mm) = 2.474e-4 for a sphere of 2 µm.
     const target = (correction: number) => ({ ...TASK, target: { ...TASK.target, correction } });
-    expect(farZoneWarning(target(2.475e-3), [0.02])).toBeNull();
-    expect(farZoneWarning(target(2.473e-3), [0.02])).toContain('by about 0.025 % of the extinction');
-    expect(farZoneWarning(target(2.475e-3), [0.04, 0.019, 0.03])).toContain('particles of 2 µm at 19 mm');
-    const water = { ...target(2.475e-3), medium: constantIndex(1.33) };
-    expect(farZoneWarning(water, [0.02])).not.toBeNull();
+    expect(farZoneWarning(target(1.238e-3), 0.02)).toBeNull();
+    expect(farZoneWarning(target(1.236e-3), 0.02)).toContain('by about 0.012 % of the extinction');
+    expect(farZoneWarning(target(1.238e-3), 0.019)).toContain('particles of 2 µm at 19 mm');
+    const water = { ...target(1.238e-3), medium: constantIndex(1.33) };
+    expect(farZoneWarning(water, 0.02)).not.toBeNull();
     const mixed = {
       ...target(0.01),
-      particles: [...TASK.particles, { ...TASK.particles[0], diameterM: 9e-6 }],
+      particles: [...TASK.particles, { ...TASK.particles[0], diameterM: 13e-6 }],
     };
-    expect(farZoneWarning(mixed, [0.02])).toContain('particles of 9 µm');
+    expect(farZoneWarning(mixed, 0.02)).toContain('particles of 13 µm');
   });
 
   it('stands beside a warning for a distance that the brief does not allow', () => {

@@ -18,6 +18,7 @@ const DESIGN: RankedDesign = {
     radius_m: 1e-4,
     areaOverFloor: 1.2,
   },
+  fields: 'far',
   shop: { fits: true, notes: [], misfit: 0 },
   rank: 1,
   meetsTarget: true,
