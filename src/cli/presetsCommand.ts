@@ -1,10 +1,11 @@
+import type { Shelf } from '../base/presetFiles.ts';
+import { presetNames, presetText, SHELVES } from '../base/presetFiles.ts';
 import { presetsFolder } from '../base/presetsFolder.ts';
 import { formatQuantity } from '../base/quantity.ts';
 import { wrapText } from '../draw/plainText.ts';
 import { listIndexModels } from '../optics/shelf.ts';
 import { jsonText } from '../run/jsonText.ts';
-import type { Shelf } from '../run/presetShelf.ts';
-import { listBriefs, presetNames, presetText, SHELVES } from '../run/presetShelf.ts';
+import { listBriefs } from '../run/presetShelf.ts';
 import { listShops } from '../shop/shelf.ts';
 import { coloursFor } from './colour.ts';
 import { EXIT } from './exit.ts';
@@ -29,7 +30,7 @@ export async function run(
   const folder = presetsFolder();
   const shelf = shelfName === undefined ? undefined : oneOf('presets', SHELVES)(shelfName);
   if (shelf !== undefined && name !== undefined) {
-    print(presetText(shelf, oneOf(`presets ${shelf}`, presetNames(shelf, folder))(name), folder));
+    print(presetText(shelf, oneOf(`presets ${shelf}`, presetNames(shelf, folder))(name), folder).text);
     return EXIT.done;
   }
   const shelves = shelf === undefined ? SHELVES : [shelf];

@@ -5,8 +5,8 @@ import type { Aim } from '../score/aim.ts';
 import type { Judge } from '../score/judge.ts';
 import { leastRadialMask, maskRims } from '../score/radialMask.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
-import { CmaEs } from '../search/cmaEs.ts';
 import { nelderMead } from '../search/nelderMead.ts';
+import { RestartedCma } from '../search/restartedCma.ts';
 import type { Candidate } from './candidate.ts';
 import { distanceAt } from './candidate.ts';
 import { descend } from './descend.ts';
@@ -45,6 +45,9 @@ export interface ExploreResult {
 /** Share of a budget that evolution leaves to the descent after it. */
 const DESCENT_SHARE = 0.2;
 
+/** Differences in the logarithm of what is made small below this are not worth a generation: the descent finds them. */
+const LEAST_GAIN = 1e-4;
+
 /** Does one job within its budget. */
 export function explore(job: ExploreJob, judge: Judge, space: SearchSpace): ExploreResult {
   const variant = space.variants.find(({ id }) => id === job.variant) as Variant;
@@ -65,30 +68,21 @@ function glance(trials: Trials, random: RandomSource): void {
   }
 }
 
-/** CMA-ES from one start after the other until its share is spent; a descent sharpens the best. */
+/** CMA-ES with restarts until its share is spent; a descent sharpens the best. */
 function evolve(trials: Trials, random: RandomSource): void {
-  const box = boxOf(trials);
-  const reserve = Math.floor(trials.left * DESCENT_SHARE);
-  while (trials.left > reserve) {
-    const { start, scales } = drawStart(trials, random);
-    const cma = new CmaEs({
-      start,
-      sigma: 1,
-      scale: scales,
-      ...box,
-      random,
-      maxEvaluations: trials.left - reserve,
-    });
-    while (cma.stopReason() === undefined) {
-      // The last generation may be larger than what is left; the budget is a promise to the user.
-      const tryOrPass = (point: Float64Array) =>
-        trials.left > 0 ? trials.try(point).value : Number.POSITIVE_INFINITY;
-      cma.tell(cma.ask().map(tryOrPass));
-    }
-  }
-  if (trials.best && trials.left > 0) {
-    descend(trials, Float64Array.from(trials.best.candidate.vector), drawStart(trials, random).scales);
-  }
+  const { start, scales } = drawStart(trials, random);
+  const budget = trials.left - Math.floor(trials.left * DESCENT_SHARE);
+  const cma = new RestartedCma({
+    nextStart: (source, run) => ({ start: run === 0 ? start : drawStart(trials, source).start, sigma: 1 }),
+    budget,
+    random,
+    ...boxOf(trials),
+    scale: scales,
+    tolFun: LEAST_GAIN,
+  });
+  while (!cma.done) cma.tell(cma.ask().map((point) => trials.try(point).value));
+  const { best } = trials;
+  if (best && trials.left > 0) descend(trials, Float64Array.from(best.candidate.vector), scales);
 }
 
 /** A descent from the rings of the least radial mask, for a variant that draws as many rims. */

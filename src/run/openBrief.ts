@@ -1,10 +1,10 @@
 import { existsSync } from 'node:fs';
 import { inputError } from '../base/errors.ts';
 import { nearestName } from '../base/nearestName.ts';
+import { presetNames, presetText } from '../base/presetFiles.ts';
 import { presetsFolder } from '../base/presetsFolder.ts';
 import { MAX_YAML_BYTES } from '../base/yamlFile.ts';
 import type { Brief } from './brief.ts';
-import { presetNames, presetText } from './presetShelf.ts';
 import { readBrief } from './readBrief.ts';
 import { readTextFile } from './readTextFile.ts';
 
@@ -36,7 +36,7 @@ export async function openBrief(place: string, overrides: SearchOverrides = {}):
 function briefText(place: string, presets: string): string {
   if (existsSync(place)) return readTextFile(place, MAX_YAML_BYTES);
   const names = presetNames('briefs', presets);
-  if (names.includes(place)) return presetText('briefs', place, presets);
+  if (names.includes(place)) return presetText('briefs', place, presets).text;
   const nearest = nearestName(place, names);
   const hint = nearest === undefined ? '' : ` (did you mean ${nearest}?)`;
   const expected = `a brief's path, or one of the briefs on the shelf: ${names.join(', ')}${hint}`;

@@ -1,7 +1,4 @@
-import { readdirSync, readFileSync } from 'node:fs';
-import { join } from 'node:path';
-import { inputError, RimwrightError } from '../base/errors.ts';
-import { nearestName } from '../base/nearestName.ts';
+import { presetNames, presetText } from '../base/presetFiles.ts';
 import { readShopPreset } from './shopPreset.ts';
 import type { ShopRules } from './shopRules.ts';
 
@@ -13,14 +10,6 @@ import type { ShopRules } from './shopRules.ts';
  *   cannot be read
  */
 export function loadShop(name: string, presetsFolder: string): ShopRules {
-  const names = namesOf(presetsFolder);
-  // Only names that were found on the shelf become a path: `../secret` is just an unknown name.
-  if (!names.includes(name)) {
-    const nearest = nearestName(name, names);
-    const hint = nearest === undefined ? '' : ` (did you mean ${nearest}?)`;
-    const expected = `one of the shops on the shelf: ${names.join(', ')}${hint}`;
-    throw inputError([{ found: JSON.stringify(name), expected }]);
-  }
   return readShop(name, presetsFolder);
 }
 
@@ -30,27 +19,10 @@ export function loadShop(name: string, presetsFolder: string): ShopRules {
  * @throws RimwrightError as `loadShop`
  */
 export function listShops(presetsFolder: string): ShopRules[] {
-  return namesOf(presetsFolder).map((name) => readShop(name, presetsFolder));
+  return presetNames('shops', presetsFolder).map((name) => readShop(name, presetsFolder));
 }
 
 function readShop(name: string, presetsFolder: string): ShopRules {
-  const file = join(presetsFolder, 'shops', `${name}.yaml`);
-  const text = fromDisk(file, () => readFileSync(file, 'utf8'));
+  const { text, file } = presetText('shops', name, presetsFolder);
   return readShopPreset(name, text, file);
-}
-
-function namesOf(presetsFolder: string): string[] {
-  const folder = join(presetsFolder, 'shops');
-  return fromDisk(folder, () => readdirSync(folder))
-    .filter((file) => file.endsWith('.yaml'))
-    .map((file) => file.slice(0, -'.yaml'.length))
-    .sort();
-}
-
-function fromDisk<T>(path: string, read: () => T): T {
-  try {
-    return read();
-  } catch (cause) {
-    throw new RimwrightError('machine', `cannot read ${path}: ${(cause as Error).message}`);
-  }
 }

@@ -2,8 +2,8 @@ import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { describe, expect, it } from 'vitest';
+import { presetNames } from '../../src/base/presetFiles.ts';
 import { presetsFolder } from '../../src/base/presetsFolder.ts';
-import { presetNames } from '../../src/run/presetShelf.ts';
 import { folderWith, runCli, runHere, SQUARE } from './runCli.ts';
 
 const BROKEN = fileURLToPath(new URL('../broken/', import.meta.url));

@@ -2,9 +2,10 @@ import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { describe, expect, it, onTestFinished } from 'vitest';
+import { presetNames, SHELVES } from '../../src/base/presetFiles.ts';
 import { presetsFolder } from '../../src/base/presetsFolder.ts';
 import { openBrief } from '../../src/run/openBrief.ts';
-import { listBriefs, presetNames, SHELVES } from '../../src/run/presetShelf.ts';
+import { listBriefs } from '../../src/run/presetShelf.ts';
 
 describe('openBrief', () => {
   it('takes a path, else a name on the shelf', async () => {
