@@ -8,7 +8,7 @@ import type { QuadratureRule } from './gaussLegendre.ts';
  * @param reach in standard deviations; 7 leaves out 3e-12
  */
 export function evenNormal(count: number, reach: number): QuadratureRule {
-  const nodes = Float64Array.from({ length: count }, (_, i) => reach * ((2 * i) / (count - 1) - 1));
+  const nodes = Float64Array.from({ length: count }, (_, i) => (reach * (2 * i + 1 - count)) / (count - 1));
   const weights = nodes.map((node) => Math.exp((-node * node) / 2));
   const total = weights.reduce((sum, weight) => sum + weight, 0);
   return { nodes, weights: weights.map((weight) => weight / total) };

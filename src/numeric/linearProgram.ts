@@ -1,5 +1,8 @@
+import { RimwrightError } from '../base/errors.ts';
+
 /** Outcome of a linear program. */
 export interface LinearSolution {
+  /** The solution, or where it has not converged the last step before it failed; always finite. */
   x: Float64Array;
   /** Whether the optimality conditions hold to the tolerance. */
   converged: boolean;
@@ -12,10 +15,13 @@ const TOLERANCE = 1e-9;
  * Minimises c·x under A x ≤ b, for a dozen unknowns and hundreds of dense rows.
  *
  * Mehrotra's predictor–corrector interior-point method (Mehrotra 1992, SIAM J. Optim. 2, 575). Bounds are rows like any
- * other. The feasible set must be bounded in the direction of −c.
+ * other. The feasible set must be bounded in the direction of −c: without that, or without any feasible point, it does not
+ * converge, and it may not where that set has no inside (an equation as two rows). Tolerances are absolute: scale unknowns and
+ * costs to about 1.
  *
  * @param a rows × n matrix, row by row
- * @param start inside or near the feasible set
+ * @param start any point; better inside or near the feasible set
+ * @throws RimwrightError `machine` where a number that comes in is not finite
  */
 export function linearProgram(
   c: Float64Array,
@@ -23,9 +29,12 @@ export function linearProgram(
   b: Float64Array,
   start: Float64Array,
 ): LinearSolution {
+  if (![c, a, b, start].every((values) => values.every(Number.isFinite))) {
+    throw new RimwrightError('machine', 'linearProgram: a cost, row, bound or start is not finite');
+  }
   const n = c.length;
   const rows = b.length;
-  const x = start.slice();
+  let x = start.slice();
   const slack = new Float64Array(rows);
   const dual = new Float64Array(rows).fill(1);
   for (let i = 0; i < rows; i++) slack[i] = Math.max(b[i] - rowTimes(a, i, n, x), 1e-2);
@@ -60,7 +69,9 @@ export function linearProgram(
     direction(matrix, a, dualGap, primalGap, centring, slack, dual, dx, dSlack, dDual);
     const primalStep = 0.995 * largestStep(slack, dSlack);
     const dualStep = 0.995 * largestStep(dual, dDual);
-    for (let j = 0; j < n; j++) x[j] += primalStep * dx[j];
+    const next = x.map((value, j) => value + primalStep * dx[j]);
+    if (!next.every(Number.isFinite)) return { x, converged: false };
+    x = next;
     for (let i = 0; i < rows; i++) {
       slack[i] += primalStep * dSlack[i];
       dual[i] += dualStep * dDual[i];

@@ -78,7 +78,7 @@ const RESONANCE_STEP = 0.02;
 const MOST_FOR_RESONANCES = 64;
 
 /**
- * Colours of the line. A phase η spreads by η σ/λ over it: n Gauss–Hermite nodes follow cos up to about √(2n) − 1, and
+ * Colours of the line. A phase η spreads by η σ/λ over it: n Gauss–Hermite nodes follow cos up to about √n − 1, and
  * for wide spreads evenly spaced ones are fewer. Beyond CANCELLED no colours need to be told apart: see `coherence`.
  * Where the line is wide enough for a sphere's resonances, they decide.
  */
