@@ -2,9 +2,11 @@ import type { Variant } from '../outline/families/family.ts';
 import { isDrawn } from '../outline/families/family.ts';
 import { polygonise } from '../outline/polygonise.ts';
 import type { Shape } from '../outline/shape.ts';
+import { shapeRadius } from '../outline/shapeRadius.ts';
 import type { Aim } from '../score/aim.ts';
 import { aimValue } from '../score/aim.ts';
 import type { Judge } from '../score/judge.ts';
+import { BEYOND_RADIUS } from '../score/judge.ts';
 import type { Scores } from '../score/scores.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
 import { inspectOutline } from '../shop/inspect.ts';
@@ -65,11 +67,19 @@ export function tryCandidate(
   aim: Aim,
 ): Trial {
   const drawn = drawCandidate(judge, space, variant, vector);
-  if ('misdrawnBy' in drawn) return { value: MISDRAWN + drawn.misdrawnBy, candidate: null, ratios: null };
+  const misdrawnBy = 'misdrawnBy' in drawn ? drawn.misdrawnBy : tooLargeBy(judge, drawn.shape);
+  if ('misdrawnBy' in drawn || misdrawnBy > 0) {
+    return { value: MISDRAWN + misdrawnBy, candidate: null, ratios: null };
+  }
   const { scores, ratios } = judge.scoreShape(drawn.shape, drawn.distanceM);
   const misfit = shopMisfit(judge, drawn.shape, scores, aim);
   const value = aimValue(scores, misfit, aim, judge.task);
   return { value, candidate: { variant: variant.id, vector: Array.from(vector), scores, misfit }, ratios };
+}
+
+/** How far an outline is beyond what the judge's tables reach, over the largest radius; 0 or below where it is within. */
+function tooLargeBy({ task }: Judge, shape: Shape): number {
+  return shapeRadius(shape) / task.detector.radiusM[1] - BEYOND_RADIUS;
 }
 
 function shopMisfit(judge: Judge, shape: Shape, scores: Scores, aim: Aim): number {

@@ -228,6 +228,9 @@ export class Judge {
   }
 }
 
+/** Outlines are judged up to this many times the brief's largest radius: how far beyond is what leads a search back. */
+export const BEYOND_RADIUS = 1.4;
+
 const NO_SYMMETRY: Symmetry = { folds: 1, mirror: false };
 
 /** Solves the particles of a task for the widest cone and the largest phase that its limits allow. */
@@ -235,8 +238,10 @@ function scenariosOf(task: Task, drifts: number): Scenario[] {
   const { light, medium, particles, placement, detector } = task;
   const nearestM = detector.distanceM[0] - placement.depthM;
   const spanM = placement.crossing?.spanM ?? 0;
-  // Tables are built with some room to grow (TableShelf), and the spread reaches 7.5 σ beyond them.
-  const reachM = 1.35 * (detector.radiusM[1] + placement.offsetM + spanM / 2) + 7.5 * placement.spreadM;
+  // A search tries outlines beyond the allowed radius, tables are built with some room to grow (TableShelf), and the
+  // spread reaches 7.5 σ beyond them.
+  const farthestM = BEYOND_RADIUS * detector.radiusM[1] + placement.offsetM + spanM / 2;
+  const reachM = 1.35 * farthestM + 7.5 * placement.spreadM;
   const index = refractiveIndex(medium, light.wavelengthM)[0];
   const largestPhase = (Math.PI * index * detector.radiusM[1] ** 2) / (light.wavelengthM * nearestM);
   const halfAngle = Math.min(1.5, Math.atan(reachM / nearestM) + 1e-3);
