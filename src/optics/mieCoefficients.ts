@@ -1,29 +1,18 @@
 import type { Problem } from '../base/errors.ts';
 import { inputError } from '../base/errors.ts';
+import type { MieCoefficients } from './mieModes.ts';
+import { emptyCoefficients, setCoefficient, sizeProblems, withoutTail } from './mieModes.ts';
 import { indexContrast, indexSquare } from './relativeIndex.ts';
 import { riccatiBessel } from './riccatiBessel.ts';
 import { seriesOrder } from './seriesOrder.ts';
 import { sphereInterior } from './sphereInterior.ts';
 
-/** Scattering coefficients of a sphere: a_n and b_n for n = 1 … order stand at index n − 1. */
-export interface MieCoefficients {
-  order: number;
-  aRe: Float64Array;
-  aIm: Float64Array;
-  bRe: Float64Array;
-  bIm: Float64Array;
-  /** Size parameter, 2π × radius × n_medium / vacuum wavelength. */
-  x: number;
-}
+export type { MieCoefficients } from './mieModes.ts';
 
-const LEAST_SIZE = 0.001;
-const LARGEST_SIZE = 20_000;
 const LEAST_INDEX = 0.01;
 const LARGEST_INDEX = 100;
 /** Of |m − 1|; a little below 1e-6, for what 1 + 1e-6 loses as a double. */
 const LEAST_CONTRAST = 0.999_999e-6;
-/** A term this far below the largest is dropped with all that follow. */
-const NEGLIGIBLE = 1e-18;
 
 /**
  * Mie's coefficients of a homogeneous sphere, time factor exp(−iωt) (Bohren & Huffman 1983, eq. 4.56 and 4.57).
@@ -96,48 +85,6 @@ export function mieCoefficientsConductor(x: number): MieCoefficients {
     setCoefficient(result.bRe, result.bIm, n, psi[n], 0, chi[n], 0, 0);
   }
   return withoutTail(result);
-}
-
-/**
- * Stores N/(N − iC), given Im(N C*) = −loss. Then |N − iC|² = |N|² + |C|² + 2 loss and the real part of
- * N (N − iC)* is |N|² + loss, without a difference when loss ≥ 0; loss is what the mode absorbs.
- */
-function setCoefficient(
-  re: Float64Array,
-  im: Float64Array,
-  n: number,
-  nRe: number,
-  nIm: number,
-  cRe: number,
-  cIm: number,
-  loss: number,
-): void {
-  const scattered = nRe * nRe + nIm * nIm;
-  const norm = scattered + cRe * cRe + cIm * cIm + 2 * loss;
-  re[n - 1] = (scattered + loss) / norm;
-  im[n - 1] = (nRe * cRe + nIm * cIm) / norm;
-}
-
-function emptyCoefficients(x: number, order: number): MieCoefficients {
-  const column = () => new Float64Array(order);
-  return { order, aRe: column(), aIm: column(), bRe: column(), bIm: column(), x };
-}
-
-/** Keeps the orders up to the last one that counts. */
-function withoutTail({ order, aRe, aIm, bRe, bIm, x }: MieCoefficients): MieCoefficients {
-  const size = (i: number) => (2 * i + 3) * Math.hypot(aRe[i], aIm[i], bRe[i], bIm[i]);
-  let largest = 0;
-  for (let i = 0; i < order; i++) largest = Math.max(largest, size(i));
-  let kept = order;
-  while (kept > 1 && size(kept - 1) < NEGLIGIBLE * largest) kept--;
-  const head = (column: Float64Array) => column.slice(0, kept);
-  return { order: kept, aRe: head(aRe), aIm: head(aIm), bRe: head(bRe), bIm: head(bIm), x };
-}
-
-function sizeProblems(x: number): Problem[] {
-  if (x >= LEAST_SIZE && x <= LARGEST_SIZE) return [];
-  const expected = `a size parameter from ${LEAST_SIZE} to ${LARGEST_SIZE}`;
-  return [{ key: 'x', found: String(x), expected }];
 }
 
 function indexProblems([n, k]: readonly [n: number, k: number]): Problem[] {

@@ -1,5 +1,15 @@
 import type { Problem } from '../base/errors.ts';
-import type { MieCoefficients } from './mieCoefficients.ts';
+
+/** Scattering coefficients of a sphere: a_n and b_n for n = 1 … order stand at index n − 1. */
+export interface MieCoefficients {
+  order: number;
+  aRe: Float64Array;
+  aIm: Float64Array;
+  bRe: Float64Array;
+  bIm: Float64Array;
+  /** Size parameter, 2π × radius × n_medium / vacuum wavelength. */
+  x: number;
+}
 
 const LEAST_SIZE = 0.001;
 const LARGEST_SIZE = 20_000;
