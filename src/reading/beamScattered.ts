@@ -1,0 +1,76 @@
+import type { Complex } from '../numeric/complex.ts';
+import { add, divide, multiply, scale, square, subtract } from '../numeric/complex.ts';
+import type { AmplitudeJet } from '../optics/amplitudeJet.ts';
+import { JET_NUMBERS, jetAt } from '../optics/amplitudeJet.ts';
+import type { BeamPath } from './beamPath.ts';
+import { meanPlace } from './beamPath.ts';
+
+/** q_0 … q_3 of the mean over azimuth, and q_0 of the part with cos 2φ. */
+export const SCATTERED_NUMBERS = 5;
+
+/**
+ * The scattered flux density in a focused beam, −cosθ |S|²/(kr)², over the irradiance at the particle: with ν = p·ρ and ρ
+ * counted from the shadow of a particle at p,
+ *
+ *   q_0(s) + q_1(s) ν + q_2(s) ν² + q_3(s) p²,   s = ρ².
+ *
+ * S is that of the beam, as in `BeamCrossed`. A moving particle counts where the light is; the lobes are smoothed
+ * by σ²∇²/2, to second order.
+ *
+ * @returns writes q_0 … q_3 and q_0 of the twofold part into `out` from 0 on
+ */
+export function beamScattered(
+  jet: AmplitudeJet,
+  path: BeamPath,
+  shadow: number,
+  unitM2: number,
+): (s: number, out: Float64Array) => void {
+  const { wavenumber, distanceM, spreadM, atParticle } = path;
+  const work = new Float64Array(JET_NUMBERS);
+  const mean = meanPlace(path);
+  const tilt = divide([distanceM, 0], atParticle);
+  const blur = divide([0, -1 / (2 * wavenumber)], atParticle);
+  const motion = (mean * (spreadM * (1 + tilt[0])) ** 2) / (2 * distanceM * distanceM);
+  const lag = square(divide(subtract([shadow - mean, 0], scale(tilt, mean)), [distanceM, 0]));
+  return (s, out) => {
+    const r2 = distanceM * distanceM + s;
+    const r = Math.sqrt(r2);
+    const mu = distanceM / r;
+    const sin2 = s / r2;
+    jetAt(jet, [mu, 0], work);
+    const muSlope = subtract(scale(tilt, mean), [mu * mu * (shadow - mean), 0]);
+    const delta = scale(muSlope, unitM2 / (distanceM * r));
+    // cosθ/r² is d/r³.
+    const fade = (-3 * (shadow - mean) * unitM2) / r2;
+    const weight = -mu / (2 * wavenumber * wavenumber * r2);
+    out.fill(0, 0, SCATTERED_NUMBERS);
+    for (const [at, sign] of FIELDS) {
+      const s0: Complex = [work[at], work[at + 1]];
+      const s1: Complex = [work[at + 4], work[at + 5]];
+      const s2: Complex = [work[at + 8], work[at + 9]];
+      const laplacian = subtract(scale(s2, sin2), scale(s1, 2 * mu));
+      const a0 = add(s0, multiply(blur, laplacian));
+      const a1 = multiply(s1, delta);
+      const a2 = scale(multiply(s2, square(delta)), 0.5);
+      // ∇²|S|² = 2 Re(S* ∇²S) + 2 sin²θ |S'|²
+      const smoothing = 2 * motion * (inner(s0, laplacian) + sin2 * inner(s1, s1));
+      const power = inner(a0, a0) + smoothing;
+      out[0] += weight * power;
+      out[1] += weight * (2 * inner(a0, a1) + fade * power);
+      out[2] += weight * (inner(a1, a1) + 2 * inner(a0, a2) + 2 * fade * inner(a0, a1));
+      out[3] -= weight * mu * inner(s0, multiply(s1, lag));
+      out[4] += sign * weight * power;
+    }
+  };
+}
+
+/** S1 and S2 in the jet, and their signs in the twofold part. */
+const FIELDS = [
+  [0, -1],
+  [2, 1],
+] as const;
+
+/** Re(a* b). */
+function inner(a: Complex, b: Complex): number {
+  return a[0] * b[0] + a[1] * b[1];
+}
