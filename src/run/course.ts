@@ -59,6 +59,8 @@ export async function runCourse(
   const crew = await Crew.start(options.workers, orders, options.workerEntry);
   const stop = () => void crew.dismiss();
   options.signal?.addEventListener('abort', stop, { once: true });
+  // A signal that came before, or while the crew started, tells nobody any more.
+  if (options.signal?.aborted) stop();
   try {
     const quest = { task, variants: workshop.variants, aims, ...brief.search };
     const rounds = new Rounds(quest, crew, options.onProgress ?? (() => {}));
