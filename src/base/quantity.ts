@@ -3,11 +3,14 @@ import { inputError, RimwrightError } from './errors.ts';
 /** What a quantity measures, each with the SI unit of its number (`ratio` is a bare number, angles are radians). */
 const SI_UNIT = {
   length: 'm',
+  area: 'm^2',
   angle: 'rad',
   irradiance: 'W/m^2',
   responsivity: 'A/W',
   current: 'A',
   time: 's',
+  temperature: 'K',
+  viscosity: 'Pa s',
   ratio: '',
 } as const;
 
@@ -16,15 +19,18 @@ export type Dimension = keyof typeof SI_UNIT;
 /** How errors name a quantity of each dimension, with an example. */
 const IN_WORDS: Record<Dimension, [name: string, example: string]> = {
   length: ['a length with its unit', '20 mm'],
+  area: ['an area with its unit', '12.3 um^2'],
   angle: ['an angle with its unit', '30 deg'],
   irradiance: ['an irradiance with its unit', '5 W/cm^2'],
   responsivity: ['a responsivity with its unit', '0.42 A/W'],
   current: ['a current with its unit', '2 pA'],
   time: ['a time with its unit', '1 ms'],
+  temperature: ['a temperature with its unit', '20 degC'],
+  viscosity: ['a viscosity with its unit', '1.2 mPa s'],
   ratio: ['a ratio', '1 % or 0.01'],
 };
 
-/** Reads quantities written as text, such as `635 nm`, `.5 mm`, `10 µm`, `5 W/cm^2`, `30 deg`, `1 %`. */
+/** Reads quantities written as text, such as `635 nm`, `.5 mm`, `10 µm`, `5 W/cm^2`, `30 deg`, `20 degC`, `1 %`. */
 export interface Units {
   /** The quantity in SI units, or null where the text is no finite quantity of that dimension. */
   read(text: string, dimension: Dimension): number | null;
@@ -42,7 +48,9 @@ export function quantityInWords(dimension: Dimension, example = IN_WORDS[dimensi
 }
 
 const QUANTITY = /^([+-]?(?:\d+\.?\d*|\.\d+))(?:[eE]([+-]?\d+))?\s*(.*)$/;
-const UNIT = /^[A-Za-z]+(?:\^-?\d)?(?:\s*[*/]\s*[A-Za-z]+(?:\^-?\d)?)*$/;
+const UNIT = /^[A-Za-z]+(?:\^-?\d)?(?:(?:\s*[*/]\s*|\s+)[A-Za-z]+(?:\^-?\d)?)*$/;
+/** 0 °C in kelvin. */
+const CELSIUS_ZERO_K = 273.15;
 const LONGEST_TEXT = 100;
 
 /**
@@ -58,6 +66,9 @@ export async function loadUnits(): Promise<Units> {
     const match = QUANTITY.exec(text.trim());
     if (match === null) return null;
     const [, mantissa, exponent = '0', unit] = match;
+    // The one unit whose zero is elsewhere, so that no factor turns it into SI.
+    if (dimension === 'temperature' && /^(?:deg|°)C$/.test(unit))
+      return Number(`${mantissa}e${exponent}`) + CELSIUS_ZERO_K;
     const factor = factorOf(unit, dimension);
     if (factor === null) return null;
     const value = timesFactor(mantissa, Number(exponent), factor);
@@ -125,6 +136,11 @@ const TABLE_UNITS: Record<Dimension, [unit: string, factor: number][]> = {
     ['mm', 1e-3],
     ['m', 1],
   ],
+  area: [
+    ['nm²', 1e-18],
+    ['µm²', 1e-12],
+    ['mm²', 1e-6],
+  ],
   angle: [['deg', Math.PI / 180]],
   irradiance: [['W/cm²', 1e4]],
   responsivity: [['A/W', 1]],
@@ -140,6 +156,12 @@ const TABLE_UNITS: Record<Dimension, [unit: string, factor: number][]> = {
     ['µs', 1e-6],
     ['ms', 1e-3],
     ['s', 1],
+  ],
+  temperature: [['K', 1]],
+  viscosity: [
+    ['µPa s', 1e-6],
+    ['mPa s', 1e-3],
+    ['Pa s', 1],
   ],
   ratio: [['%', 0.01]],
 };

@@ -11,6 +11,9 @@ export function scoreText(design: RankedDesign, task: Task): string {
   const scores = [
     `worst correction ${percentText(correction.worst)}`,
     `rms ${percentText(correction.rms)}`,
+    ...(correction.population === undefined
+      ? []
+      : [`mean over the sizes ${percentText(correction.population)}`]),
     `gain ${Number(gain.toPrecision(5))}`,
     `lobe ratio ${countText(lobe.ratio)}`,
     `SNR ${shortCount(snr.required)}`,

@@ -1,11 +1,49 @@
+import type { AmplitudeTable } from './amplitudeTable.ts';
 import type { IndexModel } from './indexModel.ts';
 
-/** A homogeneous sphere of the brief. */
-export interface Particle {
-  /** Diameter, metres. */
+/** A particle of the brief: a sphere to be solved, or one whose amplitudes were computed elsewhere. */
+export type Particle = Sphere | TabledParticle;
+
+/** A sphere of one material, or a core with a shell around it. */
+export interface Sphere {
+  /** Outer diameter, metres. */
   diameterM: number;
-  /** Its own index, relative to vacuum. */
+  /** Index relative to vacuum: the sphere's own, or its shell's where it has a core. */
   index: IndexModel;
-  /** How tables call its material: a shelf name, or the index as written. */
+  /** How tables call its material: a shelf name, the index as written, or both of core and shell. */
   material: string;
+  core?: Core;
+  population?: Membership;
+}
+
+/** The inside of a layered sphere. */
+export interface Core {
+  /** Its diameter over the outer one, between 0 and 1. */
+  share: number;
+  /** Relative to vacuum. */
+  index: IndexModel;
+}
+
+/** A particle as one of the diameters that stand for a distribution of sizes. */
+export interface Membership {
+  /** Which distribution of the brief, from 0. */
+  of: number;
+  /** Share of the distribution's particles that this diameter stands for; they add up to 1. */
+  share: number;
+}
+
+/** A particle of any kind that scatters alike at all azimuths. */
+export interface TabledParticle {
+  /** Of the sphere that it is as large as, metres: for the lobe ratio and for what the far zone leaves out. */
+  diameterM: number;
+  /** The table's name, for tables and messages. */
+  material: string;
+  amplitudes: AmplitudeTable;
+  index?: never;
+  core?: never;
+  population?: never;
+}
+
+export function isTabled(particle: Particle): particle is TabledParticle {
+  return 'amplitudes' in particle;
 }

@@ -1,10 +1,11 @@
 import { chebyshevFit, chebyshevFour, chebyshevPairs } from '../numeric/chebyshev.ts';
 import type { IndexModel } from './indexModel.ts';
 import { refractiveIndex } from './indexModel.ts';
+import { layeredSphere } from './layeredSphere.ts';
 import { forwardAmplitude, scatteringAmplitudes } from './mieAmplitudes.ts';
 import type { MieCoefficients } from './mieCoefficients.ts';
 import { mieCoefficients } from './mieCoefficients.ts';
-import type { Particle } from './particle.ts';
+import type { Sphere } from './particle.ts';
 
 /** How one sphere scatters light of one colour into a forward cone. */
 export interface SphereAmplitudes {
@@ -12,7 +13,7 @@ export interface SphereAmplitudes {
   wavenumber: number;
   /** Size parameter, wave number times radius. */
   sizeParameter: number;
-  /** The sphere's own index, relative to vacuum. */
+  /** The sphere's own index, or its shell's, relative to vacuum. */
   index: readonly [n: number, k: number];
   /** S(0), Bohren & Huffman's convention. */
   forward: readonly [re: number, im: number];
@@ -28,22 +29,31 @@ export interface SphereAmplitudes {
 }
 
 /**
- * Solves one sphere at one wavelength and tables its amplitudes over a forward cone.
+ * Solves one sphere, with a core or without, at one wavelength and tables its amplitudes over a forward cone.
  *
  * @param vacuumWavelengthM metres
  * @param halfAngle of the cone, radians, above 0 and below π/2
  */
 export function sphereAmplitudes(
-  particle: Particle,
+  sphere: Sphere,
   medium: IndexModel,
   vacuumWavelengthM: number,
   halfAngle: number,
 ): SphereAmplitudes {
-  const index = refractiveIndex(particle.index, vacuumWavelengthM);
+  const index = refractiveIndex(sphere.index, vacuumWavelengthM);
   const mediumIndex = refractiveIndex(medium, vacuumWavelengthM)[0];
   const wavenumber = (2 * Math.PI * mediumIndex) / vacuumWavelengthM;
-  const sizeParameter = (wavenumber * particle.diameterM) / 2;
-  const coefficients = mieCoefficients(sizeParameter, [index[0] / mediumIndex, index[1] / mediumIndex]);
+  const sizeParameter = (wavenumber * sphere.diameterM) / 2;
+  const relative = ([n, k]: readonly [number, number]) => [n / mediumIndex, k / mediumIndex] as const;
+  const outer = { x: sizeParameter, m: relative(index) };
+  const { core } = sphere;
+  const coefficients =
+    core === undefined
+      ? mieCoefficients(outer.x, outer.m)
+      : layeredSphere([
+          { x: core.share * sizeParameter, m: relative(refractiveIndex(core.index, vacuumWavelengthM)) },
+          outer,
+        ]);
   const forward = forwardAmplitude(coefficients);
   const cosLimit = Math.cos(halfAngle);
   const sample = (cosTheta: number, out: Float64Array) =>

@@ -21,20 +21,17 @@ const DEGREES = 180 / Math.PI;
  *
  * @param wavenumber in the medium, 1/m, for which the table was computed
  * @param halfAngle of the cone, radians, above 0 and below π/2
+ * @param file the table's name, for messages
  * @throws RimwrightError `input` where the table does not reach the half-angle, `machine` where 8192 terms do not suffice
  */
 export function tableAmplitudes(
   table: AmplitudeTable,
   wavenumber: number,
   halfAngle: number,
+  file?: string,
 ): SphereAmplitudes {
-  const last = table.angles[table.angles.length - 1];
-  // An angle that went through a change of units misses the end by a rounding error.
-  if (halfAngle > last * (1 + 1e-12)) {
-    const found = `amplitudes up to ${Number((last * DEGREES).toPrecision(6))} deg`;
-    const reach = Number((halfAngle * DEGREES).toPrecision(6));
-    throw inputError([{ found, expected: `amplitudes up to ${reach} deg, where detectors may reach` }]);
-  }
+  const short = shortReach(table, halfAngle);
+  if (short !== null) throw inputError([{ ...(file !== undefined && { file }), ...short }]);
   const cosLimit = Math.cos(halfAngle);
   const { series, terms } = fitSeries(table, halfAngle, cosLimit);
   const forward = tableForward(table);
@@ -48,6 +45,19 @@ export function tableAmplitudes(
     series,
     terms,
   };
+}
+
+/** What is wrong with a table that ends before the half-angle of a cone, radians; null where it does not. */
+export function shortReach(
+  { angles }: AmplitudeTable,
+  halfAngle: number,
+): { found: string; expected: string } | null {
+  const last = angles[angles.length - 1];
+  // An angle that went through a change of units misses the end by a rounding error.
+  if (halfAngle <= last * (1 + 1e-12)) return null;
+  const found = `amplitudes up to ${Number((last * DEGREES).toPrecision(6))} deg`;
+  const reach = Number((halfAngle * DEGREES).toPrecision(6));
+  return { found, expected: `amplitudes up to ${reach} deg, where detectors may reach` };
 }
 
 interface Series {

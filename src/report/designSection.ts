@@ -36,6 +36,7 @@ function scoreList({ rank, distanceM, elements, scores, meetsTarget }: ReportDes
     ['Gain', scores.gain.toFixed(3)],
     ['Worst correction', percentText(scores.correction.worst)],
     ['RMS correction', percentText(scores.correction.rms)],
+    ...populationRow(scores),
     ['Lobe ratio', countText(scores.lobe.ratio)],
     ['Required SNR', countText(scores.snr.required)],
     ['Time', timeText(scores.snr.time_s)],
@@ -43,4 +44,8 @@ function scoreList({ rank, distanceM, elements, scores, meetsTarget }: ReportDes
     ['Area over floor', countText(scores.areaOverFloor)],
   ];
   return `<dl>${rows.map(([name, value]) => `<div><dt>${name}</dt><dd>${value}</dd></div>`).join('')}</dl>`;
+}
+
+function populationRow({ correction: { population } }: ReportDesign['scores']): [string, string][] {
+  return population === undefined ? [] : [['Correction of the mean over the sizes', percentText(population)]];
 }

@@ -12,8 +12,8 @@ export interface ReportDesign {
   elements: readonly OutlineElement[];
   scores: {
     gain: number;
-    /** Relative to `gain`, over every particle, wavelength and position: 0.01 is 1 %. */
-    correction: { worst: number; rms: number };
+    /** Relative to `gain`, over every particle, wavelength and position, and of the mean over a distribution: 0.01 is 1 %. */
+    correction: { worst: number; rms: number; population?: number };
     lobe: { ratio: number };
     /** `time_s` is null where no time can be said. */
     snr: { required: number; time_s: number | null };

@@ -1,11 +1,15 @@
 import { formatQuantity } from '../base/quantity.ts';
 import type { IndexModel } from '../optics/indexModel.ts';
 import { coversWavelength, refractiveIndex } from '../optics/indexModel.ts';
-import type { Particle } from '../optics/particle.ts';
+import type { Particle, Sphere } from '../optics/particle.ts';
+import { isTabled } from '../optics/particle.ts';
 import type { Path, Report } from './briefReport.ts';
 import type { briefSchema } from './briefSchema.ts';
+import { checkTable } from './checkTables.ts';
 import type { Values } from './readMapping.ts';
+import type { ParticleEntry } from './readParticles.ts';
 import { readParticles } from './readParticles.ts';
+import { checkSpread } from './readSpread.ts';
 
 /** A brief as far as it could be read. */
 export type BriefValues = Values<ReturnType<typeof briefSchema>>;
@@ -20,11 +24,14 @@ const LINEWIDTHS_USED = 2;
 const inLength = (metres: number) => formatQuantity(metres, 'length');
 
 /** Checks that involve more than one key; they pass over what has a mistake already. Gives the particles of each entry. */
-export function checkTogether(brief: BriefValues, report: Report): Particle[][] {
-  const entries = (brief.particles ?? []).map((entry, i) => readParticles(entry, ['particles', i], report));
+export function checkTogether(brief: BriefValues, report: Report, folder: string): Particle[][] {
+  const entries = (brief.particles ?? []).map((entry, i) =>
+    readParticles(entry, ['particles', i], report, folder),
+  );
   checkLight(brief, report);
   checkGeometry(brief, Math.max(0, ...entries.flat().map(({ diameterM }) => diameterM)), report);
   checkIndices(brief, entries, report);
+  checkSpread(brief.placement?.spread, brief.medium?.name, entries.flat(), report);
   return entries;
 }
 
@@ -75,12 +82,38 @@ function checkIndices(
   entries.forEach(([particle], i) => {
     if (particle === undefined) return;
     const path = ['particles', i];
-    const indexPath = [...path, particles?.[i].material === undefined ? 'index' : 'material'];
-    const isKnown = checkCovered(particle.material, particle.index, wavelengths, indexPath, report);
+    if (isTabled(particle)) {
+      const stated = particles?.[i].extinction;
+      if (isMediumKnown && stated !== undefined) {
+        checkTable(particle, stated, medium.item, wavelengths, path, report);
+      }
+      return;
+    }
+    const isKnown = checkKnown(particle, particles?.[i], wavelengths, path, report);
     if (!isKnown || !isMediumKnown) return;
-    checkContrast(particle.index, medium.item, wavelengths, indexPath, report);
-    checkSizes(entries[i], medium.item, wavelengths, [...path, 'diameter'], report);
+    checkContrast(particle.index, medium.item, wavelengths, [...path, indexKey(particles?.[i])], report);
+    const sizeKey = particles?.[i].distribution === undefined ? 'diameter' : 'distribution';
+    checkSizes(entries[i], medium.item, wavelengths, [...path, sizeKey], report);
   });
+}
+
+const indexKey = (entry: Pick<ParticleEntry, 'material'> | undefined) =>
+  entry?.material === undefined ? 'index' : 'material';
+
+/** Whether the indices of a sphere and of its core are known in the brief's light. */
+function checkKnown(
+  { index, core }: Sphere,
+  entry: ParticleEntry | undefined,
+  wavelengths: number[],
+  path: Path,
+  report: Report,
+): boolean {
+  const check = (model: IndexModel, given: ParticleEntry | ParticleEntry['core'], inside: Path) => {
+    const name = (given?.material ?? given?.index)?.name ?? '';
+    return checkCovered(name, model, wavelengths, [...path, ...inside, indexKey(given)], report);
+  };
+  const isKnown = check(index, entry, []);
+  return core === undefined ? isKnown : check(core.index, entry?.core, ['core']) && isKnown;
 }
 
 function checkCovered(

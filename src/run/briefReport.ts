@@ -14,6 +14,8 @@ export interface Report {
   readonly defaults: string[];
   /** Notes a mistake; `found` is what stands at `path` unless given. */
   refuse(path: Path, expected: string, found?: string): void;
+  /** Notes mistakes of another file that the brief names. */
+  adopt(problems: readonly Problem[]): void;
   /** Whether a mistake was noted at `path` or inside it. */
   hasMistake(path: Path): boolean;
   /** Notes that a key was left out, and what stands for it, in the brief's notation. */
@@ -31,6 +33,9 @@ export function openReport({ file, value, lineOf }: YamlSource): Report {
       // The first mistake of a key explains the others, and nobody reads more than some dozens.
       if (problems.length === MOST_LISTED || problems.some((problem) => problem.key === key)) return;
       problems.push({ file, line: lineOf(path), key, found, expected });
+    },
+    adopt(others) {
+      problems.push(...others.slice(0, MOST_LISTED - problems.length));
     },
     hasMistake(path) {
       const start = keyOf(path);

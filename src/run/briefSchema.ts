@@ -2,10 +2,20 @@ import type { Units } from '../base/quantity.ts';
 import { loadIndexModel } from '../optics/shelf.ts';
 import { loadShop } from '../shop/shelf.ts';
 import { FAMILY_NAMES } from './brief.ts';
-import type { ListKey, NoneOrSectionKey, SectionKey, ValueKey } from './readMapping.ts';
+import type { ListKey, NoneOrSectionKey, SectionKey, ValueKey, ValueOrSectionKey } from './readMapping.ts';
 import { indexOrShelfName, indexValue, shelfName } from './shelfRules.ts';
 import type { ValueRule } from './valueRules.ts';
-import { orNone, plainNumber, quantityRules, textLine, wholeNumber, word, words } from './valueRules.ts';
+import {
+  fileName,
+  orNone,
+  plainNumber,
+  quantityRules,
+  refused,
+  textLine,
+  wholeNumber,
+  word,
+  words,
+} from './valueRules.ts';
 
 /**
  * Every key of a brief: what it may hold, its limits, and its default. Defaults stand here and nowhere else, written as
@@ -20,6 +30,7 @@ export function briefSchema(units: Units, presets: string, title: string) {
     (name) => loadIndexModel('materials', name, presets),
     'the name of a material on the shelf, such as polystyrene',
   );
+  const ownIndex = indexValue({ n: [0.05, 30], k: 30 });
   const media = shelfName(
     (name) => loadIndexModel('media', name, presets),
     'the name of a medium on the shelf, such as air, or an index such as 1.332',
@@ -42,15 +53,36 @@ export function briefSchema(units: Units, presets: string, title: string) {
     }),
     medium: withDefault('air', indexOrShelfName(indexValue({ n: [0.5, 5], k: 0 }), media)),
     particles: listOf(50, {
-      diameter: required(quantityRange('length', ['0.01 nm', '1 m'], '1 um to 4 um')),
+      diameter: optional(quantityRange('length', ['0.01 nm', '1 m'], '1 um to 4 um')),
+      distribution: valueOrSection(
+        optional(fileName('the keys median, gsd, or a table such as counts.csv')),
+        {
+          median: required(quantity('length', ['0.01 nm', '1 m'], '2 um')),
+          gsd: required(plainNumber(1.001, 5, 'a geometric standard deviation')),
+        },
+      ),
       count: optional(wholeNumber(1, 50)),
       material: optional(materials),
-      index: optional(indexValue({ n: [0.05, 30], k: 30 })),
+      index: optional(ownIndex),
+      core: valueOrSection(optional(refused('the keys share, material, index')), {
+        share: required(quantity('ratio', ['0.1 %', '99.99 %'], '60 %')),
+        material: optional(materials),
+        index: optional(ownIndex),
+      }),
+      amplitudes: optional(fileName('the path of a table, such as amplitudes.csv')),
+      extinction: optional(quantity('area', ['1e-12 um^2', '1 m^2'], '12.3 um^2')),
     }),
     placement: section({
       offset: withDefault('0 um', quantity('length', ['0 um', '10 mm'], '10 um')),
       depth: withDefault('0 mm', quantity('length', ['0 mm', '1 m'], '1 mm')),
-      spread: withDefault('0 um', quantity('length', ['0 um', '10 mm'], '5 um')),
+      spread: valueOrSection(
+        withDefault('0 um', quantity('length', ['0 um', '10 mm'], '5 um, or { diffusing for: 1 ms }')),
+        {
+          'diffusing for': required(quantity('time', ['1 ns', '1e6 s'], '1 ms')),
+          temperature: withDefault('20 degC', quantity('temperature', ['1 K', '3000 K'], '20 degC')),
+          viscosity: optional(quantity('viscosity', ['1e-7 Pa s', '1e4 Pa s'], '1.2 mPa s')),
+        },
+      ),
       crossing: noneOrSection({
         span: required(quantity('length', ['10 nm', '100 mm'], '400 um')),
         heading: withDefault('0 deg', quantity('angle', ['-360 deg', '360 deg'], '0 deg')),
@@ -86,4 +118,9 @@ const withDefault = <T>(use: unknown, rule: ValueRule<T>): ValueKey<T> => ({
 });
 const section = <K>(keys: K): SectionKey<K> => ({ kind: 'section', keys });
 const noneOrSection = <K>(keys: K): NoneOrSectionKey<K> => ({ kind: 'none or section', keys });
+const valueOrSection = <T, K>(value: ValueKey<T>, keys: K): ValueOrSectionKey<T, K> => ({
+  kind: 'value or section',
+  value,
+  keys,
+});
 const listOf = <K>(longest: number, keys: K): ListKey<K> => ({ kind: 'list', keys, longest });

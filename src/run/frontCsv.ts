@@ -13,6 +13,8 @@ const COLUMNS: readonly [title: string, cell: (design: RankedDesign) => Cell][] 
   ['gain', ({ scores }) => scores.gain],
   ['correction_worst', ({ scores }) => scores.correction.worst],
   ['correction_rms', ({ scores }) => scores.correction.rms],
+  // Empty where the brief has no distribution of sizes.
+  ['correction_population', ({ scores }) => scores.correction.population ?? ''],
   ['lobe_ratio', ({ scores }) => scores.lobe.ratio],
   ['snr_required', ({ scores }) => scores.snr.required],
   ['time_s', ({ scores }) => scores.snr.time_s],

@@ -1,4 +1,5 @@
 import { existsSync } from 'node:fs';
+import { dirname, join } from 'node:path';
 import { inputError } from '../base/errors.ts';
 import { nearestName } from '../base/nearestName.ts';
 import { presetNames, presetText } from '../base/presetFiles.ts';
@@ -28,8 +29,10 @@ export interface SearchOverrides {
  * @throws RimwrightError `input` where there is neither, or as `readBrief`; `machine` where the disk fails
  */
 export async function openBrief(place: string, overrides: SearchOverrides = {}): Promise<OpenedBrief> {
-  const text = briefText(place, presetsFolder());
-  const brief = await readBrief(text, place);
+  const presets = presetsFolder();
+  const text = briefText(place, presets);
+  const folder = existsSync(place) ? dirname(place) : join(presets, 'briefs');
+  const brief = await readBrief(text, place, presets, folder);
   return { brief: overridden(brief, overrides), text, file: place };
 }
 

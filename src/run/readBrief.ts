@@ -1,4 +1,5 @@
-import { basename, extname } from 'node:path';
+import { basename, dirname, extname } from 'node:path';
+import type { Problem } from '../base/errors.ts';
 import { inputError } from '../base/errors.ts';
 import { presetsFolder } from '../base/presetsFolder.ts';
 import { loadUnits } from '../base/quantity.ts';
@@ -7,9 +8,12 @@ import type { Particle } from '../optics/particle.ts';
 import type { Brief } from './brief.ts';
 import type { BriefValues } from './briefChecks.ts';
 import { checkTogether } from './briefChecks.ts';
+import type { Report } from './briefReport.ts';
 import { openReport } from './briefReport.ts';
 import { briefSchema } from './briefSchema.ts';
+import { checkReach } from './checkTables.ts';
 import { readMapping } from './readMapping.ts';
+import { readSpread } from './readSpread.ts';
 
 /**
  * Reads a brief and checks it as a whole. Keys, limits and defaults are those of `briefSchema`.
@@ -17,19 +21,33 @@ import { readMapping } from './readMapping.ts';
  * @param text YAML, at most 1 MB
  * @param file its name, for messages and for a brief without a title
  * @param presets the folder of the shelf
+ * @param folder where files that the brief names are looked for
  * @throws RimwrightError `input` with one problem for each mistake, in the order of the lines (at most 50); `machine`
  *   where the shelf cannot be read
  */
-export async function readBrief(text: string, file: string, presets = presetsFolder()): Promise<Brief> {
+export async function readBrief(
+  text: string,
+  file: string,
+  presets = presetsFolder(),
+  folder = dirname(file),
+): Promise<Brief> {
   const source = parseYaml(text, file);
   const report = openReport(source);
   const schema = briefSchema(await loadUnits(), presets, basename(file, extname(file)));
   const values = readMapping(source.value, [], schema, report);
-  const particles = checkTogether(values, report).flat();
-  if (report.problems.length > 0) {
-    throw inputError(report.problems.toSorted((a, b) => (a.line ?? 0) - (b.line ?? 0)));
-  }
-  return fillBrief(values, particles, report.defaults);
+  const entries = checkTogether(values, report, folder);
+  throwMistakes(report, source.file);
+  const brief = fillBrief(values, entries.flat(), report.defaults);
+  checkReach(brief.task, entries, report);
+  throwMistakes(report, source.file);
+  return brief;
+}
+
+/** Those of files that the brief names come after its own. */
+function throwMistakes({ problems }: Report, file: string): void {
+  if (problems.length === 0) return;
+  const place = (problem: Problem) => (problem.file === file ? 0 : 1e9) + (problem.line ?? 0);
+  throw inputError(problems.toSorted((a, b) => place(a) - place(b)));
 }
 
 /** Turns the values of a brief without mistakes, in which every key has its value, into what the program works with. */
@@ -56,7 +74,7 @@ function fillBrief(values: BriefValues, particles: Particle[], defaults: readonl
       placement: {
         offsetM: placement.offset,
         depthM: placement.depth,
-        spreadM: placement.spread,
+        ...readSpread(placement.spread, medium.name),
         crossing: crossing && { spanM: crossing.span, headingRad: crossing.heading },
       },
       detector: {

@@ -21,6 +21,13 @@ export interface NoneOrSectionKey<Keys> {
   keys: Keys;
 }
 
+/** A key that holds a plain value, or more keys. */
+export interface ValueOrSectionKey<T, Keys> {
+  kind: 'value or section';
+  value: ValueKey<T>;
+  keys: Keys;
+}
+
 /** A key that holds a list of 1 to `longest` mappings, and may not be left out. */
 export interface ListKey<Keys> {
   kind: 'list';
@@ -30,7 +37,12 @@ export interface ListKey<Keys> {
 
 /** The keys of one mapping. */
 export interface Keys {
-  [name: string]: ValueKey<unknown> | SectionKey<Keys> | NoneOrSectionKey<Keys> | ListKey<Keys>;
+  [name: string]:
+    | ValueKey<unknown>
+    | SectionKey<Keys>
+    | NoneOrSectionKey<Keys>
+    | ValueOrSectionKey<unknown, Keys>
+    | ListKey<Keys>;
 }
 
 /** What was read; a key is absent where its value is wrong, or was left out and has no default. */
@@ -43,9 +55,11 @@ type ValueOf<Key> =
       ? Values<K>
       : Key extends NoneOrSectionKey<infer K>
         ? Values<K> | null
-        : Key extends ListKey<infer K>
-          ? Values<K>[]
-          : never;
+        : Key extends ValueOrSectionKey<infer T, infer K>
+          ? T | Values<K>
+          : Key extends ListKey<infer K>
+            ? Values<K>[]
+            : never;
 
 /**
  * Reads one mapping of a YAML file by its table of keys. Unknown keys, missing keys and wrong values go to the report.
@@ -82,6 +96,9 @@ function readKey(raw: unknown, path: Path, key: Keys[string], report: Report): u
       if (isMapping(raw)) return readMapping(raw, path, key.keys, report);
       report.refuse(path, `none, or ${keysInWords(key.keys)}`);
       return undefined;
+    case 'value or section':
+      if (isMapping(raw)) return readMapping(raw, path, key.keys, report);
+      return readValue(raw, path, key.value, report);
     case 'list':
       if (Array.isArray(raw) && raw.length > 0 && raw.length <= key.longest) {
         return raw.map((item, i) => readMapping(item ?? null, [...path, i], key.keys, report));

@@ -1,11 +1,23 @@
 import { inputError } from '../base/errors.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
+import type { Particle } from '../optics/particle.ts';
+import { isTabled } from '../optics/particle.ts';
 import type { OutlineElement } from '../outline/shape.ts';
+import { spreadOf } from '../reading/spreadOf.ts';
 import type { Judge } from '../score/judge.ts';
+
+/** A particle as readings name it. */
+interface ReadParticle {
+  diameter_m: number;
+  /** Relative to vacuum, of the shell where there is a core; null where amplitudes were given in its place. */
+  index: [n: number, k: number] | null;
+  core?: { diameter_m: number; index: [n: number, k: number] };
+  material: string;
+}
 
 /** What an outline reads of one particle, in one light, at one place. */
 export interface Reading {
-  particle: { diameter_m: number; index: [n: number, k: number]; material: string };
+  particle: ReadParticle;
   /** In vacuum. */
   wavelength_m: number;
   distance_m: number;
@@ -89,15 +101,28 @@ function readingAt(
   place: [x: number, y: number, z: number],
 ): Reading {
   const { particle, wavelengthM, extinctionM2 } = judge.scenarios[scenario];
-  const { diameterM, material } = particle;
   return {
-    particle: { diameter_m: diameterM, index: refractiveIndex(particle.index, wavelengthM), material },
+    particle: nameParticle(particle, wavelengthM),
     wavelength_m: wavelengthM,
     distance_m: distanceM,
     position_m: place,
-    spread_m: judge.task.placement.spreadM,
+    spread_m: spreadOf(judge.task.placement, particle.diameterM),
     extinction_m2: extinctionM2,
     reading_m2: ratio * extinctionM2,
     correction: ratio - 1,
+  };
+}
+
+function nameParticle(particle: Particle, wavelengthM: number): ReadParticle {
+  const { diameterM, material } = particle;
+  if (isTabled(particle)) return { diameter_m: diameterM, index: null, material };
+  const { core } = particle;
+  return {
+    diameter_m: diameterM,
+    index: refractiveIndex(particle.index, wavelengthM),
+    ...(core && {
+      core: { diameter_m: core.share * diameterM, index: refractiveIndex(core.index, wavelengthM) },
+    }),
+    material,
   };
 }

@@ -89,6 +89,21 @@ export function textLine(longest: number): ValueRule<string> {
   return bySchema(visible.regex(/^[^\p{C}\p{Zl}\p{Zp}]*$/u, expected));
 }
 
+/** A file's path. */
+export function fileName(expected: string): ValueRule<string> {
+  return bySchema(
+    z
+      .string({ error: expected })
+      .max(1000, expected)
+      .regex(/^[^\p{C}\p{Zl}\p{Zp}]+$/u, expected),
+  );
+}
+
+/** No plain value at all. */
+export function refused(expected: string): ValueRule<never> {
+  return { check: () => ({ mistakes: [{ path: [], expected }] }) };
+}
+
 /** `none` as null, and everything else by another rule. */
 export function orNone<T>(other: ValueRule<T>): ValueRule<T | null> {
   return {

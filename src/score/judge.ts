@@ -10,13 +10,18 @@ import { shapeRadius } from '../outline/shapeRadius.ts';
 import { boundaryReading } from '../reading/boundaryReading.ts';
 import type { Symmetry } from '../reading/positions.ts';
 import { flightPoints, samplePositions } from '../reading/positions.ts';
+import type { EdgeDensity } from '../reading/roughEdge.ts';
 import type { Scenario } from '../reading/scenario.ts';
 import { buildScenarios, driftedWavelengths } from '../reading/scenario.ts';
+import { spreadOf } from '../reading/spreadOf.ts';
+import { tableDensity } from '../reading/tableDensity.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import { TableShelf } from '../reading/tableShelf.ts';
 import { correctionOf } from './correction.ts';
 import type { ElementArea } from './cost.ts';
 import { areaOverFloor, lobeRatio, measurementTime, requiredSnr } from './cost.ts';
+import type { Population } from './population.ts';
+import { populationCorrection, populationsOf } from './population.ts';
 import type { Scores } from './scores.ts';
 import type { Task } from './task.ts';
 
@@ -59,6 +64,7 @@ export class Judge {
   readonly #rules = new LegendreRules();
   readonly #leastExtinctionM2: number;
   readonly #largestDiameterM: number;
+  readonly #populations: readonly Population[];
 
   /** @param fields those of the far zone, or the exact ones: see `farZoneError` for when that matters */
   constructor(task: Task, fineness: Fineness, fields: Fields = 'far') {
@@ -66,9 +72,11 @@ export class Judge {
     this.#fineness = fineness;
     this.wavelengthM = task.light.wavelengthM / refractiveIndex(task.medium, task.light.wavelengthM)[0];
     this.scenarios = scenariosOf(task, fineness.drifts);
-    this.#shelf = new TableShelf(this.scenarios, task.placement.spreadM, fields);
+    const spreadsM = this.scenarios.map(({ particle }) => spreadOf(task.placement, particle.diameterM));
+    this.#shelf = new TableShelf(this.scenarios, spreadsM, fields);
     this.#leastExtinctionM2 = Math.min(...this.scenarios.map(({ extinctionM2 }) => extinctionM2));
     this.#largestDiameterM = Math.max(...task.particles.map(({ diameterM }) => diameterM));
+    this.#populations = populationsOf(this.scenarios);
   }
 
   /** κ = k/(2z) at the nominal wavelength, 1/m². */
@@ -107,6 +115,49 @@ export class Judge {
     const places = positions ?? this.#positions(radiusM, distanceM, NO_SYMMETRY);
     const depths = positions ? [0] : this.#depths();
     return { positions: places, depths, ratios: this.#ratios(nodes, radiusM, distanceM, places, depths) };
+  }
+
+  /**
+   * Ratios reading/extinction of an outline along the particle's flight, at the nominal depth. Without a crossing a flight is
+   * one point.
+   *
+   * @param positions middles of the flights, as for `outlineRatios`
+   * @returns `flight`: its points relative to its middle; for each scenario the ratios, flight by flight
+   */
+  outlineFlights(
+    elements: readonly OutlineElement[],
+    distanceM: number,
+    positions?: Float64Array,
+  ): { positions: Float64Array; flight: Float64Array; ratios: Float64Array[] } {
+    const radiusM = Math.max(...elements.map(({ rings }) => ringsRadius(rings)));
+    const places = positions ?? this.#positions(radiusM, distanceM, NO_SYMMETRY);
+    const flight = this.#flight(radiusM, distanceM);
+    const points = new Float64Array((places.length * flight.length) / 2);
+    for (let p = 0; p < places.length; p += 2) {
+      for (let f = 0; f < flight.length; f++)
+        points[(p * flight.length) / 2 + f] = places[p + (f % 2)] + flight[f];
+    }
+    const nodes = this.#outlineNodes(elements, distanceM);
+    const ratios = this.#ratios(nodes, radiusM, distanceM, points, [0], new Float64Array(2));
+    return { positions: places, flight, ratios };
+  }
+
+  /**
+   * What a unit of detector area adds to reading/extinction, 1/m², at the nominal depth: the mean over the flight.
+   *
+   * @param radiusM how far from the axis it will be asked for
+   * @param place of the particle, metres
+   */
+  edgeDensity(
+    scenario: number,
+    distanceM: number,
+    radiusM: number,
+    [px, py]: readonly [x: number, y: number],
+  ): EdgeDensity {
+    const flight = this.#flight(radiusM, distanceM);
+    const table = this.#shelf.tables(distanceM, radiusM + Math.hypot(px, py) + farthest(flight))[scenario];
+    const points = flight.map((along, i) => along + (i % 2 === 0 ? px : py));
+    return tableDensity(table, points, this.scenarios[scenario].extinctionM2);
   }
 
   /**
@@ -155,6 +206,10 @@ export class Judge {
     );
   }
 
+  #flight(radiusM: number, distanceM: number): Float64Array {
+    return flightPoints(this.task.placement.crossing, 2 * this.kappa(distanceM) * radiusM);
+  }
+
   #depths(): number[] {
     const { depthM } = this.task.placement;
     const count = this.#fineness.depths;
@@ -169,10 +224,9 @@ export class Judge {
     distanceM: number,
     positions: Float64Array,
     depths: readonly number[],
+    flight = this.#flight(radiusM, distanceM),
   ): Float64Array[] {
-    const { crossing } = this.task.placement;
-    const flight = flightPoints(crossing, 2 * this.kappa(distanceM) * radiusM);
-    const reach = radiusM + farthest(positions) + (crossing?.spanM ?? 0) / 2;
+    const reach = radiusM + farthest(positions) + farthest(flight);
     const count = positions.length / 2;
     const ratios = this.scenarios.map(() => new Float64Array(count * depths.length));
     depths.forEach((depth, d) => {
@@ -202,7 +256,8 @@ export class Judge {
   ): Judgement {
     const { target, detector, light } = this.task;
     const positions = this.#positions(radiusM, distanceM, symmetry);
-    const ratios = flatten(this.#ratios(elements, radiusM, distanceM, positions, this.#depths()));
+    const rows = this.#ratios(elements, radiusM, distanceM, positions, this.#depths());
+    const ratios = flatten(rows);
     const { gain, worst, rms } = correctionOf(ratios, target.gain);
     if (!Number.isFinite(worst)) {
       throw new RimwrightError(
@@ -210,11 +265,12 @@ export class Judge {
         `a score is not finite: outline of radius ${radiusM} m at ${distanceM} m`,
       );
     }
+    const population = populationCorrection(this.#populations, rows, gain);
     const electronics = { ...detector, ...light };
     const extinctionM2 = this.#leastExtinctionM2;
     const scores: Scores = {
       gain,
-      correction: { worst, rms },
+      correction: { worst, rms, ...(population !== null && { population }) },
       lobe: { ratio: lobeRatio(radiusM, distanceM, this.wavelengthM, this.#largestDiameterM) },
       snr: {
         required: requiredSnr(elements, target.correction, gain, extinctionM2),
@@ -237,15 +293,22 @@ const NO_SYMMETRY: Symmetry = { folds: 1, mirror: false };
 function scenariosOf(task: Task, drifts: number): Scenario[] {
   const { light, medium, particles, placement, detector } = task;
   const nearestM = detector.distanceM[0] - placement.depthM;
+  const index = refractiveIndex(medium, light.wavelengthM)[0];
+  const largestPhase = (Math.PI * index * detector.radiusM[1] ** 2) / (light.wavelengthM * nearestM);
+  const halfAngle = coneHalfAngle(task);
+  return buildScenarios(light, medium, particles, driftedWavelengths(light, drifts), halfAngle, largestPhase);
+}
+
+/** Half-angle of the cone in which light may fall on a detector, radians: how far amplitudes are asked for. */
+export function coneHalfAngle({ placement, detector, particles }: Task): number {
+  const spreadM = Math.max(...particles.map(({ diameterM }) => spreadOf(placement, diameterM)));
+  const nearestM = detector.distanceM[0] - placement.depthM;
   const spanM = placement.crossing?.spanM ?? 0;
   // A search tries outlines beyond the allowed radius, tables are built with some room to grow (TableShelf), and the
   // spread reaches 7.5 σ beyond them.
   const farthestM = BEYOND_RADIUS * detector.radiusM[1] + placement.offsetM + spanM / 2;
-  const reachM = 1.35 * farthestM + 7.5 * placement.spreadM;
-  const index = refractiveIndex(medium, light.wavelengthM)[0];
-  const largestPhase = (Math.PI * index * detector.radiusM[1] ** 2) / (light.wavelengthM * nearestM);
-  const halfAngle = Math.min(1.5, Math.atan(reachM / nearestM) + 1e-3);
-  return buildScenarios(light, medium, particles, driftedWavelengths(light, drifts), halfAngle, largestPhase);
+  const reachM = 1.35 * farthestM + 7.5 * spreadM;
+  return Math.min(1.5, Math.atan(reachM / nearestM) + 1e-3);
 }
 
 function withArea(weight: number, nodes: Float64Array): ElementNodes {
