@@ -1,5 +1,7 @@
 import type { Miss } from '../score/aim.ts';
 import type { Brief } from './brief.ts';
+import type { BriefJson } from './briefJson.ts';
+import { briefToJson } from './briefJson.ts';
 import type { DesignJson } from './designJson.ts';
 import { designToJson } from './designJson.ts';
 import type { RankedDesign } from './ranking.ts';
@@ -14,7 +16,7 @@ export interface Nearest {
 
 /** What `rimwright search --json` prints and front.json holds. */
 export interface SearchJson {
-  brief: Brief;
+  brief: BriefJson;
   designs: DesignJson[];
   /** Null where a design meets the target, or nothing was found at all. */
   nearest: { design: DesignJson; misses: Miss[] } | null;
@@ -36,7 +38,7 @@ export function searchToJson(
 ): SearchJson {
   const { designs, evaluations, seconds, stopped } = result;
   return {
-    brief,
+    brief: briefToJson(brief),
     designs: designs.map(designToJson),
     nearest: nearest && { design: designToJson(nearest.design), misses: nearest.misses },
     warnings: [...warnings],
@@ -48,7 +50,7 @@ export function searchToJson(
 
 /** What `rimwright smallest --json` prints. */
 export interface SmallestJson {
-  brief: Brief;
+  brief: BriefJson;
   /** Null where none meets the target; `nearest` is then the best found, and `misses` are its limits. */
   design: DesignJson | null;
   nearest: DesignJson | null;
@@ -67,7 +69,7 @@ export function smallestToJson(
 ): SmallestJson {
   const { design, nearest, misses, evaluations, seconds, stopped } = result;
   return {
-    brief,
+    brief: briefToJson(brief),
     design: design && designToJson(design),
     nearest: design === null && nearest !== null ? designToJson(nearest) : null,
     misses: design === null ? misses : [],
