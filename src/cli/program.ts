@@ -8,6 +8,7 @@ import { oneOf, wholeNumber } from './optionRules.ts';
 const CANDIDATES = [100, 100_000_000] as const;
 const SEEDS = [0, 2 ** 31 - 1] as const;
 const WORKERS = [1, 64] as const;
+const ROUGH_OUTLINES = [2, 10_000] as const;
 
 const BRIEF = "a brief's path, or a brief's name on the shelf";
 const OUTLINE = "CSV (x_mm,y_mm), a design's JSON, or front.json#ID";
@@ -106,6 +107,11 @@ Example:
     .option('--distance <length>', 'distance from particle to detector')
     .option('--position <x, y>', 'read at this place of the particle alone')
     .option('--exact', EXACT)
+    .option('--trace <file>', 'write the reading along the flight as CSV')
+    .option('--force', 'replace that file if it is there')
+    .option('--rough <rms, length>', 'read outlines with rough edges as well')
+    .option('--outlines <n>', 'how many of them', wholeNumber('--outlines', ...ROUGH_OUTLINES), 64)
+    .option('--seed <n>', 'for their edges', wholeNumber('--seed', ...SEEDS), 1)
     .option('--json', AS_JSON)
     .addHelpText(
       'after',
@@ -113,7 +119,10 @@ Example:
 Example:
   $ rimwright reading nominal-sphere --outline square.csv
   $ rimwright reading my.yaml --outline square.csv --distance "20 mm" \\
-      --position "50 um, -30 um" --json`,
+      --position "50 um, -30 um" --json
+  $ rimwright reading spray-droplets --outline disc.json --trace flight.csv
+  $ rimwright reading my.yaml --outline disc.json --rough "2 um, 50 um"
+  tries edges of 2 um rms height that forget themselves within 50 um.`,
     )
     .action(async (brief, options) => done(await (await import('./readingCommand.ts')).run(brief, options)));
 

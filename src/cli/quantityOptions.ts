@@ -24,6 +24,24 @@ export async function readPosition(text: string | undefined): Promise<[x: number
   throw refused('--position', text, 'a place within 1 m of the axis');
 }
 
+/** Heights and correlation lengths that an edge may have, metres. */
+const ROUGH_M = [1e-9, 1e-2] as const;
+
+/** `--rough "2 um, 50 um"`: rms height and correlation length in metres, null where it is left out. */
+export async function readRoughness(
+  text: string | undefined,
+): Promise<{ rmsM: number; correlationM: number } | null> {
+  if (text === undefined) return null;
+  const parts = text.split(',').map((part) => part.trim());
+  const expected = 'an rms height and a correlation length, such as "2 um, 50 um"';
+  if (parts.length !== 2) throw refused('--rough', text, expected);
+  const units = await loadUnits();
+  const [rmsM, correlationM] = parts.map((part) => units.parse(part, 'length', '--rough'));
+  const isWithin = [rmsM, correlationM].every((length) => length >= ROUGH_M[0] && length <= ROUGH_M[1]);
+  if (isWithin) return { rmsM, correlationM };
+  throw refused('--rough', text, 'lengths from 1 nm to 10 mm');
+}
+
 function refused(key: string, text: string, expected: string) {
   return inputError([{ key, found: JSON.stringify(text.slice(0, 60)), expected }]);
 }

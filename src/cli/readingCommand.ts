@@ -1,3 +1,4 @@
+import { dirname } from 'node:path';
 import { formatQuantity } from '../base/quantity.ts';
 import { countText } from '../draw/quantityText.ts';
 import { designToJson } from '../run/designJson.ts';
@@ -10,12 +11,18 @@ import type { RankedDesign } from '../run/ranking.ts';
 import { readDesignFile } from '../run/readDesignFile.ts';
 import type { ReadingSummary } from '../run/readings.ts';
 import { listReadings, summariseReadings } from '../run/readings.ts';
+import { prepareFolder } from '../run/resultsFolder.ts';
+import { roughReadings } from '../run/roughReadings.ts';
 import { scoreGiven } from '../run/scoreGiven.ts';
-import { distanceWarning, farZoneWarning, present } from '../run/warnings.ts';
+import { traceFlight } from '../run/traceFlight.ts';
+import { diffusionWarning, distanceWarning, farZoneWarning, present } from '../run/warnings.ts';
+import { refuseExisting, writeWhole } from '../run/writeWhole.ts';
 import { shortCount } from './designColumns.ts';
 import { EXIT } from './exit.ts';
-import { noteDefaults, print, printWrapped, warn } from './notes.ts';
-import { readDistance, readPosition } from './quantityOptions.ts';
+import { uninterrupted } from './interrupt.ts';
+import { note, noteDefaults, print, printWrapped, warn } from './notes.ts';
+import { readDistance, readPosition, readRoughness } from './quantityOptions.ts';
+import { printRough } from './roughText.ts';
 import { scoreText } from './scoreText.ts';
 import type { Column } from './table.ts';
 import { table } from './table.ts';
@@ -26,6 +33,11 @@ interface Options {
   distance?: string;
   position?: string;
   exact?: true;
+  trace?: string;
+  force?: true;
+  rough?: string;
+  outlines: number;
+  seed: number;
   json?: true;
 }
 
@@ -33,6 +45,11 @@ interface Options {
 export async function run(place: string, options: Options): Promise<number> {
   const distance = await readDistance(options.distance);
   const position = await readPosition(options.position);
+  const roughness = await readRoughness(options.rough);
+  if (options.trace !== undefined) {
+    prepareFolder(dirname(options.trace));
+    if (!options.force) refuseExisting([options.trace]);
+  }
   const { brief } = await openBrief(place);
   const { task } = brief;
   const given = readDesignFile(options.outline, options.design);
@@ -42,16 +59,29 @@ export async function run(place: string, options: Options): Promise<number> {
   // At one place there is no worst and no mean over places: the scores are left out.
   const design = position === null ? scoreGiven(task, given, judged) : null;
   const farZone = fields === 'far' ? farZoneWarning(task, distanceM) : null;
-  const warnings = present([farZone, distanceWarning(task, distanceM)]);
+  const diffusion = diffusionWarning(task, [judged]);
+  const warnings = present([farZone, distanceWarning(task, distanceM), diffusion]);
+  const places = position === null ? undefined : Float64Array.from(position);
+  const gain = design?.scores.gain ?? 1;
+  const { outlines, seed } = options;
+  const rough =
+    roughness && roughReadings(judged, given.elements, { ...roughness, outlines, seed }, gain, position);
+  if (options.trace !== undefined) {
+    const text = traceFlight(judge, given.elements, distanceM, places);
+    const file = { path: options.trace, text };
+    uninterrupted(() => writeWhole([file], options.force ?? false));
+    note(`Written to ${file.path}`);
+  }
   if (!options.json) noteDefaults(brief.defaults);
   warn(warnings);
   if (options.json) {
-    const places = position === null ? undefined : Float64Array.from(position);
     const readings = listReadings(judge, given.elements, distanceM, places);
-    print(jsonText({ fields, readings, design: design && designToJson(design), brief, warnings }));
+    const scored = design && designToJson(design);
+    print(jsonText({ fields, readings, ...(rough && { rough }), design: scored, brief, warnings }));
     return EXIT.done;
   }
   printReadings(given, judged, position, design);
+  if (rough !== null) printRough(rough);
   if (design !== null) {
     print('');
     printWrapped(scoreText(design, task));

@@ -7,7 +7,7 @@ import { prepareFolder, writeResultsFolder } from '../run/resultsFolder.ts';
 import type { SearchResult } from '../run/search.ts';
 import { search, smallest } from '../run/search.ts';
 import { slug } from '../run/slug.ts';
-import { fieldsWarning, present } from '../run/warnings.ts';
+import { diffusionWarning, fieldsWarning, outlineOf, present } from '../run/warnings.ts';
 import { EXIT } from './exit.ts';
 import { printFront } from './front.ts';
 import { interruptible, uninterrupted } from './interrupt.ts';
@@ -31,7 +31,10 @@ export async function run(place: string, options: Options): Promise<number> {
   prepareFolder(options.out);
   const { result, nearest } = await interruptible((signal) => searchOrNearest(opened, options, signal));
   const { designs } = result;
-  const warnings = present([fieldsWarning(brief.task, designs)]);
+  const warnings = present([
+    fieldsWarning(brief.task, designs),
+    diffusionWarning(brief.task, designs.map(outlineOf)),
+  ]);
   const json = searchToJson(brief, result, nearest, warnings);
   const files = resultFiles(opened, result, json, workersOf(options));
   const written = tried(() => uninterrupted(() => writeResultsFolder(options.out, slug(brief.title), files)));

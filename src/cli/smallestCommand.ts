@@ -6,7 +6,7 @@ import type { RankedDesign } from '../run/ranking.ts';
 import { smallestToJson } from '../run/results.ts';
 import { prepareFolder } from '../run/resultsFolder.ts';
 import { smallest } from '../run/search.ts';
-import { fieldsWarning, present } from '../run/warnings.ts';
+import { diffusionWarning, fieldsWarning, outlineOf, present } from '../run/warnings.ts';
 import { refuseExisting, writeWhole } from '../run/writeWhole.ts';
 import type { Measure } from '../score/aim.ts';
 import { measureOf } from '../score/aim.ts';
@@ -35,7 +35,9 @@ export async function run(place: string, { by, out, force, ...options }: Options
   );
   const { design, nearest, misses } = result;
   const shown = design ?? nearest;
-  const warnings = present(shown ? [fieldsWarning(brief.task, [shown])] : []);
+  const warnings = present(
+    shown ? [fieldsWarning(brief.task, [shown]), diffusionWarning(brief.task, [outlineOf(shown)])] : [],
+  );
   if (out !== undefined && design !== null) {
     const text = jsonText(designToJson(design));
     uninterrupted(() => writeWhole([{ path: out, text }], force ?? false));

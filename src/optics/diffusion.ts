@@ -10,14 +10,15 @@ export type DiffusionMedium = 'air' | 'water' | { viscosityPaS: number };
 const BOLTZMANN_JK = 1.380649e-23; // SI (2019), exact
 const STANDARD_PRESSURE_PA = 101_325;
 
+/** Where diffusion coefficients are given: least, largest, and what. */
 type Range = readonly [low: number, high: number, what: string];
-const DIAMETER_M: Range = [1e-9, 1e-2, 'a diameter in metres'];
+export const DIFFUSING_DIAMETERS_M: Range = [1e-9, 1e-2, 'a diameter in metres'];
 const PRESSURE_PA: Range = [1000, 1e6, 'a pressure in pascals'];
 const VISCOSITY_PAS: Range = [1e-7, 1e4, 'a viscosity in Pa s'];
 const DIFFUSION_M2S: Range = [0, 1, 'a diffusion coefficient in m²/s'];
 const DURATION_S: Range = [0, 1e6, 'a duration in seconds'];
 /** Where each medium's formulas are good. */
-const TEMPERATURE_K: Record<'air' | 'water' | 'liquid', Range> = {
+export const DIFFUSION_TEMPERATURES_K: Record<'air' | 'water' | 'liquid', Range> = {
   air: [200, 600, 'a temperature of air in kelvin'],
   water: [253.15, 383.15, 'a temperature of liquid water in kelvin'],
   liquid: [1, 3000, 'a temperature in kelvin'],
@@ -39,8 +40,12 @@ export function diffusionCoefficient(
   pressurePa: number = STANDARD_PRESSURE_PA,
 ): number {
   refuse([
-    ...outside('diameterM', diameterM, DIAMETER_M),
-    ...outside('temperatureK', temperatureK, TEMPERATURE_K[typeof medium === 'string' ? medium : 'liquid']),
+    ...outside('diameterM', diameterM, DIFFUSING_DIAMETERS_M),
+    ...outside(
+      'temperatureK',
+      temperatureK,
+      DIFFUSION_TEMPERATURES_K[typeof medium === 'string' ? medium : 'liquid'],
+    ),
     ...outside('pressurePa', pressurePa, PRESSURE_PA),
     ...(typeof medium === 'string' ? [] : outside('viscosityPaS', medium.viscosityPaS, VISCOSITY_PAS)),
   ]);

@@ -1,5 +1,5 @@
-import type { RadialTable } from './radialTable.ts';
 import { nearAmplitudes } from './nearAmplitudes.ts';
+import type { RadialTable } from './radialTable.ts';
 import { buildRadialTable } from './radialTable.ts';
 import type { Scenario } from './scenario.ts';
 
@@ -15,14 +15,15 @@ const CAPACITY = 32_000_000;
  */
 export class TableShelf {
   readonly #scenarios: readonly Scenario[];
-  readonly #spreadM: number;
+  readonly #spreadsM: readonly number[];
   readonly #fields: Fields;
   readonly #held = new Map<number, { radiusM: number; tables: RadialTable[]; size: number }>();
   #size = 0;
 
-  constructor(scenarios: readonly Scenario[], spreadM: number, fields: Fields = 'far') {
+  /** @param spreadsM rms random motion per axis in each scenario, metres */
+  constructor(scenarios: readonly Scenario[], spreadsM: readonly number[], fields: Fields = 'far') {
     this.#scenarios = scenarios;
-    this.#spreadM = spreadM;
+    this.#spreadsM = spreadsM;
     this.#fields = fields;
   }
 
@@ -37,8 +38,8 @@ export class TableShelf {
     if (held) this.#drop(distanceM, held.size);
     // Some room to grow spares a rebuild for every slightly larger outline.
     const reach = radiusM * 1.3;
-    const tables = this.#scenarios.map((scenario) =>
-      buildRadialTable(this.#seenFrom(scenario, distanceM), distanceM, reach, this.#spreadM),
+    const tables = this.#scenarios.map((scenario, s) =>
+      buildRadialTable(this.#seenFrom(scenario, distanceM), distanceM, reach, this.#spreadsM[s]),
     );
     const size = tables.reduce((sum, { mean, twofold }) => sum + mean.length + (twofold?.length ?? 0), 0);
     this.#held.set(distanceM, { radiusM: reach, tables, size });
@@ -52,9 +53,9 @@ export class TableShelf {
 
   #seenFrom(scenario: Scenario, distanceM: number): Scenario {
     if (this.#fields === 'far') return scenario;
-    const colours = scenario.colours.map(({ weight, sphere }) => ({
-      weight,
-      sphere: nearAmplitudes(sphere, distanceM),
+    const colours = scenario.colours.map((colour) => ({
+      ...colour,
+      sphere: nearAmplitudes(colour.sphere, distanceM),
     }));
     return { ...scenario, colours };
   }

@@ -1,6 +1,6 @@
+import type { Cell } from './csvText.ts';
+import { csvText } from './csvText.ts';
 import type { RankedDesign } from './ranking.ts';
-
-type Cell = string | number | boolean;
 
 const COLUMNS: readonly [title: string, cell: (design: RankedDesign) => Cell][] = [
   ['id', ({ id }) => id],
@@ -23,16 +23,8 @@ const COLUMNS: readonly [title: string, cell: (design: RankedDesign) => Cell][] 
   ['shop_notes', ({ shop }) => shop.notes.join('; ')],
 ];
 
-/** The designs as CSV (RFC 4180), one row a design; no cell can be taken for a formula. */
+/** The designs as CSV, one row a design. */
 export function frontCsv(designs: readonly RankedDesign[]): string {
   const header = COLUMNS.map(([title]) => title);
-  const rows = designs.map((design) => COLUMNS.map(([, cell]) => cellText(cell(design))));
-  return [header, ...rows].map((row) => `${row.join(',')}\r\n`).join('');
-}
-
-/** Spreadsheets run a text that begins like a formula; a leading apostrophe keeps it a text. */
-function cellText(cell: Cell): string {
-  if (typeof cell !== 'string') return String(cell);
-  const harmless = /^[\s]*[=+\-@|%]|^[\t\r\n]/.test(cell) ? `'${cell}` : cell;
-  return /[",\r\n]/.test(harmless) ? `"${harmless.replaceAll('"', '""')}"` : harmless;
+  return csvText([header, ...designs.map((design) => COLUMNS.map(([, cell]) => cell(design)))]);
 }

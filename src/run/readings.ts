@@ -7,7 +7,7 @@ import { spreadOf } from '../reading/spreadOf.ts';
 import type { Judge } from '../score/judge.ts';
 
 /** A particle as readings name it. */
-interface ReadParticle {
+export interface ReadParticle {
   diameter_m: number;
   /** Relative to vacuum, of the shell where there is a core; null where amplitudes were given in its place. */
   index: [n: number, k: number] | null;
@@ -113,7 +113,7 @@ function readingAt(
   };
 }
 
-function nameParticle(particle: Particle, wavelengthM: number): ReadParticle {
+export function nameParticle(particle: Particle, wavelengthM: number): ReadParticle {
   const { diameterM, material } = particle;
   if (isTabled(particle)) return { diameter_m: diameterM, index: null, material };
   const { core } = particle;

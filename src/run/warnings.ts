@@ -1,4 +1,6 @@
 import { formatQuantity } from '../base/quantity.ts';
+import { refractiveIndex } from '../optics/indexModel.ts';
+import { spreadOf } from '../reading/spreadOf.ts';
 import type { Design } from '../score/design.ts';
 import { farZoneError } from '../score/farZoneError.ts';
 import type { Task } from '../score/task.ts';
@@ -44,6 +46,33 @@ export function distanceWarning(task: Task, distanceM: number): string | null {
   const [low, high] = [least, most].map((distance) => formatQuantity(distance, 'length'));
   const range = low === high ? low : `${low} to ${high}`;
   return `The distance ${formatQuantity(distanceM, 'length')} is not the brief's ${range}`;
+}
+
+/** Phase 2κρσ up to which a normal spread stands for Brownian motion to 1 % (see `diffusionSpread`). */
+const LARGEST_DIFFUSION_PHASE = 0.7;
+
+/**
+ * Where particles diffuse so far that a normal spread overstates how much that damps a rim's interference.
+ *
+ * @param outlines the radius and distance of each outline in question, metres
+ */
+export function diffusionWarning(
+  { placement, particles, light, medium }: Task,
+  outlines: readonly { radiusM: number; distanceM: number }[],
+): string | null {
+  if (placement.diffusion === undefined || outlines.length === 0) return null;
+  const diameterM = Math.min(...particles.map((particle) => particle.diameterM));
+  const index = refractiveIndex(medium, light.wavelengthM)[0];
+  const steepest = Math.max(...outlines.map(({ radiusM, distanceM }) => radiusM / distanceM));
+  const phase = ((2 * Math.PI * index) / light.wavelengthM) * steepest * spreadOf(placement, diameterM);
+  if (phase <= LARGEST_DIFFUSION_PHASE) return null;
+  const particle = `particles of ${formatQuantity(diameterM, 'length', 3)}`;
+  return `Diffusion moves ${particle} by ${formatQuantity(phase, 'angle', 2)} of phase at the outline's radius: beyond ${formatQuantity(LARGEST_DIFFUSION_PHASE, 'angle', 2)} a normal spread says that it damps more than it does`;
+}
+
+/** What `diffusionWarning` asks of a design. */
+export function outlineOf({ scores, distanceM }: Design): { radiusM: number; distanceM: number } {
+  return { radiusM: scores.radius_m, distanceM };
 }
 
 /** The warnings that are there. */

@@ -114,7 +114,7 @@ describe('buildRadialTable', () => {
 
 describe('TableShelf', () => {
   it('gives the same tables again, and larger ones when a larger radius is asked for', () => {
-    const shelf = new TableShelf([sphereScenario(1e-6), sphereScenario(2e-6)], 0);
+    const shelf = new TableShelf([sphereScenario(1e-6), sphereScenario(2e-6)], [0, 0]);
     const first = shelf.tables(0.02, 1e-4);
     expect(first).toHaveLength(2);
     expect(shelf.tables(0.02, 1.2e-4)).toBe(first);
