@@ -6,8 +6,8 @@ import { stillPoint } from './crossedAverage.ts';
 import type { FluxSamples } from './fluxDensity.ts';
 import { fluxDensity } from './fluxDensity.ts';
 import { addSpreadFlux, FARTHEST_SPREAD } from './randomSpread.ts';
-import type { Scenario } from './scenario.ts';
-import { coherence } from './scenario.ts';
+import type { Fading, Scenario } from './scenario.ts';
+import { discMeans } from './sourceDisc.ts';
 
 /**
  * The cumulative flux of one scenario at one distance, ready for boundary integrals.
@@ -30,13 +30,16 @@ export interface RadialTable {
 /** Phase advance per cell that keeps a table's error below 1e-6 of the extinction for ordinary particles. */
 const PHASE_STEP = 1 / 8;
 
+/** Swing of the phase over the disc of places below which it is a point: the flux changes by a square of it over 8. */
+const POINT_SWING = 1e-4;
+
 /**
- * Builds the table of one scenario.
+ * Builds the table of one scenario. A source with an angular size is a disc of places (see `discMeans`).
  *
  * @param distanceM from particle to detector plane, metres
  * @param radiusM largest distance from the particle's axis that will be asked for, metres
  * @param spreadM rms random motion per axis, metres
- * @throws RimwrightError `input` where that radius, with 7 times the spread, lies outside the cone that the spheres are solved for,
+ * @throws RimwrightError `input` where that radius, with 7 times the spread and the source's disc, lies outside the cone that the spheres are solved for,
  *   or a sphere is far too near for its far-zone fields
  */
 export function buildRadialTable(
@@ -45,26 +48,45 @@ export function buildRadialTable(
   radiusM: number,
   spreadM: number,
 ): RadialTable {
-  const sphere = scenario.colours[0].sphere;
-  checkCone(sphere, distanceM, radiusM + FARTHEST_SPREAD * spreadM);
-  const kappa = sphere.wavenumber / (2 * distanceM);
-  const stepM2 = phaseStep(sphere.forward) / kappa;
+  const spheres = scenario.colours.map(({ sphere }) => sphere);
+  const kappa = Math.max(...spheres.map(({ wavenumber }) => wavenumber)) / (2 * distanceM);
+  const discM = sourceDisc(scenario, distanceM, radiusM, kappa);
+  checkCone(spheres, distanceM, radiusM + FARTHEST_SPREAD * spreadM + discM);
+  const stepM2 = Math.min(...spheres.map(({ forward }) => phaseStep(forward))) / kappa;
   const cells = Math.floor((radiusM * radiusM) / stepM2) + 2;
-  const { mean, twofold } = sampleFlux(scenario, distanceM, stepM2, cells + 4, spreadM);
+  const count = cells + 4;
   const angle = scenario.polarizationRad;
+  let samples: Pick<FluxSamples, 'mean' | 'twofold'>;
+  if (discM === 0) samples = sampleFlux(scenario, distanceM, stepM2, count, spreadM);
+  else {
+    const point = { ...scenario, sourceAngleRad: 0 };
+    const still = buildRadialTable(point, distanceM, Math.sqrt(count * stepM2) + discM, spreadM);
+    samples = discMeans(still, discM, kappa, stepM2, count);
+  }
   return {
     cellsPerM2: 1 / stepM2,
     cells,
-    mean: cumulativePieces(mean, stepM2, cells, 1),
-    twofold: angle === null ? null : cumulativePieces(twofold, stepM2, cells, 2),
+    mean: cumulativePieces(samples.mean, stepM2, cells, 1),
+    twofold: angle === null ? null : cumulativePieces(samples.twofold, stepM2, cells, 2),
     axis: angle === null ? [0, 0] : [Math.cos(2 * angle), Math.sin(2 * angle)],
   };
 }
 
+/** Radius of the disc of places, metres; 0 where it makes no difference. */
+function sourceDisc(
+  { sourceAngleRad = 0 }: Scenario,
+  distanceM: number,
+  radiusM: number,
+  kappa: number,
+): number {
+  const discM = distanceM * Math.tan(sourceAngleRad);
+  return 2 * kappa * (radiusM + discM) * discM < POINT_SWING ? 0 : discM;
+}
+
 /** Outside their cone the amplitudes' series mean nothing, and grow without bound. */
-function checkCone({ cosLimit }: SphereAmplitudes, distanceM: number, reachM: number): void {
+function checkCone(spheres: readonly SphereAmplitudes[], distanceM: number, reachM: number): void {
   const halfAngle = Math.atan(reachM / distanceM);
-  const limit = Math.acos(cosLimit);
+  const limit = Math.acos(Math.max(...spheres.map(({ cosLimit }) => cosLimit)));
   if (halfAngle <= limit * (1 + 1e-6)) return;
   const [found, most] = [halfAngle, limit].map((angle) => `${((angle * 180) / Math.PI).toPrecision(4)} deg`);
   throw new RimwrightError(
@@ -79,40 +101,38 @@ function phaseStep(forward: readonly [number, number]): number {
   return Math.max(PHASE_STEP / 8, PHASE_STEP / ratio ** 0.25);
 }
 
-/** Samples of the flux density, summed over the colours of the line. */
+/** Samples of the flux density, summed over the colours of the light. */
 function sampleFlux(
   scenario: Scenario,
   distanceM: number,
   stepM2: number,
   count: number,
   spreadM: number,
-): FluxSamples {
-  const samples: FluxSamples = {
-    stepM2,
-    mean: new Float64Array(count),
-    twofold: new Float64Array(count),
-    crossedCount: coherentCount(scenario, distanceM, stepM2, count, spreadM),
-  };
-  for (const { weight, sphere } of scenario.colours) {
+): Pick<FluxSamples, 'mean' | 'twofold'> {
+  const [mean, twofold] = [new Float64Array(count), new Float64Array(count)];
+  const counts = new Map<Fading | undefined, number>();
+  for (const { weight, sphere, fading } of scenario.colours) {
+    const crossedCount = counts.get(fading) ?? coherentCount(fading, distanceM, stepM2, count, spreadM);
+    counts.set(fading, crossedCount);
+    const samples: FluxSamples = { stepM2, mean, twofold, crossedCount };
     if (spreadM > 0) addSpreadFlux(sphere, distanceM, spreadM, weight, samples);
     else addFlux(sphere, distanceM, weight, samples);
   }
-  return samples;
+  return { mean, twofold };
 }
 
-/** Samples before the line's colours cancel: the same for every colour, or what is left of them would not. */
+/** Samples before a line's colours cancel: the same for every colour, or what is left of them would not. */
 function coherentCount(
-  scenario: Scenario,
+  fading: Fading | undefined,
   distanceM: number,
   stepM2: number,
   count: number,
   spreadM: number,
 ): number {
-  const { pathM, wavenumber } = coherence(scenario);
-  if (pathM === Number.POSITIVE_INFINITY) return count;
+  if (fading === undefined || fading.pathM === Number.POSITIVE_INFINITY) return count;
   return countWhile(count, (i) => {
-    const { path } = stillPoint(wavenumber, distanceM, spreadM, Math.sqrt(i * stepM2));
-    return Math.hypot(...path) < pathM;
+    const { path } = stillPoint(fading.wavenumber, distanceM, spreadM, Math.sqrt(i * stepM2));
+    return Math.hypot(...path) < fading.pathM;
   });
 }
 

@@ -73,7 +73,7 @@ describe('the colours of a line', () => {
     }
   });
 
-  it('are a single one for a single colour, and for any line at most 21, or 64 where a large sphere may resonate', () => {
+  it('are a single one for a single colour, and for any line at most 21, or 96 where a large sphere may resonate', () => {
     expect(sphereScenario(2e-6).colours).toHaveLength(1);
     expect(coherence(sphereScenario(2e-6)).pathM).toBe(Number.POSITIVE_INFINITY);
     for (const linewidthM of [1e-12, 1e-9, 1e-8, 1e-7]) {
@@ -82,7 +82,7 @@ describe('the colours of a line', () => {
           (diameterM) => sphereScenario(diameterM, [1.59, 0], { linewidthM }, { largestPhase }).colours,
         );
         expect(small.length).toBeLessThanOrEqual(21);
-        expect(large.length).toBeLessThanOrEqual(64);
+        expect(large.length).toBeLessThanOrEqual(96);
         expect(large.reduce((sum, { weight }) => sum + weight, 0)).toBeCloseTo(1, 14);
       }
     }
