@@ -57,10 +57,12 @@ describe('Crew', () => {
 
   it('hands on what a worker met as an error of ours, and goes on working', async () => {
     const crew = await Crew.start(1, ORDERS, builtWorker());
-    // Beyond the cone that the particles are solved for: an error of ours keeps its code, another one is the machine's.
-    const far = await failureOf(crew.do({ ...job('disc', 0), method: 'refine', from: [1e9] }));
-    expect(far.code).toBe('input');
-    expect(far.message).toContain('half-angle');
+    // A disc of negative phase has no radius. Whatever is thrown keeps its code and words on the way.
+    const impossible: ExploreJob = { ...job('disc', 0), method: 'refine', from: [-1] };
+    const here = await failureOf((async () => new Workshop(ORDERS).do(impossible))());
+    const there = await failureOf(crew.do(impossible));
+    expect([there.code, there.message]).toEqual([here.code, here.message]);
+    expect(there.message).not.toBe('');
     const unknown = await failureOf(crew.do(job('no-such-variant', 0)));
     expect(unknown.code).toBe('machine');
     const { evaluations } = await crew.do(job('disc', 0));
