@@ -4,7 +4,9 @@ import type { Task } from '../score/task.ts';
 import type { Brief } from './brief.ts';
 
 /** A brief as results hold it: of tables of amplitudes, which may be long, their extent alone. */
-export type BriefJson = Omit<Brief, 'task'> & { task: Omit<Task, 'particles'> & { particles: ParticleJson[] } };
+export type BriefJson = Omit<Brief, 'task'> & {
+  task: Omit<Task, 'particles'> & { particles: ParticleJson[] };
+};
 
 type ParticleJson =
   | Sphere

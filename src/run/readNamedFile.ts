@@ -1,4 +1,5 @@
-import { resolve } from 'node:path';
+import { isAbsolute, join } from 'node:path';
+import type { Problem } from '../base/errors.ts';
 import { RimwrightError } from '../base/errors.ts';
 import type { Path, Report } from './briefReport.ts';
 import { readTextFile } from './readTextFile.ts';
@@ -20,22 +21,25 @@ export function readNamedFile<T>(
   folder: string,
   read: (text: string, file: string) => T,
 ): T | undefined {
+  const file = isAbsolute(name) ? name : join(folder, name);
+  let text: string;
   try {
-    return read(openNamed(name, path, report, folder), name);
+    text = readTextFile(file, MOST_BYTES);
   } catch (error) {
-    if (!(error instanceof RimwrightError) || error.code !== 'input') throw error;
-    report.adopt(error.problems);
+    const [{ found, expected }] = problemsOf(error);
+    report.refuse(path, `${expected}, seen from the brief's folder`, `${JSON.stringify(name)}, ${found}`);
+    return undefined;
+  }
+  try {
+    return read(text, file);
+  } catch (error) {
+    report.adopt(problemsOf(error));
     return undefined;
   }
 }
 
-function openNamed(name: string, path: Path, report: Report, folder: string): string {
-  try {
-    return readTextFile(resolve(folder, name), MOST_BYTES);
-  } catch (error) {
-    if (!(error instanceof RimwrightError) || error.code !== 'input') throw error;
-    const [{ found, expected }] = error.problems;
-    report.refuse(path, `${expected}, seen from the brief's folder`, `${JSON.stringify(name)}, ${found}`);
-    throw new RimwrightError('input', '', []);
-  }
+/** The user's mistakes; any other error goes on. */
+function problemsOf(error: unknown): readonly Problem[] {
+  if (!(error instanceof RimwrightError) || error.code !== 'input') throw error;
+  return error.problems;
 }
