@@ -1,18 +1,27 @@
 import { RimwrightError } from '../base/errors.ts';
 import { LegendreRules } from '../numeric/gaussLegendre.ts';
+import { axialIrradiance } from '../optics/gaussianBeam.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
+import { linesOf } from '../optics/light.ts';
 import { nodesArea, ringsRadius } from '../outline/area.ts';
 import type { NodeDensity } from '../outline/boundaryNodes.ts';
 import { boundaryNodes } from '../outline/boundaryNodes.ts';
 import { ringNodes } from '../outline/ringNodes.ts';
 import type { OutlineElement, Shape } from '../outline/shape.ts';
 import { shapeRadius } from '../outline/shapeRadius.ts';
+import { beamPath, particleIrradiance } from '../reading/beamPath.ts';
+import { beamReading } from '../reading/beamReading.ts';
+import { BeamShelf } from '../reading/beamShelf.ts';
+import type { BoundaryNodes } from '../reading/boundaryReading.ts';
 import { boundaryReading } from '../reading/boundaryReading.ts';
-import type { Symmetry } from '../reading/positions.ts';
-import { flightPoints, samplePositions } from '../reading/positions.ts';
+import type { Fringes } from '../reading/fringes.ts';
+import { fringesAt, shadowOffset } from '../reading/fringes.ts';
+import { litArea } from '../reading/litArea.ts';
+import type { MostPlaces, Symmetry } from '../reading/positions.ts';
+import { flightPoints, flightRule, NO_FLIGHT, samplePositions } from '../reading/positions.ts';
 import type { EdgeDensity } from '../reading/roughEdge.ts';
 import type { Scenario } from '../reading/scenario.ts';
-import { buildScenarios, driftedWavelengths } from '../reading/scenario.ts';
+import { buildScenarios, coherence, driftedWavelengths } from '../reading/scenario.ts';
 import { spreadOf } from '../reading/spreadOf.ts';
 import { tableDensity } from '../reading/tableDensity.ts';
 import type { Fields } from '../reading/tableShelf.ts';
@@ -32,15 +41,29 @@ export interface Fineness {
   /** Wavelengths over the drift, and places over the depth. */
   drifts: number;
   depths: number;
+  /** Most places for the particle, where an offset is so large that the spacing would ask for more. */
+  most: MostPlaces;
   /** Boundary nodes per radian of phase. */
   perRadian: number;
 }
 
 /** For every candidate of a search. */
-export const SEARCH_FINENESS: Fineness = { spacing: 0.5, drifts: 3, depths: 3, perRadian: 0.45 };
+export const SEARCH_FINENESS: Fineness = {
+  spacing: 0.5,
+  drifts: 3,
+  depths: 3,
+  most: { circles: 40, steps: 60 },
+  perRadian: 0.45,
+};
 
 /** For what is reported: ten times denser in position, and finer in the rest. */
-export const REPORT_FINENESS: Fineness = { spacing: 0.16, drifts: 5, depths: 5, perRadian: 0.9 };
+export const REPORT_FINENESS: Fineness = {
+  spacing: 0.16,
+  drifts: 5,
+  depths: 5,
+  most: { circles: 160, steps: 1200 },
+  perRadian: 0.9,
+};
 
 /** Scores, and the ratios reading/extinction that they come from: one for each scenario, depth and position. */
 export interface Judgement {
@@ -53,6 +76,9 @@ interface ElementNodes extends ElementArea {
   nodes: Float64Array;
 }
 
+/** The reading of nodes for a particle at (x, y), m²: over the irradiance on the axis at the particle's nominal place. */
+type Reader = (nodes: BoundaryNodes, x: number, y: number) => number;
+
 /** Scores designs for one task. Holds the solved particles and the radial tables, so make one and keep it. */
 export class Judge {
   readonly task: Task;
@@ -61,27 +87,63 @@ export class Judge {
   readonly wavelengthM: number;
   readonly #fineness: Fineness;
   readonly #shelf: TableShelf;
+  readonly #beamShelf: BeamShelf | null;
+  readonly #spreadsM: readonly number[];
   readonly #rules = new LegendreRules();
   readonly #leastExtinctionM2: number;
   readonly #largestDiameterM: number;
   readonly #populations: readonly Population[];
 
-  /** @param fields those of the far zone, or the exact ones: see `farZoneError` for when that matters */
+  /**
+   * @param fields those of the far zone, or the exact ones: see `farZoneError` for when that matters. In a focused beam they are
+   *   the far zone's in any case: see `fieldsFor`.
+   */
   constructor(task: Task, fineness: Fineness, fields: Fields = 'far') {
     this.task = task;
     this.#fineness = fineness;
     this.wavelengthM = task.light.wavelengthM / refractiveIndex(task.medium, task.light.wavelengthM)[0];
     this.scenarios = scenariosOf(task, fineness.drifts);
     const spreadsM = this.scenarios.map(({ particle }) => spreadOf(task.placement, particle.diameterM));
+    this.#spreadsM = spreadsM;
     this.#shelf = new TableShelf(this.scenarios, spreadsM, fields);
+    const { beam } = task.light;
+    this.#beamShelf = beam === undefined ? null : new BeamShelf(this.scenarios, spreadsM, beam);
     this.#leastExtinctionM2 = Math.min(...this.scenarios.map(({ extinctionM2 }) => extinctionM2));
     this.#largestDiameterM = Math.max(...task.particles.map(({ diameterM }) => diameterM));
     this.#populations = populationsOf(this.scenarios);
   }
 
-  /** κ = k/(2z) at the nominal wavelength, 1/m². */
+  /** κ = k/(2z) at the nominal wavelength, 1/m²; in a focused beam what stands for it (see `Fringes`). */
   kappa(distanceM: number): number {
-    return Math.PI / (this.wavelengthM * distanceM);
+    return this.#fringes(distanceM, 0).kappa;
+  }
+
+  /**
+   * Irradiance at a place of the particle over that on the axis at its nominal place, as a mean over its random motion:
+   * 1 in a flat wave.
+   *
+   * @param place metres
+   */
+  localIrradiance(scenario: number, distanceM: number, [x, y, z]: readonly [number, number, number]): number {
+    const { beam } = this.task.light;
+    if (beam === undefined) return 1;
+    const { wavenumber } = coherence(this.scenarios[scenario]);
+    const path = beamPath(beam, wavenumber, z, distanceM - z, this.#spreadsM[scenario]);
+    return particleIrradiance(path, x * x + y * y) * axialIrradiance(beam, wavenumber, z);
+  }
+
+  #fringes(distanceM: number, placeM: number): Fringes {
+    return fringesAt(this.task.light.beam, this.#wavenumber(), distanceM, placeM);
+  }
+
+  #wavenumber(): number {
+    return (2 * Math.PI) / this.wavelengthM;
+  }
+
+  /** Phase that a step of the particle across the axis makes at the rim, rad/m. */
+  #phasePerMetre(radiusM: number, distanceM: number): number {
+    const { kappa, magnification, fallPerM } = this.#fringes(distanceM, 0);
+    return Math.max(2 * kappa * magnification * radiusM, fallPerM);
   }
 
   /** Scores a shape as its family draws it; the ratios reading/extinction behind the correction come along. */
@@ -138,7 +200,7 @@ export class Judge {
         points[(p * flight.length) / 2 + f] = places[p + (f % 2)] + flight[f];
     }
     const nodes = this.#outlineNodes(elements, distanceM);
-    const ratios = this.#ratios(nodes, radiusM, distanceM, points, [0], new Float64Array(2));
+    const ratios = this.#ratios(nodes, radiusM, distanceM, points, [0], NO_FLIGHT);
     return { positions: places, flight, ratios };
   }
 
@@ -185,10 +247,13 @@ export class Judge {
 
   #density(distanceM: number): NodeDensity {
     const { placement, light } = this.task;
-    const shortest = (light.wavelengthM - light.driftM) / light.wavelengthM;
+    const lines = linesOf(light).map(({ wavelengthM }) => wavelengthM);
+    const shortest = (Math.min(...lines) - light.driftM) / light.wavelengthM;
+    const places = [-placement.depthM, 0, placement.depthM].map((placeM) => this.#fringes(distanceM, placeM));
+    const magnification = Math.max(...places.map((fringes) => fringes.magnification));
     return {
-      kappa: this.kappa(distanceM - placement.depthM) / shortest,
-      offsetM: placement.offsetM + (placement.crossing?.spanM ?? 0) / 2,
+      kappa: Math.max(...places.map(({ kappa }) => kappa)) / shortest,
+      offsetM: magnification * (placement.offsetM + (placement.crossing?.spanM ?? 0) / 2),
       perRadian: this.#fineness.perRadian,
       least: 6,
     };
@@ -200,14 +265,15 @@ export class Judge {
     const kept = light.polarizationRad === null && placement.crossing === null ? symmetry : NO_SYMMETRY;
     return samplePositions(
       placement.offsetM,
-      2 * this.kappa(distanceM) * radiusM,
+      this.#phasePerMetre(radiusM, distanceM),
       this.#fineness.spacing,
       kept,
+      this.#fineness.most,
     );
   }
 
   #flight(radiusM: number, distanceM: number): Float64Array {
-    return flightPoints(this.task.placement.crossing, 2 * this.kappa(distanceM) * radiusM);
+    return flightPoints(this.task.placement.crossing, this.#phasePerMetre(radiusM, distanceM));
   }
 
   #depths(): number[] {
@@ -224,28 +290,52 @@ export class Judge {
     distanceM: number,
     positions: Float64Array,
     depths: readonly number[],
-    flight = this.#flight(radiusM, distanceM),
+    flight = flightRule(this.task.placement.crossing, this.#phasePerMetre(radiusM, distanceM), this.#rules),
   ): Float64Array[] {
-    const reach = radiusM + farthest(positions) + farthest(flight);
+    const offsetM = farthest(positions) + farthest(flight.points);
     const count = positions.length / 2;
     const ratios = this.scenarios.map(() => new Float64Array(count * depths.length));
     depths.forEach((depth, d) => {
-      const tables = this.#shelf.tables(distanceM - depth, reach);
+      const readers = this.#readers(distanceM, depth, radiusM, offsetM);
       for (let s = 0; s < ratios.length; s++) {
-        const perExtinction = 2 / (this.scenarios[s].extinctionM2 * flight.length);
+        const read = readers[s];
+        const { extinctionM2 } = this.scenarios[s];
         for (let p = 0; p < count; p++) {
           let reading = 0;
-          for (let f = 0; f < flight.length; f += 2) {
-            const x = positions[2 * p] + flight[f];
-            const y = positions[2 * p + 1] + flight[f + 1];
+          for (let f = 0; f < flight.weights.length; f++) {
+            const x = positions[2 * p] + flight.points[2 * f];
+            const y = positions[2 * p + 1] + flight.points[2 * f + 1];
             for (const { weight, nodes } of elements)
-              reading += weight * boundaryReading(tables[s], nodes, x, y);
+              reading += flight.weights[f] * weight * read(nodes, x, y);
           }
-          ratios[s][d * count + p] = reading * perExtinction;
+          ratios[s][d * count + p] = reading / extinctionM2;
         }
       }
     });
     return ratios;
+  }
+
+  /** One a scenario, for particles up to `offsetM` off the axis. */
+  #readers(distanceM: number, placeM: number, radiusM: number, offsetM: number): Reader[] {
+    const { beam } = this.task.light;
+    if (beam === undefined || this.#beamShelf === null) {
+      const flat = this.#shelf.tables(distanceM - placeM, radiusM + offsetM);
+      return flat.map((table) => (nodes, x, y) => boundaryReading(table, nodes, x, y));
+    }
+    return this.#beamShelf.tables(distanceM, placeM, radiusM, offsetM).map((table) => {
+      const axial = axialIrradiance(beam, table.path.wavenumber, placeM);
+      return (nodes, x, y) => axial * beamReading(table, nodes, x, y);
+    });
+  }
+
+  /** Elements with the areas that would collect as much power in a flat wave. */
+  #lit(elements: readonly ElementNodes[], distanceM: number): readonly ElementArea[] {
+    const { beam } = this.task.light;
+    if (beam === undefined) return elements;
+    return elements.map(({ weight, nodes }) => ({
+      weight,
+      areaM2: litArea(beam, this.#wavenumber(), distanceM, nodes),
+    }));
   }
 
   #score(
@@ -268,13 +358,14 @@ export class Judge {
     const population = populationCorrection(this.#populations, rows, gain);
     const electronics = { ...detector, ...light };
     const extinctionM2 = this.#leastExtinctionM2;
+    const lit = this.#lit(elements, distanceM);
     const scores: Scores = {
       gain,
       correction: { worst, rms, ...(population !== null && { population }) },
       lobe: { ratio: lobeRatio(radiusM, distanceM, this.wavelengthM, this.#largestDiameterM) },
       snr: {
-        required: requiredSnr(elements, target.correction, gain, extinctionM2),
-        time_s: measurementTime(elements, target.correction, gain, extinctionM2, electronics),
+        required: requiredSnr(lit, target.correction, gain, extinctionM2),
+        time_s: measurementTime(lit, target.correction, gain, extinctionM2, electronics),
       },
       area_m2: elements.reduce((sum, { areaM2 }) => sum + areaM2, 0),
       radius_m: radiusM,
@@ -294,13 +385,20 @@ function scenariosOf(task: Task, drifts: number): Scenario[] {
   const { light, medium, particles, placement, detector } = task;
   const nearestM = detector.distanceM[0] - placement.depthM;
   const index = refractiveIndex(medium, light.wavelengthM)[0];
-  const largestPhase = (Math.PI * index * detector.radiusM[1] ** 2) / (light.wavelengthM * nearestM);
+  const farthestM = detector.radiusM[1] + placement.offsetM + (placement.crossing?.spanM ?? 0) / 2;
+  const tangent = Math.tan(light.sourceAngleRad ?? 0);
+  // η = κρ² with the source's disc of places, z tan a, added to ρ: its parts are largest at either end of the distances.
+  const rho2PerDistance =
+    farthestM ** 2 / nearestM +
+    2 * farthestM * tangent +
+    (detector.distanceM[1] + placement.depthM) * tangent ** 2;
+  const largestPhase = (Math.PI * index * rho2PerDistance) / light.wavelengthM;
   const halfAngle = coneHalfAngle(task);
   return buildScenarios(light, medium, particles, driftedWavelengths(light, drifts), halfAngle, largestPhase);
 }
 
 /** Half-angle of the cone in which light may fall on a detector, radians: how far amplitudes are asked for. */
-export function coneHalfAngle({ placement, detector, particles }: Task): number {
+export function coneHalfAngle({ light, placement, detector, particles }: Task): number {
   const spreadM = Math.max(...particles.map(({ diameterM }) => spreadOf(placement, diameterM)));
   const nearestM = detector.distanceM[0] - placement.depthM;
   const spanM = placement.crossing?.spanM ?? 0;
@@ -308,7 +406,7 @@ export function coneHalfAngle({ placement, detector, particles }: Task): number 
   // spread reaches 7.5 σ beyond them.
   const farthestM = BEYOND_RADIUS * detector.radiusM[1] + placement.offsetM + spanM / 2;
   const reachM = 1.35 * farthestM + 7.5 * spreadM;
-  return Math.min(1.5, Math.atan(reachM / nearestM) + 1e-3);
+  return Math.min(1.5, Math.atan(reachM / nearestM + Math.tan(light.sourceAngleRad ?? 0)) + 1e-3);
 }
 
 function withArea(weight: number, nodes: Float64Array): ElementNodes {
