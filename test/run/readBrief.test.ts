@@ -5,8 +5,10 @@ import { describe, expect, it } from 'vitest';
 import { RimwrightError } from '../../src/base/errors.ts';
 import { presetsFolder } from '../../src/base/presetsFolder.ts';
 import { constantIndex } from '../../src/optics/indexModel.ts';
+import { isTabled } from '../../src/optics/particle.ts';
 import { loadIndexModel } from '../../src/optics/shelf.ts';
 import type { Brief } from '../../src/run/brief.ts';
+import { briefToJson } from '../../src/run/briefJson.ts';
 import { readBrief } from '../../src/run/readBrief.ts';
 import { loadShop } from '../../src/shop/shelf.ts';
 
@@ -47,8 +49,11 @@ describe('readBrief', () => {
         light: {
           wavelengthM: 6.35e-7,
           linewidthM: 0,
+          shape: 'gaussian',
+          also: [],
           driftM: 0,
           polarizationRad: null,
+          sourceAngleRad: 0,
           irradianceWm2: 5e4,
           intensityNoisePerHz: 0,
         },
@@ -71,8 +76,11 @@ describe('readBrief', () => {
       defaults: [
         'title: shortest',
         'light.linewidth: 0 nm',
+        'light.shape: gaussian',
+        'light.also: none',
         'light.drift: 0 nm',
         'light.polarization: none',
+        'light.sourceAngle: 0 mrad',
         'light.irradiance: 5 W/cm^2',
         'light.beam: flat',
         'light.intensityNoise: none',
@@ -119,8 +127,11 @@ describe('readBrief', () => {
     expect(task.light).toEqual({
       wavelengthM: 6.35e-7,
       linewidthM: 1e-9,
+      shape: 'gaussian',
+      also: [],
       driftM: 1e-9,
       polarizationRad: null,
+      sourceAngleRad: 0,
       irradianceWm2: 5e4,
       intensityNoisePerHz: 1e-15,
     });
@@ -153,6 +164,20 @@ describe('readBrief', () => {
     const angle = await readBrief(minimalWith('light', 'polarization: 90 deg'), 'a.yaml');
     expect(angle.task.light.polarizationRad).toBe(Math.PI / 2);
 
+    const also =
+      'also: [{ wavelength: 488 nm, share: 40 % }, { wavelength: 532 nm, share: 0.1, linewidth: 2 nm }]';
+    const lines = await readBrief(
+      minimalWith('light', `shape: lorentzian, ${also}, sourceAngle: 2 mrad`),
+      'a.yaml',
+    );
+    expect(lines.task.light).toMatchObject({ shape: 'lorentzian', sourceAngleRad: 0.002 });
+    expect(lines.task.light.also).toEqual([
+      { wavelengthM: 488e-9, share: 0.4, linewidthM: 0 },
+      { wavelengthM: 532e-9, share: 0.1, linewidthM: 2e-9 },
+    ]);
+    expect(lines.defaults).toContain('light.also[0].linewidth: 0 nm');
+    expect(lines.defaults).not.toContain('light.also[1].linewidth: 0 nm');
+
     const water = await readBrief(`${MINIMAL}medium: 1.332\n`, 'a.yaml');
     expect(water.task.medium).toEqual(constantIndex(1.332));
     expect(water.mediumName).toBe('1.332');
@@ -165,6 +190,49 @@ describe('readBrief', () => {
     expect(diameters[0]).toBe(1e-6);
     expect(diameters[4]).toBe(1e-5);
     for (let i = 1; i < 5; i++) expect(diameters[i] / diameters[i - 1]).toBeCloseTo(10 ** 0.25, 12);
+  });
+
+  it('reads spheres with a core', async () => {
+    const text = MINIMAL.replace('index: 1.59', 'material: water, core: { share: 60 %, index: 1.5 + 0.1i }');
+    const [particle] = (await readBrief(text, 'a.yaml')).task.particles;
+    expect(particle).toEqual({
+      diameterM: 2e-6,
+      index: loadIndexModel('materials', 'water', presetsFolder()),
+      material: '1.5 + 0.1i in a shell of water',
+      core: { share: 0.6, index: constantIndex(1.5, 0.1) },
+    });
+  });
+
+  it('reads distributions of sizes, log-normal and counted, each with its shares', async () => {
+    const folder = fileURLToPath(BROKEN);
+    const entries = [
+      '{ distribution: { median: 2 um, gsd: 1.6 }, index: 1.59 }',
+      '{ distribution: counts.csv, index: 1.33, core: { share: 0.5, index: 1.59 } }',
+    ];
+    const text = MINIMAL.replace('{ diameter: 2 um, index: 1.59 }', entries.join(', '));
+    const { task, defaults } = await readBrief(text, `${folder}a.yaml`);
+    expect(defaults.filter((line) => line.startsWith('particles'))).toEqual(['particles[0].count: 9']);
+    const populations = task.particles.map(({ population }) => population);
+    expect(populations.map((one) => one?.of)).toEqual([...Array(9).fill(0), 1, 1, 1]);
+    expect(task.particles.slice(9).map(({ diameterM }) => diameterM)).toEqual([5e-7, 1e-6, 2e-6]);
+    expect(populations[10]?.share).toBeCloseTo(340 / 550, 12);
+    expect(task.particles[4].diameterM).toBeCloseTo(2e-6, 12);
+    expect(task.particles[10].core?.share).toBe(0.5);
+  });
+
+  it('reads tables of amplitudes beside the brief, or in the folder given, and sends them whole', async () => {
+    const folder = fileURLToPath(BROKEN);
+    const entry = 'diameter: 2 um, amplitudes: thirty-degrees.csv, extinction: 8.508 um^2';
+    const text = MINIMAL.replace('diameter: 2 um, index: 1.59', entry);
+    const brief = await readBrief(text, `${folder}a.yaml`);
+    const [particle] = brief.task.particles;
+    expect(particle).toMatchObject({ diameterM: 2e-6, material: 'thirty-degrees.csv' });
+    expect(isTabled(particle) && particle.amplitudes.angles.length).toBe(31);
+    expect(structuredClone(brief)).toEqual(brief);
+    expect((await readBrief(text, 'a.yaml', presetsFolder(), folder)).task).toEqual(brief.task);
+    const [told] = briefToJson(brief).task.particles;
+    expect(told).toMatchObject({ amplitudes: { rows: 31 } });
+    expect(JSON.parse(JSON.stringify(told))).toEqual(told);
   });
 
   it('can be sent to a worker', async () => {
