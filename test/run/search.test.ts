@@ -68,26 +68,23 @@ describe('search', () => {
     expect(again.area_m2).toBeCloseTo(scores.area_m2, 15);
   });
 
-  it.each([100, 1200])(
-    'tries no more than %i candidates where the brief says so',
-    async (candidates) => {
-      const reports: Progress[] = [];
-      const options = { ...crewOf(2), onProgress: (progress: Progress) => reports.push(progress) };
-      const { evaluations, designs, stopped } = await search(
-        await briefOf('nominal-sphere', candidates),
-        options,
-      );
-      expect(evaluations).toBeLessThanOrEqual(candidates);
-      expect(evaluations).toBeGreaterThan(0.5 * candidates);
-      expect(stopped).toBe(false);
-      expect(designs.length).toBeGreaterThan(0);
-      // Progress only ever goes on, and never says more than was done.
-      const counts = reports.map((progress) => progress.evaluations);
-      expect(counts).toEqual([...counts].sort((a, b) => a - b));
-      expect(counts[counts.length - 1]).toBeLessThanOrEqual(evaluations);
-      for (const report of reports) expect(report.candidates).toBe(candidates);
-    },
-  );
+  it.each([100, 1200])('tries no more than %i candidates where the brief says so', async (candidates) => {
+    const reports: Progress[] = [];
+    const options = { ...crewOf(2), onProgress: (progress: Progress) => reports.push(progress) };
+    const { evaluations, designs, stopped } = await search(
+      await briefOf('nominal-sphere', candidates),
+      options,
+    );
+    expect(evaluations).toBeLessThanOrEqual(candidates);
+    expect(evaluations).toBeGreaterThan(0.5 * candidates);
+    expect(stopped).toBe(false);
+    expect(designs.length).toBeGreaterThan(0);
+    // Progress only ever goes on, and never says more than was done.
+    const counts = reports.map((progress) => progress.evaluations);
+    expect(counts).toEqual([...counts].sort((a, b) => a - b));
+    expect(counts[counts.length - 1]).toBeLessThanOrEqual(evaluations);
+    for (const report of reports) expect(report.candidates).toBe(candidates);
+  });
 
   it('gives what it has found when it is stopped', async () => {
     const controller = new AbortController();
