@@ -27,7 +27,7 @@ export function checkTable(
   path: Path,
   report: Report,
 ): void {
-  if (longest - wavelength > MOST_STRAY * wavelength) {
+  if (Math.max(longest - wavelength, wavelength - shortest) > MOST_STRAY * wavelength) {
     const [low, high] = [shortest, longest].map((metres) => formatQuantity(metres, 'length'));
     const expected = 'light that strays 1 % at most from the one wavelength of a table';
     report.refuse([...path, 'amplitudes'], expected, `${material} in light of ${low} to ${high}`);
