@@ -8,7 +8,8 @@ import { openBrief } from '../run/openBrief.ts';
 import type { RankedDesign } from '../run/ranking.ts';
 import { readDesignFile } from '../run/readDesignFile.ts';
 import { rankGiven, scoreGiven } from '../run/scoreGiven.ts';
-import { distanceWarning, farZoneWarning, present } from '../run/warnings.ts';
+import { beamFieldsWarning, distanceWarning, farZoneWarning, present } from '../run/warnings.ts';
+import { fieldsFor } from '../score/farZoneError.ts';
 import type { Task } from '../score/task.ts';
 import { DESIGN_COLUMNS, MEETS_COLUMN, shopColumn } from './designColumns.ts';
 import { EXIT } from './exit.ts';
@@ -28,10 +29,12 @@ export async function run(
   const distance = await readDistance(options.distance);
   const { brief } = await openBrief(place);
   const { task } = brief;
-  const fields = options.exact ? 'exact' : 'far';
+  const wanted = options.exact ? 'exact' : 'far';
+  const fields = fieldsFor(task, wanted);
   const designs = rankGiven(scoreAll(files, task, distance, fields));
   const warnings = present(
     designs.flatMap(({ distanceM }) => [
+      beamFieldsWarning(task, wanted),
       fields === 'far' ? farZoneWarning(task, distanceM) : null,
       distanceWarning(task, distanceM),
     ]),

@@ -15,7 +15,13 @@ import { prepareFolder } from '../run/resultsFolder.ts';
 import { roughReadings } from '../run/roughReadings.ts';
 import { scoreGiven } from '../run/scoreGiven.ts';
 import { traceFlight } from '../run/traceFlight.ts';
-import { diffusionWarning, distanceWarning, farZoneWarning, present } from '../run/warnings.ts';
+import {
+  beamFieldsWarning,
+  diffusionWarning,
+  distanceWarning,
+  farZoneWarning,
+  present,
+} from '../run/warnings.ts';
 import { refuseExisting, writeWhole } from '../run/writeWhole.ts';
 import { shortCount } from './designColumns.ts';
 import { EXIT } from './exit.ts';
@@ -53,14 +59,19 @@ export async function run(place: string, options: Options): Promise<number> {
   const { brief } = await openBrief(place);
   const { task } = brief;
   const given = readDesignFile(options.outline, options.design);
-  const fields = options.exact ? 'exact' : 'far';
-  const judged = judgeOutline(task, given, distance, position, fields);
-  const { judge, distanceM } = judged;
+  const wanted = options.exact ? 'exact' : 'far';
+  const judged = judgeOutline(task, given, distance, position, wanted);
+  const { judge, distanceM, fields } = judged;
   // At one place there is no worst and no mean over places: the scores are left out.
   const design = position === null ? scoreGiven(task, given, judged) : null;
   const farZone = fields === 'far' ? farZoneWarning(task, distanceM) : null;
   const diffusion = diffusionWarning(task, [judged]);
-  const warnings = present([farZone, distanceWarning(task, distanceM), diffusion]);
+  const warnings = present([
+    beamFieldsWarning(task, wanted),
+    farZone,
+    distanceWarning(task, distanceM),
+    diffusion,
+  ]);
   const places = position === null ? undefined : Float64Array.from(position);
   const gain = design?.scores.gain ?? 1;
   const { outlines, seed } = options;

@@ -22,10 +22,10 @@ export interface FinishResult {
   designs: Design[];
 }
 
-/** Two judges of the same fineness: one of the fields that lead the search, one of the others. */
+/** Two judges of the same fineness: one of the fields that lead the search, one of the others where there are any. */
 export interface FinishingJudges {
   judge: Judge;
-  otherJudge: Judge;
+  otherJudge: Judge | null;
   fields: Fields;
 }
 
@@ -41,14 +41,16 @@ export function finish(
       const drawn = drawCandidate(judge, space, variant, vector) as { shape: Shape; distanceM: number };
       const elements = toPoints(drawn.shape, judge.kappa(drawn.distanceM));
       const judged = judge.scoreOutline(elements, drawn.distanceM, drawn.shape);
-      const other = otherJudge.scoreOutline(elements, drawn.distanceM, drawn.shape);
+      const other = otherJudge?.scoreOutline(elements, drawn.distanceM, drawn.shape);
       return {
         family: variant.family,
         distanceM: drawn.distanceM,
         elements,
         scores: judged.scores,
         fields,
-        otherFields: { worst: other.scores.correction.worst, difference: largestDifference(judged, other) },
+        ...(other && {
+          otherFields: { worst: other.scores.correction.worst, difference: largestDifference(judged, other) },
+        }),
         shop: askShop(elements, judge.task.shop),
       };
     }),

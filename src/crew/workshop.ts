@@ -1,6 +1,6 @@
 import type { Variant } from '../outline/families/family.ts';
 import type { Fields } from '../reading/tableShelf.ts';
-import { leadingFields } from '../score/farZoneError.ts';
+import { fieldsFor, leadingFields } from '../score/farZoneError.ts';
 import { Judge, REPORT_FINENESS, SEARCH_FINENESS } from '../score/judge.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
 import { searchSpace } from '../score/searchSpace.ts';
@@ -32,11 +32,16 @@ export class Workshop {
 
   do<J extends Job>(job: J): ResultOf<J> {
     if (job.kind === 'explore') return explore(job, this.#judge, this.#space) as ResultOf<J>;
-    this.#fine ??= {
-      judge: new Judge(this.#orders.task, REPORT_FINENESS, this.#fields),
-      otherJudge: new Judge(this.#orders.task, REPORT_FINENESS, this.#fields === 'far' ? 'exact' : 'far'),
+    this.#fine ??= this.#finishingJudges();
+    return finish(job, this.#fine, this.#space) as ResultOf<J>;
+  }
+  #finishingJudges(): FinishingJudges {
+    const { task } = this.#orders;
+    const other = fieldsFor(task, this.#fields === 'far' ? 'exact' : 'far');
+    return {
+      judge: new Judge(task, REPORT_FINENESS, this.#fields),
+      otherJudge: other === this.#fields ? null : new Judge(task, REPORT_FINENESS, other),
       fields: this.#fields,
     };
-    return finish(job, this.#fine, this.#space) as ResultOf<J>;
   }
 }

@@ -76,6 +76,11 @@ export function beamPower(
   return (Math.PI / 2) * beamRadius(beam, wavenumber, zM) ** 2 * axialIrradianceWm2;
 }
 
+/** Irradiance on the axis at z over that at the particle's nominal place, w(0)²/w(z)². */
+export function axialIrradiance(beam: GaussianBeam, wavenumber: number, zM: number): number {
+  return (beamRadius(beam, wavenumber, 0) / beamRadius(beam, wavenumber, zM)) ** 2;
+}
+
 /** Q(z) = z − f − i z_R, metres: the distance from the complex place where the beam's spherical waves begin. */
 export function complexDistance(beam: GaussianBeam, wavenumber: number, zM: number): Complex {
   return [zM - beam.focusM, -rayleighRange(beam, wavenumber)];

@@ -1,3 +1,5 @@
+import type { GaussianBeam } from './gaussianBeam.ts';
+
 /** How the power of a line is spread over its wavelengths. */
 export const LINE_SHAPES = ['gaussian', 'lorentzian'] as const;
 export type LineShape = (typeof LINE_SHAPES)[number];
@@ -31,7 +33,9 @@ export interface Light {
   driftM: number;
   /** Angle of the electric field from the x axis, radians; null for unpolarised light. */
   polarizationRad: number | null;
-  /** Irradiance at the particle, W/m². */
+  /** The focused beam that the light is; a flat wave if left out. */
+  beam?: GaussianBeam;
+  /** Irradiance at the particle, W/m²: on the axis of a focused beam, at the particle's nominal place. */
   irradianceWm2: number;
   /** Relative intensity noise, 1/Hz (10^(dB/10)); 0 for none. */
   intensityNoisePerHz: number;

@@ -24,6 +24,8 @@ export interface Reading {
   /** Of the particle, relative to the axis and to its nominal place along the beam. */
   position_m: [x: number, y: number, z: number];
   spread_m: number;
+  /** In a focused beam: irradiance at the particle over that on the axis at the nominal place, which readings are relative to. */
+  local_irradiance?: number;
   extinction_m2: number;
   reading_m2: number;
   /** reading/extinction − 1, without any gain. */
@@ -107,6 +109,9 @@ function readingAt(
     distance_m: distanceM,
     position_m: place,
     spread_m: spreadOf(judge.task.placement, particle.diameterM),
+    ...(judge.task.light.beam && {
+      local_irradiance: judge.localIrradiance(scenario, distanceM, place),
+    }),
     extinction_m2: extinctionM2,
     reading_m2: ratio * extinctionM2,
     correction: ratio - 1,

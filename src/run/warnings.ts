@@ -1,6 +1,7 @@
 import { formatQuantity } from '../base/quantity.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
 import { spreadOf } from '../reading/spreadOf.ts';
+import type { Fields } from '../reading/tableShelf.ts';
 import type { Design } from '../score/design.ts';
 import { farZoneError } from '../score/farZoneError.ts';
 import type { Task } from '../score/task.ts';
@@ -20,7 +21,8 @@ export function farZoneWarning(task: Task, distanceM: number): string | null {
   const particle = `particles of ${formatQuantity(diameterM, 'length', 3)} at ${formatQuantity(distanceM, 'length', 3)}`;
   const about = formatQuantity(error, 'ratio', 2);
   const allowed = formatQuantity(task.target.correction, 'ratio', 3);
-  return `The far-zone form may be off by about ${about} of the extinction for ${particle}, and the target allows ${allowed}: --exact tells`;
+  const tells = task.light.beam === undefined ? ': --exact tells' : '';
+  return `The far-zone form may be off by about ${about} of the extinction for ${particle}, and the target allows ${allowed}${tells}`;
 }
 
 /**
@@ -36,6 +38,12 @@ export function fieldsWarning(task: Task, designs: readonly Design[]): string | 
       ? 'the far zone, and the exact ones meet the target where it is said to be met'
       : 'the exact solution';
   return `Far-zone and exact fields differ by up to ${formatQuantity(difference, 'ratio', 2)} of the extinction for these designs. Scores are of ${leading}`;
+}
+
+/** Where exact fields are wanted and cannot be had. */
+export function beamFieldsWarning({ light }: Task, wanted: Fields): string | null {
+  if (wanted === 'far' || light.beam === undefined) return null;
+  return "Exact fields are not computed in a focused beam: these are the far zone's";
 }
 
 /** Where a distance in use lies outside of those that the brief allows. */

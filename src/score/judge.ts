@@ -1,4 +1,4 @@
-import { RimwrightError } from '../base/errors.ts';
+import { inputError, RimwrightError } from '../base/errors.ts';
 import { LegendreRules } from '../numeric/gaussLegendre.ts';
 import { axialIrradiance } from '../optics/gaussianBeam.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
@@ -15,7 +15,7 @@ import { BeamShelf } from '../reading/beamShelf.ts';
 import type { BoundaryNodes } from '../reading/boundaryReading.ts';
 import { boundaryReading } from '../reading/boundaryReading.ts';
 import type { Fringes } from '../reading/fringes.ts';
-import { fringesAt, shadowOffset } from '../reading/fringes.ts';
+import { fringesAt } from '../reading/fringes.ts';
 import { litArea } from '../reading/litArea.ts';
 import type { MostPlaces, Symmetry } from '../reading/positions.ts';
 import { flightPoints, flightRule, NO_FLIGHT, samplePositions } from '../reading/positions.ts';
@@ -31,6 +31,7 @@ import type { ElementArea } from './cost.ts';
 import { areaOverFloor, lobeRatio, measurementTime, requiredSnr } from './cost.ts';
 import type { Population } from './population.ts';
 import { populationCorrection, populationsOf } from './population.ts';
+import { reachesOf } from './reaches.ts';
 import type { Scores } from './scores.ts';
 import type { Task } from './task.ts';
 
@@ -52,7 +53,7 @@ export const SEARCH_FINENESS: Fineness = {
   spacing: 0.5,
   drifts: 3,
   depths: 3,
-  most: { circles: 40, steps: 60 },
+  most: { circles: 12, steps: 24 },
   perRadian: 0.45,
 };
 
@@ -209,6 +210,7 @@ export class Judge {
    *
    * @param radiusM how far from the axis it will be asked for
    * @param place of the particle, metres
+   * @throws RimwrightError `input` in a focused beam
    */
   edgeDensity(
     scenario: number,
@@ -216,6 +218,10 @@ export class Judge {
     radiusM: number,
     [px, py]: readonly [x: number, y: number],
   ): EdgeDensity {
+    if (this.task.light.beam !== undefined) {
+      const expected = 'beam: flat, for rough edges are not read in a focused beam';
+      throw inputError([{ key: 'light.beam', found: 'a focused beam', expected }]);
+    }
     const flight = this.#flight(radiusM, distanceM);
     const table = this.#shelf.tables(distanceM, radiusM + Math.hypot(px, py) + farthest(flight))[scenario];
     const points = flight.map((along, i) => along + (i % 2 === 0 ? px : py));
@@ -229,7 +235,9 @@ export class Judge {
    */
   shapeRatios(shape: Shape, distanceM: number, radiusM: number): Float64Array {
     const elements = this.#shapeNodes(shape, distanceM);
-    const positions = this.#positions(radiusM, distanceM, shape);
+    const { offsetM } = this.task.placement;
+    const perMetre = 2 * this.kappa(distanceM) * radiusM;
+    const positions = samplePositions(offsetM, perMetre, this.#fineness.spacing, shape, MASK_PLACES);
     return flatten(this.#ratios(elements, radiusM, distanceM, positions, this.#depths()));
   }
 
@@ -378,35 +386,30 @@ export class Judge {
 /** Outlines are judged up to this many times the brief's largest radius: how far beyond is what leads a search back. */
 export const BEYOND_RADIUS = 1.4;
 
+/** Places along one radius: enough for a mask that a search only begins with, and few enough for its linear program. */
+const MASK_PLACES: MostPlaces = { circles: 6, steps: 1 };
+
 const NO_SYMMETRY: Symmetry = { folds: 1, mirror: false };
 
 /** Solves the particles of a task for the widest cone and the largest phase that its limits allow. */
 function scenariosOf(task: Task, drifts: number): Scenario[] {
-  const { light, medium, particles, placement, detector } = task;
-  const nearestM = detector.distanceM[0] - placement.depthM;
-  const index = refractiveIndex(medium, light.wavelengthM)[0];
-  const farthestM = detector.radiusM[1] + placement.offsetM + (placement.crossing?.spanM ?? 0) / 2;
-  const tangent = Math.tan(light.sourceAngleRad ?? 0);
-  // η = κρ² with the source's disc of places, z tan a, added to ρ: its parts are largest at either end of the distances.
-  const rho2PerDistance =
-    farthestM ** 2 / nearestM +
-    2 * farthestM * tangent +
-    (detector.distanceM[1] + placement.depthM) * tangent ** 2;
-  const largestPhase = (Math.PI * index * rho2PerDistance) / light.wavelengthM;
-  const halfAngle = coneHalfAngle(task);
-  return buildScenarios(light, medium, particles, driftedWavelengths(light, drifts), halfAngle, largestPhase);
+  const { light, medium, particles, detector } = task;
+  const phases = reachesOf(task).map(({ kappa, shadowM }) => kappa * (detector.radiusM[1] + shadowM) ** 2);
+  const wavelengths = driftedWavelengths(light, drifts);
+  return buildScenarios(light, medium, particles, wavelengths, coneHalfAngle(task), Math.max(...phases));
 }
 
 /** Half-angle of the cone in which light may fall on a detector, radians: how far amplitudes are asked for. */
-export function coneHalfAngle({ light, placement, detector, particles }: Task): number {
+export function coneHalfAngle(task: Task): number {
+  const { placement, detector, particles } = task;
   const spreadM = Math.max(...particles.map(({ diameterM }) => spreadOf(placement, diameterM)));
-  const nearestM = detector.distanceM[0] - placement.depthM;
-  const spanM = placement.crossing?.spanM ?? 0;
-  // A search tries outlines beyond the allowed radius, tables are built with some room to grow (TableShelf), and the
-  // spread reaches 7.5 σ beyond them.
-  const farthestM = BEYOND_RADIUS * detector.radiusM[1] + placement.offsetM + spanM / 2;
-  const reachM = 1.35 * farthestM + 7.5 * spreadM;
-  return Math.min(1.5, Math.atan(reachM / nearestM + Math.tan(light.sourceAngleRad ?? 0)) + 1e-3);
+  const tangents = reachesOf(task).map(({ distanceM, shadowM }) => {
+    // A search tries outlines beyond the allowed radius, tables are built with some room to grow (TableShelf), and the
+    // spread reaches 7.5 σ beyond them.
+    const farthestM = BEYOND_RADIUS * detector.radiusM[1] + shadowM;
+    return (1.35 * farthestM + 7.5 * spreadM) / distanceM;
+  });
+  return Math.min(1.5, Math.atan(Math.max(...tangents)) + 1e-3);
 }
 
 function withArea(weight: number, nodes: Float64Array): ElementNodes {
