@@ -1,10 +1,14 @@
 import { availableParallelism, cpus } from 'node:os';
 import { benchBaseline } from './baseline.ts';
 import { benchCandidates } from './candidates.ts';
+import { benchEffects } from './effects.ts';
+import { benchPolygons } from './polygons.ts';
 import { benchReadings } from './readings.ts';
 
 /** `npm run bench`: a table; `npm run bench -- --json`: one JSON document. Medians of seeded, warmed runs. */
 const readings = await benchReadings();
+const polygons = benchPolygons();
+const effects = await benchEffects();
 const candidates = await benchCandidates();
 const roadDust = await benchCandidates('road-dust');
 const baseline = await benchBaseline();
@@ -14,7 +18,7 @@ if (process.argv.includes('--json')) {
   const { twoWorkersOverOne, candidatesPerSecond } = candidates;
   console.log(
     JSON.stringify(
-      { ...readings, candidatesPerSecond, twoWorkersOverOne, roadDust, baseline, machine },
+      { ...readings, candidatesPerSecond, twoWorkersOverOne, polygons, effects, roadDust, baseline, machine },
       null,
       2,
     ),
@@ -30,6 +34,13 @@ if (process.argv.includes('--json')) {
   row('Gauss–Legendre spokes per second, error 1e-4', plane(readings.gaussQuadrature));
   row('  readings over spokes', readings.ratioToGaussQuadrature);
   row('radial table to 0.45 mm, ms', readings.tableMs.toFixed(2));
+  row('closed form of a polygon, ns an edge, η = 10', polygons.nsPerEdgeAt10.toFixed(0));
+  row('closed form of a polygon, ns an edge, η = 1e6', polygons.nsPerEdgeAt1e6.toFixed(0));
+  row('  η = 1e6 over η = 10', polygons.ratio.toFixed(2));
+  for (const { effect, tableMs, readingsPerSecond } of effects) {
+    row(`radial table to 0.55 mm, effect: ${effect}, ms`, tableMs.toFixed(2));
+    row('  readings per second', readingsPerSecond);
+  }
   for (const [name, { candidatesPerSecond, twoWorkersOverOne }] of Object.entries({
     offset: candidates,
     'road dust': roadDust,

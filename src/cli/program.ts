@@ -8,6 +8,7 @@ import { oneOf, wholeNumber } from './optionRules.ts';
 const CANDIDATES = [100, 100_000_000] as const;
 const SEEDS = [0, 2 ** 31 - 1] as const;
 const WORKERS = [1, 64] as const;
+const DIAMETERS = [2, 2000] as const;
 const ROUGH_OUTLINES = [2, 10_000] as const;
 
 const BRIEF = "a brief's path, or a brief's name on the shelf";
@@ -125,6 +126,33 @@ Example:
   tries edges of 2 um rms height that forget themselves within 50 um.`,
     )
     .action(async (brief, options) => done(await (await import('./readingCommand.ts')).run(brief, options)));
+
+  program
+    .command('response')
+    .summary('what a design reads of spheres of every size')
+    .description(
+      "Shows what a design is expected to read of reference spheres against their diameter, with the gain calibrated over the brief's particles, and where that holds the target.",
+    )
+    .argument('<brief>', BRIEF)
+    .requiredOption('--outline <file>', OUTLINE)
+    .option('--design <id>', 'which design of a front.json')
+    .option('--distance <length>', 'distance from particle to detector')
+    .option('--from <diameter>', 'smallest sphere', '0.2 um')
+    .option('--to <diameter>', 'largest sphere', '10 um')
+    .option('--count <n>', 'how many diameters', wholeNumber('--count', ...DIAMETERS), 60)
+    .option('--material <name>', 'their material on the shelf', 'polystyrene')
+    .option('--exact', EXACT)
+    .option('--csv <file>', 'write the curve as CSV')
+    .option('--force', 'replace that file if it is there')
+    .option('--json', AS_JSON)
+    .addHelpText(
+      'after',
+      `
+Example:
+  $ rimwright response my.yaml --outline results/my/front.json \\
+      --design rings-1 --to "4 um" --csv curve.csv`,
+    )
+    .action(async (brief, options) => done(await (await import('./responseCommand.ts')).run(brief, options)));
 
   program
     .command('compare')

@@ -24,6 +24,20 @@ export async function readPosition(text: string | undefined): Promise<[x: number
   throw refused('--position', text, 'a place within 1 m of the axis');
 }
 
+/** Diameters that reference spheres may have, metres. */
+const DIAMETERS_M = [1e-11, 1e-2] as const;
+
+/** `--from "0.2 um" --to "10 um"` in metres. */
+export async function readDiameters(from: string, to: string): Promise<[from: number, to: number]> {
+  const units = await loadUnits();
+  const fromM = units.parse(from, 'length', '--from');
+  const toM = units.parse(to, 'length', '--to');
+  if (!(fromM >= DIAMETERS_M[0])) throw refused('--from', from, 'a diameter of 0.01 nm or more');
+  if (!(toM <= DIAMETERS_M[1])) throw refused('--to', to, 'a diameter of 10 mm or less');
+  if (fromM < toM) return [fromM, toM];
+  throw refused('--to', to, `a diameter above that of --from, ${from}`);
+}
+
 /** Heights and correlation lengths that an edge may have, metres. */
 const ROUGH_M = [1e-9, 1e-2] as const;
 

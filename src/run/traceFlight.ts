@@ -60,7 +60,7 @@ export function traceFlight(
         inUnits(particle.diameterM, 1e6),
         particle.material,
         inUnits(wavelengthM, 1e9),
-        ...[x, y, dx * cos + dy * sin, x + dx, y + dy].map((metres) => inUnits(metres, 1e6)),
+        ...[x, y, dx * cos + dy * sin, x + dx, y + dy].map(inMicrometres),
         inUnits(extinctionM2, 1e12),
         inUnits(ratio * extinctionM2, 1e12),
         inUnits(ratio - 1, 1),
@@ -70,7 +70,12 @@ export function traceFlight(
   return csvText([HEADER, ...rows]);
 }
 
-/** Ten digits: places to a picometre and readings to well below their own error. */
+/** Places to a picometre. */
+function inMicrometres(metres: number): number {
+  return Math.round(metres * 1e12) / 1e6 + 0;
+}
+
+/** Ten digits: well below a reading's own error. */
 function inUnits(value: number, perUnit: number): number {
   return Number((value * perUnit).toPrecision(10));
 }

@@ -3,7 +3,7 @@ import { join } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { folderWith, runCli, runHere } from './runCli.ts';
 
-const COMMANDS = ['search', 'smallest', 'reading', 'compare', 'draw', 'presets'];
+const COMMANDS = ['search', 'smallest', 'reading', 'response', 'compare', 'draw', 'presets'];
 
 /** Scripts that a run of the program loaded, after the coverage that V8 writes. */
 function scriptsIn(folder: string): string[] {

@@ -22,8 +22,9 @@ describe('placement.spread as Brownian motion', () => {
     const { task, defaults } = await brief('{ diffusing for: 10 ms, temperature: 20 degC }');
     expect(task.placement.diffusion).toEqual({ durationS: 0.01, temperatureK: 293.15, medium: 'air' });
     expect(defaults.filter((line) => line.includes('placement.spread'))).toEqual([]);
-    // Stokes–Einstein by hand: kT = 4.0474e-21 J, η = 1.813e-5 Pa s, slip 1 + 1.257·2·0.066 = 1.166 for 1 µm in air.
-    const byHand = Math.sqrt(((4.0474e-21 * 1.166) / (3 * Math.PI * 1.813e-5 * 1e-6)) * 0.01);
+    // Stokes–Einstein by hand: kT = 4.0474e-21 J, η = 1.813e-5 Pa s, slip after Kim et al. (2005)
+    // 1 + 1.165·Kn = 1.157 with Kn = 2·67.5 nm/1 µm in air.
+    const byHand = Math.sqrt(((4.0474e-21 * 1.157) / (3 * Math.PI * 1.813e-5 * 1e-6)) * 0.01);
     expect(spreadOf(task.placement, 1e-6) / byHand).toBeCloseTo(1, 2);
     const ratio = spreadOf(task.placement, 1e-6) / spreadOf(task.placement, 2e-6);
     const coefficients = [1e-6, 2e-6].map((d) => diffusionCoefficient(d, 293.15, 'air'));
