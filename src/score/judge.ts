@@ -229,7 +229,7 @@ export class Judge {
   }
 
   /**
-   * Ratios reading/extinction of a shape at the sampled positions of a radius, one after the other as in a judgement.
+   * Ratios reading/extinction of a shape at a few places along one radius, whatever breaks its symmetry: for linear programs.
    *
    * @param radiusM radius of the outline whose sampling is wanted, at least the shape's own
    */
@@ -394,14 +394,18 @@ const NO_SYMMETRY: Symmetry = { folds: 1, mirror: false };
 /** Solves the particles of a task for the widest cone and the largest phase that its limits allow. */
 function scenariosOf(task: Task, drifts: number): Scenario[] {
   const { light, medium, particles, detector } = task;
-  const phases = reachesOf(task).map(({ kappa, shadowM }) => kappa * (detector.radiusM[1] + shadowM) ** 2);
+  const tangent = Math.tan(light.sourceAngleRad ?? 0);
+  // η = κρ² with the source's disc of places, z tan a, added to ρ.
+  const phases = reachesOf(task).map(
+    ({ distanceM, kappa, shadowM }) => kappa * (detector.radiusM[1] + shadowM + distanceM * tangent) ** 2,
+  );
   const wavelengths = driftedWavelengths(light, drifts);
   return buildScenarios(light, medium, particles, wavelengths, coneHalfAngle(task), Math.max(...phases));
 }
 
 /** Half-angle of the cone in which light may fall on a detector, radians: how far amplitudes are asked for. */
 export function coneHalfAngle(task: Task): number {
-  const { placement, detector, particles } = task;
+  const { light, placement, detector, particles } = task;
   const spreadM = Math.max(...particles.map(({ diameterM }) => spreadOf(placement, diameterM)));
   const tangents = reachesOf(task).map(({ distanceM, shadowM }) => {
     // A search tries outlines beyond the allowed radius, tables are built with some room to grow (TableShelf), and the
@@ -409,7 +413,7 @@ export function coneHalfAngle(task: Task): number {
     const farthestM = BEYOND_RADIUS * detector.radiusM[1] + shadowM;
     return (1.35 * farthestM + 7.5 * spreadM) / distanceM;
   });
-  return Math.min(1.5, Math.atan(Math.max(...tangents)) + 1e-3);
+  return Math.min(1.5, Math.atan(Math.max(...tangents) + Math.tan(light.sourceAngleRad ?? 0)) + 1e-3);
 }
 
 function withArea(weight: number, nodes: Float64Array): ElementNodes {

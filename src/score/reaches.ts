@@ -16,17 +16,16 @@ interface Reach {
 /** Places along the beam that are looked at: among them all that are judged. */
 const PLACES = [-1, -0.75, -0.5, -0.25, 0, 0.25, 0.5, 0.75, 1];
 
-/** The arrangements among which fringes are densest and shadows farthest out. In a flat wave the nearest decides alone. */
+/** The arrangements among which fringes are densest, shadows farthest out, and a source's disc of places largest. */
 export function reachesOf({ light, medium, particles, placement, detector }: Task): Reach[] {
   const { beam } = light;
   const { depthM } = placement;
   const wavenumber = (2 * Math.PI * refractiveIndex(medium, light.wavelengthM)[0]) / light.wavelengthM;
   const spreadM = Math.max(...particles.map(({ diameterM }) => spreadOf(placement, diameterM)));
   const offsetM = placement.offsetM + (placement.crossing?.spanM ?? 0) / 2;
-  const distances = beam === undefined ? [detector.distanceM[0]] : detector.distanceM;
-  const places = beam === undefined ? [depthM] : PLACES.map((part) => part * depthM);
-  return distances.flatMap((distance) =>
-    places.map((placeM) => {
+  return detector.distanceM.flatMap((distance) =>
+    PLACES.map((part) => {
+      const placeM = part * depthM;
       const { kappa } = fringesAt(beam, wavenumber, distance, placeM);
       const shadows = [0, spreadM].map((spread) =>
         shadowOffset(beam, wavenumber, distance, placeM, spread, offsetM),
