@@ -1,6 +1,7 @@
 import { formatQuantity } from '../base/quantity.ts';
 import type { IndexModel } from '../optics/indexModel.ts';
 import { coversWavelength, refractiveIndex } from '../optics/indexModel.ts';
+import { LINE_REACH } from '../optics/light.ts';
 import type { Particle, Sphere } from '../optics/particle.ts';
 import { isTabled } from '../optics/particle.ts';
 import type { Path, Report } from './briefReport.ts';
@@ -18,8 +19,8 @@ export type BriefValues = Values<ReturnType<typeof briefSchema>>;
 const SIZE_PARAMETERS = [0.001, 20_000] as const;
 const LEAST_CONTRAST = 1e-6;
 const LARGEST_HALF_ANGLE = (80 * Math.PI) / 180;
-/** A Gaussian line is sampled to about twice its full width at half maximum on either side. */
-const LINEWIDTHS_USED = 2;
+/** A line's colours must stay within this part of its wavelength on either side. */
+const LINE_WITHIN = 0.4;
 
 const inLength = (metres: number) => formatQuantity(metres, 'length');
 
@@ -37,11 +38,41 @@ export function checkTogether(brief: BriefValues, report: Report, folder: string
 
 function checkLight({ light }: BriefValues, report: Report): void {
   if (light?.wavelength === undefined) return;
-  const limit = light.wavelength / 5;
-  for (const name of ['linewidth', 'drift'] as const) {
-    if ((light[name] ?? 0) < limit) continue;
-    report.refuse(['light', name], `less than a fifth of the wavelength, ${inLength(limit)}`);
+  const { shape = 'gaussian', drift = 0, also } = light;
+  const parts = LINE_REACH[shape] / LINE_WITHIN;
+  const part = shape === 'gaussian' ? 'a fifth of the wavelength' : `1/${parts} of the wavelength`;
+  const lines = [{ line: light, path: ['light'] as Path }];
+  also?.forEach((line, i) => {
+    lines.push({ line, path: ['light', 'also', i] });
+  });
+  for (const { line, path } of lines) {
+    const { wavelength, linewidth = 0 } = line;
+    if (wavelength === undefined) continue;
+    const limit = wavelength / parts;
+    if (linewidth >= limit) report.refuse([...path, 'linewidth'], `less than ${part}, ${inLength(limit)}`);
   }
+  const shortest = Math.min(...lines.map(({ line }) => line.wavelength ?? Infinity));
+  if (drift >= shortest / 5) {
+    const expected = `less than a fifth of the wavelength, ${inLength(shortest / 5)}`;
+    report.refuse(['light', 'drift'], expected);
+  }
+  const shares = also?.reduce((sum, { share = 0 }) => sum + share, 0) ?? 0;
+  if (shares > 1 - 1e-5) {
+    const found = `shares of ${Number((100 * shares).toPrecision(7))} % together`;
+    report.refuse(['light', 'also'], 'shares that leave at least 0.001 % to the main line', found);
+  }
+}
+
+/** Shortest, nominal and longest wavelength of a light without mistakes, metres. */
+function wavelengthsOf(light: BriefValues['light'], report: Report): number[] | null {
+  const wrong = ['linewidth', 'shape', 'also', 'drift'].some((name) => report.hasMistake(['light', name]));
+  if (light?.wavelength === undefined || wrong) return null;
+  const { shape = 'gaussian', drift = 0 } = light;
+  const ends = [light, ...(light.also ?? [])].flatMap(({ wavelength = 0, linewidth = 0 }) => {
+    const width = drift + LINE_REACH[shape] * linewidth;
+    return [wavelength - width, wavelength + width];
+  });
+  return [Math.min(...ends), light.wavelength, Math.max(...ends)];
 }
 
 function checkGeometry({ detector, placement }: BriefValues, largestDiameterM: number, report: Report): void {
@@ -71,11 +102,8 @@ function checkIndices(
   entries: Particle[][],
   report: Report,
 ): void {
-  if (medium === undefined || light?.wavelength === undefined) return;
-  if (light.linewidth === undefined || report.hasMistake(['light', 'linewidth'])) return;
-  if (light.drift === undefined || report.hasMistake(['light', 'drift'])) return;
-  const width = light.drift + LINEWIDTHS_USED * light.linewidth;
-  const wavelengths = [light.wavelength - width, light.wavelength, light.wavelength + width];
+  const wavelengths = wavelengthsOf(light, report);
+  if (medium === undefined || wavelengths === null) return;
   const isDefault = report.defaults.includes(`medium: ${medium.name}`);
   const mediumName = isDefault ? `${medium.name}, the default,` : medium.name;
   const isMediumKnown = checkCovered(mediumName, medium.item, wavelengths, ['medium'], report);

@@ -1,8 +1,16 @@
 import type { Units } from '../base/quantity.ts';
+import { LINE_SHAPES } from '../optics/light.ts';
 import { loadIndexModel } from '../optics/shelf.ts';
 import { loadShop } from '../shop/shelf.ts';
 import { FAMILY_NAMES } from './brief.ts';
-import type { ListKey, NoneOrSectionKey, SectionKey, ValueKey, ValueOrSectionKey } from './readMapping.ts';
+import type {
+  ListKey,
+  NoneOrListKey,
+  NoneOrSectionKey,
+  SectionKey,
+  ValueKey,
+  ValueOrSectionKey,
+} from './readMapping.ts';
 import { indexOrShelfName, indexValue, shelfName } from './shelfRules.ts';
 import type { ValueRule } from './valueRules.ts';
 import {
@@ -40,13 +48,23 @@ export function briefSchema(units: Units, presets: string, title: string) {
     'the name of a shop on the shelf, such as photomask',
   );
 
+  const wavelength = quantity('length', ['100 nm', '20 um'], '635 nm');
+  const linewidth = quantity('length', ['0 nm', '4 um'], '1 nm');
+
   return {
     title: withDefault(title, textLine(200)),
     light: section({
-      wavelength: required(quantity('length', ['100 nm', '20 um'], '635 nm')),
-      linewidth: withDefault('0 nm', quantity('length', ['0 nm', '4 um'], '1 nm')),
+      wavelength: required(wavelength),
+      linewidth: withDefault('0 nm', linewidth),
+      shape: withDefault('gaussian', word(LINE_SHAPES)),
+      also: noneOrListOf(8, {
+        wavelength: required(wavelength),
+        share: required(quantity('ratio', ['0.001 %', '99.999 %'], '40 %')),
+        linewidth: withDefault('0 nm', linewidth),
+      }),
       drift: withDefault('0 nm', quantity('length', ['0 nm', '4 um'], '1 nm')),
       polarization: withDefault('none', orNone(quantity('angle', ['-360 deg', '360 deg'], '30 deg'))),
+      sourceAngle: withDefault('0 mrad', quantity('angle', ['0 mrad', '100 mrad'], '2 mrad')),
       irradiance: withDefault('5 W/cm^2', quantity('irradiance', ['1e-9 W/cm^2', '1e12 W/cm^2'], '5 W/cm^2')),
       beam: withDefault('flat', word(['flat'], 'flat (focused beams are not read by this version)')),
       intensityNoise: withDefault('none', orNone(plainNumber(-300, 0, 'a number of dB/Hz'))),
@@ -124,3 +142,8 @@ const valueOrSection = <T, K>(value: ValueKey<T>, keys: K): ValueOrSectionKey<T,
   keys,
 });
 const listOf = <K>(longest: number, keys: K): ListKey<K> => ({ kind: 'list', keys, longest });
+const noneOrListOf = <K>(longest: number, keys: K): NoneOrListKey<K> => ({
+  kind: 'none or list',
+  keys,
+  longest,
+});

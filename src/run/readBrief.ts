@@ -64,8 +64,15 @@ function fillBrief(values: BriefValues, particles: Particle[], defaults: readonl
       light: {
         wavelengthM: light.wavelength,
         linewidthM: light.linewidth,
+        shape: light.shape,
+        also: (light.also ?? []).map(filled).map(({ wavelength, linewidth, share }) => ({
+          wavelengthM: wavelength,
+          linewidthM: linewidth,
+          share,
+        })),
         driftM: light.drift,
         polarizationRad: light.polarization,
+        sourceAngleRad: light.sourceAngle,
         irradianceWm2: light.irradiance,
         intensityNoisePerHz: light.intensityNoise === null ? 0 : 10 ** (light.intensityNoise / 10),
       },

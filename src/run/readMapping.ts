@@ -35,6 +35,13 @@ export interface ListKey<Keys> {
   longest: number;
 }
 
+/** A key that holds such a list or the word `none`, which is also its default. */
+export interface NoneOrListKey<Keys> {
+  kind: 'none or list';
+  keys: Keys;
+  longest: number;
+}
+
 /** The keys of one mapping. */
 export interface Keys {
   [name: string]:
@@ -42,7 +49,8 @@ export interface Keys {
     | SectionKey<Keys>
     | NoneOrSectionKey<Keys>
     | ValueOrSectionKey<unknown, Keys>
-    | ListKey<Keys>;
+    | ListKey<Keys>
+    | NoneOrListKey<Keys>;
 }
 
 /** What was read; a key is absent where its value is wrong, or was left out and has no default. */
@@ -59,7 +67,9 @@ type ValueOf<Key> =
           ? T | Values<K>
           : Key extends ListKey<infer K>
             ? Values<K>[]
-            : never;
+            : Key extends NoneOrListKey<infer K>
+              ? Values<K>[] | null
+              : never;
 
 /**
  * Reads one mapping of a YAML file by its table of keys. Unknown keys, missing keys and wrong values go to the report.
@@ -100,11 +110,17 @@ function readKey(raw: unknown, path: Path, key: Keys[string], report: Report): u
       if (isMapping(raw)) return readMapping(raw, path, key.keys, report);
       return readValue(raw, path, key.value, report);
     case 'list':
+    case 'none or list': {
+      const isNone = key.kind === 'none or list' && (raw === undefined || raw === 'none');
+      if (isNone && raw === undefined) report.noteDefault(path, 'none');
+      if (isNone) return null;
       if (Array.isArray(raw) && raw.length > 0 && raw.length <= key.longest) {
         return raw.map((item, i) => readMapping(item ?? null, [...path, i], key.keys, report));
       }
-      report.refuse(path, `a list of 1 to ${key.longest} entries, each with ${keysInWords(key.keys)}`);
+      const list = `a list of 1 to ${key.longest} entries, each with ${keysInWords(key.keys)}`;
+      report.refuse(path, key.kind === 'list' ? list : `none, or ${list}`);
       return undefined;
+    }
   }
 }
 
