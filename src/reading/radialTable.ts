@@ -53,21 +53,33 @@ export function buildRadialTable(
   const discM = sourceDisc(scenario, distanceM, radiusM, kappa);
   checkCone(spheres, distanceM, radiusM + FARTHEST_SPREAD * spreadM + discM);
   const stepM2 = Math.min(...spheres.map(({ forward }) => phaseStep(forward))) / kappa;
-  const cells = Math.floor((radiusM * radiusM) / stepM2) + 2;
-  const count = cells + 4;
-  const angle = scenario.polarizationRad;
-  let samples: Pick<FluxSamples, 'mean' | 'twofold'>;
-  if (discM === 0) samples = sampleFlux(scenario, distanceM, stepM2, count, spreadM);
-  else {
-    const point = { ...scenario, sourceAngleRad: 0 };
-    const still = buildRadialTable(point, distanceM, Math.sqrt(count * stepM2) + discM, spreadM);
-    samples = discMeans(still, discM, kappa, stepM2, count);
-  }
+  const cellsTo = (reachM: number) => Math.floor((reachM * reachM) / stepM2) + 2;
+  const still = (reachM: number) => {
+    const cells = cellsTo(reachM);
+    const samples = sampleFlux(scenario, distanceM, stepM2, cells + MARGIN, spreadM);
+    return tableOf(samples, stepM2, cells, scenario.polarizationRad);
+  };
+  if (discM === 0) return still(radiusM);
+  const cells = cellsTo(radiusM);
+  const count = cells + MARGIN;
+  const point = still(Math.sqrt(count * stepM2) + discM);
+  return tableOf(discMeans(point, discM, kappa, stepM2, count), stepM2, cells, scenario.polarizationRad);
+}
+
+/** Samples beyond the cells, for the six-point rules. */
+const MARGIN = 4;
+
+function tableOf(
+  { mean, twofold }: Pick<FluxSamples, 'mean' | 'twofold'>,
+  stepM2: number,
+  cells: number,
+  angle: number | null,
+): RadialTable {
   return {
     cellsPerM2: 1 / stepM2,
     cells,
-    mean: cumulativePieces(samples.mean, stepM2, cells, 1),
-    twofold: angle === null ? null : cumulativePieces(samples.twofold, stepM2, cells, 2),
+    mean: cumulativePieces(mean, stepM2, cells, 1),
+    twofold: angle === null ? null : cumulativePieces(twofold, stepM2, cells, 2),
     axis: angle === null ? [0, 0] : [Math.cos(2 * angle), Math.sin(2 * angle)],
   };
 }
