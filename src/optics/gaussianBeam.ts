@@ -26,6 +26,12 @@ const LEAST_WAIST = 5;
  * @throws RimwrightError `input` for a waist below five wavelengths or five particle radii
  */
 export function checkBeam(beam: GaussianBeam, wavelengthM: number, radiusM: number): void {
+  const problems = beamProblems(beam, wavelengthM, radiusM);
+  if (problems.length > 0) throw inputError(problems);
+}
+
+/** What `checkBeam` throws, as a list. */
+export function beamProblems(beam: GaussianBeam, wavelengthM: number, radiusM: number): Problem[] {
   const problems: Problem[] = [];
   const leastM = LEAST_WAIST * Math.max(wavelengthM, radiusM);
   if (!(beam.waistM >= leastM && beam.waistM < Number.POSITIVE_INFINITY)) {
@@ -43,7 +49,7 @@ export function checkBeam(beam: GaussianBeam, wavelengthM: number, radiusM: numb
       expected: 'a place along the beam, such as 0 mm',
     });
   }
-  if (problems.length > 0) throw inputError(problems);
+  return problems;
 }
 
 /** Rayleigh range z_R = k w0²/2, metres: there the beam is √2 wider than at its waist. k in the medium, 1/m. */

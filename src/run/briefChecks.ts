@@ -1,4 +1,5 @@
 import { formatQuantity } from '../base/quantity.ts';
+import { beamProblems } from '../optics/gaussianBeam.ts';
 import type { IndexModel } from '../optics/indexModel.ts';
 import { coversWavelength, refractiveIndex } from '../optics/indexModel.ts';
 import { LINE_REACH } from '../optics/light.ts';
@@ -30,6 +31,7 @@ export function checkTogether(brief: BriefValues, report: Report, folder: string
     readParticles(entry, ['particles', i], report, folder),
   );
   checkLight(brief, report);
+  checkFocus(brief, entries.flat(), report);
   checkGeometry(brief, Math.max(0, ...entries.flat().map(({ diameterM }) => diameterM)), report);
   checkIndices(brief, entries, report);
   checkSpread(brief.placement?.spread, brief.medium?.name, entries.flat(), report);
@@ -60,6 +62,29 @@ function checkLight({ light }: BriefValues, report: Report): void {
   if (shares > 1 - 1e-5) {
     const found = `shares of ${Number((100 * shares).toPrecision(7))} % together`;
     report.refuse(['light', 'also'], 'shares that leave at least 0.001 % to the main line', found);
+  }
+}
+
+/** What a focused beam asks of the light and of the particles. */
+function checkFocus({ light, medium }: BriefValues, particles: Particle[], report: Report): void {
+  if (light?.beam === undefined || typeof light.beam === 'string') return;
+  const path: Path = ['light', 'beam'];
+  if (light.also)
+    report.refuse(path, 'flat, for a focused beam has one line', 'a focused beam of several lines');
+  if (light.sourceAngle !== undefined && light.sourceAngle > 0) {
+    report.refuse(
+      path,
+      'flat, for a focused beam has no source of an angular size',
+      'a focused beam and a sourceAngle',
+    );
+  }
+  const { waist, focus = 0 } = light.beam;
+  if (waist === undefined || light.wavelength === undefined || medium === undefined) return;
+  if (!coversWavelength(medium.item, light.wavelength)) return;
+  const wavelength = light.wavelength / refractiveIndex(medium.item, light.wavelength)[0];
+  const radius = Math.max(0, ...particles.map(({ diameterM }) => diameterM / 2));
+  for (const { key, expected } of beamProblems({ waistM: waist, focusM: focus }, wavelength, radius)) {
+    report.refuse((key ?? '').split('.'), expected);
   }
 }
 

@@ -66,7 +66,10 @@ export function briefSchema(units: Units, presets: string, title: string) {
       polarization: withDefault('none', orNone(quantity('angle', ['-360 deg', '360 deg'], '30 deg'))),
       sourceAngle: withDefault('0 mrad', quantity('angle', ['0 mrad', '100 mrad'], '2 mrad')),
       irradiance: withDefault('5 W/cm^2', quantity('irradiance', ['1e-9 W/cm^2', '1e12 W/cm^2'], '5 W/cm^2')),
-      beam: withDefault('flat', word(['flat'], 'flat (focused beams are not read by this version)')),
+      beam: valueOrSection(withDefault('flat', word(['flat'], 'flat, or the keys waist, focus')), {
+        waist: required(quantity('length', ['0.1 um', '10 m'], '200 um')),
+        focus: withDefault('0 mm', quantity('length', ['-10 m', '10 m'], '0 mm')),
+      }),
       intensityNoise: withDefault('none', orNone(plainNumber(-300, 0, 'a number of dB/Hz'))),
     }),
     medium: withDefault('air', indexOrShelfName(indexValue({ n: [0.5, 5], k: 0 }), media)),

@@ -4,6 +4,7 @@ import { inputError } from '../base/errors.ts';
 import { presetsFolder } from '../base/presetsFolder.ts';
 import { loadUnits } from '../base/quantity.ts';
 import { parseYaml } from '../base/yamlFile.ts';
+import type { GaussianBeam } from '../optics/gaussianBeam.ts';
 import type { Particle } from '../optics/particle.ts';
 import type { Brief } from './brief.ts';
 import type { BriefValues } from './briefChecks.ts';
@@ -73,6 +74,7 @@ function fillBrief(values: BriefValues, particles: Particle[], defaults: readonl
         driftM: light.drift,
         polarizationRad: light.polarization,
         sourceAngleRad: light.sourceAngle,
+        ...(typeof light.beam !== 'string' && { beam: beamOf(filled(light.beam)) }),
         irradianceWm2: light.irradiance,
         intensityNoisePerHz: light.intensityNoise === null ? 0 : 10 ** (light.intensityNoise / 10),
       },
@@ -104,6 +106,10 @@ function fillBrief(values: BriefValues, particles: Particle[], defaults: readonl
     shopName: shop === null ? 'none' : shop.name,
     defaults: [...defaults],
   };
+}
+
+function beamOf({ waist, focus }: { waist: number; focus: number }): GaussianBeam {
+  return { waistM: waist, focusM: focus };
 }
 
 function filled<T>(section: T): Required<T> {
