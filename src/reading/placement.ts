@@ -1,7 +1,7 @@
 import type { DiffusionMedium } from '../optics/diffusion.ts';
 
 /** Brownian motion: how long one measurement takes, and what the particles are in. */
-export interface Diffusion {
+interface Diffusion {
   durationS: number;
   temperatureK: number;
   medium: DiffusionMedium;
