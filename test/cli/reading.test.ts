@@ -80,7 +80,7 @@ describe('rimwright reading', () => {
   it('warns where the far-zone form or the distance is doubtful', async () => {
     const { warnings, stderr } = await readSquare(NOMINAL, '--distance', '2 mm');
     expect(warnings).toHaveLength(2);
-    expect(warnings[0]).toContain('The far-zone form may be off by about 0.25 % of the extinction');
+    expect(warnings[0]).toContain('The far-zone form may be off by about 0.12 % of the extinction');
     expect(warnings[1]).toBe("The distance 2 mm is not the brief's 10 mm to 60 mm");
     expect(stderr).toContain('Warning: The far-zone form');
   });
