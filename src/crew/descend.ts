@@ -60,7 +60,7 @@ export function descend(trials: Trials, vector: Float64Array, scales: ArrayLike<
         ...own((i) => variant.parameters[i].high),
       ]),
       scale: Float64Array.from([...(gainFree ? [GAIN_SCALE] : []), ...own((i) => scales[i])]),
-      weight: MISS_WEIGHT,
+      ...MISS_WEIGHT,
       maxEvaluations: trials.left,
     },
   );

@@ -3,26 +3,15 @@ import { countWhile } from '../numeric/countWhile.ts';
 import { cellIntegrals, hermitePieces, slopeAtStart } from '../numeric/uniformTable.ts';
 import type { SphereAmplitudes } from '../optics/sphereAmplitudes.ts';
 import { stillPoint } from './crossedAverage.ts';
+import type { CumulativeFlux } from './cumulativeFlux.ts';
 import type { FluxSamples } from './fluxDensity.ts';
 import { fluxDensity } from './fluxDensity.ts';
 import { addSpreadFlux, FARTHEST_SPREAD } from './randomSpread.ts';
 import type { Fading, Scenario } from './scenario.ts';
 import { discMeans } from './sourceDisc.ts';
 
-/**
- * The cumulative flux of one scenario at one distance, ready for boundary integrals.
- *
- * With G(ρ) = ∫₀^ρ w ρ' dρ' the reading of an outline is ∮ G dφ. The table holds G over s = ρ² (and for polarised light the
- * twofold part over s²), since G dφ = (G/s)(x dy − y dx): no division, and smooth where the outline passes the axis.
- */
-export interface RadialTable {
-  /** Cells per m² of s. */
-  cellsPerM2: number;
-  cells: number;
-  /** Cubic pieces of G/s, four numbers a cell (see `hermitePieces`). */
-  mean: Float64Array;
-  /** Cubic pieces of (twofold G)/s², 1/m²; null for unpolarised light. */
-  twofold: Float64Array | null;
+/** The cumulative flux of one scenario at one distance, ready for boundary integrals. */
+export interface RadialTable extends CumulativeFlux {
   /** The field's angle, as cos 2φ and sin 2φ. */
   axis: readonly [cos2: number, sin2: number];
 }

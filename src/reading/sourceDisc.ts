@@ -1,4 +1,4 @@
-import type { RadialTable } from './radialTable.ts';
+import type { CumulativeFlux } from './cumulativeFlux.ts';
 
 /**
  * The flux density of a particle whose place is spread evenly over a disc, which is how a source with an angular size is seen.
@@ -19,7 +19,7 @@ import type { RadialTable } from './radialTable.ts';
  * @returns mean and factor of cos 2φ
  */
 export function discMeans(
-  table: RadialTable,
+  table: CumulativeFlux,
   discM: number,
   kappa: number,
   stepM2: number,

@@ -6,18 +6,22 @@ import type { Scenario } from './scenario.ts';
 /** Which fields of the sphere a reading is computed from: those of its far zone, or the exact ones at the detector's distance. */
 export type Fields = 'far' | 'exact';
 
+/** Ratio of neighbouring reaches of tables. */
+const REACH_STEP = 1.3;
+
 /** Numbers that all tables together may hold: 256 MB. */
 const CAPACITY = 32_000_000;
 
 /**
  * Keeps the radial tables of every scenario by distance, and builds them when first asked for.
- * Tables grow with the radius asked for; the least recently used distances go first when the shelf is full.
+ * Their reach comes in steps of 1.3; the least recently used distances go first when the shelf is full.
  */
 export class TableShelf {
   readonly #scenarios: readonly Scenario[];
   readonly #spreadsM: readonly number[];
   readonly #fields: Fields;
-  readonly #held = new Map<number, { radiusM: number; tables: RadialTable[]; size: number }>();
+  /** By distance and reach. */
+  readonly #held = new Map<string, { tables: RadialTable[]; size: number }>();
   #size = 0;
 
   /** @param spreadsM rms random motion per axis in each scenario, metres */
@@ -29,23 +33,24 @@ export class TableShelf {
 
   /** One table a scenario, in their order, good to at least `radiusM` from the particle's axis. */
   tables(distanceM: number, radiusM: number): readonly RadialTable[] {
-    const held = this.#held.get(distanceM);
-    if (held && held.radiusM >= radiusM) {
-      this.#held.delete(distanceM);
-      this.#held.set(distanceM, held);
+    // Reaches come in steps, so that a table does not depend on what was asked for before, nor is built for every outline.
+    const step = Math.ceil(Math.log(radiusM) / Math.log(REACH_STEP));
+    const key = `${distanceM} ${step}`;
+    const held = this.#held.get(key);
+    if (held) {
+      this.#held.delete(key);
+      this.#held.set(key, held);
       return held.tables;
     }
-    if (held) this.#drop(distanceM, held.size);
-    // Some room to grow spares a rebuild for every slightly larger outline.
-    const reach = radiusM * 1.3;
+    const reach = REACH_STEP ** step;
     const tables = this.#scenarios.map((scenario, s) =>
       buildRadialTable(this.#seenFrom(scenario, distanceM), distanceM, reach, this.#spreadsM[s]),
     );
     const size = tables.reduce((sum, { mean, twofold }) => sum + mean.length + (twofold?.length ?? 0), 0);
-    this.#held.set(distanceM, { radiusM: reach, tables, size });
+    this.#held.set(key, { tables, size });
     this.#size += size;
     for (const [oldest, { size: its }] of this.#held) {
-      if (this.#size <= CAPACITY || oldest === distanceM) break;
+      if (this.#size <= CAPACITY || oldest === key) break;
       this.#drop(oldest, its);
     }
     return tables;
@@ -60,8 +65,8 @@ export class TableShelf {
     return { ...scenario, colours };
   }
 
-  #drop(distanceM: number, size: number): void {
-    this.#held.delete(distanceM);
+  #drop(key: string, size: number): void {
+    this.#held.delete(key);
     this.#size -= size;
   }
 }

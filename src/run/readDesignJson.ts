@@ -21,6 +21,8 @@ const DESIGN_KEYS: readonly (keyof DesignJson)[] = [
   'family',
   'distance_m',
   'elements',
+  'fields',
+  'otherFields',
   'scores',
   'rank',
   'meetsTarget',

@@ -59,7 +59,7 @@ const LEAST_REFINE = 250;
 const AGAIN_BUDGET = 400;
 
 /** Variants that are seeded from the least radial masks, and the distances (by place) and gains to solve those for. */
-const SEEDED = ['rings-2', 'rings-4'];
+const SEEDED = ['rings-4'];
 const SEED_PLACES = [0, 0.33, 0.67, 1];
 const SEED_GAINS = [0.5, 1, 2];
 

@@ -13,8 +13,9 @@ export interface DescentOptions {
   upper: Float64Array;
   /** Natural length of each coordinate: the first steps are at most this long. */
   scale: Float64Array;
-  /** Weight of log(1 + largest limit) beside the objective. */
+  /** What an excess L = log(1 + largest limit) weighs beside the objective: weight · L + bend · L². */
   weight: number;
+  bend: number;
   maxEvaluations: number;
   /** Stop when the trusted step is below this share of the scale; 1e-5 if left out. */
   tolStep?: number;
@@ -22,7 +23,7 @@ export interface DescentOptions {
 
 export interface DescentResult {
   x: Float64Array;
-  /** objective + weight · log(1 + largest limit). */
+  /** objective + weight · L + bend · L², L = log(1 + largest limit). */
   value: number;
   evaluations: number;
   stop: 'settled' | 'maxEvaluations' | 'stuck';
@@ -48,13 +49,13 @@ export function linearisedDescent(
   start: Float64Array,
   options: DescentOptions,
 ): DescentResult {
-  const { lower, upper, weight, maxEvaluations, tolStep = 1e-5 } = options;
+  const { lower, upper, maxEvaluations, tolStep = 1e-5 } = options;
   const n = start.length;
   let x = start.slice();
   let evaluations = 1;
   let here = evaluate(x);
   if (here === null) return { x, value: Number.POSITIVE_INFINITY, evaluations, stop: 'stuck' };
-  let value = merit(here, weight);
+  let value = merit(here, options);
   let trust = 1;
   while (trust > tolStep) {
     if (evaluations + n + 1 > maxEvaluations) return { x, value, evaluations, stop: 'maxEvaluations' };
@@ -72,7 +73,7 @@ export function linearisedDescent(
       const next = x.map((at, j) => Math.min(Math.max(at + step[j], lower[j]), upper[j]));
       const there = evaluate(next);
       evaluations++;
-      const nextValue = there === null ? Number.POSITIVE_INFINITY : merit(there, weight);
+      const nextValue = there === null ? Number.POSITIVE_INFINITY : merit(there, options);
       const gained = (value - nextValue) / promise;
       if (there !== null && gained > 0.1) {
         x = next;
@@ -131,7 +132,7 @@ export function linearisedDescent(
     from: Outcome,
     columns: readonly Float64Array[],
     trusted: number,
-    { lower: low, upper: high, scale: length, weight: penalty }: DescentOptions,
+    { lower: low, upper: high, scale: length, weight, bend }: DescentOptions,
   ): { step: Float64Array; promise: number } {
     const excess = largest(from.limits);
     // Limits far below the largest cannot become active within this step's reach.
@@ -160,8 +161,9 @@ export function linearisedDescent(
     a[rows * unknowns - 1] = -1;
     const c = new Float64Array(unknowns);
     for (let j = 0; j < n; j++) c[j] = columns[j][0];
-    // log(1 + t) is linearised about where it stands.
-    const slope = penalty / (1 + Math.max(0, excess));
+    // What an excess weighs is linearised about where it stands.
+    const stands = Math.max(0, excess);
+    const slope = (weight + 2 * bend * Math.log1p(stands)) / (1 + stands);
     c[n] = slope;
     const start = new Float64Array(unknowns);
     start[n] = Math.max(0, excess) + 0.1;
@@ -176,8 +178,9 @@ export function linearisedDescent(
   }
 }
 
-function merit({ objective, limits }: Outcome, weight: number): number {
-  return objective + weight * Math.log1p(Math.max(0, largest(limits)));
+function merit({ objective, limits }: Outcome, { weight, bend }: DescentOptions): number {
+  const excess = Math.log1p(Math.max(0, largest(limits)));
+  return objective + weight * excess + bend * excess * excess;
 }
 
 function largest(values: ArrayLike<number>): number {

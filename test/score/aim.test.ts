@@ -75,10 +75,16 @@ describe('aimValue', () => {
       expect(aimValue(SCORES, 0, aim(measure), TASK)).toBeCloseTo(Math.log(measureOf(SCORES, measure)), 12);
   });
 
-  it('adds a penalty for the logarithm of each factor by which a limit is missed', () => {
+  it('adds 2 L + 3 L² for the logarithm L of each factor by which a limit is missed', () => {
     const plain = aimValue(SCORES, 0, aim('area'), TASK);
-    const penalty = (scores: Partial<Scores>, misfit = 0, correction = 0.01) =>
-      (aimValue({ ...SCORES, ...scores }, misfit, aim('area', correction), TASK) - plain) / MISS_WEIGHT;
+    // Solved for L, where one limit is missed.
+    const penalty = (scores: Partial<Scores>, misfit = 0, correction = 0.01) => {
+      const added = aimValue({ ...SCORES, ...scores }, misfit, aim('area', correction), TASK) - plain;
+      return (
+        (Math.sqrt(MISS_WEIGHT.weight ** 2 + 4 * MISS_WEIGHT.bend * added) - MISS_WEIGHT.weight) /
+        (2 * MISS_WEIGHT.bend)
+      );
+    };
     expect(penalty({}, 0, 0.002)).toBeCloseTo(Math.log(4), 12);
     expect(penalty({ lobe: { ratio: 0.3 } })).toBeCloseTo(Math.log(3), 12);
     expect(penalty({ snr: { required: 1, time_s: 2e-3 } })).toBeCloseTo(Math.log(2), 12);

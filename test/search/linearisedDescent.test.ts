@@ -61,6 +61,7 @@ function optionsFor(n: number, maxEvaluations = 5000, scale = 1, tolStep = 1e-7)
     upper: new Float64Array(n).fill(100),
     scale: new Float64Array(n).fill(scale),
     weight: 2,
+    bend: 0,
     maxEvaluations,
     tolStep,
   };
