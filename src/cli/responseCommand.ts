@@ -10,8 +10,9 @@ import type { Response, ResponsePoint } from '../run/response.ts';
 import { responseOf } from '../run/response.ts';
 import { responseCsv } from '../run/responseCsv.ts';
 import { prepareFolder } from '../run/resultsFolder.ts';
-import { distanceWarning, farZoneWarning, present } from '../run/warnings.ts';
+import { beamFieldsWarning, distanceWarning, farZoneWarning, present } from '../run/warnings.ts';
 import { refuseExisting, writeWhole } from '../run/writeWhole.ts';
+import { fieldsFor } from '../score/farZoneError.ts';
 import { shortCount } from './designColumns.ts';
 import { EXIT } from './exit.ts';
 import { uninterrupted } from './interrupt.ts';
@@ -48,10 +49,12 @@ export async function run(place: string, options: Options): Promise<number> {
   const given = readDesignFile(options.outline, options.design);
   const index = loadIndexModel('materials', material, presetsFolder());
   const spheres = { fromM, toM, count, index, material };
-  const fields = options.exact ? 'exact' : 'far';
+  const wanted = options.exact ? 'exact' : 'far';
+  const fields = fieldsFor(task, wanted);
   const response = responseOf(task, given, spheres, distance, fields);
   const largest = { ...task, particles: [{ diameterM: toM, index, material }] };
   const warnings = present([
+    beamFieldsWarning(task, wanted),
     fields === 'far' ? farZoneWarning(largest, response.distance_m) : null,
     distanceWarning(task, response.distance_m),
   ]);
