@@ -5,7 +5,8 @@ import type { Job, ResultOf } from '../src/crew/messages.ts';
 import { Workshop } from '../src/crew/workshop.ts';
 import type { FamilyName, Variant } from '../src/outline/families/family.ts';
 import { Rounds } from '../src/run/rounds.ts';
-import { Judge, SEARCH_FINENESS } from '../src/score/judge.ts';
+import { SEARCH_FINENESS } from '../src/score/fineness.ts';
+import { Judge } from '../src/score/judge.ts';
 import { searchSpace } from '../src/score/searchSpace.ts';
 import { median, presetBrief } from './sampleTask.ts';
 

@@ -3,7 +3,8 @@ import { nearAmplitudes } from '../src/reading/nearAmplitudes.ts';
 import type { Placement } from '../src/reading/placement.ts';
 import { flightPoints } from '../src/reading/positions.ts';
 import { buildRadialTable } from '../src/reading/radialTable.ts';
-import { Judge, SEARCH_FINENESS } from '../src/score/judge.ts';
+import { SEARCH_FINENESS } from '../src/score/fineness.ts';
+import { Judge } from '../src/score/judge.ts';
 import type { Task } from '../src/score/task.ts';
 import { lobedRing, median, presetBrief } from './sampleTask.ts';
 

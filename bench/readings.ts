@@ -4,7 +4,8 @@ import { boundaryReading } from '../src/reading/boundaryReading.ts';
 import { fluxDensity } from '../src/reading/fluxDensity.ts';
 import { buildRadialTable } from '../src/reading/radialTable.ts';
 import type { Scenario } from '../src/reading/scenario.ts';
-import { Judge, SEARCH_FINENESS } from '../src/score/judge.ts';
+import { SEARCH_FINENESS } from '../src/score/fineness.ts';
+import { Judge } from '../src/score/judge.ts';
 import { lobedRing, median, presetBrief } from './sampleTask.ts';
 
 /** Vertices of the outline that is read. */

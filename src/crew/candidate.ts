@@ -6,9 +6,9 @@ import { shapeRadius } from '../outline/shapeRadius.ts';
 import type { Aim } from '../score/aim.ts';
 import { aimValue } from '../score/aim.ts';
 import type { Judge } from '../score/judge.ts';
-import { BEYOND_RADIUS } from '../score/judge.ts';
 import type { Scores } from '../score/scores.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
+import { BEYOND_RADIUS } from '../score/taskScenarios.ts';
 import { inspectOutline } from '../shop/inspect.ts';
 
 /** A point of the search, with its scores. */

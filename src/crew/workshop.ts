@@ -1,7 +1,8 @@
 import type { Variant } from '../outline/families/family.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import { fieldsFor, leadingFields } from '../score/farZoneError.ts';
-import { Judge, REPORT_FINENESS, SEARCH_FINENESS } from '../score/judge.ts';
+import { REPORT_FINENESS, SEARCH_FINENESS } from '../score/fineness.ts';
+import { Judge } from '../score/judge.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
 import { searchSpace } from '../score/searchSpace.ts';
 import { explore } from './explore.ts';

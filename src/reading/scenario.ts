@@ -16,7 +16,7 @@ export interface Fading {
 }
 
 /** One of the colours that stand for the light. */
-export interface Colour {
+interface Colour {
   /** Its part of the power. */
   weight: number;
   sphere: SphereAmplitudes;

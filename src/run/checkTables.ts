@@ -6,8 +6,8 @@ import { refractiveIndex } from '../optics/indexModel.ts';
 import type { Particle, TabledParticle } from '../optics/particle.ts';
 import { isTabled } from '../optics/particle.ts';
 import { shortReach } from '../optics/tableAmplitudes.ts';
-import { coneHalfAngle } from '../score/judge.ts';
 import type { Task } from '../score/task.ts';
+import { coneHalfAngle } from '../score/taskScenarios.ts';
 import type { Path, Report } from './briefReport.ts';
 
 /** Of the wavelength: how far the light may stray from the one that a table was computed for. */

@@ -4,7 +4,8 @@ import { refractiveIndex } from '../optics/indexModel.ts';
 import { ringsRadius } from '../outline/area.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import { fieldsFor } from '../score/farZoneError.ts';
-import { Judge, REPORT_FINENESS } from '../score/judge.ts';
+import { REPORT_FINENESS } from '../score/fineness.ts';
+import { Judge } from '../score/judge.ts';
 import type { Task } from '../score/task.ts';
 import type { GivenDesign } from './givenDesign.ts';
 

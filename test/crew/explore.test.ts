@@ -8,7 +8,8 @@ import type { FamilyName, Variant } from '../../src/outline/families/family.ts';
 import { FAMILY_NAMES } from '../../src/outline/families/family.ts';
 import type { Aim } from '../../src/score/aim.ts';
 import { missedLimits } from '../../src/score/aim.ts';
-import { Judge, SEARCH_FINENESS } from '../../src/score/judge.ts';
+import { SEARCH_FINENESS } from '../../src/score/fineness.ts';
+import { Judge } from '../../src/score/judge.ts';
 import type { SearchSpace } from '../../src/score/searchSpace.ts';
 import { searchSpace } from '../../src/score/searchSpace.ts';
 import type { Task } from '../../src/score/task.ts';
@@ -168,7 +169,7 @@ describe('Workshop', () => {
 
   // A fault that is known: with a spread, tables are interpolated between places that hang on how far the table reaches, and
   // so do the last digits of a reading. Which worker does a job then shows, against what is promised.
-  it.fails('cells-in-water, with a spread: does a job the same whatever it did before', async () => {
+  it('cells-in-water, with a spread: does a job the same whatever it did before', async () => {
     const { first, afterOthers } = await resultsOf('cells-in-water', 'ramp-peak-5-fold');
     expect(afterOthers).toEqual(first);
   });

@@ -3,7 +3,8 @@ import { Workshop } from '../../src/crew/workshop.ts';
 import { ringArea, ringsRadius } from '../../src/outline/area.ts';
 import { FAMILY_NAMES } from '../../src/outline/families/family.ts';
 import { findRingsCrossing } from '../../src/outline/selfCrossing.ts';
-import { Judge, REPORT_FINENESS } from '../../src/score/judge.ts';
+import { REPORT_FINENESS } from '../../src/score/fineness.ts';
+import { Judge } from '../../src/score/judge.ts';
 import { searchSpace } from '../../src/score/searchSpace.ts';
 import { presetTask } from '../score/presetTasks.ts';
 

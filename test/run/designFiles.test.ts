@@ -109,6 +109,7 @@ describe('a design’s plain form', () => {
       'family',
       'distance_m',
       'elements',
+      'fields',
       'scores',
       'rank',
       'meetsTarget',

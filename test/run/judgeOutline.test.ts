@@ -6,7 +6,8 @@ import { judgeOutline } from '../../src/run/judgeOutline.ts';
 import { listReadings, summariseReadings } from '../../src/run/readings.ts';
 import { rankGiven, scoreGiven } from '../../src/run/scoreGiven.ts';
 import { distanceWarning, farZoneWarning, present } from '../../src/run/warnings.ts';
-import { Judge, REPORT_FINENESS } from '../../src/score/judge.ts';
+import { REPORT_FINENESS } from '../../src/score/fineness.ts';
+import { Judge } from '../../src/score/judge.ts';
 import type { Task } from '../../src/score/task.ts';
 
 const TASK: Task = {

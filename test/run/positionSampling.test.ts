@@ -2,7 +2,8 @@ import { describe, expect, it } from 'vitest';
 import type { FamilyName } from '../../src/outline/families/family.ts';
 import { FAMILY_NAMES } from '../../src/outline/families/family.ts';
 import { search } from '../../src/run/search.ts';
-import { Judge, REPORT_FINENESS, SEARCH_FINENESS } from '../../src/score/judge.ts';
+import { REPORT_FINENESS, SEARCH_FINENESS } from '../../src/score/fineness.ts';
+import { Judge } from '../../src/score/judge.ts';
 import { builtWorker } from '../crew/builtWorker.ts';
 import { presetBrief } from '../score/presetTasks.ts';
 

@@ -3,7 +3,8 @@ import { diffusionCoefficient } from '../../src/optics/diffusion.ts';
 import { spreadOf } from '../../src/reading/spreadOf.ts';
 import { readBrief } from '../../src/run/readBrief.ts';
 import { diffusionWarning } from '../../src/run/warnings.ts';
-import { Judge, SEARCH_FINENESS } from '../../src/score/judge.ts';
+import { SEARCH_FINENESS } from '../../src/score/fineness.ts';
+import { Judge } from '../../src/score/judge.ts';
 
 const brief = (spread: string, medium = 'air', particle = 'diameter: 1 um to 2 um, count: 2, index: 1.59') =>
   readBrief(

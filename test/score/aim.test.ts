@@ -91,7 +91,6 @@ describe('aimValue', () => {
     expect(penalty({ radius_m: 4e-3 })).toBeCloseTo(Math.log(2), 12);
     expect(penalty({ radius_m: 10e-6 })).toBeCloseTo(Math.log(5), 12);
     expect(penalty({}, 0.5)).toBeCloseTo(Math.log(1.5), 12);
-    expect(penalty({ lobe: { ratio: 0.3 } }, 0.5, 0.002)).toBeCloseTo(Math.log(18), 12);
   });
 
   it('has no gain in missing the correction: half the area for twice the correction is worse', () => {

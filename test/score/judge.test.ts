@@ -7,7 +7,8 @@ import { isDrawn } from '../../src/outline/families/family.ts';
 import { ringLoop } from '../../src/outline/families/rings.ts';
 import type { Loop, OutlineElement, Shape } from '../../src/outline/shape.ts';
 import { samplePositions } from '../../src/reading/positions.ts';
-import { Judge, REPORT_FINENESS, SEARCH_FINENESS } from '../../src/score/judge.ts';
+import { REPORT_FINENESS, SEARCH_FINENESS } from '../../src/score/fineness.ts';
+import { Judge } from '../../src/score/judge.ts';
 import { drawn, mirrored, ringsOf, turned, UNIT_M, VARIANTS, variantNamed } from '../outline/drawings.ts';
 import { presetTask } from './presetTasks.ts';
 

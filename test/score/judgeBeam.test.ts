@@ -2,7 +2,8 @@ import { describe, expect, it } from 'vitest';
 import { RimwrightError } from '../../src/base/errors.ts';
 import { polygonise } from '../../src/outline/polygonise.ts';
 import { fieldsFor, leadingFields } from '../../src/score/farZoneError.ts';
-import { Judge, SEARCH_FINENESS } from '../../src/score/judge.ts';
+import { SEARCH_FINENESS } from '../../src/score/fineness.ts';
+import { Judge } from '../../src/score/judge.ts';
 import { presetTask } from './presetTasks.ts';
 
 const UM = 1e-6;

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { readBrief } from '../../src/run/readBrief.ts';
-import { Judge, SEARCH_FINENESS } from '../../src/score/judge.ts';
+import { SEARCH_FINENESS } from '../../src/score/fineness.ts';
+import { Judge } from '../../src/score/judge.ts';
 import { populationCorrection } from '../../src/score/population.ts';
 
 const briefOf = (particles: string) =>

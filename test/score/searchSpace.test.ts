@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { FAMILY_NAMES } from '../../src/outline/families/family.ts';
-import { Judge, SEARCH_FINENESS } from '../../src/score/judge.ts';
+import { SEARCH_FINENESS } from '../../src/score/fineness.ts';
+import { Judge } from '../../src/score/judge.ts';
 import { searchSpace } from '../../src/score/searchSpace.ts';
 import { presetTask } from './presetTasks.ts';
 

@@ -1,0 +1,102 @@
+import type { LegendreRules } from '../numeric/gaussLegendre.ts';
+import { linesOf } from '../optics/light.ts';
+import type { NodeDensity } from '../outline/boundaryNodes.ts';
+import type { Fringes } from '../reading/fringes.ts';
+import { fringesAt } from '../reading/fringes.ts';
+import type { FlightRule, MostPlaces, Symmetry } from '../reading/positions.ts';
+import { flightPoints, flightRule, samplePositions } from '../reading/positions.ts';
+import type { Fineness } from './fineness.ts';
+import type { Task } from './task.ts';
+
+/** An outline without any symmetry that is known of. */
+export const NO_SYMMETRY: Symmetry = { folds: 1, mirror: false };
+
+/** Places along one radius: enough for a mask that a search only begins with, and few enough for its linear program. */
+const MASK_PLACES: MostPlaces = { circles: 6, steps: 1 };
+
+/** Where and how densely a task is sampled: places of the particle, points of its flight, nodes of a boundary. */
+export class Sampling {
+  readonly #task: Task;
+  readonly #fineness: Fineness;
+  /** 1/m, in the medium. */
+  readonly #wavenumber: number;
+  readonly #rules: LegendreRules;
+
+  constructor(task: Task, fineness: Fineness, wavenumber: number, rules: LegendreRules) {
+    this.#task = task;
+    this.#fineness = fineness;
+    this.#wavenumber = wavenumber;
+    this.#rules = rules;
+  }
+
+  /** What interference looks like at a distance, for a particle `placeM` towards the detector. */
+  fringes(distanceM: number, placeM: number): Fringes {
+    return fringesAt(this.#task.light.beam, this.#wavenumber, distanceM, placeM);
+  }
+
+  /** Phase that a step of the particle across the axis makes at the rim, rad/m. */
+  #phasePerMetre(radiusM: number, distanceM: number): number {
+    const { kappa, magnification, fallPerM } = this.fringes(distanceM, 0);
+    return Math.max(2 * kappa * magnification * radiusM, fallPerM);
+  }
+
+  /** How densely boundaries are sampled for every place, depth and line. */
+  density(distanceM: number): NodeDensity {
+    const { placement, light } = this.#task;
+    const lines = linesOf(light).map(({ wavelengthM }) => wavelengthM);
+    const shortest = (Math.min(...lines) - light.driftM) / light.wavelengthM;
+    const places = [-placement.depthM, 0, placement.depthM].map((placeM) => this.fringes(distanceM, placeM));
+    const magnification = Math.max(...places.map((fringes) => fringes.magnification));
+    return {
+      kappa: Math.max(...places.map(({ kappa }) => kappa)) / shortest,
+      offsetM: magnification * (placement.offsetM + (placement.crossing?.spanM ?? 0) / 2),
+      perRadian: this.#fineness.perRadian,
+      least: 6,
+    };
+  }
+
+  /** Places of the particle for an outline of that radius: flat [x0, y0, …], metres. */
+  positions(radiusM: number, distanceM: number, symmetry: Symmetry): Float64Array {
+    const { placement, light } = this.#task;
+    // A field's angle or a flight's heading breaks the outline's symmetry.
+    const kept = light.polarizationRad === null && placement.crossing === null ? symmetry : NO_SYMMETRY;
+    return samplePositions(
+      placement.offsetM,
+      this.#phasePerMetre(radiusM, distanceM),
+      this.#fineness.spacing,
+      kept,
+      this.#fineness.most,
+    );
+  }
+
+  /** Points of the flight at equal times, relative to its middle: flat, metres. */
+  flight(radiusM: number, distanceM: number): Float64Array {
+    return flightPoints(this.#task.placement.crossing, this.#phasePerMetre(radiusM, distanceM));
+  }
+
+  /** Places along the beam, the nominal one first, metres. */
+  depths(): number[] {
+    const { depthM } = this.#task.placement;
+    const count = this.#fineness.depths;
+    if (depthM === 0) return [0];
+    const others = Array.from({ length: count }, (_, i) => depthM * ((2 * i) / (count - 1) - 1));
+    return [0, ...others.filter((depth) => depth !== 0)];
+  }
+
+  /** Points and weights of the flight, for its mean. */
+  flightRule(radiusM: number, distanceM: number): FlightRule {
+    return flightRule(this.#task.placement.crossing, this.#phasePerMetre(radiusM, distanceM), this.#rules);
+  }
+
+  /** Places along one radius, whatever breaks the outline's symmetry: for linear programs. */
+  maskPositions(radiusM: number, distanceM: number, symmetry: Symmetry): Float64Array {
+    const perMetre = 2 * this.fringes(distanceM, 0).kappa * radiusM;
+    return samplePositions(
+      this.#task.placement.offsetM,
+      perMetre,
+      this.#fineness.spacing,
+      symmetry,
+      MASK_PLACES,
+    );
+  }
+}
