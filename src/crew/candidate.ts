@@ -1,3 +1,4 @@
+import { RimwrightError } from '../base/errors.ts';
 import type { Variant } from '../outline/families/family.ts';
 import { isDrawn } from '../outline/families/family.ts';
 import { polygonise } from '../outline/polygonise.ts';
@@ -44,13 +45,18 @@ export function distanceAt(space: SearchSpace, place: number): number {
   return space.distances[Math.min(last, Math.max(0, Math.round(place * last)))];
 }
 
-/** Draws a candidate's outline at its distance, unless its parameters draw none. */
+/**
+ * Draws a candidate's outline at its distance, unless its parameters draw none.
+ *
+ * @throws RimwrightError `machine` for a vector that is not finite: the search is at fault then, not the brief
+ */
 export function drawCandidate(
   judge: Judge,
   space: SearchSpace,
   variant: Variant,
   vector: ArrayLike<number>,
 ): { shape: Shape; distanceM: number } | { misdrawnBy: number } {
+  if (!Array.from(vector).every(Number.isFinite)) throw notFinite('a candidate', variant, vector);
   const count = variant.parameters.length;
   const distanceM = distanceAt(space, vector[count] ?? 0);
   const values = Array.from(vector).slice(0, count);
@@ -58,7 +64,15 @@ export function drawCandidate(
   return isDrawn(drawn) ? { shape: drawn, distanceM } : drawn;
 }
 
-/** Scores one point of the search. */
+function notFinite(what: string, { id }: Variant, vector: ArrayLike<number>): RimwrightError {
+  return new RimwrightError('machine', `${what} is not finite: ${id} at [${Array.from(vector).join(', ')}]`);
+}
+
+/**
+ * Scores one point of the search.
+ *
+ * @throws RimwrightError `machine` as `drawCandidate`, or for an outline or a value that is no number
+ */
 export function tryCandidate(
   judge: Judge,
   space: SearchSpace,
@@ -68,12 +82,14 @@ export function tryCandidate(
 ): Trial {
   const drawn = drawCandidate(judge, space, variant, vector);
   const misdrawnBy = 'misdrawnBy' in drawn ? drawn.misdrawnBy : tooLargeBy(judge, drawn.shape);
+  if (Number.isNaN(misdrawnBy)) throw notFinite('an outline', variant, vector);
   if ('misdrawnBy' in drawn || misdrawnBy > 0) {
     return { value: MISDRAWN + misdrawnBy, candidate: null, ratios: null };
   }
   const { scores, ratios } = judge.scoreShape(drawn.shape, drawn.distanceM);
   const misfit = shopMisfit(judge, drawn.shape, scores, aim);
   const value = aimValue(scores, misfit, aim, judge.task);
+  if (Number.isNaN(value)) throw notFinite('a value', variant, vector);
   return { value, candidate: { variant: variant.id, vector: Array.from(vector), scores, misfit }, ratios };
 }
 

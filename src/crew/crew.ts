@@ -1,7 +1,6 @@
 import { fileURLToPath } from 'node:url';
 import type { Worker } from 'node:worker_threads';
 import Pool from 'worker-threads-pool';
-import type { ErrorCode } from '../base/errors.ts';
 import { RimwrightError } from '../base/errors.ts';
 import type { Job, Orders, Reply, ResultOf } from './messages.ts';
 
@@ -88,7 +87,8 @@ export class Crew {
     this.#underway.delete(reply.id);
     this.#idle.push(worker);
     if ('error' in reply) {
-      pending?.reject(new RimwrightError(reply.error.code as ErrorCode, reply.error.message));
+      const { code, message, problems } = reply.error;
+      pending?.reject(new RimwrightError(code, message, problems));
     } else {
       pending?.resolve(reply.result);
     }

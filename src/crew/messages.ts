@@ -1,3 +1,4 @@
+import type { ErrorCode, Problem } from '../base/errors.ts';
 import type { FamilyName } from '../outline/families/family.ts';
 import type { Task } from '../score/task.ts';
 import type { ExploreJob, ExploreResult } from './explore.ts';
@@ -20,7 +21,7 @@ export interface JobMessage {
   job: Job;
 }
 
-/** From a worker: what came of it. An error's code and problems travel as plain data. */
+/** From a worker: what came of it. An error's code, message and problems travel as plain data. */
 export type Reply =
   | { id: number; result: ExploreResult | FinishResult }
-  | { id: number; error: { code: string; message: string } };
+  | { id: number; error: { code: ErrorCode; message: string; problems: readonly Problem[] } };

@@ -14,7 +14,9 @@ function replyTo(id: number, job: JobMessage['job']): Reply {
   try {
     return { id, result: workshop.do(job) };
   } catch (error) {
-    const code = error instanceof RimwrightError ? error.code : 'machine';
-    return { id, error: { code, message: error instanceof Error ? error.message : String(error) } };
+    const message = error instanceof Error ? error.message : String(error);
+    const { code, problems } =
+      error instanceof RimwrightError ? error : { code: 'machine' as const, problems: [] };
+    return { id, error: { code, message, problems } };
   }
 }

@@ -61,12 +61,23 @@ describe('Crew', () => {
     const impossible: ExploreJob = { ...job('disc', 0), method: 'refine', from: [-1] };
     const here = await failureOf((async () => new Workshop(ORDERS).do(impossible))());
     const there = await failureOf(crew.do(impossible));
-    expect([there.code, there.message]).toEqual([here.code, here.message]);
-    expect(there.message).not.toBe('');
+    expect([there.code, there.message, there.problems]).toEqual([here.code, here.message, here.problems]);
+    expect([there.code, there.message]).toEqual(['machine', 'an outline is not finite: disc at [-1]']);
+    const broken: ExploreJob = { ...job('disc', 0), method: 'refine', from: [Number.NaN] };
+    const { code, message } = await failureOf(crew.do(broken));
+    expect([code, message]).toEqual(['machine', 'a candidate is not finite: disc at [NaN]']);
     const unknown = await failureOf(crew.do(job('no-such-variant', 0)));
     expect(unknown.code).toBe('machine');
     const { evaluations } = await crew.do(job('disc', 0));
     expect(evaluations).toBeGreaterThan(10);
+    await crew.dismiss();
+  });
+
+  it('hands on the problems of an input error as they are', async () => {
+    const problem = { file: 'my.yaml', line: 3, key: 'light', found: '5', expected: 'a length' };
+    const crew = await Crew.start(1, { problem } as unknown as Orders, fixture('refuses.mjs'));
+    const { code, message, problems } = await failureOf(crew.do(job('disc', 0)));
+    expect([code, message, problems]).toEqual(['input', 'refused', [problem]]);
     await crew.dismiss();
   });
 
