@@ -15,13 +15,7 @@ export type Job = ExploreJob | FinishJob;
 /** The result that belongs to a kind of job. */
 export type ResultOf<J extends Job> = J extends ExploreJob ? ExploreResult : FinishResult;
 
-/** To a worker: one job with its number. */
-export interface JobMessage {
-  id: number;
-  job: Job;
-}
-
-/** From a worker: what came of it. An error's code, message and problems travel as plain data. */
+/** From a worker: what came of its job. An error's code, message and problems travel as plain data. */
 export type Reply =
-  | { id: number; result: ExploreResult | FinishResult }
-  | { id: number; error: { code: ErrorCode; message: string; problems: readonly Problem[] } };
+  | { result: ExploreResult | FinishResult }
+  | { error: { code: ErrorCode; message: string; problems: readonly Problem[] } };

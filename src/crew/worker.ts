@@ -1,22 +1,22 @@
 import { parentPort, workerData } from 'node:worker_threads';
 import { RimwrightError } from '../base/errors.ts';
-import type { JobMessage, Orders, Reply } from './messages.ts';
+import type { Job, Orders, Reply } from './messages.ts';
 import { Workshop } from './workshop.ts';
 
 /** The body of a worker thread: takes a job, does it, replies, and waits for the next. */
 const workshop = new Workshop(workerData as Orders);
 
-parentPort?.on('message', ({ id, job }: JobMessage) => {
-  parentPort?.postMessage(replyTo(id, job));
+parentPort?.on('message', (job: Job) => {
+  parentPort?.postMessage(replyTo(job));
 });
 
-function replyTo(id: number, job: JobMessage['job']): Reply {
+function replyTo(job: Job): Reply {
   try {
-    return { id, result: workshop.do(job) };
+    return { result: workshop.do(job) };
   } catch (error) {
     const message = error instanceof Error ? error.message : String(error);
     const { code, problems } =
       error instanceof RimwrightError ? error : { code: 'machine' as const, problems: [] };
-    return { id, error: { code, message, problems } };
+    return { error: { code, message, problems } };
   }
 }

@@ -96,6 +96,29 @@ describe('Crew', () => {
     await crew.dismiss();
   });
 
+  it('replaces workers that end, and has their jobs done again: the results are the same', async () => {
+    const workshop = new Workshop(ORDERS);
+    const jobs = [...JOBS, ...JOBS.map((one) => ({ ...one, stream: one.stream + 10 }))];
+    const expected = jobs.map((one) => workshop.do(one));
+    for (const size of [1, 2]) {
+      const crew = await Crew.start(size, ORDERS, fixture('mortal.mjs'));
+      expect(await Promise.all(jobs.map((one) => crew.do(one)))).toEqual(expected);
+      await crew.dismiss();
+    }
+  });
+
+  it('names the job that one worker after the other ends over, and goes on with others', async () => {
+    const crew = await Crew.start(1, ORDERS, fixture('picky.mjs'));
+    const [bad, good] = [crew.do(job('rings-1', 5)), crew.do(job('disc', 6))];
+    const { code, message } = await failureOf(bad);
+    expect([code, message]).toEqual([
+      'machine',
+      'a worker failed, and so did 2 in its place (evolve rings-1, stream 5): it ended with exit code 9',
+    ]);
+    expect(await good).toEqual('disc');
+    await crew.dismiss();
+  });
+
   it.each([
     ['with a fault', 7],
     ['as if all were well', 0],

@@ -1,9 +1,8 @@
 /** A worker that answers every job with the problem that its orders name. */
 import { parentPort, workerData } from 'node:worker_threads';
 
-parentPort.on('message', ({ id }) =>
+parentPort.on('message', () =>
   parentPort.postMessage({
-    id,
     error: { code: 'input', message: 'refused', problems: [workerData.problem] },
   }),
 );
