@@ -14,6 +14,7 @@ export interface Sphere {
   material: string;
   core?: Core;
   population?: Membership;
+  range?: DiameterRange;
 }
 
 /** The inside of a layered sphere. */
@@ -32,6 +33,15 @@ export interface Membership {
   share: number;
 }
 
+/** The diameters that an entry of the brief means, of which a sphere is one. */
+export interface DiameterRange {
+  /** Which entry, from 0. */
+  of: number;
+  /** Metres. */
+  leastM: number;
+  largestM: number;
+}
+
 /** A particle of any kind that scatters alike at all azimuths. */
 export interface TabledParticle {
   /** Of the sphere that it is as large as, metres: for the lobe ratio and for what the far zone leaves out. */
@@ -42,6 +52,7 @@ export interface TabledParticle {
   index?: never;
   core?: never;
   population?: never;
+  range?: never;
 }
 
 export function isTabled(particle: Particle): particle is TabledParticle {

@@ -1,5 +1,5 @@
 import type { IndexModel } from '../optics/indexModel.ts';
-import type { Core, Membership, Particle } from '../optics/particle.ts';
+import type { Core, DiameterRange, Membership, Particle } from '../optics/particle.ts';
 import { readAmplitudeCsv } from '../optics/readAmplitudeCsv.ts';
 import { readCountsCsv } from '../optics/readCountsCsv.ts';
 import type { SizeClass } from '../optics/sizeDistribution.ts';
@@ -44,13 +44,22 @@ export function readParticles(entry: ParticleEntry, path: Path, report: Report, 
   if (named === undefined || report.hasMistake(path)) return [];
   const inside: Core | undefined = core && { share: entry.core?.share ?? Number.NaN, index: core.item };
   const of = Number(path.at(-1));
+  const range = rangeOf(sizes, of);
   return sizes.map(({ diameterM, share }) => ({
     diameterM,
     index: named.item,
     material: core === undefined ? named.name : `${core.name} in a shell of ${named.name}`,
     ...(inside && { core: inside }),
     ...(entry.distribution !== undefined && { population: { of, share } satisfies Membership }),
+    ...(range && { range }),
   }));
+}
+
+/** What lies between the smallest and the largest; null for a single diameter. */
+function rangeOf(sizes: readonly SizeClass[], of: number): DiameterRange | null {
+  const diameters = sizes.map(({ diameterM }) => diameterM);
+  const [leastM, largestM] = [Math.min(...diameters), Math.max(...diameters)];
+  return leastM < largestM ? { of, leastM, largestM } : null;
 }
 
 /** The material or index, of which there must be one. */

@@ -36,7 +36,7 @@ export interface Judgement {
 }
 
 /** One detector element ready for integration. */
-interface ElementNodes extends ElementArea {
+export interface ElementNodes extends ElementArea {
   nodes: Float64Array;
 }
 
@@ -92,7 +92,7 @@ export class Judge {
 
   /** Scores a shape as its family draws it; the ratios reading/extinction behind the correction come along. */
   scoreShape(shape: Shape, distanceM: number): Judgement {
-    return this.#score(this.#shapeNodes(shape, distanceM), shapeRadius(shape), distanceM, shape);
+    return this.#score(this.shapeNodes(shape, distanceM), shapeRadius(shape), distanceM, shape);
   }
 
   /** Scores an outline given by its points. */
@@ -102,7 +102,7 @@ export class Judge {
     symmetry: Symmetry = NO_SYMMETRY,
   ): Judgement {
     const radiusM = Math.max(...elements.map(({ rings }) => ringsRadius(rings)));
-    return this.#score(this.#outlineNodes(elements, distanceM), radiusM, distanceM, symmetry);
+    return this.#score(this.outlineNodes(elements, distanceM), radiusM, distanceM, symmetry);
   }
 
   /**
@@ -117,7 +117,7 @@ export class Judge {
     positions?: Float64Array,
   ): { positions: Float64Array; depths: readonly number[]; ratios: Float64Array[] } {
     const radiusM = Math.max(...elements.map(({ rings }) => ringsRadius(rings)));
-    const nodes = this.#outlineNodes(elements, distanceM);
+    const nodes = this.outlineNodes(elements, distanceM);
     const places = positions ?? this.#sampling.positions(radiusM, distanceM, NO_SYMMETRY);
     const depths = positions ? [0] : this.#sampling.depths();
     return { positions: places, depths, ratios: this.#ratios(nodes, radiusM, distanceM, places, depths) };
@@ -143,7 +143,7 @@ export class Judge {
       for (let f = 0; f < flight.length; f++)
         points[(p * flight.length) / 2 + f] = places[p + (f % 2)] + flight[f];
     }
-    const nodes = this.#outlineNodes(elements, distanceM);
+    const nodes = this.outlineNodes(elements, distanceM);
     const ratios = this.#ratios(nodes, radiusM, distanceM, points, [0], NO_FLIGHT);
     return { positions: places, flight, ratios };
   }
@@ -177,19 +177,21 @@ export class Judge {
    * @param radiusM radius of the outline whose sampling is wanted, at least the shape's own
    */
   shapeRatios(shape: Shape, distanceM: number, radiusM: number): Float64Array {
-    const elements = this.#shapeNodes(shape, distanceM);
+    const elements = this.shapeNodes(shape, distanceM);
     const positions = this.#sampling.maskPositions(radiusM, distanceM, shape);
     return flatten(this.#ratios(elements, radiusM, distanceM, positions, this.#sampling.depths()));
   }
 
-  #shapeNodes(shape: Shape, distanceM: number): ElementNodes[] {
+  /** Boundary nodes of a shape, dense enough for every place, depth and line of the task. */
+  shapeNodes(shape: Shape, distanceM: number): ElementNodes[] {
     const density = this.#sampling.density(distanceM);
     return shape.elements.map(({ weight, loops }) =>
       withArea(weight, boundaryNodes(loops, density, this.#rules)),
     );
   }
 
-  #outlineNodes(elements: readonly OutlineElement[], distanceM: number): ElementNodes[] {
+  /** As `shapeNodes`, of an outline given by its points. */
+  outlineNodes(elements: readonly OutlineElement[], distanceM: number): ElementNodes[] {
     const density = this.#sampling.density(distanceM);
     return elements.map(({ weight, rings }) => withArea(weight, ringNodes(rings, density, this.#rules)));
   }

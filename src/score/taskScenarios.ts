@@ -1,3 +1,4 @@
+import type { Particle } from '../optics/particle.ts';
 import type { Scenario } from '../reading/scenario.ts';
 import { buildScenarios, driftedWavelengths } from '../reading/scenario.ts';
 import { spreadOf } from '../reading/spreadOf.ts';
@@ -7,16 +8,25 @@ import type { Task } from './task.ts';
 /** Outlines are judged up to this many times the brief's largest radius: how far beyond is what leads a search back. */
 export const BEYOND_RADIUS = 1.4;
 
-/** Solves the particles of a task for the widest cone and the largest phase that its limits allow. */
-export function taskScenarios(task: Task, drifts: number): Scenario[] {
-  const { light, medium, particles, detector } = task;
+/** Solves particles in the light of a task, each at every one of the vacuum wavelengths of its main line. */
+export type ScenarioSolver = (particles: readonly Particle[], wavelengthsM: readonly number[]) => Scenario[];
+
+/** A solver for the widest cone and the largest phase that a task's limits allow. */
+export function scenarioSolver(task: Task): ScenarioSolver {
+  const { light, medium, detector } = task;
   const tangent = Math.tan(light.sourceAngleRad ?? 0);
   // η = κρ² with the source's disc of places, z tan a, added to ρ.
   const phases = reachesOf(task).map(
     ({ distanceM, kappa, shadowM }) => kappa * (detector.radiusM[1] + shadowM + distanceM * tangent) ** 2,
   );
-  const wavelengths = driftedWavelengths(light, drifts);
-  return buildScenarios(light, medium, particles, wavelengths, coneHalfAngle(task), Math.max(...phases));
+  const [halfAngle, phase] = [coneHalfAngle(task), Math.max(...phases)];
+  return (particles, wavelengthsM) =>
+    buildScenarios(light, medium, particles, wavelengthsM, halfAngle, phase);
+}
+
+/** Solves the particles of a task for the widest cone and the largest phase that its limits allow. */
+export function taskScenarios(task: Task, drifts: number): Scenario[] {
+  return scenarioSolver(task)(task.particles, driftedWavelengths(task.light, drifts));
 }
 
 /** Half-angle of the cone in which light may fall on a detector, radians: how far amplitudes are asked for. */
