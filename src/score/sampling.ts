@@ -1,10 +1,15 @@
 import type { LegendreRules } from '../numeric/gaussLegendre.ts';
 import { linesOf } from '../optics/light.ts';
 import type { NodeDensity } from '../outline/boundaryNodes.ts';
+import { FlightGrid } from '../reading/flightGrid.ts';
+import type { FlightMeans } from '../reading/flightMeans.ts';
+import { plainFlights } from '../reading/flightMeans.ts';
+import { flightMirrors, flightSymmetry } from '../reading/flightMirrors.ts';
 import type { Fringes } from '../reading/fringes.ts';
 import { fringesAt } from '../reading/fringes.ts';
-import type { FlightRule, MostPlaces, Symmetry } from '../reading/positions.ts';
-import { flightPoints, flightRule, samplePositions } from '../reading/positions.ts';
+import { farthestRead } from '../reading/placement.ts';
+import type { MostPlaces, Symmetry } from '../reading/positions.ts';
+import { flightPoints, flightRule, NO_FLIGHT, samplePositions } from '../reading/positions.ts';
 import type { Fineness } from './fineness.ts';
 import type { Task } from './task.ts';
 
@@ -35,7 +40,7 @@ export class Sampling {
   }
 
   /** Phase that a step of the particle across the axis makes at the rim, rad/m. */
-  #phasePerMetre(radiusM: number, distanceM: number): number {
+  phasePerMetre(radiusM: number, distanceM: number): number {
     const { kappa, magnification, fallPerM } = this.fringes(distanceM, 0);
     return Math.max(2 * kappa * magnification * radiusM, fallPerM);
   }
@@ -49,17 +54,23 @@ export class Sampling {
     const magnification = Math.max(...places.map((fringes) => fringes.magnification));
     return {
       kappa: Math.max(...places.map(({ kappa }) => kappa)) / shortest,
-      offsetM: magnification * (placement.offsetM + (placement.crossing?.spanM ?? 0) / 2),
+      offsetM: magnification * farthestRead(placement),
       perRadian: this.#fineness.perRadian,
       least: 6,
     };
   }
 
-  /** Places of the particle for an outline of that radius: flat [x0, y0, …], metres. */
+  /** Places of the particle, the middles of its flights, for an outline of that radius: flat [x0, y0, …], metres. */
   positions(radiusM: number, distanceM: number, symmetry: Symmetry): Float64Array {
     const { placement, light } = this.#task;
+    const { crossing } = placement;
+    const isPolarised = light.polarizationRad !== null;
     // A field's angle or a flight's heading breaks the outline's symmetry.
-    const kept = light.polarizationRad === null && placement.crossing === null ? symmetry : NO_SYMMETRY;
+    const still = isPolarised ? NO_SYMMETRY : symmetry;
+    const kept =
+      crossing === null
+        ? still
+        : flightSymmetry(flightMirrors(symmetry, crossing.headingRad, isPolarised), crossing.headingRad);
     return samplePositions(
       placement.offsetM,
       this.#phasePerMetre(radiusM, distanceM),
@@ -71,7 +82,7 @@ export class Sampling {
 
   /** Points of the flight at equal times, relative to its middle: flat, metres. */
   flight(radiusM: number, distanceM: number): Float64Array {
-    return flightPoints(this.#task.placement.crossing, this.#phasePerMetre(radiusM, distanceM));
+    return flightPoints(this.#task.placement.crossing, this.phasePerMetre(radiusM, distanceM));
   }
 
   /** Places along the beam, the nominal one first, metres. */
@@ -83,9 +94,24 @@ export class Sampling {
     return [0, ...others.filter((depth) => depth !== 0)];
   }
 
-  /** Points and weights of the flight, for its mean. */
-  flightRule(radiusM: number, distanceM: number): FlightRule {
-    return flightRule(this.#task.placement.crossing, this.#phasePerMetre(radiusM, distanceM), this.#rules);
+  /**
+   * How flights with those middles are read: without a crossing each is one point.
+   *
+   * @param symmetry of the outline's boundary nodes: readings of mirror images are taken once
+   */
+  flights(middles: Float64Array, radiusM: number, distanceM: number, symmetry: Symmetry): FlightMeans {
+    const { placement, light } = this.#task;
+    const { crossing } = placement;
+    if (crossing === null) return plainFlights(middles, NO_FLIGHT);
+    const rule = flightRule(crossing, this.#phasePerMetre(radiusM, distanceM), this.#rules);
+    const plain = plainFlights(middles, rule);
+    // In a focused beam readings end where the light does, which no polynomial follows.
+    if (light.beam !== undefined) return plain;
+    const mirrors = flightMirrors(symmetry, crossing.headingRad, light.polarizationRad !== null);
+    const { kappa } = this.density(distanceM);
+    const phasePerMetre = 2 * kappa * (radiusM + farthestRead(placement));
+    const grid = new FlightGrid(middles, crossing, { phasePerMetre, mirrors, tail: this.#fineness.tail });
+    return grid.readings < (middles.length / 2) * rule.weights.length ? grid : plain;
   }
 
   /** Places along one radius, whatever breaks the outline's symmetry: for linear programs. */

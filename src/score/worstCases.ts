@@ -1,0 +1,326 @@
+import { climbDisc } from '../numeric/climbDisc.ts';
+import { climbLine } from '../numeric/climbLine.ts';
+import { LegendreRules } from '../numeric/gaussLegendre.ts';
+import { refractiveIndex } from '../optics/indexModel.ts';
+import type { Particle } from '../optics/particle.ts';
+import type { FlightRule, Symmetry } from '../reading/positions.ts';
+import type { Fields } from '../reading/tableShelf.ts';
+import type { View } from './conditionReader.ts';
+import { ConditionReader } from './conditionReader.ts';
+import type { Condition, Kind } from './conditions.ts';
+import { firstConditions, kindsOf, particleOf } from './conditions.ts';
+import { SEARCH_FINENESS } from './fineness.ts';
+import type { ElementNodes } from './judge.ts';
+import { Sampling } from './sampling.ts';
+import type { Task } from './task.ts';
+
+/** Where a design reads worst, and what it reads there. */
+export interface WorstCase {
+  /** ratio/gain − 1, with its sign. */
+  correction: number;
+  /** reading/extinction */
+  ratio: number;
+  particle: Particle;
+  /** Of the main line, vacuum, metres. */
+  wavelengthM: number;
+  /** From the nominal place towards the detector, metres. */
+  depthM: number;
+  /** Metres; the middle of a flight. */
+  positionM: [x: number, y: number];
+}
+
+/** A case on the way to a local maximum of `sign` times the correction. */
+interface Climb {
+  condition: Condition;
+  x: number;
+  y: number;
+  sign: 1 | -1;
+  /** sign · correction */
+  value: number;
+}
+
+/** Local maxima that are climbed to, and the share of the worst first look below which none is. */
+const CLIMBS = 6;
+const WORTH = 0.85;
+/** First looks of one kind and sign whose size parameters lie nearer than this are one maximum. */
+const APART = 0.5;
+/** Rounds over place, wavelength, depth and diameter, and the gain in correction that is worth another, over the worst. */
+const ROUNDS = 3;
+const LEAST_GAIN = 1e-4;
+/** First and last step of a place, radians of phase at the rim (see `samplePositions`). */
+const PLACE_STEPS = [0.25, 0.015] as const;
+/** First step of a diameter in size parameter: half of what separates the first looks. */
+const SIZE_STEP = 0.05;
+/** Readings that need a table of their own, for each line that is climbed along. */
+const TABLES = { diameter: 7, wavelength: 4, depth: 4 } as const;
+
+/**
+ * Finds where designs for one task read worst, not among samples, but by climbing: over the particle's place, the depth, the
+ * wavelength, and the diameter within every range of the brief.
+ *
+ * A first look takes diameters 0.1 apart in size parameter (at most 240 in all: wider ranges are looked at more coarsely, and a resonance
+ * of a clear sphere narrower than that may be passed over), with wavelengths and depths in turn, at those places where the
+ * brief's own particles read most and least. The worst few are then climbed from, one coordinate after the other, each with
+ * its own table. Holds solved particles, and tables of the last distance: make one and keep it, and ask distance by distance.
+ */
+export class WorstCases {
+  readonly #task: Task;
+  readonly #kinds: readonly Kind[];
+  readonly #first: readonly Condition[];
+  readonly #reader: ConditionReader;
+  readonly #sampling: Sampling;
+  readonly #rules = new LegendreRules();
+
+  constructor(task: Task, fields: Fields = 'far') {
+    this.#task = task;
+    this.#kinds = kindsOf(task);
+    this.#first = firstConditions(task, this.#kinds);
+    this.#reader = new ConditionReader(task, fields);
+    const { wavelengthM } = task.light;
+    const wavenumber = (2 * Math.PI * refractiveIndex(task.medium, wavelengthM)[0]) / wavelengthM;
+    this.#sampling = new Sampling(task, SEARCH_FINENESS, wavenumber, this.#rules);
+  }
+
+  /**
+   * Local maxima of |ratio/gain − 1|, the worst first; those of one sign and kind of particle differ in diameter.
+   *
+   * @param elements any weighted loops, as nodes (see `Judge.shapeNodes`)
+   * @param radiusM of the circle around them
+   * @param symmetry of the elements: the places that stand for all of them
+   */
+  find(
+    elements: readonly ElementNodes[],
+    radiusM: number,
+    distanceM: number,
+    gain: number,
+    symmetry: Symmetry,
+  ): WorstCase[] {
+    const scene = this.#scene(elements, radiusM, distanceM, gain, symmetry);
+    const climbs = this.#starts(scene).map((start) => this.#climb(scene, start));
+    return distinct(climbs).map(({ condition, x, y, sign, value }) => ({
+      correction: sign * value,
+      ratio: gain * (1 + sign * value),
+      particle: particleOf(condition),
+      wavelengthM: condition.wavelengthM,
+      depthM: condition.depthM,
+      positionM: [x, y],
+    }));
+  }
+
+  #scene(
+    elements: readonly ElementNodes[],
+    radiusM: number,
+    distanceM: number,
+    gain: number,
+    symmetry: Symmetry,
+  ): Scene {
+    const flight = this.#sampling.flightRule(radiusM, distanceM);
+    const offsetM = this.#task.placement.offsetM + farthest(flight.points);
+    return {
+      nodes: weightedNodes(elements),
+      flight,
+      view: { distanceM, radiusM, offsetM },
+      gain,
+      places: this.#sampling.positions(radiusM, distanceM, symmetry),
+      phasePerMetre: this.#sampling.phasePerMetre(radiusM, distanceM),
+    };
+  }
+
+  /** The correction at any place, under one condition. */
+  #correction(condition: Condition, { nodes, flight, view, gain }: Scene): (x: number, y: number) => number {
+    const read = this.#reader.at(condition, view);
+    const { points, weights } = flight;
+    return (x, y) => {
+      let ratio = 0;
+      for (let f = 0; f < weights.length; f++)
+        ratio += weights[f] * read(nodes, x + points[2 * f], y + points[2 * f + 1]);
+      return ratio / gain - 1;
+    };
+  }
+
+  /** First looks at every condition, at the places that tell most; the worst of them, apart from each other. */
+  #starts(scene: Scene): Climb[] {
+    const places = this.#tellingPlaces(scene);
+    const looks = this.#first.flatMap((condition) => {
+      const correction = this.#correction(condition, scene);
+      const values = places.map(([x, y]) => ({ x, y, value: correction(x, y) }));
+      return ([1, -1] as const).map((sign) => {
+        const { x, y, value } = values.reduce((p, q) => (sign * q.value > sign * p.value ? q : p));
+        return { condition, x, y, sign, value: sign * value };
+      });
+    });
+    const kept = distinct(looks);
+    return kept.filter(({ value }) => value >= WORTH * kept[0].value).slice(0, CLIMBS);
+  }
+
+  /** Where the brief's own particles read most and least, at the nominal wavelength and every depth; and the axis. */
+  #tellingPlaces(scene: Scene): [x: number, y: number][] {
+    const { places } = scene;
+    const { light, placement } = this.#task;
+    const told = new Set([0]);
+    const depths = placement.depthM === 0 ? [0] : [-placement.depthM, 0, placement.depthM];
+    for (const kind of this.#kinds) {
+      for (const diameterM of kind.diametersM) {
+        for (const depthM of depths) {
+          const condition = { kind, diameterM, wavelengthM: light.wavelengthM, depthM };
+          const correction = this.#correction(condition, scene);
+          for (const sign of [1, -1] as const) told.add(worstPlace(correction, places, sign).place);
+        }
+      }
+    }
+    return [...told].map((place) => [places[2 * place], places[2 * place + 1]]);
+  }
+
+  /** From a first look to a local maximum over everything. */
+  #climb(scene: Scene, start: Climb): Climb {
+    let best = this.#climbPlace(scene, start, true);
+    for (let round = 0; round < ROUNDS; round++) {
+      const before = best.value;
+      best = this.#climbWavelength(scene, best);
+      best = this.#climbDepth(scene, best);
+      best = this.#climbDiameter(scene, best);
+      best = this.#climbPlace(scene, best, false);
+      if (best.value - before < LEAST_GAIN * Math.abs(best.value)) break;
+    }
+    return best;
+  }
+
+  /** @param anywhere whether to look over the whole disc before climbing */
+  #climbPlace(scene: Scene, from: Climb, anywhere: boolean): Climb {
+    const { offsetM } = this.#task.placement;
+    if (offsetM === 0) return from;
+    const { places, phasePerMetre } = scene;
+    const correction = this.#correction(from.condition, scene);
+    let start = from;
+    if (anywhere) {
+      const { place, value } = worstPlace(correction, places, from.sign);
+      if (value > from.value) start = { ...from, x: places[2 * place], y: places[2 * place + 1], value };
+    }
+    const [step, least] = PLACE_STEPS.map((phase) => phase / phasePerMetre);
+    const value = (x: number, y: number) => from.sign * correction(x, y);
+    return {
+      ...start,
+      ...climbDisc(value, start, offsetM, Math.min(step, offsetM / 3), Math.min(least, offsetM / 50)),
+    };
+  }
+
+  /** The diameter goes with the wavelength, as far as it may: a sphere's ripple hangs on their ratio. */
+  #climbWavelength(scene: Scene, from: Climb): Climb {
+    const { wavelengthM, driftM } = this.#task.light;
+    if (driftM === 0) return from;
+    const { condition } = from;
+    const { leastM, largestM } = condition.kind;
+    return this.#climbAlong(scene, from, {
+      at: condition.wavelengthM,
+      range: [wavelengthM - driftM, wavelengthM + driftM],
+      step: driftM,
+      tables: TABLES.wavelength,
+      conditionAt: (at) => {
+        const diameterM = (condition.diameterM * at) / condition.wavelengthM;
+        return { ...condition, wavelengthM: at, diameterM: Math.min(largestM, Math.max(leastM, diameterM)) };
+      },
+    });
+  }
+
+  #climbDepth(scene: Scene, from: Climb): Climb {
+    const { depthM } = this.#task.placement;
+    if (depthM === 0) return from;
+    const { condition } = from;
+    return this.#climbAlong(scene, from, {
+      at: condition.depthM,
+      range: [-depthM, depthM],
+      step: depthM,
+      tables: TABLES.depth,
+      conditionAt: (at) => ({ ...condition, depthM: at }),
+    });
+  }
+
+  #climbDiameter(scene: Scene, from: Climb): Climb {
+    const { condition } = from;
+    const { leastM, largestM } = condition.kind;
+    if (leastM === largestM) return from;
+    return this.#climbAlong(scene, from, {
+      at: condition.diameterM,
+      range: [leastM, largestM],
+      step: Math.min((SIZE_STEP * condition.wavelengthM) / Math.PI, (largestM - leastM) / 4),
+      tables: TABLES.diameter,
+      conditionAt: (at) => ({ ...condition, diameterM: at }),
+    });
+  }
+
+  #climbAlong(scene: Scene, from: Climb, { at, range, step, tables, conditionAt }: Line): Climb {
+    const f = (place: number) => from.sign * this.#correction(conditionAt(place), scene)(from.x, from.y);
+    const reached = climbLine(f, { at, value: from.value }, step, range, tables);
+    return { ...from, condition: conditionAt(reached.at), value: reached.value };
+  }
+}
+
+/** One design as it is looked at. */
+interface Scene {
+  nodes: Float64Array;
+  flight: FlightRule;
+  view: View;
+  gain: number;
+  /** Flat [x0, y0, …], metres. */
+  places: Float64Array;
+  phasePerMetre: number;
+}
+
+/** One coordinate of a condition, to climb along. */
+interface Line {
+  at: number;
+  range: [low: number, high: number];
+  step: number;
+  tables: number;
+  conditionAt: (at: number) => Condition;
+}
+
+/** All elements as one list of nodes: a reading is linear in the tangents. */
+function weightedNodes(elements: readonly ElementNodes[]): Float64Array {
+  const all = new Float64Array(elements.reduce((sum, { nodes }) => sum + nodes.length, 0));
+  let at = 0;
+  for (const { weight, nodes } of elements) {
+    all.set(nodes, at);
+    for (let i = at; i < at + nodes.length; i += 4) {
+      all[i + 2] *= weight;
+      all[i + 3] *= weight;
+    }
+    at += nodes.length;
+  }
+  return all;
+}
+
+function worstPlace(
+  correction: (x: number, y: number) => number,
+  places: Float64Array,
+  sign: 1 | -1,
+): { place: number; value: number } {
+  let worst = { place: 0, value: Number.NEGATIVE_INFINITY };
+  for (let place = 0; place < places.length / 2; place++) {
+    const value = sign * correction(places[2 * place], places[2 * place + 1]);
+    if (value > worst.value) worst = { place, value };
+  }
+  return worst;
+}
+
+/** The worst first, without those that are one maximum with a worse one. */
+function distinct(climbs: readonly Climb[]): Climb[] {
+  const kept: Climb[] = [];
+  for (const climb of climbs.toSorted((p, q) => q.value - p.value)) {
+    const { kind, wavelengthM, diameterM } = climb.condition;
+    const isOther = kept.every(
+      ({ sign, condition }) =>
+        sign !== climb.sign ||
+        condition.kind !== kind ||
+        (Math.PI * Math.abs(condition.diameterM - diameterM)) / wavelengthM >= APART,
+    );
+    if (isOther) kept.push(climb);
+  }
+  return kept;
+}
+
+function farthest(points: Float64Array): number {
+  let squared = 0;
+  for (let i = 0; i < points.length; i += 2) squared = Math.max(squared, points[i] ** 2 + points[i + 1] ** 2);
+  return Math.sqrt(squared);
+}
