@@ -20,6 +20,7 @@ export interface WorstCase {
   correction: number;
   /** reading/extinction */
   ratio: number;
+  condition: Condition;
   particle: Particle;
   /** Of the main line, vacuum, metres. */
   wavelengthM: number;
@@ -100,6 +101,7 @@ export class WorstCases {
     return distinct(climbs).map(({ condition, x, y, sign, value }) => ({
       correction: sign * value,
       ratio: gain * (1 + sign * value),
+      condition,
       particle: particleOf(condition),
       wavelengthM: condition.wavelengthM,
       depthM: condition.depthM,
