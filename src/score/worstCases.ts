@@ -3,7 +3,8 @@ import { climbLine } from '../numeric/climbLine.ts';
 import { LegendreRules } from '../numeric/gaussLegendre.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
 import type { Particle } from '../optics/particle.ts';
-import type { FlightRule, Symmetry } from '../reading/positions.ts';
+import type { FlightMeans } from '../reading/flightMeans.ts';
+import type { Symmetry } from '../reading/positions.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import type { View } from './conditionReader.ts';
 import { ConditionReader } from './conditionReader.ts';
@@ -11,7 +12,7 @@ import type { Condition, Kind } from './conditions.ts';
 import { firstConditions, kindsOf, particleOf } from './conditions.ts';
 import { SEARCH_FINENESS } from './fineness.ts';
 import type { ElementNodes } from './judge.ts';
-import { Sampling } from './sampling.ts';
+import { NO_SYMMETRY, Sampling } from './sampling.ts';
 import type { Task } from './task.ts';
 
 /** Where a design reads worst, and what it reads there. */
@@ -39,6 +40,8 @@ interface Climb {
   /** sign · correction */
   value: number;
 }
+
+const SIGNS = [1, -1] as const;
 
 /** Local maxima that are climbed to, and the share of the worst first look below which none is. */
 const CLIMBS = 6;
@@ -116,61 +119,61 @@ export class WorstCases {
     gain: number,
     symmetry: Symmetry,
   ): Scene {
-    const flight = this.#sampling.flightRule(radiusM, distanceM);
-    const offsetM = this.#task.placement.offsetM + farthest(flight.points);
+    const { offsetM, crossing } = this.#task.placement;
+    const places = this.#sampling.positions(radiusM, distanceM, symmetry);
+    const flightsOf = (middles: Float64Array) =>
+      this.#sampling.flights(middles, radiusM, distanceM, NO_SYMMETRY);
+    const flights = flightsOf(places);
+    const farthestM = Math.max(flights.farthestM, offsetM + (crossing?.spanM ?? 0) / 2);
     return {
       nodes: weightedNodes(elements),
-      flight,
-      view: { distanceM, radiusM, offsetM },
+      view: { distanceM, radiusM, offsetM: farthestM },
       gain,
-      places: this.#sampling.positions(radiusM, distanceM, symmetry),
+      places,
+      flights,
+      flightsOf,
       phasePerMetre: this.#sampling.phasePerMetre(radiusM, distanceM),
     };
   }
 
-  /** The correction at any place, under one condition. */
-  #correction(condition: Condition, { nodes, flight, view, gain }: Scene): (x: number, y: number) => number {
+  /** Corrections of flights, or of places where the particle stays, under one condition. */
+  #corrections(condition: Condition, { nodes, view, gain }: Scene, flights: FlightMeans): Float64Array {
     const read = this.#reader.at(condition, view);
-    const { points, weights } = flight;
-    return (x, y) => {
-      let ratio = 0;
-      for (let f = 0; f < weights.length; f++)
-        ratio += weights[f] * read(nodes, x + points[2 * f], y + points[2 * f + 1]);
-      return ratio / gain - 1;
-    };
+    const ratios = new Float64Array(flights.count);
+    flights.means((x, y) => read(nodes, x, y), ratios);
+    return ratios.map((ratio) => ratio / gain - 1);
   }
 
   /** First looks at every condition, at the places that tell most; the worst of them, apart from each other. */
   #starts(scene: Scene): Climb[] {
     const places = this.#tellingPlaces(scene);
+    const flights = scene.flightsOf(places);
     const looks = this.#first.flatMap((condition) => {
-      const correction = this.#correction(condition, scene);
-      const values = places.map(([x, y]) => ({ x, y, value: correction(x, y) }));
-      return ([1, -1] as const).map((sign) => {
-        const { x, y, value } = values.reduce((p, q) => (sign * q.value > sign * p.value ? q : p));
-        return { condition, x, y, sign, value: sign * value };
-      });
+      const corrections = this.#corrections(condition, scene, flights);
+      return SIGNS.map((sign) => startOf(condition, places, corrections, sign));
     });
     const kept = distinct(looks);
     return kept.filter(({ value }) => value >= WORTH * kept[0].value).slice(0, CLIMBS);
   }
 
   /** Where the brief's own particles read most and least, at the nominal wavelength and every depth; and the axis. */
-  #tellingPlaces(scene: Scene): [x: number, y: number][] {
-    const { places } = scene;
+  #tellingPlaces(scene: Scene): Float64Array {
     const { light, placement } = this.#task;
-    const told = new Set([0]);
+    const told = new Map<string, readonly [number, number]>([['0 0', [0, 0]]]);
     const depths = placement.depthM === 0 ? [0] : [-placement.depthM, 0, placement.depthM];
     for (const kind of this.#kinds) {
       for (const diameterM of kind.diametersM) {
         for (const depthM of depths) {
           const condition = { kind, diameterM, wavelengthM: light.wavelengthM, depthM };
-          const correction = this.#correction(condition, scene);
-          for (const sign of [1, -1] as const) told.add(worstPlace(correction, places, sign).place);
+          const corrections = this.#corrections(condition, scene, scene.flights);
+          for (const sign of SIGNS) {
+            const { x, y } = startOf(condition, scene.places, corrections, sign);
+            told.set(`${x} ${y}`, [x, y]);
+          }
         }
       }
     }
-    return [...told].map((place) => [places[2 * place], places[2 * place + 1]]);
+    return Float64Array.from([...told.values()].flat());
   }
 
   /** From a first look to a local maximum over everything. */
@@ -191,19 +194,18 @@ export class WorstCases {
   #climbPlace(scene: Scene, from: Climb, anywhere: boolean): Climb {
     const { offsetM } = this.#task.placement;
     if (offsetM === 0) return from;
-    const { places, phasePerMetre } = scene;
-    const correction = this.#correction(from.condition, scene);
+    const { places, flights, flightsOf, phasePerMetre } = scene;
+    const { condition, sign } = from;
     let start = from;
     if (anywhere) {
-      const { place, value } = worstPlace(correction, places, from.sign);
-      if (value > from.value) start = { ...from, x: places[2 * place], y: places[2 * place + 1], value };
+      const found = startOf(condition, places, this.#corrections(condition, scene, flights), sign);
+      if (found.value > start.value) start = found;
     }
-    const [step, least] = PLACE_STEPS.map((phase) => phase / phasePerMetre);
-    const value = (x: number, y: number) => from.sign * correction(x, y);
-    return {
-      ...start,
-      ...climbDisc(value, start, offsetM, Math.min(step, offsetM / 3), Math.min(least, offsetM / 50)),
-    };
+    const [first, last] = PLACE_STEPS.map((phase) => phase / phasePerMetre);
+    const value = (x: number, y: number) =>
+      sign * this.#corrections(condition, scene, flightsOf(Float64Array.of(x, y)))[0];
+    const steps = [Math.min(first, offsetM / 3), Math.min(last, offsetM / 50)] as const;
+    return { ...start, ...climbDisc(value, start, offsetM, ...steps) };
   }
 
   /** The diameter goes with the wavelength, as far as it may: a sphere's ripple hangs on their ratio. */
@@ -251,7 +253,8 @@ export class WorstCases {
   }
 
   #climbAlong(scene: Scene, from: Climb, { at, range, step, tables, conditionAt }: Line): Climb {
-    const f = (place: number) => from.sign * this.#correction(conditionAt(place), scene)(from.x, from.y);
+    const flight = scene.flightsOf(Float64Array.of(from.x, from.y));
+    const f = (place: number) => from.sign * this.#corrections(conditionAt(place), scene, flight)[0];
     const reached = climbLine(f, { at, value: from.value }, step, range, tables);
     return { ...from, condition: conditionAt(reached.at), value: reached.value };
   }
@@ -260,11 +263,12 @@ export class WorstCases {
 /** One design as it is looked at. */
 interface Scene {
   nodes: Float64Array;
-  flight: FlightRule;
   view: View;
   gain: number;
-  /** Flat [x0, y0, …], metres. */
+  /** Places that stand for all: flat [x0, y0, …], metres; and the flights through them. */
   places: Float64Array;
+  flights: FlightMeans;
+  flightsOf: (middles: Float64Array) => FlightMeans;
   phasePerMetre: number;
 }
 
@@ -292,17 +296,13 @@ function weightedNodes(elements: readonly ElementNodes[]): Float64Array {
   return all;
 }
 
-function worstPlace(
-  correction: (x: number, y: number) => number,
-  places: Float64Array,
-  sign: 1 | -1,
-): { place: number; value: number } {
-  let worst = { place: 0, value: Number.NEGATIVE_INFINITY };
-  for (let place = 0; place < places.length / 2; place++) {
-    const value = sign * correction(places[2 * place], places[2 * place + 1]);
-    if (value > worst.value) worst = { place, value };
+function startOf(condition: Condition, places: Float64Array, corrections: Float64Array, sign: 1 | -1): Climb {
+  let worst = 0;
+  for (let p = 1; p < corrections.length; p++) {
+    if (sign * corrections[p] > sign * corrections[worst]) worst = p;
   }
-  return worst;
+  const [x, y] = places.subarray(2 * worst);
+  return { condition, x, y, sign, value: sign * corrections[worst] };
 }
 
 /** The worst first, without those that are one maximum with a worse one. */
@@ -319,10 +319,4 @@ function distinct(climbs: readonly Climb[]): Climb[] {
     if (isOther) kept.push(climb);
   }
   return kept;
-}
-
-function farthest(points: Float64Array): number {
-  let squared = 0;
-  for (let i = 0; i < points.length; i += 2) squared = Math.max(squared, points[i] ** 2 + points[i + 1] ** 2);
-  return Math.sqrt(squared);
 }
