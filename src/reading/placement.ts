@@ -20,3 +20,11 @@ export interface Placement {
   /** Straight flight across the beam during one measurement, or null. */
   crossing: { spanM: number; headingRad: number } | null;
 }
+
+/**
+ * Farthest from the axis that readings are taken for a placement, metres: the corner of the rectangle around all flights, which
+ * are read on a grid (see `FlightGrid`).
+ */
+export function farthestRead({ offsetM, crossing }: Placement): number {
+  return crossing === null ? offsetM : Math.hypot(offsetM + crossing.spanM / 2, offsetM);
+}

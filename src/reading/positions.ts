@@ -13,6 +13,8 @@ export interface Symmetry {
   folds: number;
   /** Whether the x axis is a mirror line. */
   mirror: boolean;
+  /** Azimuth of the line that is meant in place of the x axis, radians. */
+  axisRad?: number;
 }
 
 /**
@@ -36,6 +38,7 @@ export function samplePositions(
   { circles: mostCircles, steps: mostSteps }: MostPlaces = { circles: Infinity, steps: Infinity },
 ): Float64Array {
   const positions = [0, 0];
+  const { axisRad = 0 } = symmetry;
   if (offsetM > 0) {
     const reach = offsetM * phasePerMetre;
     const circles = Math.min(mostCircles, Math.max(3, Math.ceil(reach / spacing)));
@@ -49,7 +52,7 @@ export function samplePositions(
       const least = symmetry.mirror ? 4 : 7;
       const steps = wedge === 0 ? 1 : Math.min(mostSteps, Math.max(least, Math.ceil(arc / spacing) + 1));
       for (let j = 0; j < steps; j++) {
-        const angle = steps === 1 ? 0 : (wedge * j) / (steps - 1);
+        const angle = axisRad + (steps === 1 ? 0 : (wedge * j) / (steps - 1));
         positions.push(radius * Math.cos(angle), radius * Math.sin(angle));
       }
     }

@@ -11,6 +11,8 @@ export interface Fineness {
   most: MostPlaces;
   /** Boundary nodes per radian of phase. */
   perRadian: number;
+  /** Places of a flight's grid beyond its phase, over the cube root of it (see `FlightGrid`). */
+  tail: number;
 }
 
 /** For every candidate of a search. */
@@ -20,6 +22,7 @@ export const SEARCH_FINENESS: Fineness = {
   depths: 3,
   most: { circles: 12, steps: 24 },
   perRadian: 0.45,
+  tail: 3,
 };
 
 /** For what is reported: ten times denser in position, and finer in the rest. */
@@ -29,4 +32,5 @@ export const REPORT_FINENESS: Fineness = {
   depths: 5,
   most: { circles: 160, steps: 1200 },
   perRadian: 0.9,
+  tail: 4.7,
 };

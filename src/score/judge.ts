@@ -8,6 +8,8 @@ import { ringNodes } from '../outline/ringNodes.ts';
 import type { OutlineElement, Shape } from '../outline/shape.ts';
 import { shapeRadius } from '../outline/shapeRadius.ts';
 import { beamPath, particleIrradiance } from '../reading/beamPath.ts';
+import type { FlightMeans } from '../reading/flightMeans.ts';
+import { farthest, plainFlights } from '../reading/flightMeans.ts';
 import { litArea } from '../reading/litArea.ts';
 import type { Symmetry } from '../reading/positions.ts';
 import { NO_FLIGHT } from '../reading/positions.ts';
@@ -92,7 +94,7 @@ export class Judge {
 
   /** Scores a shape as its family draws it; the ratios reading/extinction behind the correction come along. */
   scoreShape(shape: Shape, distanceM: number): Judgement {
-    return this.#score(this.shapeNodes(shape, distanceM), shapeRadius(shape), distanceM, shape);
+    return this.#score(this.shapeNodes(shape, distanceM), shapeRadius(shape), distanceM, shape, shape);
   }
 
   /** Scores an outline given by its points. */
@@ -102,7 +104,9 @@ export class Judge {
     symmetry: Symmetry = NO_SYMMETRY,
   ): Judgement {
     const radiusM = Math.max(...elements.map(({ rings }) => ringsRadius(rings)));
-    return this.#score(this.outlineNodes(elements, distanceM), radiusM, distanceM, symmetry);
+    // Drawn as points, an outline keeps its symmetry nearly: enough to choose places by, and each is read for itself.
+    const nodes = this.outlineNodes(elements, distanceM);
+    return this.#score(nodes, radiusM, distanceM, symmetry, NO_SYMMETRY);
   }
 
   /**
@@ -120,7 +124,8 @@ export class Judge {
     const nodes = this.outlineNodes(elements, distanceM);
     const places = positions ?? this.#sampling.positions(radiusM, distanceM, NO_SYMMETRY);
     const depths = positions ? [0] : this.#sampling.depths();
-    return { positions: places, depths, ratios: this.#ratios(nodes, radiusM, distanceM, places, depths) };
+    const flights = this.#sampling.flights(places, radiusM, distanceM, NO_SYMMETRY);
+    return { positions: places, depths, ratios: this.#ratios(nodes, radiusM, distanceM, flights, depths) };
   }
 
   /**
@@ -144,7 +149,8 @@ export class Judge {
         points[(p * flight.length) / 2 + f] = places[p + (f % 2)] + flight[f];
     }
     const nodes = this.outlineNodes(elements, distanceM);
-    const ratios = this.#ratios(nodes, radiusM, distanceM, points, [0], NO_FLIGHT);
+    const stills = plainFlights(points, NO_FLIGHT);
+    const ratios = this.#ratios(nodes, radiusM, distanceM, stills, [0]);
     return { positions: places, flight, ratios };
   }
 
@@ -179,7 +185,8 @@ export class Judge {
   shapeRatios(shape: Shape, distanceM: number, radiusM: number): Float64Array {
     const elements = this.shapeNodes(shape, distanceM);
     const positions = this.#sampling.maskPositions(radiusM, distanceM, shape);
-    return flatten(this.#ratios(elements, radiusM, distanceM, positions, this.#sampling.depths()));
+    const flights = this.#sampling.flights(positions, radiusM, distanceM, shape);
+    return flatten(this.#ratios(elements, radiusM, distanceM, flights, this.#sampling.depths()));
   }
 
   /** Boundary nodes of a shape, dense enough for every place, depth and line of the task. */
@@ -200,28 +207,23 @@ export class Judge {
     elements: readonly ElementNodes[],
     radiusM: number,
     distanceM: number,
-    positions: Float64Array,
+    flights: FlightMeans,
     depths: readonly number[],
-    flight = this.#sampling.flightRule(radiusM, distanceM),
   ): Float64Array[] {
-    const offsetM = farthest(positions) + farthest(flight.points);
-    const count = positions.length / 2;
+    const { count, farthestM } = flights;
     const ratios = this.scenarios.map(() => new Float64Array(count * depths.length));
     depths.forEach((depth, d) => {
-      const readers = this.#readers.at(distanceM, depth, radiusM, offsetM);
+      const readers = this.#readers.at(distanceM, depth, radiusM, farthestM);
       for (let s = 0; s < ratios.length; s++) {
         const read = readers[s];
         const { extinctionM2 } = this.scenarios[s];
-        for (let p = 0; p < count; p++) {
+        const row = ratios[s].subarray(d * count, (d + 1) * count);
+        flights.means((x, y) => {
           let reading = 0;
-          for (let f = 0; f < flight.weights.length; f++) {
-            const x = positions[2 * p] + flight.points[2 * f];
-            const y = positions[2 * p + 1] + flight.points[2 * f + 1];
-            for (const { weight, nodes } of elements)
-              reading += flight.weights[f] * weight * read(nodes, x, y);
-          }
-          ratios[s][d * count + p] = reading / extinctionM2;
-        }
+          for (const { weight, nodes } of elements) reading += weight * read(nodes, x, y);
+          return reading;
+        }, row);
+        for (let p = 0; p < count; p++) row[p] /= extinctionM2;
       }
     });
     return ratios;
@@ -242,10 +244,12 @@ export class Judge {
     radiusM: number,
     distanceM: number,
     symmetry: Symmetry,
+    nodesSymmetry: Symmetry,
   ): Judgement {
     const { target, detector, light } = this.task;
     const positions = this.#sampling.positions(radiusM, distanceM, symmetry);
-    const rows = this.#ratios(elements, radiusM, distanceM, positions, this.#sampling.depths());
+    const flights = this.#sampling.flights(positions, radiusM, distanceM, nodesSymmetry);
+    const rows = this.#ratios(elements, radiusM, distanceM, flights, this.#sampling.depths());
     const ratios = flatten(rows);
     const { gain, worst, rms } = correctionOf(ratios, target.gain);
     if (!Number.isFinite(worst)) {
@@ -276,13 +280,6 @@ export class Judge {
 
 function withArea(weight: number, nodes: Float64Array): ElementNodes {
   return { weight, nodes, areaM2: nodesArea(nodes) };
-}
-
-function farthest(positions: Float64Array): number {
-  let squared = 0;
-  for (let i = 0; i < positions.length; i += 2)
-    squared = Math.max(squared, positions[i] ** 2 + positions[i + 1] ** 2);
-  return Math.sqrt(squared);
 }
 
 function flatten(rows: readonly Float64Array[]): Float64Array {

@@ -1,5 +1,6 @@
 import { refractiveIndex } from '../optics/indexModel.ts';
 import { fringesAt, shadowOffset } from '../reading/fringes.ts';
+import { farthestRead } from '../reading/placement.ts';
 import { spreadOf } from '../reading/spreadOf.ts';
 import type { Task } from './task.ts';
 
@@ -22,7 +23,7 @@ export function reachesOf({ light, medium, particles, placement, detector }: Tas
   const { depthM } = placement;
   const wavenumber = (2 * Math.PI * refractiveIndex(medium, light.wavelengthM)[0]) / light.wavelengthM;
   const spreadM = Math.max(...particles.map(({ diameterM }) => spreadOf(placement, diameterM)));
-  const offsetM = placement.offsetM + (placement.crossing?.spanM ?? 0) / 2;
+  const offsetM = farthestRead(placement);
   return detector.distanceM.flatMap((distance) =>
     PLACES.map((part) => {
       const placeM = part * depthM;

@@ -8,8 +8,8 @@ import { flightMirrors, flightSymmetry } from '../reading/flightMirrors.ts';
 import type { Fringes } from '../reading/fringes.ts';
 import { fringesAt } from '../reading/fringes.ts';
 import { farthestRead } from '../reading/placement.ts';
-import type { MostPlaces, Symmetry } from '../reading/positions.ts';
-import { flightPoints, flightRule, NO_FLIGHT, samplePositions } from '../reading/positions.ts';
+import type { FlightRule, MostPlaces, Symmetry } from '../reading/positions.ts';
+import { flightPoints, flightRule, samplePositions } from '../reading/positions.ts';
 import type { Fineness } from './fineness.ts';
 import type { Task } from './task.ts';
 
@@ -73,7 +73,7 @@ export class Sampling {
         : flightSymmetry(flightMirrors(symmetry, crossing.headingRad, isPolarised), crossing.headingRad);
     return samplePositions(
       placement.offsetM,
-      this.#phasePerMetre(radiusM, distanceM),
+      this.phasePerMetre(radiusM, distanceM),
       this.#fineness.spacing,
       kept,
       this.#fineness.most,
@@ -94,6 +94,11 @@ export class Sampling {
     return [0, ...others.filter((depth) => depth !== 0)];
   }
 
+  /** Points and weights of the flight, for its mean. */
+  flightRule(radiusM: number, distanceM: number): FlightRule {
+    return flightRule(this.#task.placement.crossing, this.phasePerMetre(radiusM, distanceM), this.#rules);
+  }
+
   /**
    * How flights with those middles are read: without a crossing each is one point.
    *
@@ -102,11 +107,10 @@ export class Sampling {
   flights(middles: Float64Array, radiusM: number, distanceM: number, symmetry: Symmetry): FlightMeans {
     const { placement, light } = this.#task;
     const { crossing } = placement;
-    if (crossing === null) return plainFlights(middles, NO_FLIGHT);
-    const rule = flightRule(crossing, this.#phasePerMetre(radiusM, distanceM), this.#rules);
+    const rule = this.flightRule(radiusM, distanceM);
     const plain = plainFlights(middles, rule);
     // In a focused beam readings end where the light does, which no polynomial follows.
-    if (light.beam !== undefined) return plain;
+    if (crossing === null || light.beam !== undefined) return plain;
     const mirrors = flightMirrors(symmetry, crossing.headingRad, light.polarizationRad !== null);
     const { kappa } = this.density(distanceM);
     const phasePerMetre = 2 * kappa * (radiusM + farthestRead(placement));

@@ -215,15 +215,15 @@ describe('Judge: places tried', () => {
     },
   );
 
-  it('are all around for polarised light and for flights, whatever the symmetry', () => {
+  it('are all around for polarised light, and a quarter of that for flights, whatever the symmetry', () => {
     const disc = round({ weight: 1, loops: [circle(3)] });
     const count = (changes: Partial<typeof OFFSET>) =>
       new Judge({ ...OFFSET, ...changes }, SEARCH_FINENESS).scoreShape(disc, Z).ratios.length;
     const still = count({});
     expect(count({ light: { ...OFFSET.light, polarizationRad: 0 } })).toBeGreaterThan(5 * still);
     expect(
-      count({ placement: { ...OFFSET.placement, crossing: { spanM: 20e-6, headingRad: 0 } } }),
-    ).toBeGreaterThan(5 * still);
+      count({ placement: { ...OFFSET.placement, crossing: { spanM: 20e-6, headingRad: 0.5 } } }),
+    ).toBeGreaterThan(3 * still);
   });
 
   it('are the axis alone, at every depth, where there is no offset', () => {
