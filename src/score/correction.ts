@@ -16,8 +16,13 @@ export const LEAST_GAIN = 0.5;
  * reading is below nothing, every gain leaves the worst above 1, and the middle is as good as any.)
  *
  * @param ratios at least one finite number
+ * @param found further ratios that a free gain takes in, and that do not count otherwise
  */
-export function correctionOf(ratios: ArrayLike<number>, gainIs: 'one' | 'free'): Correction {
+export function correctionOf(
+  ratios: ArrayLike<number>,
+  gainIs: 'one' | 'free',
+  found: readonly number[] = [],
+): Correction {
   let least = Number.POSITIVE_INFINITY;
   let most = Number.NEGATIVE_INFINITY;
   let sum = 0;
@@ -29,7 +34,8 @@ export function correctionOf(ratios: ArrayLike<number>, gainIs: 'one' | 'free'):
     sum += ratio;
     squares += ratio * ratio;
   }
-  const gain = gainIs === 'one' ? 1 : Math.max(LEAST_GAIN, (least + most) / 2);
+  const gain =
+    gainIs === 'one' ? 1 : Math.max(LEAST_GAIN, (Math.min(least, ...found) + Math.max(most, ...found)) / 2);
   const worst = Math.max(Math.abs(most / gain - 1), Math.abs(least / gain - 1));
   const meanSquare = (squares / (gain * gain) - (2 * sum) / gain) / ratios.length + 1;
   return { gain, worst, rms: Math.sqrt(Math.max(0, meanSquare)) };

@@ -42,6 +42,15 @@ export interface ElementNodes extends ElementArea {
   nodes: Float64Array;
 }
 
+/** A design as it is read over all samples. */
+export interface SampledReadings {
+  elements: readonly ElementNodes[];
+  radiusM: number;
+  distanceM: number;
+  /** Ratios reading/extinction, a row for each scenario: position by position, the nominal depth first. */
+  rows: readonly Float64Array[];
+}
+
 /** Scores designs for one task. Holds the solved particles and the radial tables, so make one and keep it. */
 export class Judge {
   readonly task: Task;
@@ -94,7 +103,8 @@ export class Judge {
 
   /** Scores a shape as its family draws it; the ratios reading/extinction behind the correction come along. */
   scoreShape(shape: Shape, distanceM: number): Judgement {
-    return this.#score(this.shapeNodes(shape, distanceM), shapeRadius(shape), distanceM, shape, shape);
+    const nodes = this.shapeNodes(shape, distanceM);
+    return this.judge(this.#read(nodes, shapeRadius(shape), distanceM, shape, shape));
   }
 
   /** Scores an outline given by its points. */
@@ -103,10 +113,18 @@ export class Judge {
     distanceM: number,
     symmetry: Symmetry = NO_SYMMETRY,
   ): Judgement {
+    return this.judge(this.readOutline(elements, distanceM, symmetry));
+  }
+
+  /** Reads an outline given by its points over all samples, for `judge`. */
+  readOutline(
+    elements: readonly OutlineElement[],
+    distanceM: number,
+    symmetry: Symmetry = NO_SYMMETRY,
+  ): SampledReadings {
     const radiusM = Math.max(...elements.map(({ rings }) => ringsRadius(rings)));
     // Drawn as points, an outline keeps its symmetry nearly: enough to choose places by, and each is read for itself.
-    const nodes = this.outlineNodes(elements, distanceM);
-    return this.#score(nodes, radiusM, distanceM, symmetry, NO_SYMMETRY);
+    return this.#read(this.outlineNodes(elements, distanceM), radiusM, distanceM, symmetry, NO_SYMMETRY);
   }
 
   /**
@@ -239,19 +257,28 @@ export class Judge {
     }));
   }
 
-  #score(
+  #read(
     elements: readonly ElementNodes[],
     radiusM: number,
     distanceM: number,
     symmetry: Symmetry,
     nodesSymmetry: Symmetry,
-  ): Judgement {
-    const { target, detector, light } = this.task;
+  ): SampledReadings {
     const positions = this.#sampling.positions(radiusM, distanceM, symmetry);
     const flights = this.#sampling.flights(positions, radiusM, distanceM, nodesSymmetry);
     const rows = this.#ratios(elements, radiusM, distanceM, flights, this.#sampling.depths());
+    return { elements, radiusM, distanceM, rows };
+  }
+
+  /**
+   * Scores of a design from its readings.
+   *
+   * @param found further ratios reading/extinction that a free gain takes in: of cases worse than the samples
+   */
+  judge({ elements, radiusM, distanceM, rows }: SampledReadings, found: readonly number[] = []): Judgement {
+    const { target, detector, light } = this.task;
     const ratios = flatten(rows);
-    const { gain, worst, rms } = correctionOf(ratios, target.gain);
+    const { gain, worst, rms } = correctionOf(ratios, target.gain, found);
     if (!Number.isFinite(worst)) {
       throw new RimwrightError(
         'machine',
