@@ -1,0 +1,83 @@
+import { LegendreRules } from '../numeric/gaussLegendre.ts';
+import { refractiveIndex } from '../optics/indexModel.ts';
+import { boundaryNodes } from '../outline/boundaryNodes.ts';
+import { ringLoop } from '../outline/families/rings.ts';
+import type { ConditionReader } from './conditionReader.ts';
+import type { Condition } from './conditions.ts';
+import { REPORT_FINENESS } from './fineness.ts';
+import type { ElementNodes } from './judge.ts';
+import type { MaskCells } from './maskProgram.ts';
+import { Sampling } from './sampling.ts';
+import type { Task } from './task.ts';
+
+/** Fine cells in each cell of a mask. */
+const SPLIT = 4;
+
+/** Phase of one cell, and the least and most cells of a mask. */
+const CELL_PHASE = 0.08;
+const LEAST_CELLS = 240;
+const MOST_CELLS = 4000;
+
+/** Differences of open shares below this are the solver's rounding. */
+const LEAST_SHARE = 1e-7;
+
+/** The plane around the axis in annuli of equal area, and what each of them adds to a ratio reading/extinction. */
+export class RadialCells implements MaskCells {
+  readonly count: number;
+  readonly split = SPLIT;
+  readonly fineArea: number;
+  /** Outer radius of every fine cell, metres. */
+  readonly radiiM: Float64Array;
+  readonly distanceM: number;
+  readonly radiusM: number;
+  readonly #discs: Float64Array[];
+  readonly #reader: ConditionReader;
+  readonly #offsetM: number;
+
+  /** @param radiusM of the outermost cell's outer end, metres */
+  constructor(task: Task, reader: ConditionReader, distanceM: number, radiusM: number) {
+    const wavelengthM = task.light.wavelengthM / refractiveIndex(task.medium, task.light.wavelengthM)[0];
+    const rules = new LegendreRules();
+    const sampling = new Sampling(task, REPORT_FINENESS, (2 * Math.PI) / wavelengthM, rules);
+    const phase = sampling.fringes(distanceM, 0).kappa * radiusM * radiusM;
+    this.count = Math.ceil(Math.min(MOST_CELLS, Math.max(LEAST_CELLS, phase / CELL_PHASE)));
+    const fine = SPLIT * this.count;
+    this.fineArea = (Math.PI * radiusM * radiusM) / (fine * wavelengthM * distanceM);
+    this.radiiM = Float64Array.from({ length: fine }, (_, j) => radiusM * Math.sqrt((j + 1) / fine));
+    this.distanceM = distanceM;
+    this.radiusM = radiusM;
+    this.#reader = reader;
+    this.#offsetM = task.placement.offsetM;
+    const density = sampling.density(distanceM);
+    this.#discs = Array.from(this.radiiM, (rim) => boundaryNodes([ringLoop(rim, 1)], density, rules));
+  }
+
+  /**
+   * What each fine cell adds to reading/extinction.
+   *
+   * @param axisM how far the particle is from the axis: the direction makes no difference
+   */
+  row(condition: Condition, axisM: number): Float64Array {
+    const { distanceM, radiusM } = this;
+    const read = this.#reader.at(condition, { distanceM, radiusM, offsetM: this.#offsetM });
+    let before = 0;
+    return Float64Array.from(this.#discs, (nodes) => {
+      const within = read(nodes, axisM, 0);
+      const cell = within - before;
+      before = within;
+      return cell;
+    });
+  }
+
+  /** A mask as weighted discs, ready to be read. */
+  discsOf(shares: Float64Array): ElementNodes[] {
+    const discs: ElementNodes[] = [];
+    for (let j = 0; j < shares.length; j++) {
+      const weight = shares[j] - (shares[j + 1] ?? 0);
+      const fine = SPLIT * (j + 1) - 1;
+      if (Math.abs(weight) > LEAST_SHARE)
+        discs.push({ weight, nodes: this.#discs[fine], areaM2: Math.PI * this.radiiM[fine] ** 2 });
+    }
+    return discs;
+  }
+}
