@@ -3,6 +3,7 @@ import { polygonise } from '../outline/polygonise.ts';
 import type { OutlineElement, Shape } from '../outline/shape.ts';
 import { shapeRadius } from '../outline/shapeRadius.ts';
 import type { Fields } from '../reading/tableShelf.ts';
+import type { Certifier } from '../score/certifier.ts';
 import type { Design } from '../score/design.ts';
 import type { Judge, Judgement } from '../score/judge.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
@@ -25,14 +26,16 @@ export interface FinishResult {
 /** Two judges of the same fineness: one of the fields that lead the search, one of the others where there are any. */
 export interface FinishingJudges {
   judge: Judge;
+  /** Of the first judge. */
+  certifier: Certifier;
   otherJudge: Judge | null;
   fields: Fields;
 }
 
-/** Turns candidates into what the shop gets, and judges exactly that: the points as they stand in the files. */
+/** Turns candidates into what the shop gets; judges and certifies exactly that: the points as they stand in the files. */
 export function finish(
   job: FinishJob,
-  { judge, otherJudge, fields }: FinishingJudges,
+  { judge, certifier, otherJudge, fields }: FinishingJudges,
   space: SearchSpace,
 ): FinishResult {
   return {
@@ -40,7 +43,7 @@ export function finish(
       const variant = space.variants.find((one) => one.id === id) as Variant;
       const drawn = drawCandidate(judge, space, variant, vector) as { shape: Shape; distanceM: number };
       const elements = toPoints(drawn.shape, judge.kappa(drawn.distanceM));
-      const judged = judge.scoreOutline(elements, drawn.distanceM, drawn.shape);
+      const judged = certifier.scoreOutline(elements, drawn.distanceM, drawn.shape);
       const other = otherJudge?.scoreOutline(elements, drawn.distanceM, drawn.shape);
       return {
         family: variant.family,

@@ -1,5 +1,6 @@
 import type { Variant } from '../outline/families/family.ts';
 import type { Fields } from '../reading/tableShelf.ts';
+import { Certifier } from '../score/certifier.ts';
 import { fieldsFor, leadingFields } from '../score/farZoneError.ts';
 import { REPORT_FINENESS, SEARCH_FINENESS } from '../score/fineness.ts';
 import { Judge } from '../score/judge.ts';
@@ -39,8 +40,10 @@ export class Workshop {
   #finishingJudges(): FinishingJudges {
     const { task } = this.#orders;
     const other = fieldsFor(task, this.#fields === 'far' ? 'exact' : 'far');
+    const judge = new Judge(task, REPORT_FINENESS, this.#fields);
     return {
-      judge: new Judge(task, REPORT_FINENESS, this.#fields),
+      judge,
+      certifier: new Certifier(judge, this.#fields),
       otherJudge: other === this.#fields ? null : new Judge(task, REPORT_FINENESS, other),
       fields: this.#fields,
     };

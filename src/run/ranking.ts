@@ -1,6 +1,7 @@
 import type { Miss } from '../score/aim.ts';
 import { missedLimits } from '../score/aim.ts';
 import type { Design } from '../score/design.ts';
+import { worstOf } from '../score/scores.ts';
 import type { Task } from '../score/task.ts';
 import { crowdingDistances, nonDominatedRanks } from '../search/pareto.ts';
 
@@ -20,13 +21,15 @@ export const FRONT_REACH = 4;
 const FRONT_SIZE = 24;
 
 /**
- * Every limit of the brief that a design misses, the correction included, the worst first. Where the far zone's fields led,
- * the exact ones must meet the target as well.
+ * Every limit of the brief that a design misses, the worst first; the correction is the certified one. Where the far zone's
+ * fields led, the exact ones must meet the target as well.
  */
 export function missesOf(design: Design, task: Task): Miss[] {
   const misses = missedLimits(design.scores, design.shop.misfit, task);
-  const exactWorst = design.fields === 'far' ? (design.otherFields?.worst ?? 0) : 0;
-  const factor = Math.max(design.scores.correction.worst, exactWorst) / task.target.correction;
+  const { worst } = design.scores.correction;
+  // Only samples are read in the exact fields: what these add there, they are taken to add to the certified worst.
+  const added = design.fields === 'far' ? Math.max(0, (design.otherFields?.worst ?? 0) - worst) : 0;
+  const factor = (worstOf(design.scores) + added) / task.target.correction;
   if (factor > 1) misses.push({ limit: 'target.correction', factor });
   return misses.sort((p, q) => q.factor - p.factor);
 }
@@ -35,7 +38,7 @@ export function missesOf(design: Design, task: Task): Miss[] {
 export function rankFront(designs: readonly Design[], task: Task): RankedDesign[] {
   const within = designs.filter(
     ({ scores, shop }) =>
-      scores.correction.worst <= FRONT_REACH * task.target.correction &&
+      worstOf(scores) <= FRONT_REACH * task.target.correction &&
       missedLimits(scores, shop.misfit, task).length === 0,
   );
   const front = thin(distinct(within));
@@ -45,8 +48,7 @@ export function rankFront(designs: readonly Design[], task: Task): RankedDesign[
 /** For each family that is not on the front, what comes nearest to it: the fastest on target, or else the truest. */
 function familyBests(designs: readonly Design[], front: readonly Design[], task: Task): Design[] {
   const worth = ({ scores }: Design) =>
-    Math.log(scores.snr.time_s) +
-    10 * Math.log(Math.max(1, scores.correction.worst / task.target.correction));
+    Math.log(scores.snr.time_s) + 10 * Math.log(Math.max(1, worstOf(scores) / task.target.correction));
   const present = new Set(front.map(({ family }) => family));
   const bests = new Map<string, Design>();
   for (const design of designs) {
@@ -58,7 +60,7 @@ function familyBests(designs: readonly Design[], front: readonly Design[], task:
 }
 
 function objectives({ scores }: Design): number[] {
-  return [scores.correction.worst, scores.snr.time_s, scores.radius_m];
+  return [worstOf(scores), scores.snr.time_s, scores.radius_m];
 }
 
 /** Designs that agree to this share in every objective are one to whoever chooses. */

@@ -1,4 +1,5 @@
 import type { Scores } from './scores.ts';
+import { worstOf } from './scores.ts';
 import type { Task } from './task.ts';
 
 /** What one run of the search makes small. `cost` is area over gain. */
@@ -71,7 +72,7 @@ export function limitsBeside(scores: Scores, misfit: number, aim: Aim, task: Tas
  * which a limit is missed.
  */
 export function aimValue(scores: Scores, misfit: number, aim: Aim, task: Task): number {
-  let penalty = weigh(scores.correction.worst / aim.correction);
+  let penalty = weigh(worstOf(scores) / aim.correction);
   for (const { factor } of limitsBeside(scores, misfit, aim, task)) penalty += weigh(factor);
   return Math.log(measureOf(scores, aim.measure)) + penalty;
 }
