@@ -15,8 +15,10 @@ export interface GaussianBeam {
 }
 
 /**
- * The waist is at least this many wavelengths and particle radii. At both limits readings hold to 3e-4 of the extinction on
- * the axis, at twice that to 2e-5 (measured against the sum over the beam's plane waves).
+ * The waist is at least this many wavelengths and particle radii. At both limits readings hold to 1e-4 of the extinction, wherever
+ * the particle is, at twice that to 2e-5 (measured against the sum over the beam's plane waves). What a waist means is known
+ * no better than to (kw0)^−2, 1e-3 at five wavelengths: there a paraxial Gaussian, the waves from a complex place that are used
+ * here, and the fields of a real lens are so far apart.
  */
 const LEAST_WAIST = 5;
 

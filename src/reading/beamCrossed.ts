@@ -19,8 +19,8 @@ import type { BeamPath } from './beamPath.ts';
  *   r = √(d² + |ρ + (m − 1)p|²) = r_s + (m − 1)ν/r_s + …,   R = √(Q² + |ρ + mp|²) = R_s + mν/R_s + …
  *
  * The sphere sees a wave tilted by the complex angle p/Q, whose imaginary part is the fall of the field across it, and
- * curved: it answers with S(cosΘ) − i/(2kQ) ∇²S, cosΘ being the complex cosine to the direction (p, Q). That is the sum over the
- * beam's plane waves, each scattered in its own direction, to second order of radius/w. The tilt counts: without it a
+ * curved: it answers with the amplitudes of `beamAmplitudes` at cosΘ, the complex cosine to the direction (p, Q). That is the
+ * sum over the beam's plane waves, each scattered in its own direction. The tilt counts: without it a
  * particle beside the axis of a beam that has spread would show S at the wrong angle, x²(p/R)²/8 of it.
  * With random motion d turns complex (see `BeamPath`).
  */
@@ -37,30 +37,34 @@ export interface BeamCrossed {
 export interface SeriesForm {
   /** Powers of ν, from 0 on. */
   terms: number;
-  /** ν is counted in these. */
+  /** ν is counted in these, m², and p² too. */
   unitM2: number;
   polarised: boolean;
+  /** Whether the part with p² is written as well (see `tiltNumber`). */
+  curved: boolean;
 }
 
-/** @param shadow m, which scales the particle's place to that of its shadow */
+/**
+ * @param jet the amplitudes in the beam (see `beamAmplitudes`)
+ * @param shadow m, which scales the particle's place to that of its shadow
+ */
 export function beamCrossed(
   jet: AmplitudeJet,
   path: BeamPath,
   shadow: number,
-  { terms, unitM2, polarised }: SeriesForm,
+  { terms, unitM2, polarised, curved }: SeriesForm,
 ): BeamCrossed {
-  const { wavenumber, distanceM, spreadM, atParticle, blurred, atPlane, wave, angle, source } = path;
+  const { wavenumber, distanceM, atParticle, blurred, atPlane, wave, angle, source } = path;
   const work = new Float64Array(JET_NUMBERS);
   const series = new Float64Array(2 * terms);
   /** m − 1, for a particle at rest. */
   const offset = subtract([shadow, 0], source);
   const tilt = divide([distanceM, 0], atParticle);
-  const motion = divide(scale(square(add([1, 0], tilt)), (spreadM * spreadM) / (2 * distanceM)), angle);
-  const blur = add(divide([0, -1 / (2 * wavenumber)], atParticle), motion);
   const onAxis = multiply(wave, atPlane);
   // −1/(−ik) = −i/k, times the beam's fields on the axis, u(particle) u*(plane)/|u(particle, at rest)|² = |Q|²/(Q − ikσ²)Q*.
   const lit = divide([atParticle[0] ** 2 + atParticle[1] ** 2, 0], blurred);
   const strength = divide(multiply([0, -1 / wavenumber], lit), onAxis);
+  const axis = changesOnAxis(jet, path, offset, shadow);
 
   function slow(s: number, out: Float64Array): void {
     const r = slantDistance(wave, s);
@@ -89,16 +93,27 @@ export function beamCrossed(
     );
     const muSlope = divide(subtract(tilt, scale(muSquare, shadow - 1)), multiply(angle, slant));
     const delta = scale(muSlope, unitM2);
-    const laplacian = subtract(multiply(subtract([1, 0], muSquare), s2), scale(multiply(mu, s1), 2));
-    const a0 = add(s0, multiply(blur, laplacian));
     const turned = multiply(s1, delta);
-    const a1 = add(turned, multiply(a0, fade));
+    const a1 = add(turned, multiply(s0, fade));
     const a2 = add(scale(multiply(s2, square(delta)), 0.5), multiply(turned, fade));
-    seriesTimes(series, [a0, a1, a2], out.subarray(0, 2 * terms));
+    seriesTimes(series, [s0, a1, a2], out.subarray(0, 2 * terms));
+    if (curved) {
+      const rBent = square(rSlope);
+      const beamBent = square(beamSlope);
+      const turningBack = divide(add(multiply(cosWave, rBent), multiply(cosBeam, beamBent)), obliquity);
+      const fall = scale(add(turningBack, add(rBent, beamBent)), -0.5);
+      const bent = subtract(multiply(rBent, r), multiply(beamBent, beam));
+      const change = add(fall, scale(timesI(subtract(bent, axis.bend)), wavenumber / 2));
+      const rest = scale(subtract(change, axis.lag), unitM2);
+      const muFall = scale(divide(multiply(mu, muAtPlace(tilt, shadow, muSquare)), square(angle)), unitM2);
+      const b0 = add(multiply(s0, rest), multiply(s1, muFall));
+      const b1 = add(multiply(a1, rest), multiply(muFall, add(multiply(s2, delta), multiply(s1, fade))));
+      seriesTimes(series, [b0, b1], out.subarray(2 * terms, 4 * terms));
+    }
     if (polarised) {
       // It begins with θ²: the tilt is left out.
       const twofold: Complex = [(work[2] - work[0]) / 2, (work[3] - work[1]) / 2];
-      seriesTimes(series, [twofold, multiply(twofold, fade)], out.subarray(2 * terms));
+      seriesTimes(series, [twofold, multiply(twofold, fade)], out.subarray(out.length - 2 * terms));
     }
   }
 
@@ -106,24 +121,46 @@ export function beamCrossed(
     wave: (s) =>
       multiply(onAxis, multiply(pointWave(wave, wavenumber, s), pointWave(atPlane, -wavenumber, s))),
     slow,
-    factor: crossedFactor(jet, path, offset, shadow),
+    factor: (p2) => crossedFactor(path, axis, p2),
   };
 }
 
-/** K(p²): the field at the particle over that on the axis, times what the exponent and cosΘ have with p². */
-function crossedFactor(jet: AmplitudeJet, path: BeamPath, offset: Complex, shadow: number) {
-  const { wavenumber, distanceM, atParticle, blurred, atPlane, wave, angle } = path;
-  const bend = subtract(divide(square(offset), wave), divide([shadow * shadow, 0], atPlane));
+/** What changes with p² in the middle of the shadow: K(p²) but for the field at the particle, which is known for any p. */
+interface AxisChanges {
+  /** Of the exponent, over ik/2. */
+  bend: Complex;
+  /** Of the amplitude's logarithm, by cosΘ. */
+  lag: Complex;
+  /** With p⁴. */
+  lag2: Complex;
+}
+
+function changesOnAxis(jet: AmplitudeJet, path: BeamPath, offset: Complex, shadow: number): AxisChanges {
+  const { distanceM, atParticle, atPlane, wave, angle } = path;
   const work = new Float64Array(JET_NUMBERS);
   jetAt(jet, [1, 0], work);
-  const slope = divide([(work[4] + work[6]) / 2, (work[5] + work[7]) / 2], [work[0], work[1]]);
-  const magnified: Complex = add([1, 0], divide([distanceM, 0], atParticle));
-  const lag = multiply(slope, square(divide(subtract([shadow, 0], magnified), angle)));
-  return (p2: number): Complex => {
-    const phase = exponential(scale(timesI(bend), (wavenumber * p2) / 2));
-    const field = multiply(blurred, pointWave(blurred, wavenumber, p2));
-    return multiply(multiply(field, phase), add([1, 0], scale(lag, -p2 / 2)));
+  const [first, second] = [4, 8].map((i) =>
+    divide([(work[i] + work[i + 2]) / 2, (work[i + 1] + work[i + 3]) / 2], [work[0], work[1]]),
+  );
+  const fall = divide(muAtPlace(divide([distanceM, 0], atParticle), shadow, [1, 0]), square(angle));
+  return {
+    bend: subtract(divide(square(offset), wave), divide([shadow * shadow, 0], atPlane)),
+    lag: multiply(first, fall),
+    lag2: scale(multiply(second, square(fall)), 0.5),
   };
+}
+
+/** What goes with p²/d² in cosΘ, over cosΘ. */
+function muAtPlace(tilt: Complex, shadow: number, muSquare: Complex): Complex {
+  const bent = add(scale(muSquare, (shadow - 1) ** 2), square(tilt));
+  return subtract(scale(tilt, shadow - 1), scale(bent, 0.5));
+}
+
+function crossedFactor({ wavenumber, blurred }: BeamPath, axis: AxisChanges, p2: number): Complex {
+  const phase = exponential(scale(timesI(axis.bend), (wavenumber * p2) / 2));
+  const field = multiply(blurred, pointWave(blurred, wavenumber, p2));
+  const amplitude = add([1, 0], add(scale(axis.lag, p2), scale(axis.lag2, p2 * p2)));
+  return multiply(multiply(field, phase), amplitude);
 }
 
 /** Coefficients h_n of base · exp(linear ν + quadratic ν²/2): (n + 1) h_{n+1} = linear h_n + quadratic h_{n−1}. */

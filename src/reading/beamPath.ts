@@ -1,7 +1,7 @@
 import type { Complex } from '../numeric/complex.ts';
 import { add, divide, multiply, subtract } from '../numeric/complex.ts';
 import type { GaussianBeam } from '../optics/gaussianBeam.ts';
-import { complexDistance, rayleighRange } from '../optics/gaussianBeam.ts';
+import { complexDistance, pointWave, rayleighRange } from '../optics/gaussianBeam.ts';
 
 /**
  * The distances that a reading in a focused beam hangs on, for one colour, metres.
@@ -80,6 +80,18 @@ export function crossedSlope(path: BeamPath): number {
   return wavenumber * Math.hypot(re, im);
 }
 
+/**
+ * How far cosΘ of a particle beside the axis strays within its shadow: (x ε p)²/8 + (p(m − 1)/d)², ε p being the complex
+ * tilt of the wave against the direction of its shadow, p no more than the beam's radius.
+ */
+export function tiltNumber(path: BeamPath, sizeParameter: number, offsetM: number): number {
+  const { distanceM, atParticle } = path;
+  const p2 = Math.min(offsetM * offsetM, squaredRadius(path));
+  const turn = (shadowScale(path) - 1) / distanceM;
+  const [re, im] = subtract([turn, 0], divide([1, 0], atParticle));
+  return p2 * ((sizeParameter ** 2 * (re * re + im * im)) / 8 + turn * turn);
+}
+
 /** What sets how densely outlines and places must be sampled. */
 export interface BeamFringes {
   /** In place of κ = k/2d, 1/m²: it counts fringes and the beam's own fall. */
@@ -100,6 +112,17 @@ export function beamFringes(path: BeamPath): BeamFringes {
 export function particleIrradiance(path: BeamPath, p2: number): number {
   const overlap = meanPlace(path);
   return overlap * Math.exp((-2 * p2 * overlap) / squaredRadius(path));
+}
+
+/**
+ * The same of the waves that the readings are computed with, which begin at a complex place (see `beamField`): they differ from the
+ * Gaussian by about (p/z_R)².
+ */
+export function waveIrradiance(path: BeamPath, p2: number): number {
+  const { wavenumber, atParticle } = path;
+  const wave = multiply(atParticle, pointWave(atParticle, wavenumber, p2));
+  const gaussian = Math.exp((-2 * p2) / squaredRadius(path));
+  return gaussian === 0 ? 0 : (particleIrradiance(path, p2) * (wave[0] ** 2 + wave[1] ** 2)) / gaussian;
 }
 
 /** Mean place of a moving particle where the light is, over the middle of its motion: w²/(w² + 4σ²). */

@@ -1,4 +1,4 @@
-import { particleIrradiance } from './beamPath.ts';
+import { particleIrradiance, waveIrradiance } from './beamPath.ts';
 import { seriesTerms } from './beamSeries.ts';
 import type { BeamTable } from './beamTable.ts';
 import type { BoundaryNodes } from './boundaryReading.ts';
@@ -17,13 +17,15 @@ export function beamReading(table: BeamTable, nodes: BoundaryNodes, px: number, 
   const p2 = px * px + py * py;
   if (p2 > table.farthestM ** 2) return 0;
   const power = 8 * (Math.min(table.terms, seriesTerms(table.bound, Math.sqrt(p2))) - 1);
-  const scatteredAt = 8 * table.terms;
+  const curvedAt = table.curved ? 8 * table.terms : 0;
+  const scatteredAt = 8 * table.terms + curvedAt;
   const twofoldAt = scatteredAt + 16;
-  const stride = axis === null ? twofoldAt : 2 * twofoldAt - 12;
+  const stride = axis === null ? twofoldAt : twofoldAt + 8 * table.terms + 4;
   const cx = shadow * px;
   const cy = shadow * py;
   const ux = perUnit * px;
   const uy = perUnit * py;
+  const u2 = perUnit * p2;
   let sumRe = 0;
   let sumIm = 0;
   let sumScattered = 0;
@@ -41,6 +43,17 @@ export function beamReading(table: BeamTable, nodes: BoundaryNodes, px: number, 
     for (let c = at + power; c >= at; c -= 8) {
       re = re * nu + cubic(pieces, c, t);
       im = im * nu + cubic(pieces, c + 4, t);
+    }
+    if (curvedAt > 0) {
+      const from = at + curvedAt;
+      let bentRe = 0;
+      let bentIm = 0;
+      for (let c = from + power; c >= from; c -= 8) {
+        bentRe = bentRe * nu + cubic(pieces, c, t);
+        bentIm = bentIm * nu + cubic(pieces, c + 4, t);
+      }
+      re += u2 * bentRe;
+      im += u2 * bentIm;
     }
     const q = at + scatteredAt;
     let scattered =
@@ -67,7 +80,7 @@ export function beamReading(table: BeamTable, nodes: BoundaryNodes, px: number, 
     sumScattered += scattered * area;
   }
   const [factorRe, factorIm] = table.crossedFactor(p2);
-  return factorRe * sumRe - factorIm * sumIm + localIrradiance(table, px, py) * sumScattered;
+  return factorRe * sumRe - factorIm * sumIm + waveIrradiance(table.path, p2) * sumScattered;
 }
 
 function cubic(pieces: Float64Array, at: number, t: number): number {

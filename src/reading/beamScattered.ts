@@ -1,5 +1,5 @@
 import type { Complex } from '../numeric/complex.ts';
-import { add, divide, multiply, scale, square, subtract } from '../numeric/complex.ts';
+import { divide, multiply, scale, square, subtract } from '../numeric/complex.ts';
 import type { AmplitudeJet } from '../optics/amplitudeJet.ts';
 import { JET_NUMBERS, jetAt } from '../optics/amplitudeJet.ts';
 import type { BeamPath } from './beamPath.ts';
@@ -14,8 +14,9 @@ export const SCATTERED_NUMBERS = 5;
  *
  *   q_0(s) + q_1(s) ν + q_2(s) ν² + q_3(s) p²,   s = ρ².
  *
- * S is that of the beam, as in `BeamCrossed`. A moving particle counts where the light is; the lobes are smoothed
- * by σ²∇²/2, to second order.
+ * S is that of the beam without motion (see `beamAmplitudes`). A moving particle counts where the light is; the lobes are smoothed
+ * by σ²∇²/2, to second order. The plane of scattering turns with the tilt τ of the wave: to S2 − S1 belongs the square of a
+ * vector v, and where that is complex |v_x² − v_y²|² + 4|v_x v_y|² exceeds |v_x² + v_y²|² by 8 (Im τ × v)².
  *
  * @returns writes q_0 … q_3 and q_0 of the twofold part into `out` from 0 on
  */
@@ -29,7 +30,7 @@ export function beamScattered(
   const work = new Float64Array(JET_NUMBERS);
   const mean = meanPlace(path);
   const tilt = divide([distanceM, 0], atParticle);
-  const blur = divide([0, -1 / (2 * wavenumber)], atParticle);
+  const lean = (mean * tilt[1]) / distanceM;
   const motion = (mean * (spreadM * (1 + tilt[0])) ** 2) / (2 * distanceM * distanceM);
   const lag = square(divide(subtract([shadow - mean, 0], scale(tilt, mean)), [distanceM, 0]));
   return (s, out) => {
@@ -49,18 +50,24 @@ export function beamScattered(
       const s1: Complex = [work[at + 4], work[at + 5]];
       const s2: Complex = [work[at + 8], work[at + 9]];
       const laplacian = subtract(scale(s2, sin2), scale(s1, 2 * mu));
-      const a0 = add(s0, multiply(blur, laplacian));
       const a1 = multiply(s1, delta);
       const a2 = scale(multiply(s2, square(delta)), 0.5);
       // ∇²|S|² = 2 Re(S* ∇²S) + 2 sin²θ |S'|²
       const smoothing = 2 * motion * (inner(s0, laplacian) + sin2 * inner(s1, s1));
-      const power = inner(a0, a0) + smoothing;
+      const power = inner(s0, s0) + smoothing;
       out[0] += weight * power;
-      out[1] += weight * (2 * inner(a0, a1) + fade * power);
-      out[2] += weight * (inner(a1, a1) + 2 * inner(a0, a2) + 2 * fade * inner(a0, a1));
+      out[1] += weight * (2 * inner(s0, a1) + fade * power);
+      out[2] += weight * (inner(a1, a1) + 2 * inner(s0, a2) + 2 * fade * inner(s0, a1));
       out[3] -= weight * mu * inner(s0, multiply(s1, lag));
       out[4] += sign * weight * power;
     }
+    // (S2 − S1)/2 over sin²θ; on the axis from the derivatives.
+    const [re, im] = [0, 1].map((part) =>
+      s > 0 ? (work[2 + part] - work[part]) / (2 * sin2) : (work[4 + part] - work[6 + part]) / 4,
+    );
+    const turned = 16 * weight * (re * re + im * im) * lean * lean;
+    out[2] -= (turned * unitM2 * unitM2) / r2;
+    out[3] += turned * sin2;
   };
 }
 

@@ -1,15 +1,18 @@
 import { RimwrightError } from '../base/errors.ts';
+import type { Complex } from '../numeric/complex.ts';
 import { add, divide, subtract } from '../numeric/complex.ts';
 import { countWhile } from '../numeric/countWhile.ts';
 import { sparseSamples } from '../numeric/sparseSamples.ts';
+import type { AmplitudeJet } from '../optics/amplitudeJet.ts';
 import { amplitudeJet } from '../optics/amplitudeJet.ts';
 import type { GaussianBeam } from '../optics/gaussianBeam.ts';
 import { slantDistance } from '../optics/gaussianBeam.ts';
 import type { SphereAmplitudes } from '../optics/sphereAmplitudes.ts';
+import { beamAmplitudes, beamBlur, movingBlur } from './beamAmplitudes.ts';
 import type { BeamCrossed, SeriesForm } from './beamCrossed.ts';
 import { beamCrossed } from './beamCrossed.ts';
 import type { BeamPath } from './beamPath.ts';
-import { beamPath, farthestPlace, shadowScale } from './beamPath.ts';
+import { beamPath, farthestPlace, shadowScale, tiltNumber } from './beamPath.ts';
 import { beamScattered, SCATTERED_NUMBERS } from './beamScattered.ts';
 import type { SeriesBound } from './beamSeries.ts';
 import { seriesBound, seriesTerms } from './beamSeries.ts';
@@ -17,6 +20,7 @@ import type { RayColumn } from './rayIntegrals.ts';
 import { rayIntegrals } from './rayIntegrals.ts';
 import type { Scenario } from './scenario.ts';
 import { coherence } from './scenario.ts';
+import type { Fields } from './tableShelf.ts';
 
 /** Where particle and plane are, and how far a table must reach; metres. */
 export interface BeamPlacement {
@@ -30,6 +34,8 @@ export interface BeamPlacement {
   offsetM: number;
   /** Largest distance of an outline's points from the axis. */
   radiusM: number;
+  /** The far zone's if left out. */
+  fields?: Fields;
 }
 
 /**
@@ -40,10 +46,11 @@ export interface BeamTable {
   cells: number;
   /**
    * Cubic pieces over s (see `rayIntegrals`), cell by cell: for each power of y = ν · perUnit 8 numbers (re, im) of the crossed
-   * flux, 16 of the scattered; for polarised light as many of the twofold crossed flux and 4 of the scattered.
+   * flux, as many of its part with p² · perUnit if `curved`, 16 of the scattered; for polarised light as many of the twofold crossed flux and 4 of the scattered.
    */
   pieces: Float64Array;
   terms: number;
+  curved: boolean;
   perUnit: number;
   /** The field's angle, as cos 2φ and sin 2φ; null for unpolarised light. */
   axis: readonly [cos2: number, sin2: number] | null;
@@ -62,6 +69,8 @@ const PHASE_STEP = 1 / 8;
 const SLOW_STEP = 0.6;
 /** Crossed flux below this part of that on the axis is left out. */
 const DARK = 1e-20;
+/** Tilt number (see `tiltNumber`) from which the part with p² counts: without it readings err by a hundredth of that. */
+const STEEP = 3e-4;
 
 /**
  * Builds the table of one scenario in a focused beam.
@@ -69,7 +78,7 @@ const DARK = 1e-20;
  * @throws RimwrightError `input` where the outline, seen from the shadow, reaches out of the cone that the spheres are solved for
  */
 export function buildBeamTable(scenario: Scenario, beam: GaussianBeam, place: BeamPlacement): BeamTable {
-  const { placeM, distanceM, spreadM } = place;
+  const { placeM, distanceM, spreadM, fields = 'far' } = place;
   const { colours, polarizationRad } = scenario;
   const pathOf = (wavenumber: number) => beamPath(beam, wavenumber, placeM, distanceM, spreadM);
   const path = pathOf(coherence(scenario).wavenumber);
@@ -83,27 +92,42 @@ export function buildBeamTable(scenario: Scenario, beam: GaussianBeam, place: Be
   const unitM2 = offsetM > 0 ? offsetM * reachM : 1;
   const stepM2 = PHASE_STEP / phaseRate(scenario, path, reachM);
   const cells = Math.floor((reachM * reachM) / stepM2) + 2;
-  const columns = columnsOf(terms, polarizationRad !== null);
-  const form = { terms, unitM2, polarised: polarizationRad !== null };
-  const samples = sampleFlux(scenario, pathOf, shadow, form, {
+  const curved =
+    Math.max(...colours.map(({ sphere }) => tiltNumber(path, sphere.sizeParameter, offsetM))) > STEEP;
+  const form = { terms, unitM2, polarised: polarizationRad !== null, curved };
+  const columns = columnsOf(form);
+  const jets = colours.map(({ sphere }) => jetsOf(sphere, pathOf(sphere.wavenumber), fields));
+  const samples = sampleFlux(scenario, jets, pathOf, shadow, form, {
     stepM2,
     rows: cells + 5,
     width: columns.length,
   });
-  const middle = amplitudeJet(colours[colours.length >> 1].sphere);
   return {
     cellsPerM2: 1 / stepM2,
     cells,
     pieces: rayIntegrals(samples, columns, stepM2, cells),
     terms,
+    curved,
     perUnit: 1 / unitM2,
     axis: polarizationRad === null ? null : [Math.cos(2 * polarizationRad), Math.sin(2 * polarizationRad)],
     shadow,
     farthestM,
     path,
     bound,
-    crossedFactor: beamCrossed(middle, path, shadow, form).factor,
+    crossedFactor: beamCrossed(jets[colours.length >> 1].crossed, path, shadow, form).factor,
   };
+}
+
+/** Amplitudes of a sphere in the beam. */
+interface BeamJets {
+  crossed: AmplitudeJet;
+  scattered: AmplitudeJet;
+}
+
+function jetsOf(sphere: SphereAmplitudes, path: BeamPath, fields: Fields): BeamJets {
+  const jet = (blur: Complex) => amplitudeJet(beamAmplitudes(sphere, blur, path.distanceM, fields));
+  const scattered = jet(beamBlur(path));
+  return { crossed: path.spreadM === 0 ? scattered : jet(movingBlur(path)), scattered };
 }
 
 /** Outside their cone the amplitudes' series mean nothing, and grow without bound. */
@@ -134,16 +158,20 @@ function phaseRate({ colours }: Scenario, path: BeamPath, reachM: number): numbe
   return (Math.max(...fringes) + slowRate(sphere, path) / 4) * Math.min(8, ratio ** 0.25);
 }
 
-function columnsOf(terms: number, polarised: boolean): RayColumn[] {
+function columnsOf({ terms, polarised, curved }: SeriesForm): RayColumn[] {
   const crossed = Array.from({ length: 2 * terms }, (_, i) => i >> 1);
-  const mean = [...crossed, 0, 1, 2, 0].map((order): RayColumn => ({ order, twofold: 0 }));
-  const twofold = [...crossed, 0].map((order): RayColumn => ({ order, twofold: 1 }));
-  return polarised ? [...mean, ...twofold] : mean;
+  const mean = [...crossed, ...(curved ? crossed : []), 0, 1, 2, 0];
+  const twofold = polarised ? [...crossed, 0] : [];
+  return [
+    ...mean.map((order): RayColumn => ({ order, twofold: 0 })),
+    ...twofold.map((order): RayColumn => ({ order, twofold: 1 })),
+  ];
 }
 
 /** Samples at 0, step, 2 · step … of all columns, summed over the colours of the line. */
 function sampleFlux(
   scenario: Scenario,
+  jets: readonly BeamJets[],
   pathOf: (wavenumber: number) => BeamPath,
   shadow: number,
   form: SeriesForm,
@@ -153,29 +181,29 @@ function sampleFlux(
   const samples = new Float64Array(width * rows);
   const central = pathOf(wavenumber);
   const inStep = countWhile(rows, (i) => crossedPath(central, i * stepM2) < pathM);
-  const pairs = form.terms * (form.polarised ? 2 : 1);
-  for (const { weight, sphere } of scenario.colours) {
-    const jet = amplitudeJet(sphere);
+  const meanPairs = form.terms * (form.curved ? 2 : 1);
+  const pairs = meanPairs + (form.polarised ? form.terms : 0);
+  for (const [c, { weight, sphere }] of scenario.colours.entries()) {
     const path = pathOf(sphere.wavenumber);
     const stride = Math.max(1, SLOW_STEP / (slowRate(sphere, path) * stepM2));
-    const crossed = beamCrossed(jet, path, shadow, form);
+    const crossed = beamCrossed(jets[c].crossed, path, shadow, form);
     const lit = countWhile(inStep, (i) => Math.hypot(...crossed.wave(i * stepM2)) > DARK);
     const slow = sparseSamples(lit, 2 * pairs, stride, (i, out) => crossed.slow(i * stepM2, out));
     for (let i = 0; i < lit; i++) {
       const [re, im] = crossed.wave(i * stepM2);
       for (let n = 0; n < pairs; n++) {
         const from = 2 * (i * pairs + n);
-        const at = i * width + 2 * n + (n < form.terms ? 0 : 4);
+        const at = i * width + 2 * n + (n < meanPairs ? 0 : 4);
         samples[at] += weight * (re * slow[from] - im * slow[from + 1]);
         samples[at + 1] += weight * (re * slow[from + 1] + im * slow[from]);
       }
     }
-    const writeScattered = beamScattered(jet, path, shadow, form.unitM2);
+    const writeScattered = beamScattered(jets[c].scattered, path, shadow, form.unitM2);
     const scattered = sparseSamples(rows, SCATTERED_NUMBERS, stride, (i, out) =>
       writeScattered(i * stepM2, out),
     );
     for (let i = 0; i < rows; i++) {
-      for (let c = 0; c < 4; c++) samples[i * width + 2 * form.terms + c] += weight * scattered[5 * i + c];
+      for (let n = 0; n < 4; n++) samples[i * width + 2 * meanPairs + n] += weight * scattered[5 * i + n];
       if (form.polarised) samples[(i + 1) * width - 1] += weight * scattered[5 * i + 4];
     }
   }

@@ -55,8 +55,8 @@ export function annulusRule(inner: number, outer: number, radial: number, around
 
 /**
  * Reading by direct summation over the plane, over the irradiance on the axis at the particle's z.
- * The scattered field is a sum over the plane waves that make up the beam, each scattered in its own direction; nothing is
- * assumed of how the beam looks at the particle.
+ * The scattered field is a sum over the plane waves that make up the beam, each scattered in its own direction, S1 and S2 in the
+ * plane of its own scattering; nothing is assumed of how the beam looks at the particle.
  */
 export function quadratureReading(set: Arrangement, rule: PlaneRule): number {
   const { wavenumber: k, planeM, focusM, place } = set;
@@ -67,7 +67,7 @@ export function quadratureReading(set: Arrangement, rule: PlaneRule): number {
   for (let i = 0; i < rule.length; i += 3) half = Math.max(half, Math.abs(rule[i]), Math.abs(rule[i + 1]));
   const amplitude = scatteredAmplitude(set, half, d);
   let sum = 0;
-  const f = new Float64Array(4);
+  const f = new Float64Array(6);
   for (let i = 0; i < rule.length; i += 3) {
     const [x, y, area] = [rule[i], rule[i + 1], rule[i + 2]];
     const [uRe, uIm, cosRe, cosIm] = pointSource(k, rayleighM, planeM - focusM, x * x + y * y);
@@ -76,17 +76,20 @@ export function quadratureReading(set: Arrangement, rule: PlaneRule): number {
     amplitude(x, y, f);
     const phase = (k * off2) / (r + d);
     const [c, s] = [Math.cos(phase), Math.sin(phase)];
+    // Unpolarised: Sx and Sy average to the mean of S1 and S2, and what goes over into the other field counts as light.
     const { polarizationRad } = set;
-    const azimuth = Math.atan2(y - place[1], x - place[0]) - (polarizationRad ?? 0);
-    // S2 belongs to the field in the plane of scattering.
-    const across = polarizationRad === undefined ? 0.5 : Math.sin(azimuth) ** 2;
-    const fRe = across * f[0] + (1 - across) * f[2];
-    const fIm = across * f[1] + (1 - across) * f[3];
+    const [turnC, turnS] =
+      polarizationRad === undefined ? [0, 0] : [Math.cos(2 * polarizationRad), Math.sin(2 * polarizationRad)];
+    const [fRe, fIm] = [0, 1].map((c) => f[c] + turnC * f[2 + c] + turnS * f[4 + c]);
+    const [otherRe, otherIm] = [0, 1].map((c) => turnC * f[4 + c] - turnS * f[2 + c]);
     const [waveRe, waveIm] = [fRe * c - fIm * s, fRe * s + fIm * c];
     // −Re{(cosθ + cosθ_u*) u* F e^{ik(r − d)}/(−ikr)}
     const [re, im] = [uRe * waveRe + uIm * waveIm, uRe * waveIm - uIm * waveRe];
     const crossed = ((d / r + cosRe) * im - cosIm * re) / (k * r);
-    const power = across * (f[0] ** 2 + f[1] ** 2) + (1 - across) * (f[2] ** 2 + f[3] ** 2);
+    const power =
+      polarizationRad === undefined
+        ? f.reduce((sum, part) => sum + part * part, 0)
+        : fRe ** 2 + fIm ** 2 + otherRe ** 2 + otherIm ** 2;
     const scattered = power / (k * r) ** 2;
     sum += area * (crossed - (d / r) * scattered);
   }
@@ -115,27 +118,42 @@ function pointSource(k: number, rayleighM: number, z: number, s: number): [numbe
   return [size * Math.cos(turn), size * Math.sin(turn), ratio * Math.cos(lean), ratio * Math.sin(lean)];
 }
 
-/** F1 and F2 (with the beam's field in them) over a square of the plane, by Chebyshev interpolation between directions. */
+/**
+ * (S1 + S2)/2, and (S2 − S1)/2 times cos 2ψ and sin 2ψ, ψ the azimuth of the scattering, each with the beam's field in it: over a square
+ * of the plane, by Chebyshev interpolation between directions.
+ */
 function scatteredAmplitude(set: Arrangement, half: number, d: number) {
   const { wavenumber: k, place, sphere } = set;
   const lobes = (half / d) * sphere.x;
   const count = Math.ceil(10 + 1.5 * lobes);
   const at = Array.from({ length: count }, (_, i) => Math.cos((Math.PI * (i + 0.5)) / count));
   const waves = spectrum(set);
-  const values = new Float64Array(4 * count * count);
+  const values = new Float64Array(6 * count * count);
   const table = amplitudeTable(sphere);
+  const s = new Float64Array(4);
   for (let i = 0; i < count; i++) {
     for (let j = 0; j < count; j++) {
       const nx = half * at[i] - place[0];
       const ny = half * at[j] - place[1];
       const r = Math.hypot(nx, ny, d);
-      const o = 4 * (i * count + j);
+      const o = 6 * (i * count + j);
       for (let w = 0; w < waves.length; w += 4) {
         const [qx, qy] = [waves[w] / k, waves[w + 1] / k];
         const qz = Math.sqrt(1 - qx * qx - qy * qy);
         // 1 − cosΘ = |n − q|²/2
-        const versine = ((nx / r - qx) ** 2 + (ny / r - qy) ** 2 + (d / r - qz) ** 2) / 2;
-        table(versine, waves[w + 2], waves[w + 3], values, o);
+        const [tx, ty] = [nx / r - qx, ny / r - qy];
+        const versine = (tx ** 2 + ty ** 2 + (d / r - qz) ** 2) / 2;
+        table(versine, s);
+        const across = tx ** 2 + ty ** 2 + 1e-300;
+        const [turnC, turnS] = [(tx ** 2 - ty ** 2) / across, (2 * tx * ty) / across];
+        const [re, im] = [waves[w + 2], waves[w + 3]];
+        const mean = [(s[0] + s[2]) / 2, (s[1] + s[3]) / 2];
+        const half = [(s[2] - s[0]) / 2, (s[3] - s[1]) / 2];
+        const parts = [mean, half.map((part) => part * turnC), half.map((part) => part * turnS)];
+        parts.forEach(([sRe, sIm], c) => {
+          values[o + 2 * c] += re * sRe - im * sIm;
+          values[o + 2 * c + 1] += re * sIm + im * sRe;
+        });
       }
     }
   }
@@ -152,13 +170,13 @@ function scatteredAmplitude(set: Arrangement, half: number, d: number) {
     for (let i = 0; i < count; i++) {
       for (let j = 0; j < count; j++) {
         const weight = wx[i] * wy[j];
-        for (let c = 0; c < 4; c++) out[c] += weight * values[4 * (i * count + j) + c];
+        for (let c = 0; c < 6; c++) out[c] += weight * values[6 * (i * count + j) + c];
       }
     }
   };
 }
 
-/** Plane waves of the beam at the particle: qx, qy, re, im. */
+/** Plane waves of the beam at the particle, those of a point source at a complex place (Deschamps 1971): qx, qy, re, im. */
 function spectrum({ wavenumber: k, waistM, focusM, place }: Arrangement): number[] {
   const rayleighM = (k * waistM ** 2) / 2;
   const [px, py, z] = place;
@@ -171,36 +189,33 @@ function spectrum({ wavenumber: k, waistM, focusM, place }: Arrangement): number
   for (let i = 0; i < count; i++) {
     for (let j = 0; j < count; j++) {
       const [a, b] = [i * step - reach, j * step - reach];
-      const weight = (Math.exp(-(a * a + b * b) / 2) * step * step) / (2 * Math.PI);
-      if (weight < 1e-9 * step * step) continue;
       const [qx, qy] = [(Math.SQRT2 * a) / waistM, (Math.SQRT2 * b) / waistM];
       const q2 = qx * qx + qy * qy;
-      const phase = qx * px + qy * py - (q2 / (k + Math.sqrt(k * k - q2))) * (z - focusM);
+      const kz = Math.sqrt(k * k - q2);
+      const weight = ((k / kz) * Math.exp((-rayleighM * q2) / (k + kz)) * step * step) / (2 * Math.PI);
+      if (weight < 1e-9 * step * step) continue;
+      const phase = qx * px + qy * py - (q2 / (k + kz)) * (z - focusM);
       out.push(qx, qy, weight * Math.cos(phase), weight * Math.sin(phase));
     }
   }
   return out;
 }
 
-/** Adds S1, S2 times a complex weight, from a fine table in √(1 − cosΘ). */
+/** S1 and S2 from a fine table in √(1 − cosΘ). */
 function amplitudeTable(sphere: MieCoefficients) {
   const cells = 4000;
   const most = 1;
   const known = new Float64Array(4 * (cells + 4));
   for (let i = 0; i < cells + 4; i++)
     scatteringAmplitudes(sphere, 1 - ((i - 1) / cells) ** 2 * most, known, 4 * i);
-  return (versine: number, re: number, im: number, out: Float64Array, o: number) => {
+  return (versine: number, out: Float64Array) => {
     const position = Math.sqrt(versine / most) * cells + 1;
     const cell = Math.floor(position);
     const t = position - cell;
-    for (let c = 0; c < 4; c += 2) {
-      const [sRe, sIm] = [0, 1].map((part) => {
-        const at = (n: number) => known[4 * (cell + n) + c + part];
-        const [a, b, d, e] = [at(-1), at(0), at(1), at(2)];
-        return b + 0.5 * t * (d - a + t * (2 * a - 5 * b + 4 * d - e + t * (3 * (b - d) + e - a)));
-      });
-      out[o + c] += re * sRe - im * sIm;
-      out[o + c + 1] += re * sIm + im * sRe;
+    for (let c = 0; c < 4; c++) {
+      const at = (n: number) => known[4 * (cell + n) + c];
+      const [a, b, d, e] = [at(-1), at(0), at(1), at(2)];
+      out[c] = b + 0.5 * t * (d - a + t * (2 * a - 5 * b + 4 * d - e + t * (3 * (b - d) + e - a)));
     }
   };
 }

@@ -101,6 +101,7 @@ describe('beamReading, against direct quadrature over the plane with every plane
   const dark = { diameterM: 1 * UM, index: [1.5, 0.5] } as const;
   const small = { diameterM: 0.2 * UM, index: [1.33, 0] } as const;
   const limit = { diameterM: 1.27 * UM, index: [1.59, 0] } as const;
+  const giant = { diameterM: 20 * UM, index: [1.5, 0.01] } as const;
   const disc = (r: number): Outline => ({ circles: [r] });
   const annulus = (r: number): Outline => ({ circles: [r, -r / 2] });
   const aside = (r: number): Outline => ({ rings: [square(r / 2, 0.15 * r, -0.1 * r)] });
@@ -123,8 +124,14 @@ describe('beamReading, against direct quadrature over the plane with every plane
     ['1 mm, tenth of a waist off, annulus', BEAD, [1000, 0, 20000, 300], [60, 80, 0], annulus, 1e-6],
     ['1 mm, tenth of a waist off, polarised', BEAD, [1000, 0, 5000, 300], [60, 80, 0], annulus, 1e-6, 0.6],
     ['1 mm, a waist off, square', BEAD, [1000, 0, 50000, 200], [600, 800, 0], aside, 1e-6],
-    ['five wavelengths and radii', limit, [3.175, 0, 50000, 2000], [0, 0, 0], disc, 3e-4],
-    ['five wavelengths, a waist off', small, [3.175, 0, 5000, 200], [3.175, 0, 0], stars, 1e-4],
+    ['five wavelengths and radii', limit, [3.175, 0, 50000, 2000], [0, 0, 0], disc, 1e-6],
+    ['five wavelengths and radii, half a waist off', limit, [3.175, 0, 5000, 300], [1.6, 0, 0], stars, 2e-5],
+    ['five wavelengths and radii, a waist off', limit, [3.175, 0, 5000, 300], [3.175, 0, 0], disc, 2e-5],
+    ['five wavelengths and radii, out of focus', limit, [3.175, -30, 5000, 300], [2, 2, 0], stars, 2e-5],
+    ['five wavelengths and radii, the whole beam', limit, [3.175, 0, 5000, 1200], [2, 0, 0], disc, 8e-5],
+    ['five wavelengths, a waist off', small, [3.175, 0, 5000, 200], [3.175, 0, 0], stars, 1e-6],
+    ['five radii of a large sphere', giant, [50, 0, 20000, 200], [0, 0, 0], disc, 1e-6],
+    ['five radii of a large sphere, a waist off', giant, [50, -3000, 20000, 200], [30, 40, 0], stars, 2e-5],
     ['particle outside beam and outline', BEAD, [50, 0, 20000, 150], [0, -140, 0], stars, 1e-6],
   ];
 
