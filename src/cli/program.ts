@@ -63,9 +63,10 @@ machine. Results go to standard output, progress and notes to standard error.`,
       .description(
         'Searches outlines and distances, ranks what is worth having, and writes a results folder with the front, drawings and a report.',
       )
-      .argument('<brief>', BRIEF),
+      .argument('[brief]', BRIEF),
   )
-    .option('--out <dir>', 'folder that results folders go into', 'results')
+    .option('--out <dir>', 'folder that results folders go into (default: results)')
+    .option('--resume <folder>', 'go on with a search that did not end, in its results folder')
     .addHelpText(
       'after',
       `
@@ -73,7 +74,9 @@ Example:
   $ rimwright search road-dust --candidates 5000
   writes results/road-dust-monitor-extinction-channel/ with report.html,
   front.json, front.csv, run.json and drawings/. A second run gets a folder of
-  its own, whose name ends in -2.`,
+  its own, whose name ends in -2. A search that was interrupted, or whose
+  process or disk failed, goes on where it was:
+  $ rimwright search --resume results/road-dust-monitor-extinction-channel`,
     )
     .action(async (brief, options) => done(await (await import('./searchCommand.ts')).run(brief, options)));
 
@@ -153,6 +156,28 @@ Example:
       --design rings-1 --to "4 um" --csv curve.csv`,
     )
     .action(async (brief, options) => done(await (await import('./responseCommand.ts')).run(brief, options)));
+
+  program
+    .command('bound')
+    .summary('how small a detector could be at best')
+    .description(
+      'Proves how little area over gain any mask can have that meets the target, whatever its outline: what a search can at best find.',
+    )
+    .argument('<brief>', BRIEF)
+    .option(
+      '--distance <length>',
+      'distance from particle to detector (default: the ends of its range and between)',
+    )
+    .option('--gain <list>', 'gains to try, such as "0.5, 1, 2" (default: those of the brief)')
+    .option('--json', AS_JSON)
+    .addHelpText(
+      'after',
+      `
+Example:
+  $ rimwright bound offset-range
+  $ rimwright bound my.yaml --distance "20 mm" --gain 1`,
+    )
+    .action(async (brief, options) => done(await (await import('./boundCommand.ts')).run(brief, options)));
 
   program
     .command('compare')

@@ -1,4 +1,5 @@
 import type { LinearModels } from '../numeric/linearModel.ts';
+import type { Fields } from '../reading/tableShelf.ts';
 import { ConditionReader } from './conditionReader.ts';
 import type { Condition } from './conditions.ts';
 import { kindsOf } from './conditions.ts';
@@ -100,7 +101,7 @@ export interface BoundTools {
   conditions: readonly Condition[];
 }
 
-export function boundTools(task: Task): BoundTools {
+export function boundTools(task: Task, fields: Fields): BoundTools {
   const conditions = kindsOf(task).flatMap((kind) =>
     kind.diametersM.map((diameterM) => ({
       kind,
@@ -109,7 +110,7 @@ export function boundTools(task: Task): BoundTools {
       depthM: 0,
     })),
   );
-  return { worst: new WorstCases(task), reader: new ConditionReader(task, 'far'), conditions };
+  return { worst: new WorstCases(task, fields), reader: new ConditionReader(task, fields), conditions };
 }
 
 /** Circles about the axis. */
