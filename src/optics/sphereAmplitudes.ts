@@ -40,20 +40,37 @@ export function sphereAmplitudes(
   vacuumWavelengthM: number,
   halfAngle: number,
 ): SphereAmplitudes {
-  const index = refractiveIndex(sphere.index, vacuumWavelengthM);
+  const coefficients = sphereCoefficients(sphere, medium, vacuumWavelengthM);
+  return coefficientAmplitudes(coefficients, sphere, medium, vacuumWavelengthM, halfAngle);
+}
+
+/** Mie's coefficients of a sphere, with a core or without, at one wavelength in vacuum, metres. */
+export function sphereCoefficients(
+  { diameterM, index, core }: Sphere,
+  medium: IndexModel,
+  vacuumWavelengthM: number,
+): MieCoefficients {
   const mediumIndex = refractiveIndex(medium, vacuumWavelengthM)[0];
-  const wavenumber = (2 * Math.PI * mediumIndex) / vacuumWavelengthM;
-  const sizeParameter = (wavenumber * sphere.diameterM) / 2;
-  const relative = ([n, k]: readonly [number, number]) => [n / mediumIndex, k / mediumIndex] as const;
+  const sizeParameter = (((2 * Math.PI * mediumIndex) / vacuumWavelengthM) * diameterM) / 2;
+  const relative = (model: IndexModel) => {
+    const [n, k] = refractiveIndex(model, vacuumWavelengthM);
+    return [n / mediumIndex, k / mediumIndex] as const;
+  };
   const outer = { x: sizeParameter, m: relative(index) };
-  const { core } = sphere;
-  const coefficients =
-    core === undefined
-      ? mieCoefficients(outer.x, outer.m)
-      : layeredSphere([
-          { x: core.share * sizeParameter, m: relative(refractiveIndex(core.index, vacuumWavelengthM)) },
-          outer,
-        ]);
+  return core === undefined
+    ? mieCoefficients(outer.x, outer.m)
+    : layeredSphere([{ x: core.share * sizeParameter, m: relative(core.index) }, outer]);
+}
+
+/** Tables over a forward cone of what follows from coefficients: a sphere's own, or their mean over colours near this one. */
+export function coefficientAmplitudes(
+  coefficients: MieCoefficients,
+  sphere: Sphere,
+  medium: IndexModel,
+  vacuumWavelengthM: number,
+  halfAngle: number,
+): SphereAmplitudes {
+  const wavenumber = (2 * Math.PI * refractiveIndex(medium, vacuumWavelengthM)[0]) / vacuumWavelengthM;
   const forward = forwardAmplitude(coefficients);
   const cosLimit = Math.cos(halfAngle);
   const sample = (cosTheta: number, out: Float64Array) =>
@@ -61,8 +78,8 @@ export function sphereAmplitudes(
   const { series, terms } = fitAmplitudes(sample, cosLimit, coefficients);
   return {
     wavenumber,
-    sizeParameter,
-    index,
+    sizeParameter: (wavenumber * sphere.diameterM) / 2,
+    index: refractiveIndex(sphere.index, vacuumWavelengthM),
     forward,
     extinctionM2: (4 * Math.PI * forward[0]) / (wavenumber * wavenumber),
     cosLimit,
@@ -70,6 +87,28 @@ export function sphereAmplitudes(
     terms,
     coefficients,
   };
+}
+
+/**
+ * Amplitudes that scatter as much as a variance of amplitudes does. They extinguish nothing, and keep in step with nothing.
+ *
+ * @param variance writes |S1|² and |S2|² at cosθ, smooth functions of it
+ * @param like what else they are given: wave number, cone, size
+ */
+export function incoherentAmplitudes(
+  variance: (cosTheta: number, out: [s1: number, s2: number]) => void,
+  like: SphereAmplitudes,
+): SphereAmplitudes {
+  const { coefficients: _, ...plain } = like;
+  const out: [number, number] = [0, 0];
+  const sample = (cosTheta: number, amplitudes: Float64Array) => {
+    variance(cosTheta, out);
+    amplitudes.set([Math.sqrt(Math.max(0, out[0])), 0, Math.sqrt(Math.max(0, out[1])), 0]);
+  };
+  // It is a small part of the scattered flux: a root need not be followed to the last digit.
+  const terms = Math.ceil(like.sizeParameter * Math.sqrt(1 - like.cosLimit)) + 8;
+  const series = chebyshevFit(sample, 4, like.cosLimit, 1, terms);
+  return { ...plain, extinctionM2: 0, series, terms };
 }
 
 /** S1re, S1im, S2re, S2im at cosθ in [cosLimit, 1]. */

@@ -115,9 +115,10 @@ function sampleFlux(
   for (const { weight, sphere, fading } of scenario.colours) {
     const crossedCount = counts.get(fading) ?? coherentCount(fading, distanceM, stepM2, count, spreadM);
     counts.set(fading, crossedCount);
-    const samples: FluxSamples = { stepM2, mean, twofold, crossedCount };
-    if (spreadM > 0) addSpreadFlux(sphere, distanceM, spreadM, weight, samples);
-    else addFlux(sphere, distanceM, weight, samples);
+    addFlux(sphere, distanceM, spreadM, weight, { stepM2, mean, twofold, crossedCount });
+  }
+  for (const { weight, sphere } of scenario.incoherent ?? []) {
+    addFlux(sphere, distanceM, spreadM, weight, { stepM2, mean, twofold, crossedCount: 0 });
   }
   return { mean, twofold };
 }
@@ -137,7 +138,14 @@ function coherentCount(
   });
 }
 
-function addFlux(sphere: SphereAmplitudes, distanceM: number, weight: number, samples: FluxSamples): void {
+function addFlux(
+  sphere: SphereAmplitudes,
+  distanceM: number,
+  spreadM: number,
+  weight: number,
+  samples: FluxSamples,
+): void {
+  if (spreadM > 0) return addSpreadFlux(sphere, distanceM, spreadM, weight, samples);
   const { stepM2, mean, twofold, crossedCount } = samples;
   const out = new Float64Array(4);
   const work = new Float64Array(4);

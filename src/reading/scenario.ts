@@ -1,28 +1,11 @@
 import type { IndexModel } from '../optics/indexModel.ts';
-import { refractiveIndex } from '../optics/indexModel.ts';
 import type { Light } from '../optics/light.ts';
 import { linesOf } from '../optics/light.ts';
 import type { Particle } from '../optics/particle.ts';
-import { particleAmplitudes } from '../optics/particleAmplitudes.ts';
-import type { SphereAmplitudes } from '../optics/sphereAmplitudes.ts';
-import { lineColours } from './lineColours.ts';
+import type { Colour, Fading, SolvedLine } from './solveLine.ts';
+import { solveLine } from './solveLine.ts';
 
-/** Where the crossed flux of a line has faded, as its colours fall out of step. */
-export interface Fading {
-  /** Path r − z beyond which nothing is left of it, metres. */
-  pathM: number;
-  /** The line's mean wavenumber, 1/m. */
-  wavenumber: number;
-}
-
-/** One of the colours that stand for the light. */
-interface Colour {
-  /** Its part of the power. */
-  weight: number;
-  sphere: SphereAmplitudes;
-  /** Of its line as a whole: all colours of a line must be left out from the same place on, or what is left would not cancel. */
-  fading?: Fading;
-}
+export type { Fading } from './solveLine.ts';
 
 /** One particle in one light: what a detector is judged on at every position. */
 export interface Scenario {
@@ -31,6 +14,8 @@ export interface Scenario {
   wavelengthM: number;
   /** The light as a weighted sum of colours, those of the main line first; the weights add up to 1. */
   colours: readonly Colour[];
+  /** What a sphere's narrow resonances scatter beside its colours, with their parts of the power. In a focused beam it is left out. */
+  incoherent?: SolvedLine['incoherent'];
   /** Extinction cross-section in this light: the mean over all lines, m². */
   extinctionM2: number;
   /** Angle of the field from x, radians; null for unpolarised light. */
@@ -64,32 +49,18 @@ export function buildScenarios(
 ): Scenario[] {
   return particles.flatMap((particle) =>
     wavelengths.map((wavelengthM) => {
-      const colours = linesOf(light).flatMap((line) => {
+      const solved = linesOf(light).map((line) => {
         // The drift shifts all lines alike.
         const centreM = line.wavelengthM + wavelengthM - light.wavelengthM;
-        const index = refractiveIndex(medium, centreM)[0];
-        const sizeParameter = (Math.PI * index * particle.diameterM) / centreM;
         const phase = (largestPhase * wavelengthM) / centreM;
-        const sampled = lineColours(
-          light.shape ?? 'gaussian',
-          centreM,
-          line.linewidthM,
-          phase,
-          sizeParameter,
-        );
-        const solved = sampled.colours.map(({ weight, colourM }) => ({
-          weight: weight * line.share,
-          sphere: particleAmplitudes(particle, medium, colourM, halfAngle),
-        }));
-        const wavenumber =
-          solved.reduce((sum, one) => sum + one.weight * one.sphere.wavenumber, 0) / line.share;
-        const fading = { pathM: sampled.fadedPhase / wavenumber, wavenumber };
-        return solved.map((colour) => ({ ...colour, fading }));
+        return solveLine({ ...line, wavelengthM: centreM }, light.shape, particle, medium, halfAngle, phase);
       });
+      const colours = solved.flatMap((line) => line.colours);
       return {
         particle,
         wavelengthM,
         colours,
+        incoherent: solved.flatMap((line) => line.incoherent),
         extinctionM2: colours.reduce((sum, { weight, sphere }) => sum + weight * sphere.extinctionM2, 0),
         polarizationRad: light.polarizationRad,
         sourceAngleRad: light.sourceAngleRad ?? 0,

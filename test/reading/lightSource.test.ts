@@ -1,6 +1,9 @@
 import { describe, expect, it } from 'vitest';
 import { gaussLegendre } from '../../src/numeric/gaussLegendre.ts';
+import { constantIndex } from '../../src/optics/indexModel.ts';
 import type { FurtherLine, Light } from '../../src/optics/light.ts';
+import type { Sphere } from '../../src/optics/particle.ts';
+import { sphereAmplitudes } from '../../src/optics/sphereAmplitudes.ts';
 import { boundaryReading } from '../../src/reading/boundaryReading.ts';
 import { buildRadialTable } from '../../src/reading/radialTable.ts';
 import { discMeans } from '../../src/reading/sourceDisc.ts';
@@ -17,20 +20,20 @@ import {
 const DISTANCE_M = 0.02;
 const KAPPA = Math.PI / (WAVELENGTH_M * DISTANCE_M);
 
-type Sphere = { d: number; m: readonly [number, number] };
-const CLEAR: Sphere = { d: 2e-6, m: [1.59, 0] };
-const DARK: Sphere = { d: 2e-6, m: [1.5, 0.1] };
-const SMALL: Sphere = { d: 5e-7, m: [1.45, 0] };
+type Ball = { d: number; m: readonly [number, number] };
+const CLEAR: Ball = { d: 2e-6, m: [1.59, 0] };
+const DARK: Ball = { d: 2e-6, m: [1.5, 0.1] };
+const SMALL: Ball = { d: 5e-7, m: [1.45, 0] };
 
 /** Reading and extinction of one colour, m². */
-function oneColour({ d, m }: Sphere, wavelengthM: number, nodes: Float64Array): [number, number] {
+function oneColour({ d, m }: Ball, wavelengthM: number, nodes: Float64Array): [number, number] {
   const scenario = sphereScenario(d, m, { wavelengthM });
   return [scenario.extinctionM2 * ratioOf(scenario, DISTANCE_M, nodes, [1e-5, 0]), scenario.extinctionM2];
 }
 
 /** By brute force: one scenario a wavelength, evenly (midpoints) out to `reach` full widths. */
 function bruteLine(
-  sphere: Sphere,
+  sphere: Ball,
   { wavelengthM, linewidthM }: Omit<FurtherLine, 'share'>,
   profile: (fwhms: number) => number,
   reach: number,
@@ -69,6 +72,42 @@ describe('an LED of tens of nanometres', () => {
       const fast = ratioOf(scenario, DISTANCE_M, nodes, [1e-5, 0]);
       expect(Math.abs(fast - reading / extinction)).toBeLessThan(1e-5);
     }
+  });
+});
+
+describe('the narrow resonances of a clear sphere within a band', () => {
+  it.each([
+    { d: 4e-6, shape: 'gaussian' as const, nm: 30, profile: gaussian, reach: 2 },
+    { d: 4e-6, shape: 'lorentzian' as const, nm: 10, profile: lorentzian, reach: 10 },
+  ])('read and extinguish as the mean over 12000 colours: $shape', ({ d, shape, nm, profile, reach }) => {
+    const linewidthM = nm * 1e-9;
+    const scenario = sphereScenario(d, [1.59, 0], { linewidthM, shape }, { largestPhase: 100 });
+    const one = sphereScenario(d);
+    const count = 12_000;
+    const shares = Array.from({ length: count }, (_, i) => reach * ((2 * i + 1) / count - 1));
+    const total = shares.reduce((sum, off) => sum + profile(off), 0);
+    const colours = shares.map((off) => ({
+      weight: profile(off) / total,
+      sphere: sphereAmplitudes(
+        one.particle as Sphere,
+        constantIndex(1),
+        WAVELENGTH_M + off * linewidthM,
+        0.05,
+      ),
+    }));
+    const extinctionM2 = colours.reduce((sum, { weight, sphere }) => sum + weight * sphere.extinctionM2, 0);
+    expect(Math.abs(scenario.extinctionM2 / extinctionM2 - 1)).toBeLessThan(2e-5);
+    const brute = { ...one, colours, extinctionM2 };
+    const radii = [3, 10, 30].map((eta) => Math.sqrt(eta / KAPPA));
+    const tables = [scenario, brute].map((each) => buildRadialTable(each, DISTANCE_M, radii[2] + 2e-5, 0));
+    for (const radiusM of radii) {
+      const nodes = discNodes(radiusM, 2 * KAPPA, 0, 0, 1e-5);
+      const [fast, slow] = [scenario, brute].map(
+        (each, i) => boundaryReading(tables[i], nodes, 1e-5, 0) / each.extinctionM2,
+      );
+      expect(Math.abs(fast - slow)).toBeLessThan(8e-6);
+    }
+    expect(scenario.colours.length).toBeLessThan(90);
   });
 });
 
