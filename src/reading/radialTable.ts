@@ -145,7 +145,10 @@ function addFlux(
   weight: number,
   samples: FluxSamples,
 ): void {
-  if (spreadM > 0) return addSpreadFlux(sphere, distanceM, spreadM, weight, samples);
+  if (spreadM > 0) {
+    addSpreadFlux(sphere, distanceM, spreadM, weight, samples);
+    return;
+  }
   const { stepM2, mean, twofold, crossedCount } = samples;
   const out = new Float64Array(4);
   const work = new Float64Array(4);
