@@ -198,21 +198,27 @@ function polynomialValues(t: number, stride: 1 | 2, out: Float64Array): void {
 
 /** Means of the same polynomials from `low` to `high`. */
 function polynomialMeans(low: number, high: number, stride: 1 | 2, out: Float64Array): void {
-  const last = stride * (out.length - 1) + 1;
-  const rises = new Float64Array(last + 1);
-  let [lowBefore, lowValue, highBefore, highValue] = [low, 1, high, 1];
-  // T_n(high) − T_n(low), n ascending
-  for (let n = 0; n <= last; n++) {
-    rises[n] = highValue - lowValue;
+  const length = high - low;
+  // T_{n−1} and T_n at both ends; `before` and `rise` are how much they rise from one end to the other.
+  let lowBefore = 1;
+  let highBefore = 1;
+  let lowValue = low;
+  let highValue = high;
+  let before = 0;
+  let rise = length;
+  out[0] = 1;
+  for (let n = 1; n <= stride * (out.length - 1); n++) {
     const lowNext = 2 * low * lowValue - lowBefore;
     const highNext = 2 * high * highValue - highBefore;
-    [lowBefore, lowValue, highBefore, highValue] = [lowValue, lowNext, highValue, highNext];
-  }
-  const length = high - low;
-  for (let i = 0; i < out.length; i++) {
-    const n = i * stride;
-    if (n === 0) out[i] = 1;
-    else if (n === 1) out[i] = (low + high) / 2;
-    else out[i] = (rises[n + 1] / (n + 1) - rises[n - 1] / (n - 1)) / (2 * length);
+    const next = highNext - lowNext;
+    if (n % stride === 0) {
+      out[n / stride] = n === 1 ? (low + high) / 2 : (next / (n + 1) - before / (n - 1)) / (2 * length);
+    }
+    lowBefore = lowValue;
+    highBefore = highValue;
+    lowValue = lowNext;
+    highValue = highNext;
+    before = rise;
+    rise = next;
   }
 }
