@@ -1,10 +1,9 @@
 import type { BoundaryNodes } from '../reading/boundaryReading.ts';
-import type { Reader } from '../reading/readers.ts';
 import { Readers } from '../reading/readers.ts';
 import type { Scenario } from '../reading/scenario.ts';
 import { spreadOf } from '../reading/spreadOf.ts';
 import type { Fields } from '../reading/tableShelf.ts';
-import type { Condition, Kind } from './conditions.ts';
+import type { Condition } from './conditions.ts';
 import { particleOf } from './conditions.ts';
 import type { Task } from './task.ts';
 import type { ScenarioSolver } from './taskScenarios.ts';
@@ -20,23 +19,23 @@ export interface View {
 /** Reading/extinction of nodes for a particle at (x, y). */
 export type RatioReader = (nodes: BoundaryNodes, x: number, y: number) => number;
 
-/** A solved particle, and its tables at the distance that was asked for last. */
-interface Solved {
-  scenario: Scenario;
-  distanceM: number;
-  readers: Readers;
-}
-
 /** Most particles that are kept solved. */
-const CAPACITY = 600;
+const MOST_SOLVED = 600;
 
-/** Reads under any condition of a task, not only under those that a judge samples. */
+/** Numbers that all tables together may hold: 160 MB. */
+const CAPACITY = 20_000_000;
+
+/** Tables of a focused beam are larger than those of a flat wave: by about this much. */
+const BEAM_SIZE = 30;
+
+/** Reads under any condition of a task, not only under those that a judge samples. Holds the tables of one distance. */
 export class ConditionReader {
   readonly #task: Task;
   readonly #fields: Fields;
   readonly #solve: ScenarioSolver;
-  readonly #held = new Map<Kind, Map<string, Solved>>();
-  #size = 0;
+  readonly #scenarios = new Map<string, Scenario>();
+  readonly #readers = new Map<string, Readers>();
+  #distanceM = Number.NaN;
 
   constructor(task: Task, fields: Fields) {
     this.#task = task;
@@ -44,32 +43,54 @@ export class ConditionReader {
     this.#solve = scenarioSolver(task);
   }
 
-  at(condition: Condition, { distanceM, radiusM, offsetM }: View): RatioReader {
-    const { scenario, readers } = this.#solved(condition, distanceM);
-    const read: Reader = readers.at(distanceM, condition.depthM, radiusM, offsetM)[0];
+  at(condition: Condition, view: View): RatioReader {
+    const { distanceM, radiusM, offsetM } = view;
+    const { kind, diameterM, wavelengthM, depthM } = condition;
+    const key = `${kind.id} ${diameterM} ${wavelengthM}`;
+    const scenario = held(this.#scenarios, key, MOST_SOLVED, () => {
+      return this.#solve([particleOf(condition)], [wavelengthM])[0];
+    });
+    if (distanceM !== this.#distanceM) this.#readers.clear();
+    this.#distanceM = distanceM;
+    const most = Math.max(1, Math.floor(CAPACITY / this.tableSize(view)));
+    const readers = held(this.#readers, key, most, () => this.#readersOf(scenario));
+    const read = readers.at(distanceM, depthM, radiusM, offsetM)[0];
     return (nodes, x, y) => read(nodes, x, y) / scenario.extinctionM2;
   }
 
-  #solved(condition: Condition, distanceM: number): Solved {
-    const { kind, diameterM, wavelengthM } = condition;
-    const key = `${diameterM} ${wavelengthM}`;
-    const ofKind = this.#held.get(kind) ?? new Map<string, Solved>();
-    this.#held.set(kind, ofKind);
-    const held = ofKind.get(key);
-    if (held?.distanceM === distanceM) return held;
-    const scenario = held?.scenario ?? this.#solve([particleOf(condition)], [wavelengthM])[0];
-    const solved = { scenario, distanceM, readers: this.#readers(scenario) };
-    if (!held && ++this.#size > CAPACITY) {
-      this.#held.clear();
-      this.#size = 1;
-      this.#held.set(kind, new Map([[key, solved]]));
-    } else ofKind.set(key, solved);
-    return solved;
+  /** Numbers that the table of one condition holds, about. */
+  tableSize({ distanceM, radiusM, offsetM }: View): number {
+    const { light, placement } = this.#task;
+    const kappa = Math.PI / (light.wavelengthM * (distanceM - placement.depthM));
+    // Eight cells a radian, four numbers a cell, and a reach of up to 1.3 times what is asked for (see TableShelf).
+    const size = 32 * (1 + kappa * (1.3 * (radiusM + offsetM)) ** 2);
+    const depths = placement.depthM === 0 ? 1 : 3;
+    return size * depths * (light.polarizationRad === null ? 1 : 2) * (light.beam ? BEAM_SIZE : 1);
   }
 
-  #readers(scenario: Scenario): Readers {
+  /** Colours that the light of one condition stands for, about. */
+  get colours(): number {
+    const [scenario] = this.#scenarios.values();
+    return scenario?.colours.length ?? 1;
+  }
+
+  #readersOf(scenario: Scenario): Readers {
     const { placement, light } = this.#task;
     const spreadsM = [spreadOf(placement, scenario.particle.diameterM)];
     return new Readers([scenario], { spreadsM, beam: light.beam, fields: this.#fields });
   }
+}
+
+/** What a map holds by that key, made where it is not there; of more than `most` the oldest go. */
+function held<T>(map: Map<string, T>, key: string, most: number, make: () => T): T {
+  let value = map.get(key);
+  if (value === undefined) {
+    value = make();
+    map.set(key, value);
+    for (const oldest of map.keys()) {
+      if (map.size <= most) break;
+      map.delete(oldest);
+    }
+  }
+  return value;
 }

@@ -3,6 +3,8 @@ import type { Task } from './task.ts';
 
 /** Particles that differ by their diameter alone, which may be any from the least to the largest. */
 export interface Kind {
+  /** Its number among a task's kinds. */
+  id: number;
   particle: Particle;
   leastM: number;
   largestM: number;
@@ -30,15 +32,22 @@ export function kindsOf({ particles }: Pick<Task, 'particles'>): Kind[] {
       kinds.set(range?.of ?? particle, { ...held, diametersM: [...held.diametersM, diameterM] });
     } else {
       const { leastM, largestM } = range ?? { leastM: diameterM, largestM: diameterM };
-      kinds.set(range?.of ?? particle, { particle, leastM, largestM, diametersM: [diameterM] });
+      kinds.set(range?.of ?? particle, {
+        id: kinds.size,
+        particle,
+        leastM,
+        largestM,
+        diametersM: [diameterM],
+      });
     }
   }
   return [...kinds.values()];
 }
 
-/** The kind's particle of another diameter; a core keeps its share. */
+/** The kind's particle of another diameter; a core keeps its share, and no distribution counts it. */
 export function particleOf({ kind, diameterM }: Pick<Condition, 'kind' | 'diameterM'>): Particle {
-  return { ...kind.particle, diameterM };
+  const { population: _, ...particle } = kind.particle;
+  return { ...particle, diameterM };
 }
 
 /** Step in size parameter of the diameters that a range is looked at with: a fifth of a ripple of clear spheres, or less. */
@@ -47,32 +56,38 @@ const SIZE_STEP = 0.1;
 /** Most diameters of all ranges together; beyond, the steps grow. */
 const MOST_DIAMETERS = 240;
 
-/**
- * Conditions that a search for the worst begins with: single diameters and both ends of a range at every wavelength of
- * −drift, 0, +drift and every depth of −depth, 0, +depth; between the ends of a range, wavelengths and depths take turns.
- */
-export function firstConditions(task: Task, kinds: readonly Kind[]): Condition[] {
+/** Conditions that a search for the worst begins with. */
+export interface FirstConditions {
+  /** Single diameters and both ends of a range at every wavelength of −drift, 0, +drift and every depth of −depth, 0, +depth; the brief's other diameters as they are meant. */
+  given: Condition[];
+  /** Between the ends of ranges; wavelengths and depths take turns. */
+  between: Condition[];
+}
+
+export function firstConditions(task: Task, kinds: readonly Kind[]): FirstConditions {
   const { light, placement } = task;
   const around = (middle: number, reach: number) =>
     reach === 0 ? [middle] : [middle - reach, middle, middle + reach];
   const lights = around(light.wavelengthM, light.driftM).flatMap((wavelengthM) =>
     around(0, placement.depthM).map((depthM) => ({ wavelengthM, depthM })),
   );
+  const nominal = [{ wavelengthM: light.wavelengthM, depthM: 0 }];
+  const given = kinds.flatMap((kind) =>
+    kind.diametersM.flatMap((diameterM) => {
+      const isEnd = diameterM === kind.leastM || diameterM === kind.largestM;
+      return (isEnd ? lights : nominal).map((one) => ({ kind, diameterM, ...one }));
+    }),
+  );
   const stepM = (SIZE_STEP * light.wavelengthM) / Math.PI;
   const wanted = kinds.reduce((sum, { leastM, largestM }) => sum + (largestM - leastM) / stepM, 0);
   const growth = Math.max(1, wanted / MOST_DIAMETERS);
-  return kinds.flatMap((kind) => {
-    const { leastM, largestM, diametersM } = kind;
-    const ends = leastM === largestM ? [leastM] : [leastM, largestM];
-    const count = Math.ceil((largestM - leastM) / (stepM * growth));
-    const between = Array.from({ length: Math.max(0, count - 1) }, (_, i) => ({
+  const between = kinds.flatMap((kind) => {
+    const count = Math.ceil((kind.largestM - kind.leastM) / (stepM * growth));
+    return Array.from({ length: Math.max(0, count - 1) }, (_, i) => ({
       kind,
-      diameterM: leastM + ((largestM - leastM) * (i + 1)) / count,
+      diameterM: kind.leastM + ((kind.largestM - kind.leastM) * (i + 1)) / count,
       ...lights[i % lights.length],
     }));
-    const own = diametersM.filter((diameterM) => !ends.includes(diameterM));
-    const crossed = ends.flatMap((diameterM) => lights.map((one) => ({ kind, diameterM, ...one })));
-    const nominal = { wavelengthM: light.wavelengthM, depthM: 0 };
-    return [...crossed, ...own.map((diameterM) => ({ kind, diameterM, ...nominal })), ...between];
   });
+  return { given, between };
 }

@@ -8,7 +8,7 @@ import type { Symmetry } from '../reading/positions.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import type { View } from './conditionReader.ts';
 import { ConditionReader } from './conditionReader.ts';
-import type { Condition, Kind } from './conditions.ts';
+import type { Condition, FirstConditions, Kind } from './conditions.ts';
 import { firstConditions, kindsOf, particleOf } from './conditions.ts';
 import { SEARCH_FINENESS } from './fineness.ts';
 import type { ElementNodes } from './judge.ts';
@@ -43,6 +43,9 @@ interface Climb {
 
 const SIGNS = [1, -1] as const;
 
+/** Steps along boundaries that one number of a table is worth, and all that a first look may take: a few seconds. */
+const TABLE_EFFORT = 10;
+const MOST_STEPS = 1e9;
 /** Local maxima that are climbed to, and the share of the worst first look below which none is. */
 const CLIMBS = 6;
 const WORTH = 0.85;
@@ -63,14 +66,14 @@ const TABLES = { diameter: 7, wavelength: 4, depth: 4 } as const;
  * wavelength, and the diameter within every range of the brief.
  *
  * A first look takes diameters 0.1 apart in size parameter (at most 240 in all: wider ranges are looked at more coarsely, and a resonance
- * of a clear sphere narrower than that may be passed over), with wavelengths and depths in turn, at those places where the
+ * of a clear sphere narrower than that may be passed over; of outlines so large that this would take long, fewer), with wavelengths and depths in turn, at those places where the
  * brief's own particles read most and least. The worst few are then climbed from, one coordinate after the other, each with
  * its own table. Holds solved particles, and tables of the last distance: make one and keep it, and ask distance by distance.
  */
 export class WorstCases {
   readonly #task: Task;
   readonly #kinds: readonly Kind[];
-  readonly #first: readonly Condition[];
+  readonly #first: FirstConditions;
   readonly #reader: ConditionReader;
   readonly #sampling: Sampling;
   readonly #rules = new LegendreRules();
@@ -148,12 +151,21 @@ export class WorstCases {
   #starts(scene: Scene): Climb[] {
     const places = this.#tellingPlaces(scene);
     const flights = scene.flightsOf(places);
-    const looks = this.#first.flatMap((condition) => {
+    const looks = this.#firstOf(scene, flights).flatMap((condition) => {
       const corrections = this.#corrections(condition, scene, flights);
       return SIGNS.map((sign) => startOf(condition, places, corrections, sign));
     });
     const kept = distinct(looks);
     return kept.filter(({ value }) => value >= WORTH * kept[0].value).slice(0, CLIMBS);
+  }
+
+  /** Conditions of the first look: of a large outline, whose tables take long, only every second or third of those between. */
+  #firstOf({ nodes, view }: Scene, flights: FlightMeans): Condition[] {
+    const reader = this.#reader;
+    const steps = TABLE_EFFORT * reader.colours * reader.tableSize(view) + (flights.count * nodes.length) / 4;
+    const { given, between } = this.#first;
+    const stride = Math.ceil((between.length * steps) / MOST_STEPS);
+    return [...given, ...between.filter((_, i) => i % stride === 0)];
   }
 
   /** Where the brief's own particles read most and least, at the nominal wavelength and every depth; and the axis. */
