@@ -1,5 +1,6 @@
 import { countText, timeText } from '../draw/quantityText.ts';
 import type { RankedDesign } from '../run/ranking.ts';
+import { worstOf } from '../score/scores.ts';
 import type { Column } from './table.ts';
 
 /** Columns that every table of designs shares. */
@@ -7,7 +8,7 @@ export const DESIGN_COLUMNS = {
   distance: { title: ['dist.', 'mm'], cell: ({ distanceM }) => countText(1e3 * distanceM) },
   radius: { title: ['radius', 'µm'], cell: ({ scores }) => countText(1e6 * scores.radius_m) },
   gain: { title: ['gain'], cell: ({ scores }) => scores.gain.toFixed(3) },
-  worst: { title: ['worst', '%'], cell: ({ scores }) => percentCell(scores.correction.worst) },
+  worst: { title: ['worst', '%'], cell: ({ scores }) => percentCell(worstOf(scores)) },
   rms: { title: ['rms', '%'], cell: ({ scores }) => countText(100 * scores.correction.rms) },
   lobe: { title: ['lobe', '%'], cell: ({ scores }) => countText(100 * scores.lobe.ratio) },
   snr: { title: ['SNR'], cell: ({ scores }) => shortCount(scores.snr.required) },

@@ -5,6 +5,7 @@ import { drawSvg } from '../draw/svg.ts';
 import { designHash } from '../run/designHash.ts';
 import type { GivenDesign } from '../run/givenDesign.ts';
 import type { RankedDesign } from '../run/ranking.ts';
+import { worstOf } from '../score/scores.ts';
 
 export const DRAWING_FORMATS = ['dxf', 'svg'] as const;
 export type DrawingFormat = (typeof DRAWING_FORMATS)[number];
@@ -24,7 +25,7 @@ export function rankedDrawing(title: string, design: RankedDesign): Drawing {
     distanceM,
     hash: designHash(distanceM, elements),
     notes: [
-      `Radius ${quantityText(scores.radius_m, 'm')}, worst correction ${percentText(scores.correction.worst)}, gain ${gain}`,
+      `Radius ${quantityText(scores.radius_m, 'm')}, worst correction ${percentText(worstOf(scores))}, gain ${gain}`,
       ...shop.notes,
     ],
   };

@@ -1,6 +1,7 @@
 import { percentText, quantityText, timeText } from '../draw/quantityText.ts';
 import type { RankedDesign } from '../run/ranking.ts';
 import type { Miss } from '../score/aim.ts';
+import { worstOf } from '../score/scores.ts';
 import type { Task } from '../score/task.ts';
 
 /** One limit of a brief and how a design misses it: `target.time allows 1 ms, it takes 3.2 ms (3.2 times as much)`. */
@@ -10,7 +11,7 @@ export function missText({ limit, factor }: Miss, { scores, shop }: RankedDesign
   switch (limit) {
     case 'target.correction': {
       // Three digits would make a correction just beyond 1 % look like one that keeps it.
-      const worst = `${Number((100 * scores.correction.worst).toPrecision(4))} %`;
+      const worst = `${Number((100 * worstOf(scores)).toPrecision(4))} %`;
       return `target.correction allows ${percentText(target.correction)}, its worst is ${worst} (${times})`;
     }
     case 'target.lobe':

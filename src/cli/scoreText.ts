@@ -1,6 +1,7 @@
 import { areaText, countText, percentText, timeText } from '../draw/quantityText.ts';
 import type { RankedDesign } from '../run/ranking.ts';
 import { missesOf } from '../run/ranking.ts';
+import { worstOf } from '../score/scores.ts';
 import type { Task } from '../score/task.ts';
 import { shortCount } from './designColumns.ts';
 import { missText } from './missText.ts';
@@ -9,7 +10,8 @@ import { missText } from './missText.ts';
 export function scoreText(design: RankedDesign, task: Task): string {
   const { gain, correction, lobe, snr, area_m2, areaOverFloor } = design.scores;
   const scores = [
-    `worst correction ${percentText(correction.worst)}`,
+    `worst correction ${percentText(worstOf(design.scores))}`,
+    ...(correction.certified === undefined ? [] : [`of the samples alone ${percentText(correction.worst)}`]),
     `rms ${percentText(correction.rms)}`,
     ...(correction.population === undefined
       ? []

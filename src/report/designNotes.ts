@@ -1,5 +1,6 @@
 import { elementArea } from '../draw/elementMeasure.ts';
 import { percentText, timeText } from '../draw/quantityText.ts';
+import { worstOf } from '../score/scores.ts';
 import type { ReportDesign } from './reportInput.ts';
 
 /** Common practice for the lobe ratio, with no source: design, section 4. */
@@ -7,12 +8,13 @@ const LOBE_PRACTICE = 0.1;
 
 /** What a reader should know of a design before building it, in whole sentences. */
 export function designNotes(design: ReportDesign, targetCorrection: number): string[] {
-  const { gain, correction, lobe, area_m2, areaOverFloor, snr } = design.scores;
+  const { gain, lobe, area_m2, areaOverFloor, snr } = design.scores;
   const notes: string[] = [];
   if (!design.meetsTarget) notes.push('Does not meet the target of this brief.');
-  if (correction.worst > targetCorrection) {
+  const worst = worstOf(design.scores);
+  if (worst > targetCorrection) {
     notes.push(
-      `The worst correction, ${percentText(correction.worst)}, is above the target of ${percentText(targetCorrection)}.`,
+      `The worst correction, ${percentText(worst)}, is above the target of ${percentText(targetCorrection)}.`,
     );
   }
   if (Math.abs(gain - 1) > 1e-6) {

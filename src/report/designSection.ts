@@ -1,5 +1,6 @@
 import { markupText } from '../draw/plainText.ts';
 import { areaText, countText, percentText, quantityText, timeText } from '../draw/quantityText.ts';
+import { worstOf } from '../score/scores.ts';
 import { designNotes } from './designNotes.ts';
 import { shopText } from './designTable.ts';
 import { outlineFigure } from './outlineFigure.ts';
@@ -34,7 +35,8 @@ function scoreList({ rank, distanceM, elements, scores, meetsTarget }: ReportDes
     ['Radius', quantityText(scores.radius_m, 'm')],
     ['Elements', String(elements.length)],
     ['Gain', scores.gain.toFixed(3)],
-    ['Worst correction', percentText(scores.correction.worst)],
+    ['Worst correction', percentText(worstOf(scores))],
+    ...certifiedRows(scores),
     ['RMS correction', percentText(scores.correction.rms)],
     ...populationRow(scores),
     ['Lobe ratio', countText(scores.lobe.ratio)],
@@ -44,6 +46,21 @@ function scoreList({ rank, distanceM, elements, scores, meetsTarget }: ReportDes
     ['Area over floor', countText(scores.areaOverFloor)],
   ];
   return `<dl>${rows.map(([name, value]) => `<div><dt>${name}</dt><dd>${value}</dd></div>`).join('')}</dl>`;
+}
+
+/** Where the worst was found, and what the samples alone would say. */
+function certifiedRows({ correction: { worst, certifiedAt } }: ReportDesign['scores']): [string, string][] {
+  if (certifiedAt === undefined) return [];
+  const { diameter_m, material, wavelength_m, depth_m, position_m } = certifiedAt;
+  const [x, y, z] = [...position_m, depth_m].map((metres) =>
+    quantityText(Math.round(metres * 1e9) / 1e9, 'm'),
+  );
+  const particle = `${quantityText(diameter_m, 'm')} of ${material}`;
+  const light = `${quantityText(wavelength_m, 'm')} light`;
+  return [
+    ['Worst of the samples', percentText(worst)],
+    ['Worst found for', `${markupText(particle)} in ${light}, at x ${x}, y ${y}, z ${z}`],
+  ];
 }
 
 function populationRow({ correction: { population } }: ReportDesign['scores']): [string, string][] {

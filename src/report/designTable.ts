@@ -1,5 +1,6 @@
 import { markupText } from '../draw/plainText.ts';
 import { countText, timeText } from '../draw/quantityText.ts';
+import { worstOf } from '../score/scores.ts';
 import type { ReportDesign } from './reportInput.ts';
 
 interface Column {
@@ -13,7 +14,7 @@ const COLUMNS: readonly Column[] = [
   { title: 'Distance, mm', cell: ({ distanceM }) => countText(1e3 * distanceM) },
   { title: 'Radius, µm', cell: ({ scores }) => countText(1e6 * scores.radius_m) },
   { title: 'Gain', cell: ({ scores }) => scores.gain.toFixed(3) },
-  { title: 'Worst correction, %', cell: ({ scores }) => countText(100 * scores.correction.worst) },
+  { title: 'Worst correction, %', cell: ({ scores }) => countText(100 * worstOf(scores)) },
   { title: 'RMS correction, %', cell: ({ scores }) => countText(100 * scores.correction.rms) },
   { title: 'Lobe ratio', cell: ({ scores }) => countText(scores.lobe.ratio) },
   { title: 'Required SNR', cell: ({ scores }) => countText(scores.snr.required) },

@@ -1,6 +1,7 @@
 import { plainDecimal } from '../draw/plainDecimal.ts';
 import { markupText } from '../draw/plainText.ts';
 import { areaText, percentText, timeText } from '../draw/quantityText.ts';
+import { worstOf } from '../score/scores.ts';
 import { type LogAxis, logAxis } from './logAxis.ts';
 import { markerPath } from './markers.ts';
 import type { ReportDesign, ReportInput } from './reportInput.ts';
@@ -39,7 +40,7 @@ export function scatter(input: ReportInput, anchors: readonly string[]): string 
   const cost = costOf(input.designs);
   const shown = input.designs
     .map((design, k) => ({ design, anchor: anchors[k] }))
-    .filter(({ design }) => isPlottable(cost.of(design)) && isPlottable(design.scores.correction.worst));
+    .filter(({ design }) => isPlottable(cost.of(design)) && isPlottable(worstOf(design.scores)));
   if (shown.length === 0) return '';
   const target = isPlottable(input.targetCorrection) ? [input.targetCorrection] : [];
   const across = logAxis(
@@ -47,14 +48,14 @@ export function scatter(input: ReportInput, anchors: readonly string[]): string 
     [LEFT, WIDTH - RIGHT],
   );
   const up = logAxis(
-    [...shown.map(({ design }) => design.scores.correction.worst), ...target],
+    [...shown.map(({ design }) => worstOf(design.scores)), ...target],
     [HEIGHT - BOTTOM, TOP],
   );
   const points = shown.map(({ design, anchor }) => ({
     design,
     anchor,
     x: across.place(cost.of(design)),
-    y: up.place(design.scores.correction.worst),
+    y: up.place(worstOf(design.scores)),
   }));
   const families = [...new Set(shown.map(({ design }) => design.family))];
   const left = input.designs.length - shown.length;
@@ -111,7 +112,7 @@ function uprightAxis({ ticks, place }: LogAxis): string {
 
 function mark({ design, anchor, x, y }: Point, family: number, cost: Cost): string {
   const { id, family: name, meetsTarget, scores } = design;
-  const words = `${id}, ${name}: worst correction ${percentText(scores.correction.worst)}, ${cost.title} ${cost.text(cost.of(design))}, ${meetsTarget ? 'meets' : 'does not meet'} the target`;
+  const words = `${id}, ${name}: worst correction ${percentText(worstOf(scores))}, ${cost.title} ${cost.text(cost.of(design))}, ${meetsTarget ? 'meets' : 'does not meet'} the target`;
   return `<a href="#${anchor}" aria-label="${markupText(words)}"><title>${markupText(words)}</title><path class="mark ${meetsTarget ? 'good' : 'miss'}" transform="translate(${n(x)} ${n(y)})" d="${markerPath(family, MARKER_AREA)}"/></a>`;
 }
 

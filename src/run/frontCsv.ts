@@ -12,9 +12,16 @@ const COLUMNS: readonly [title: string, cell: (design: RankedDesign) => Cell][] 
   ['area_m2', ({ scores }) => scores.area_m2],
   ['gain', ({ scores }) => scores.gain],
   ['correction_worst', ({ scores }) => scores.correction.worst],
+  ['correction_certified', ({ scores }) => scores.correction.certified ?? ''],
   ['correction_rms', ({ scores }) => scores.correction.rms],
   // Empty where the brief has no distribution of sizes.
   ['correction_population', ({ scores }) => scores.correction.population ?? ''],
+  // Where the certified worst was found.
+  ['certified_diameter_m', ({ scores }) => scores.correction.certifiedAt?.diameter_m ?? ''],
+  ['certified_wavelength_m', ({ scores }) => scores.correction.certifiedAt?.wavelength_m ?? ''],
+  ['certified_depth_m', ({ scores }) => scores.correction.certifiedAt?.depth_m ?? ''],
+  ['certified_x_m', ({ scores }) => scores.correction.certifiedAt?.position_m[0] ?? ''],
+  ['certified_y_m', ({ scores }) => scores.correction.certifiedAt?.position_m[1] ?? ''],
   ['lobe_ratio', ({ scores }) => scores.lobe.ratio],
   ['snr_required', ({ scores }) => scores.snr.required],
   ['time_s', ({ scores }) => scores.snr.time_s],

@@ -1,3 +1,4 @@
+import { Certifier } from '../score/certifier.ts';
 import type { Task } from '../score/task.ts';
 import { inspectOutline } from '../shop/inspect.ts';
 import type { GivenDesign } from './givenDesign.ts';
@@ -5,14 +6,17 @@ import type { OutlineJudge } from './judgeOutline.ts';
 import type { RankedDesign } from './ranking.ts';
 import { missesOf } from './ranking.ts';
 
-/** The scores of an outline from outside, over every particle, wavelength and position of the brief. Its rank is 1 as long as it stands alone. */
+/**
+ * The certified scores of an outline from outside, over every particle, wavelength and position of the brief. Its rank is 1
+ * as long as it stands alone.
+ */
 export function scoreGiven(
   task: Task,
   given: GivenDesign,
   { judge, distanceM, fields }: OutlineJudge,
 ): RankedDesign {
   const { id, family, elements } = given;
-  const { scores } = judge.scoreOutline(elements, distanceM);
+  const { scores } = new Certifier(judge, fields).scoreOutline(elements, distanceM);
   const shop =
     task.shop === null ? { fits: true, notes: [], misfit: 0 } : inspectOutline(elements, task.shop);
   const design = { family, distanceM, elements, scores, fields, shop };

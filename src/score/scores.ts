@@ -27,6 +27,6 @@ export interface Certificate {
 }
 
 /** The worst correction of a design as far as it is known: certified where it was, else over the samples. */
-export function worstOf({ correction }: Scores): number {
+export function worstOf({ correction }: Pick<Scores, 'correction'>): number {
   return correction.certified ?? correction.worst;
 }
