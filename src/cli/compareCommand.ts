@@ -1,14 +1,16 @@
 import type { Problem } from '../base/errors.ts';
 import { inputError, RimwrightError } from '../base/errors.ts';
 import type { Fields } from '../reading/tableShelf.ts';
+import type { DesignChoice } from '../run/chooseDesign.ts';
+import { chooseDesign } from '../run/chooseDesign.ts';
 import { designToJson } from '../run/designJson.ts';
 import { jsonText } from '../run/jsonText.ts';
 import { judgeOutline } from '../run/judgeOutline.ts';
+import type { OpenedBrief } from '../run/openBrief.ts';
 import { openBrief } from '../run/openBrief.ts';
 import type { RankedDesign } from '../run/ranking.ts';
-import { readDesignFile } from '../run/readDesignFile.ts';
 import { rankGiven, scoreGiven } from '../run/scoreGiven.ts';
-import { beamFieldsWarning, distanceWarning, farZoneWarning, present } from '../run/warnings.ts';
+import { outlineOf, present, readingWarnings } from '../run/warnings.ts';
 import { fieldsFor } from '../score/farZoneError.ts';
 import type { Task } from '../score/task.ts';
 import { DESIGN_COLUMNS, MEETS_COLUMN, shopColumn } from './designColumns.ts';
@@ -24,21 +26,21 @@ type Compared = RankedDesign & { file: string };
 export async function run(
   place: string,
   files: readonly string[],
-  options: { distance?: string; exact?: true; json?: true },
+  options: { design: readonly string[]; distance?: string; exact?: true; json?: true },
 ): Promise<number> {
   const distance = await readDistance(options.distance);
-  const { brief } = await openBrief(place);
+  const choices = [...files.map((outline) => ({ outline })), ...options.design.map((design) => ({ design }))];
+  if (choices.length === 0) {
+    const expected = "files, or --design ID for designs of the brief's own results";
+    throw inputError([{ key: 'files', found: 'nothing to compare', expected }]);
+  }
+  const opened = await openBrief(place);
+  const { brief } = opened;
   const { task } = brief;
   const wanted = options.exact ? 'exact' : 'far';
-  const fields = fieldsFor(task, wanted);
-  const designs = rankGiven(scoreAll(files, task, distance, fields));
-  const warnings = present(
-    designs.flatMap(({ distanceM }) => [
-      beamFieldsWarning(task, wanted),
-      fields === 'far' ? farZoneWarning(task, distanceM) : null,
-      distanceWarning(task, distanceM),
-    ]),
-  );
+  const compared = scoreAll(opened, choices, distance, fieldsFor(task, wanted));
+  const designs = rankGiven(compared.designs);
+  const warnings = present([...compared.warnings, ...readingWarnings(task, wanted, designs.map(outlineOf))]);
   if (!options.json) noteDefaults(brief.defaults);
   warn(warnings);
   if (options.json) {
@@ -49,20 +51,29 @@ export async function run(
 }
 
 /** Scores every file. Where some are broken, all of their messages come together, and no scores. */
-function scoreAll(files: readonly string[], task: Task, distance: number | null, fields: Fields): Compared[] {
+function scoreAll(
+  opened: OpenedBrief,
+  choices: readonly DesignChoice[],
+  distance: number | null,
+  fields: Fields,
+): { designs: Compared[]; warnings: string[] } {
+  const { task } = opened.brief;
   const problems: Problem[] = [];
   const designs: Compared[] = [];
-  for (const file of files) {
+  const warnings: string[] = [];
+  for (const choice of choices) {
     try {
-      const given = readDesignFile(file);
-      designs.push({ ...scoreGiven(task, given, judgeOutline(task, given, distance, null, fields)), file });
+      const { given, warnings: ofResults } = chooseDesign(opened, choice);
+      const judged = judgeOutline(task, given, distance, null, fields);
+      designs.push({ ...scoreGiven(task, given, judged), file: given.file });
+      warnings.push(...ofResults);
     } catch (error) {
       if (!(error instanceof RimwrightError) || error.code !== 'input') throw error;
       problems.push(...error.problems);
     }
   }
   if (problems.length > 0) throw inputError(problems);
-  return designs;
+  return { designs, warnings };
 }
 
 function printComparison(designs: readonly Compared[], task: Task): void {

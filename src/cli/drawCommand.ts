@@ -1,5 +1,8 @@
-import { join } from 'node:path';
+import { extname, join } from 'node:path';
 import { inputError } from '../base/errors.ts';
+import { chooseDesign } from '../run/chooseDesign.ts';
+import type { GivenDesign } from '../run/givenDesign.ts';
+import { openBrief } from '../run/openBrief.ts';
 import { readDesignFile } from '../run/readDesignFile.ts';
 import { prepareFolder } from '../run/resultsFolder.ts';
 import { writeWhole } from '../run/writeWhole.ts';
@@ -7,11 +10,12 @@ import type { DrawingFormat } from './designDrawing.ts';
 import { DRAWING_FORMATS, drawAs, givenDrawing } from './designDrawing.ts';
 import { EXIT } from './exit.ts';
 import { uninterrupted } from './interrupt.ts';
-import { print } from './notes.ts';
+import { print, warn } from './notes.ts';
 import { oneOf } from './optionRules.ts';
 import { readDistance } from './quantityOptions.ts';
 
 interface Options {
+  design?: string;
   distance?: string;
   out: string;
   formats: string;
@@ -22,7 +26,7 @@ interface Options {
 export async function run(place: string, options: Options): Promise<number> {
   const formats = readFormats(options.formats);
   const chosen = await readDistance(options.distance);
-  const given = readDesignFile(place);
+  const given = await openDesign(place, options.design);
   const distanceM = chosen ?? given.distanceM;
   if (distanceM === null) {
     const expected = 'a distance, such as --distance "20 mm"';
@@ -37,6 +41,14 @@ export async function run(place: string, options: Options): Promise<number> {
   uninterrupted(() => writeWhole(files, options.force ?? false));
   for (const { path } of files) print(path);
   return EXIT.done;
+}
+
+/** The design of a file; with an id, `place` may also be the brief in whose results it is. */
+async function openDesign(place: string, design: string | undefined): Promise<GivenDesign> {
+  if (design === undefined || extname(place) === '.json') return readDesignFile(place, design);
+  const { given, warnings } = chooseDesign(await openBrief(place), { design });
+  warn(warnings);
+  return given;
 }
 
 function readFormats(text: string): DrawingFormat[] {

@@ -13,6 +13,7 @@ const ROUGH_OUTLINES = [2, 10_000] as const;
 
 const BRIEF = "a brief's path, or a brief's name on the shelf";
 const OUTLINE = "CSV (x_mm,y_mm), a design's JSON, or front.json#ID";
+const ID = "a design of that file, or without it of the brief's own results";
 const EXACT = "the sphere's exact fields, for large particles near the detector";
 const AS_JSON = 'print one JSON document';
 
@@ -106,8 +107,8 @@ Example:
     .summary('what a given outline reads')
     .description('Shows what a given outline reads for each particle and position of a brief.')
     .argument('<brief>', BRIEF)
-    .requiredOption('--outline <file>', OUTLINE)
-    .option('--design <id>', 'which design of a front.json')
+    .option('--outline <file>', OUTLINE)
+    .option('--design <id>', ID)
     .option('--distance <length>', 'distance from particle to detector')
     .option('--position <x, y>', 'read at this place of the particle alone')
     .option('--exact', EXACT)
@@ -137,8 +138,8 @@ Example:
       "Shows what a design is expected to read of reference spheres against their diameter, with the gain calibrated over the brief's particles, and where that holds the target.",
     )
     .argument('<brief>', BRIEF)
-    .requiredOption('--outline <file>', OUTLINE)
-    .option('--design <id>', 'which design of a front.json')
+    .option('--outline <file>', OUTLINE)
+    .option('--design <id>', ID)
     .option('--distance <length>', 'distance from particle to detector')
     .option('--from <diameter>', 'smallest sphere', '0.2 um')
     .option('--to <diameter>', 'largest sphere', '10 um')
@@ -152,8 +153,9 @@ Example:
       'after',
       `
 Example:
-  $ rimwright response my.yaml --outline results/my/front.json \\
-      --design rings-1 --to "4 um" --csv curve.csv`,
+  $ rimwright response my.yaml --design rings-1 --to "4 um" --csv curve.csv
+  takes the design from results/my/front.json, where rimwright search my.yaml
+  has put it: the folder is named after the brief's title.`,
     )
     .action(async (brief, options) => done(await (await import('./responseCommand.ts')).run(brief, options)));
 
@@ -186,7 +188,8 @@ Example:
       'Scores outlines against one brief, side by side: those that meet the target first, then the fastest.',
     )
     .argument('<brief>', BRIEF)
-    .argument('<files...>', OUTLINE)
+    .argument('[files...]', OUTLINE)
+    .option('--design <id>', "a design of the brief's own results; may be given again", repeated, [])
     .option('--distance <length>', 'distance from particle to detector, for all of them')
     .option('--exact', EXACT)
     .option('--json', AS_JSON)
@@ -195,7 +198,8 @@ Example:
       `
 Example:
   $ rimwright compare my.yaml square.csv results/my/front.json#rings-1 \\
-      --distance "20 mm"`,
+      --distance "20 mm"
+  $ rimwright compare my.yaml --design rings-1 --design disc-1`,
     )
     .action(async (brief, files, options) =>
       done(await (await import('./compareCommand.ts')).run(brief, files, options)),
@@ -205,7 +209,8 @@ Example:
     .command('draw')
     .summary('drawings for the shop')
     .description('Draws a design for the shop: DXF at true size, and an SVG sheet to read.')
-    .argument('<design>', "a design's JSON, front.json#ID, or a CSV with --distance")
+    .argument('<design>', "a design's JSON, front.json#ID, a CSV with --distance, or a brief with --design")
+    .option('--design <id>', "a design of that front.json, or of the brief's own results")
     .option('--distance <length>', 'distance from particle to mask, for the notes on the sheet')
     .option('--out <dir>', 'folder to draw into', '.')
     .option('--formats <list>', 'dxf, svg, or both', 'dxf,svg')
@@ -214,7 +219,8 @@ Example:
       'after',
       `
 Example:
-  $ rimwright draw results/my/front.json#rings-1 --out shop --formats dxf`,
+  $ rimwright draw results/my/front.json#rings-1 --out shop --formats dxf
+  $ rimwright draw my.yaml --design rings-1 --out shop`,
     )
     .action(async (design, options) => done(await (await import('./drawCommand.ts')).run(design, options)));
 
@@ -236,6 +242,11 @@ Example:
       done(await (await import('./presetsCommand.ts')).run(shelf, name, options)),
     );
   return program;
+}
+
+/** Collects an option that may be given more than once. */
+function repeated(value: string, before: readonly string[]): string[] {
+  return [...before, value];
 }
 
 /** Options of the commands that search. */

@@ -1,6 +1,7 @@
 import { dirname } from 'node:path';
 import { formatQuantity } from '../base/quantity.ts';
 import { countText } from '../draw/quantityText.ts';
+import { chooseDesign } from '../run/chooseDesign.ts';
 import { designToJson } from '../run/designJson.ts';
 import type { GivenDesign } from '../run/givenDesign.ts';
 import { jsonText } from '../run/jsonText.ts';
@@ -8,20 +9,13 @@ import type { OutlineJudge } from '../run/judgeOutline.ts';
 import { judgeOutline } from '../run/judgeOutline.ts';
 import { openBrief } from '../run/openBrief.ts';
 import type { RankedDesign } from '../run/ranking.ts';
-import { readDesignFile } from '../run/readDesignFile.ts';
 import type { ReadingSummary } from '../run/readings.ts';
 import { listReadings, summariseReadings } from '../run/readings.ts';
 import { prepareFolder } from '../run/resultsFolder.ts';
 import { roughReadings } from '../run/roughReadings.ts';
 import { scoreGiven } from '../run/scoreGiven.ts';
 import { traceFlight } from '../run/traceFlight.ts';
-import {
-  beamFieldsWarning,
-  diffusionWarning,
-  distanceWarning,
-  farZoneWarning,
-  present,
-} from '../run/warnings.ts';
+import { readingWarnings } from '../run/warnings.ts';
 import { refuseExisting, writeWhole } from '../run/writeWhole.ts';
 import { shortCount } from './designColumns.ts';
 import { EXIT } from './exit.ts';
@@ -34,7 +28,7 @@ import type { Column } from './table.ts';
 import { table } from './table.ts';
 
 interface Options {
-  outline: string;
+  outline?: string;
   design?: string;
   distance?: string;
   position?: string;
@@ -56,22 +50,16 @@ export async function run(place: string, options: Options): Promise<number> {
     prepareFolder(dirname(options.trace));
     if (!options.force) refuseExisting([options.trace]);
   }
-  const { brief } = await openBrief(place);
+  const opened = await openBrief(place);
+  const { brief } = opened;
   const { task } = brief;
-  const given = readDesignFile(options.outline, options.design);
+  const { given, warnings: ofResults } = chooseDesign(opened, options);
   const wanted = options.exact ? 'exact' : 'far';
   const judged = judgeOutline(task, given, distance, position, wanted);
   const { judge, distanceM, fields } = judged;
   // At one place there is no worst and no mean over places: the scores are left out.
   const design = position === null ? scoreGiven(task, given, judged) : null;
-  const farZone = fields === 'far' ? farZoneWarning(task, distanceM) : null;
-  const diffusion = diffusionWarning(task, [judged]);
-  const warnings = present([
-    beamFieldsWarning(task, wanted),
-    farZone,
-    distanceWarning(task, distanceM),
-    diffusion,
-  ]);
+  const warnings = [...ofResults, ...readingWarnings(task, wanted, [judged])];
   const places = position === null ? undefined : Float64Array.from(position);
   const gain = design?.scores.gain ?? 1;
   const { outlines, seed } = options;

@@ -3,14 +3,14 @@ import { presetsFolder } from '../base/presetsFolder.ts';
 import { formatQuantity } from '../base/quantity.ts';
 import { countText, percentText } from '../draw/quantityText.ts';
 import { loadIndexModel } from '../optics/shelf.ts';
+import { chooseDesign } from '../run/chooseDesign.ts';
 import { jsonText } from '../run/jsonText.ts';
 import { openBrief } from '../run/openBrief.ts';
-import { readDesignFile } from '../run/readDesignFile.ts';
 import type { Response, ResponsePoint } from '../run/response.ts';
 import { responseOf } from '../run/response.ts';
 import { responseCsv } from '../run/responseCsv.ts';
 import { prepareFolder } from '../run/resultsFolder.ts';
-import { beamFieldsWarning, distanceWarning, farZoneWarning, present } from '../run/warnings.ts';
+import { readingWarnings } from '../run/warnings.ts';
 import { refuseExisting, writeWhole } from '../run/writeWhole.ts';
 import { fieldsFor } from '../score/farZoneError.ts';
 import { shortCount } from './designColumns.ts';
@@ -22,7 +22,7 @@ import type { Column } from './table.ts';
 import { table } from './table.ts';
 
 interface Options {
-  outline: string;
+  outline?: string;
   design?: string;
   distance?: string;
   from: string;
@@ -44,20 +44,20 @@ export async function run(place: string, options: Options): Promise<number> {
     prepareFolder(dirname(csv));
     if (!options.force) refuseExisting([csv]);
   }
-  const { brief } = await openBrief(place);
+  const opened = await openBrief(place);
+  const { brief } = opened;
   const { task } = brief;
-  const given = readDesignFile(options.outline, options.design);
+  const { given, warnings: ofResults } = chooseDesign(opened, options);
   const index = loadIndexModel('materials', material, presetsFolder());
   const spheres = { fromM, toM, count, index, material };
   const wanted = options.exact ? 'exact' : 'far';
   const fields = fieldsFor(task, wanted);
   const response = responseOf(task, given, spheres, distance, fields);
-  const largest = { ...task, particles: [{ diameterM: toM, index, material }] };
-  const warnings = present([
-    beamFieldsWarning(task, wanted),
-    fields === 'far' ? farZoneWarning(largest, response.distance_m) : null,
-    distanceWarning(task, response.distance_m),
-  ]);
+  const ends = [fromM, toM].map((diameterM) => ({ diameterM, index, material }));
+  // The brief's own particles count too: they calibrate the gain.
+  const all = { ...task, particles: [...task.particles, ...ends] };
+  const outline = { radiusM: response.radius_m, distanceM: response.distance_m };
+  const warnings = [...ofResults, ...readingWarnings(all, wanted, [outline])];
   if (csv !== undefined) {
     const file = { path: csv, text: responseCsv(response) };
     uninterrupted(() => writeWhole([file], options.force ?? false));

@@ -41,6 +41,16 @@ export interface Light {
   intensityNoisePerHz: number;
 }
 
+/** Shortest and longest wavelength of a light with its drift and the reach of its lines, metres. */
+export function wavelengthRange(light: Light): [shortest: number, longest: number] {
+  const reach = LINE_REACH[light.shape ?? 'gaussian'];
+  const ends = linesOf(light).map(({ wavelengthM, linewidthM }) => [
+    wavelengthM - light.driftM - reach * linewidthM,
+    wavelengthM + light.driftM + reach * linewidthM,
+  ]);
+  return [Math.min(...ends.map(([low]) => low)), Math.max(...ends.map(([, high]) => high))];
+}
+
 /** Every line of a light source, the main one first; the shares add up to 1. */
 export function linesOf({ wavelengthM, linewidthM, also = [] }: Light): FurtherLine[] {
   const share = also.reduce((rest, line) => rest - line.share, 1);

@@ -1,7 +1,10 @@
 import { inputError } from '../base/errors.ts';
 import { formatQuantity } from '../base/quantity.ts';
+import { DIFFUSING_DIAMETERS_M } from '../optics/diffusion.ts';
+import { beamProblems } from '../optics/gaussianBeam.ts';
 import type { IndexModel } from '../optics/indexModel.ts';
 import { coversWavelength, refractiveIndex } from '../optics/indexModel.ts';
+import { linesOf, wavelengthRange } from '../optics/light.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import type { Task } from '../score/task.ts';
 import type { GivenDesign } from './givenDesign.ts';
@@ -21,7 +24,7 @@ export interface ReferenceSpheres {
 /** What a design reads of reference spheres of one diameter, over every place and wavelength of the brief. */
 export interface ResponsePoint {
   diameter_m: number;
-  /** At the nominal wavelength. */
+  /** In the brief's light at its nominal wavelength: the mean over its lines. */
   extinction_m2: number;
   /** The mean over places and wavelengths of reading/extinction, times the extinction. */
   reading_m2: number;
@@ -35,6 +38,8 @@ export interface ResponsePoint {
 
 export interface Response {
   distance_m: number;
+  /** Of the outline. */
+  radius_m: number;
   material: string;
   /** Calibrated over the brief's own particles, as scores do. */
   gain: number;
@@ -47,8 +52,6 @@ export interface Response {
 /** Size parameters for which spheres can be computed, as for the particles of a brief. */
 const SIZE_PARAMETERS = [0.001, 20_000] as const;
 const LEAST_CONTRAST = 1e-6;
-/** A Gaussian line is sampled to about twice its full width at half maximum on either side. */
-const LINEWIDTHS_USED = 2;
 
 /**
  * The expected reading of a design against the diameter of reference spheres.
@@ -85,7 +88,8 @@ export function responseOf(
     };
   });
   const { material } = spheres;
-  return { distance_m: judged.distanceM, material, gain, target, points, holds: runsOf(points) };
+  const { distanceM: distance_m, radiusM: radius_m } = judged;
+  return { distance_m, radius_m, material, gain, target, points, holds: runsOf(points) };
 }
 
 function diametersOf({ fromM, toM, count }: ReferenceSpheres): number[] {
@@ -118,26 +122,51 @@ function runsOf(points: readonly ResponsePoint[]): [from: number, to: number][] 
   return runs;
 }
 
-function checkSpheres({ light, medium }: Task, { fromM, toM, index, material }: ReferenceSpheres): void {
-  const width = light.driftM + LINEWIDTHS_USED * light.linewidthM;
-  const wavelengths = [light.wavelengthM - width, light.wavelengthM, light.wavelengthM + width];
-  const inLength = (metres: number) => formatQuantity(metres, 'length');
-  if (!wavelengths.every((wavelength) => coversWavelength(index, wavelength))) {
+function checkSpheres(
+  { light, medium, placement }: Task,
+  { fromM, toM, index, material }: ReferenceSpheres,
+): void {
+  const [shortest, longest] = wavelengthRange(light);
+  if (!coversWavelength(index, shortest) || !coversWavelength(index, longest)) {
     const [low, high] = index.rangeM.map(inLength);
-    const found = `${material} in light of ${inLength(light.wavelengthM)}`;
-    throw inputError([
-      { key: '--material', found, expected: `light from ${low} to ${high}, where its index is known` },
-    ]);
+    const colours =
+      shortest === longest ? inLength(shortest) : `${inLength(shortest)} to ${inLength(longest)}`;
+    const expected = `light from ${low} to ${high}, where its index is known`;
+    throw inputError([{ key: '--material', found: `${material} in light of ${colours}`, expected }]);
   }
-  const [n, k] = refractiveIndex(index, light.wavelengthM);
-  const [nMedium] = refractiveIndex(medium, light.wavelengthM);
-  if (Math.hypot(n / nMedium - 1, k / nMedium) <= LEAST_CONTRAST) {
+  const colours = [shortest, ...linesOf(light).map(({ wavelengthM }) => wavelengthM), longest];
+  const isInvisible = colours.some((wavelengthM) => {
+    const [n, k] = refractiveIndex(index, wavelengthM);
+    const [nMedium] = refractiveIndex(medium, wavelengthM);
+    return Math.hypot(n / nMedium - 1, k / nMedium) <= LEAST_CONTRAST;
+  });
+  if (isInvisible) {
     throw inputError([{ key: '--material', found: material, expected: 'another material than the medium' }]);
   }
-  const unit = light.wavelengthM / (Math.PI * nMedium);
-  const [least, most] = SIZE_PARAMETERS.map((size) => size * unit);
-  if (fromM >= least && toM <= most) return;
+  // Diameters whose size parameter is 1.
+  const units = colours.map(
+    (wavelengthM) => wavelengthM / (Math.PI * refractiveIndex(medium, wavelengthM)[0]),
+  );
   const found = `${inLength(fromM)} to ${inLength(toM)}`;
-  const expected = `diameters from ${inLength(least)} to ${inLength(most)} in this light`;
+  const least = SIZE_PARAMETERS[0] * Math.max(...units);
+  const most = SIZE_PARAMETERS[1] * Math.min(...units);
+  if (fromM < least || toM > most) {
+    const expected = `diameters from ${inLength(least)} to ${inLength(most)} in this light`;
+    throw inputError([{ key: '--from', found, expected }]);
+  }
+  if (light.beam !== undefined) {
+    const wavelengthM = light.wavelengthM / refractiveIndex(medium, light.wavelengthM)[0];
+    const [problem] = beamProblems(light.beam, wavelengthM, toM / 2);
+    if (problem !== undefined) {
+      const expected = `smaller spheres: of light.beam.waist they ask ${problem.expected}`;
+      throw inputError([{ key: '--to', found: inLength(toM), expected }]);
+    }
+  }
+  if (placement.diffusion === undefined) return;
+  const [small, large] = DIFFUSING_DIAMETERS_M;
+  if (fromM >= small && toM <= large) return;
+  const expected = `diameters from ${inLength(small)} to ${inLength(large)}, for which the brief's diffusion is known`;
   throw inputError([{ key: '--from', found, expected }]);
 }
+
+const inLength = (metres: number) => formatQuantity(metres, 'length');

@@ -1,13 +1,40 @@
 import { formatQuantity } from '../base/quantity.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
+import { isTabled } from '../optics/particle.ts';
 import { spreadOf } from '../reading/spreadOf.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import type { Design } from '../score/design.ts';
-import { farZoneError } from '../score/farZoneError.ts';
+import { farZoneError, fieldsFor } from '../score/farZoneError.ts';
 import type { Task } from '../score/task.ts';
 
 /** Share of the target correction from which the far-zone form's own error is worth a word. */
 const WORTH_SAYING = 0.1;
+
+/** An outline as far as warnings are concerned, metres. */
+interface Outline {
+  radiusM: number;
+  distanceM: number;
+}
+
+/**
+ * All that there is to say about reading outlines against a brief: the same for every command that reads some.
+ *
+ * @param wanted fields that were asked for
+ */
+export function readingWarnings(task: Task, wanted: Fields, outlines: readonly Outline[]): string[] {
+  // Tables of amplitudes stay in the far zone whatever is asked for.
+  const far =
+    fieldsFor(task, wanted) === 'far' ? task : { ...task, particles: task.particles.filter(isTabled) };
+  return present([
+    beamFieldsWarning(task, wanted),
+    tabledFieldsWarning(task, wanted),
+    ...outlines.flatMap(({ distanceM }) => [
+      far.particles.length === 0 ? null : farZoneWarning(far, distanceM),
+      distanceWarning(task, distanceM),
+    ]),
+    diffusionWarning(task, outlines),
+  ]);
+}
 
 /**
  * What the far-zone form leaves out at a distance (see `farZoneError`).
@@ -17,11 +44,11 @@ const WORTH_SAYING = 0.1;
 export function farZoneWarning(task: Task, distanceM: number): string | null {
   const error = farZoneError(task, distanceM);
   if (error <= WORTH_SAYING * task.target.correction) return null;
-  const diameterM = Math.max(...task.particles.map((particle) => particle.diameterM));
-  const particle = `particles of ${formatQuantity(diameterM, 'length', 3)} at ${formatQuantity(distanceM, 'length', 3)}`;
+  const largest = task.particles.reduce((most, one) => (one.diameterM > most.diameterM ? one : most));
+  const particle = `particles of ${formatQuantity(largest.diameterM, 'length', 3)} at ${formatQuantity(distanceM, 'length', 3)}`;
   const about = formatQuantity(error, 'ratio', 2);
   const allowed = formatQuantity(task.target.correction, 'ratio', 3);
-  const tells = task.light.beam === undefined ? ': --exact tells' : '';
+  const tells = task.light.beam === undefined && !isTabled(largest) ? ': --exact tells' : '';
   return `The far-zone form may be off by about ${about} of the extinction for ${particle}, and the target allows ${allowed}${tells}`;
 }
 
@@ -41,9 +68,16 @@ export function fieldsWarning(task: Task, designs: readonly Design[]): string | 
 }
 
 /** Where exact fields are wanted and cannot be had. */
-export function beamFieldsWarning({ light }: Task, wanted: Fields): string | null {
+function beamFieldsWarning({ light }: Task, wanted: Fields): string | null {
   if (wanted === 'far' || light.beam === undefined) return null;
   return "Exact fields are not computed in a focused beam: these are the far zone's";
+}
+
+/** Where exact fields are wanted of particles that are known by their far-zone amplitudes alone. */
+function tabledFieldsWarning({ particles }: Task, wanted: Fields): string | null {
+  const tabled = particles.filter(isTabled).map(({ material }) => material);
+  if (wanted === 'far' || tabled.length === 0) return null;
+  return `Exact fields are not known of particles given by amplitudes, ${[...new Set(tabled)].join(', ')}: theirs are the far zone's`;
 }
 
 /** Where a distance in use lies outside of those that the brief allows. */
@@ -66,7 +100,7 @@ const LARGEST_DIFFUSION_PHASE = 0.7;
  */
 export function diffusionWarning(
   { placement, particles, light, medium }: Task,
-  outlines: readonly { radiusM: number; distanceM: number }[],
+  outlines: readonly Outline[],
 ): string | null {
   if (placement.diffusion === undefined || outlines.length === 0) return null;
   const diameterM = Math.min(...particles.map((particle) => particle.diameterM));
@@ -79,7 +113,7 @@ export function diffusionWarning(
 }
 
 /** What `diffusionWarning` asks of a design. */
-export function outlineOf({ scores, distanceM }: Design): { radiusM: number; distanceM: number } {
+export function outlineOf({ scores, distanceM }: Design): Outline {
   return { radiusM: scores.radius_m, distanceM };
 }
 
