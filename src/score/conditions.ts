@@ -1,5 +1,7 @@
+import type { IndexModel } from '../optics/indexModel.ts';
 import type { Particle } from '../optics/particle.ts';
 import type { Task } from './task.ts';
+import { tellingDiameters } from './tellingDiameters.ts';
 
 /** Particles that differ by their diameter alone, which may be any from the least to the largest. */
 export interface Kind {
@@ -50,44 +52,67 @@ export function particleOf({ kind, diameterM }: Pick<Condition, 'kind' | 'diamet
   return { ...particle, diameterM };
 }
 
-/** Step in size parameter of the diameters that a range is looked at with: a fifth of a ripple of clear spheres, or less. */
-const SIZE_STEP = 0.1;
+/** Step in size parameter of the diameters that a range is looked at with beside its telling ones. */
+const SIZE_STEP = 0.5;
 
-/** Most diameters of all ranges together; beyond, the steps grow. */
-const MOST_DIAMETERS = 240;
+/** Most diameters of one range that are looked at for each of the two. */
+const MOST_DIAMETERS = 100;
+
+/** Most conditions between the ends of all ranges. */
+const MOST_BETWEEN = 240;
 
 /** Conditions that a search for the worst begins with. */
 export interface FirstConditions {
-  /** Single diameters and both ends of a range at every wavelength of −drift, 0, +drift and every depth of −depth, 0, +depth; the brief's other diameters as they are meant. */
+  /**
+   * Single diameters and both ends of a range at every wavelength of −drift, 0, +drift and every depth of −depth, 0, +depth;
+   * the brief's other diameters as they are meant.
+   */
   given: Condition[];
-  /** Between the ends of ranges; wavelengths and depths take turns. */
+  /** Telling and evenly spaced diameters of ranges, each at the ends of drift and depth, or where those are many at one of them in turn. */
   between: Condition[];
 }
 
 export function firstConditions(task: Task, kinds: readonly Kind[]): FirstConditions {
-  const { light, placement } = task;
-  const around = (middle: number, reach: number) =>
-    reach === 0 ? [middle] : [middle - reach, middle, middle + reach];
-  const lights = around(light.wavelengthM, light.driftM).flatMap((wavelengthM) =>
-    around(0, placement.depthM).map((depthM) => ({ wavelengthM, depthM })),
+  const { light, medium, placement } = task;
+  const lightsOf = (wavelengths: readonly number[], depths: readonly number[]) =>
+    wavelengths.flatMap((wavelengthM) => depths.map((depthM) => ({ wavelengthM, depthM })));
+  const nominal = lightsOf([light.wavelengthM], [0]);
+  const ends = lightsOf(endsOf(light.wavelengthM, light.driftM), endsOf(0, placement.depthM));
+  const all = lightsOf(
+    [...new Set([light.wavelengthM, ...endsOf(light.wavelengthM, light.driftM)])],
+    [...new Set([0, ...endsOf(0, placement.depthM)])],
   );
-  const nominal = [{ wavelengthM: light.wavelengthM, depthM: 0 }];
   const given = kinds.flatMap((kind) =>
     kind.diametersM.flatMap((diameterM) => {
       const isEnd = diameterM === kind.leastM || diameterM === kind.largestM;
-      return (isEnd ? lights : nominal).map((one) => ({ kind, diameterM, ...one }));
+      return (isEnd ? all : nominal).map((one) => ({ kind, diameterM, ...one }));
     }),
   );
-  const stepM = (SIZE_STEP * light.wavelengthM) / Math.PI;
-  const wanted = kinds.reduce((sum, { leastM, largestM }) => sum + (largestM - leastM) / stepM, 0);
-  const growth = Math.max(1, wanted / MOST_DIAMETERS);
-  const between = kinds.flatMap((kind) => {
-    const count = Math.ceil((kind.largestM - kind.leastM) / (stepM * growth));
-    return Array.from({ length: Math.max(0, count - 1) }, (_, i) => ({
-      kind,
-      diameterM: kind.leastM + ((kind.largestM - kind.leastM) * (i + 1)) / count,
-      ...lights[i % lights.length],
-    }));
-  });
+  const inside = kinds.flatMap((kind) =>
+    diametersInside(kind, medium, light.wavelengthM).map((diameterM) => ({ kind, diameterM })),
+  );
+  const isFew = inside.length * ends.length <= MOST_BETWEEN;
+  const between = inside.flatMap((one, i) =>
+    (isFew ? ends : [ends[i % ends.length]]).map((where) => ({ ...one, ...where })),
+  );
   return { given, between };
+}
+
+function endsOf(middle: number, reach: number): number[] {
+  return reach === 0 ? [middle] : [middle - reach, middle + reach];
+}
+
+/** Of more telling diameters than can be looked at, those with the extremes of turn. */
+function diametersInside(kind: Kind, medium: IndexModel, wavelengthM: number): number[] {
+  const { leastM, largestM } = kind;
+  const telling = tellingDiameters(kind, medium, wavelengthM).sort((p, q) => p.turn - q.turn);
+  const half = MOST_DIAMETERS / 2;
+  const kept = telling.filter((_, i) => i < half || i >= telling.length - half);
+  const steps = Math.ceil((Math.PI * (largestM - leastM)) / (SIZE_STEP * wavelengthM));
+  const count = Math.min(MOST_DIAMETERS, steps);
+  const even = Array.from(
+    { length: Math.max(0, count - 1) },
+    (_, i) => leastM + ((largestM - leastM) * (i + 1)) / count,
+  );
+  return [...kept.map(({ diameterM }) => diameterM), ...even].sort((p, q) => p - q);
 }

@@ -47,28 +47,31 @@ const SIGNS = [1, -1] as const;
 const TABLE_EFFORT = 10;
 const MOST_STEPS = 1e9;
 /** Local maxima that are climbed to, and the share of the worst first look below which none is. */
-const CLIMBS = 6;
+const CLIMBS = 8;
 const WORTH = 0.85;
 /** First looks of one kind and sign whose size parameters lie nearer than this are one maximum. */
-const APART = 0.5;
+const APART = 0.25;
 /** Rounds over place, wavelength, depth and diameter, and the gain in correction that is worth another, over the worst. */
 const ROUNDS = 3;
 const LEAST_GAIN = 1e-4;
 /** First and last step of a place, radians of phase at the rim (see `samplePositions`). */
 const PLACE_STEPS = [0.25, 0.015] as const;
-/** First step of a diameter in size parameter: half of what separates the first looks. */
-const SIZE_STEP = 0.05;
+/** First step of a diameter in size parameter: as those that telling diameters are found with. */
+const SIZE_STEP = 0.01;
 /** Readings that need a table of their own, for each line that is climbed along. */
-const TABLES = { diameter: 7, wavelength: 4, depth: 4 } as const;
+const TABLES = { diameter: 8, wavelength: 4, depth: 4 } as const;
 
 /**
  * Finds where designs for one task read worst, not among samples, but by climbing: over the particle's place, the depth, the
  * wavelength, and the diameter within every range of the brief.
  *
- * A first look takes diameters 0.1 apart in size parameter (at most 240 in all: wider ranges are looked at more coarsely, and a resonance
- * of a clear sphere narrower than that may be passed over; of outlines so large that this would take long, fewer), with wavelengths and depths in turn, at those places where the
- * brief's own particles read most and least. The worst few are then climbed from, one coordinate after the other, each with
- * its own table. Holds solved particles, and tables of the last distance: make one and keep it, and ask distance by distance.
+ * A first look takes the ends of every range, diameters half a size parameter apart, and those at which the forward amplitude's
+ * phase has an extreme (see `tellingDiameters`), at those places where the brief's own particles read most and least. The
+ * worst few are climbed from, one coordinate after the other, each with its own table. What may be passed over: resonances
+ * of clear spheres narrower than 0.01 in size parameter and, where a range holds more than 100 telling
+ * diameters, or an outline is so large that tables take long, maxima that are none of the sharpest.
+ *
+ * Holds solved particles, and tables of the last distance: make one and keep it, and ask distance by distance.
  */
 export class WorstCases {
   readonly #task: Task;
