@@ -30,7 +30,7 @@ export { readDesignFile } from './run/readDesignFile.ts';
 export { readDesignJson } from './run/readDesignJson.ts';
 export type { Reading } from './run/readings.ts';
 export { listReadings } from './run/readings.ts';
-export type { Progress } from './run/rounds.ts';
+export type { Progress } from './run/progress.ts';
 export { scoreGiven } from './run/scoreGiven.ts';
 export type { SearchResult, SmallestResult } from './run/search.ts';
 export { search, smallest } from './run/search.ts';

@@ -3,6 +3,7 @@ import { refractiveIndex } from '../optics/indexModel.ts';
 import { renderReport } from '../report/renderReport.ts';
 import type { ReportInput } from '../report/reportInput.ts';
 import { designToJson } from '../run/designJson.ts';
+import { endingText } from '../run/ending.ts';
 import { frontCsv } from '../run/frontCsv.ts';
 import { jsonText } from '../run/jsonText.ts';
 import type { OpenedBrief } from '../run/openBrief.ts';
@@ -61,7 +62,7 @@ function runRecord(
 
 function reportInput(
   { brief, text }: OpenedBrief,
-  { designs, evaluations, seconds }: SearchResult,
+  { designs, evaluations, ending }: SearchResult,
   warnings: readonly string[],
 ): ReportInput {
   const { light, medium, placement, target, shop } = brief.task;
@@ -78,7 +79,8 @@ function reportInput(
     offsetM: placement.offsetM,
     targetCorrection: target.correction,
     evaluations,
-    seconds,
+    ending: endingText(ending, evaluations, brief.search.candidates),
+    hints: ending.hints,
     seed: brief.search.seed,
     candidates: brief.search.candidates,
     version: packageVersion(),

@@ -1,35 +1,47 @@
+import { inputError } from '../base/errors.ts';
 import { jsonText } from '../run/jsonText.ts';
-import type { OpenedBrief } from '../run/openBrief.ts';
 import { missesOf } from '../run/ranking.ts';
 import type { Nearest } from '../run/results.ts';
 import { searchToJson } from '../run/results.ts';
-import { prepareFolder, writeResultsFolder } from '../run/resultsFolder.ts';
+import { prepareFolder, UNFINISHED } from '../run/resultsFolder.ts';
 import type { SearchResult } from '../run/search.ts';
 import { search, smallest } from '../run/search.ts';
-import { slug } from '../run/slug.ts';
+import { SearchRun } from '../run/searchRun.ts';
 import { diffusionWarning, fieldsWarning, outlineOf, present } from '../run/warnings.ts';
 import { EXIT } from './exit.ts';
 import { printFront } from './front.ts';
 import { interruptible, uninterrupted } from './interrupt.ts';
 import { note, print, warn } from './notes.ts';
+import { printEnding } from './printEnding.ts';
 import { resultFiles } from './resultFiles.ts';
+import { noteResume, resumeLine } from './resuming.ts';
 import type { SearchingOptions } from './searching.ts';
 import { openForSearch, withProgress, workersOf } from './searching.ts';
+
+const COMMAND = 'search';
+
+/** Where results folders go unless the user says. */
+const RESULTS = 'results';
 
 /** Share of the candidates that looking for the nearest design gets, where nothing keeps the brief's limits. */
 const NEAREST_SHARE = 0.25;
 const LEAST_CANDIDATES = 100;
 
 interface Options extends SearchingOptions {
-  out: string;
+  out?: string;
+  resume?: string;
 }
 
 /** Runs `rimwright search` and gives its exit code. */
-export async function run(place: string, options: Options): Promise<number> {
-  const opened = await openForSearch(place, options);
+export async function run(place: string | undefined, options: Options): Promise<number> {
+  const run = await (options.resume === undefined
+    ? begun(place, options)
+    : resumed(place, options, options.resume));
+  const { opened, folder } = run;
   const { brief } = opened;
-  prepareFolder(options.out);
-  const { result, nearest } = await interruptible((signal) => searchOrNearest(opened, options, signal));
+  const { result, nearest } = await keepingCheckpoint(run, options, () =>
+    interruptible((signal) => searchOrNearest(run, options, signal)),
+  );
   const { designs } = result;
   const warnings = present([
     fieldsWarning(brief.task, designs),
@@ -37,16 +49,73 @@ export async function run(place: string, options: Options): Promise<number> {
   ]);
   const json = searchToJson(brief, result, nearest, warnings);
   const files = resultFiles(opened, result, json, workersOf(options));
-  const written = tried(() => uninterrupted(() => writeResultsFolder(options.out, slug(brief.title), files)));
+  const written = tried(() => uninterrupted(() => run.write(files, !result.stopped)));
   warn(warnings);
   if (options.json) print(jsonText(json));
-  else printFront(brief, result, nearest);
+  else {
+    printFront(brief, result, nearest);
+    printEnding(brief, result);
+  }
   // A long search is not lost where the disk fails: what it found has been printed.
-  if ('fault' in written) throw written.fault;
+  if ('fault' in written) {
+    noteResume(folder);
+    throw written.fault;
+  }
   const parts = '  report.html  front.json  front.csv  run.json  drawings/';
-  if (!options.json) print(`\nWritten to ${written.value}/\n${parts}`);
-  else if (!options.quiet) note(`Written to ${written.value}`);
+  if (!options.json) print(`\nWritten to ${folder}/\n${parts}`);
+  else if (!options.quiet) note(`Written to ${folder}`);
+  if (result.stopped) noteResume(folder);
   return designs.some(({ meetsTarget }) => meetsTarget) ? EXIT.done : EXIT.target;
+}
+
+async function begun(place: string | undefined, options: Options): Promise<SearchRun> {
+  if (place === undefined) {
+    throw inputError([
+      { key: 'brief', found: 'none', expected: "a brief, or --resume with a search's folder" },
+    ]);
+  }
+  const opened = await openForSearch(place, options);
+  const parent = options.out ?? RESULTS;
+  prepareFolder(parent);
+  const others = SearchRun.unfinished(parent, COMMAND, opened, null);
+  const run = SearchRun.begin(parent, COMMAND, opened, null);
+  if (!options.quiet) {
+    for (const other of others)
+      note(`${other} holds a search of this brief that has not ended: ${resumeLine(other)}`);
+    note(`Checkpoint in ${run.folder}/${UNFINISHED}; after a break ${resumeLine(run.folder)}`);
+  }
+  return run;
+}
+
+async function resumed(place: string | undefined, options: Options, folder: string): Promise<SearchRun> {
+  const given = {
+    brief: place,
+    '--candidates': options.candidates,
+    '--seed': options.seed,
+    '--out': options.out,
+  };
+  const problems = Object.entries(given)
+    .filter(([, value]) => value !== undefined)
+    .map(([key, value]) => ({
+      key,
+      found: String(value),
+      expected: 'none: --resume goes on as the search began',
+    }));
+  if (problems.length > 0) throw inputError(problems);
+  const run = SearchRun.resume<null>(folder, COMMAND);
+  if (!options.quiet) note(`Going on with ${folder}: ${run.size} pieces of it are done.`);
+  return run;
+}
+
+/** Where a search fails, says that its checkpoint stays; one that nothing came of goes. */
+async function keepingCheckpoint<T>(run: SearchRun, options: Options, work: () => Promise<T>): Promise<T> {
+  try {
+    return await work();
+  } catch (error) {
+    if (run.size === 0 && options.resume === undefined) run.discard();
+    else noteResume(run.folder);
+    throw error;
+  }
 }
 
 function tried<T>(work: () => T): { value: T } | { fault: unknown } {
@@ -59,11 +128,14 @@ function tried<T>(work: () => T): { value: T } | { fault: unknown } {
 
 /** Searches; where no design keeps the brief's limits at all, looks for the one that comes nearest. */
 async function searchOrNearest(
-  { brief }: OpenedBrief,
+  run: SearchRun,
   options: Options,
   signal: AbortSignal,
 ): Promise<{ result: SearchResult; nearest: Nearest | null }> {
-  const result = await withProgress(brief, options, signal, (course) => search(brief, course));
+  const { brief } = run.opened;
+  const result = await withProgress(brief, options, signal, run.memory('front'), (course) =>
+    search(brief, course),
+  );
   const { designs } = result;
   if (designs.some(({ meetsTarget }) => meetsTarget)) return { result, nearest: null };
   const [best] = designs.toSorted((a, b) => a.scores.correction.worst - b.scores.correction.worst);
@@ -73,7 +145,9 @@ async function searchOrNearest(
     note('No design keeps the limits of this brief. Looking for the one that comes nearest.');
   const candidates = Math.max(LEAST_CANDIDATES, Math.round(NEAREST_SHARE * brief.search.candidates));
   const shorter = { ...brief, search: { ...brief.search, candidates } };
-  const more = await withProgress(shorter, options, signal, (course) => smallest(shorter, 'time', course));
+  const more = await withProgress(shorter, options, signal, run.memory('nearest'), (course) =>
+    smallest(shorter, 'time', course),
+  );
   const { nearest: design, misses } = more;
   return {
     result: {
@@ -81,6 +155,7 @@ async function searchOrNearest(
       evaluations: result.evaluations + more.evaluations,
       seconds: result.seconds + more.seconds,
       stopped: more.stopped,
+      ending: more.ending,
     },
     nearest: design && more.design === null ? { design, misses } : null,
   };

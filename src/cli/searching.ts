@@ -1,8 +1,10 @@
 import { availableParallelism } from 'node:os';
 import type { Brief } from '../run/brief.ts';
 import type { CourseOptions } from '../run/course.ts';
+import type { JobMemory } from '../run/journal.ts';
 import type { OpenedBrief } from '../run/openBrief.ts';
 import { openBrief } from '../run/openBrief.ts';
+import type { Progress } from '../run/progress.ts';
 import { note, noteDefaults } from './notes.ts';
 import { openProgress } from './progress.ts';
 
@@ -39,6 +41,7 @@ export async function withProgress<T>(
   { title, search }: Brief,
   options: SearchingOptions,
   signal: AbortSignal,
+  memory: JobMemory | null,
   work: (course: CourseOptions) => Promise<T>,
 ): Promise<T> {
   const quiet = options.quiet ?? false;
@@ -46,7 +49,8 @@ export async function withProgress<T>(
   if (!quiet) note(`${title}: ${search.candidates} candidates, seed ${search.seed}, workers: ${workers}`);
   const display = openProgress(search.candidates, quiet);
   try {
-    return await work({ workers, signal, onProgress: (progress) => display.show(progress) });
+    const onProgress = (progress: Progress) => display.show(progress);
+    return await work({ workers, signal, onProgress, ...(memory && { memory }) });
   } finally {
     display.close();
   }

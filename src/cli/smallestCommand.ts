@@ -14,6 +14,7 @@ import { EXIT } from './exit.ts';
 import { designTable, printNearest } from './front.ts';
 import { interruptible, uninterrupted } from './interrupt.ts';
 import { note, print, printWrapped, warn } from './notes.ts';
+import { printEnding } from './printEnding.ts';
 import type { SearchingOptions } from './searching.ts';
 import { openForSearch, withProgress } from './searching.ts';
 
@@ -31,7 +32,7 @@ export async function run(place: string, { by, out, force, ...options }: Options
     if (!force) refuseExisting([out]);
   }
   const result = await interruptible((signal) =>
-    withProgress(brief, options, signal, (course) => smallest(brief, by, course)),
+    withProgress(brief, options, signal, null, (course) => smallest(brief, by, course)),
   );
   const { design, nearest, misses } = result;
   const shown = design ?? nearest;
@@ -50,6 +51,7 @@ export async function run(place: string, { by, out, force, ...options }: Options
     if (design !== null)
       printWrapped(`The smallest by ${by} that meets the target: ${measureText(design, by)}.`);
     else printNearest(nearest && { design: nearest, misses }, brief.task, result.stopped);
+    printEnding(brief, result);
   }
   return design === null ? EXIT.target : EXIT.done;
 }

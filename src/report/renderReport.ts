@@ -1,5 +1,5 @@
 import { markupText } from '../draw/plainText.ts';
-import { percentText, quantityText, timeText } from '../draw/quantityText.ts';
+import { percentText, quantityText } from '../draw/quantityText.ts';
 import { CAUTIONS } from './cautions.ts';
 import { designSection } from './designSection.ts';
 import { designTable } from './designTable.ts';
@@ -32,6 +32,7 @@ export function renderReport(input: ReportInput): string {
     briefSection(input),
     '<h2 id="run">The run</h2>',
     runList(input),
+    endingSection(input),
     '</main>',
     `<footer><p>Written by Rimwright ${markupText(input.version)}.</p></footer>`,
     '</body>',
@@ -75,20 +76,19 @@ function briefSection({ briefText, defaults }: ReportInput): string {
   ].join('\n');
 }
 
-function runList({
-  version,
-  seed,
-  candidates,
-  evaluations,
-  seconds,
-  wavelengthMediumM,
-}: ReportInput): string {
+function endingSection({ ending, hints }: ReportInput): string {
+  return [
+    `<p>${markupText(ending)}</p>`,
+    ...(hints.length > 0 ? ['<h3>To get further</h3>', textList(hints, '')] : []),
+  ].join('\n');
+}
+
+function runList({ version, seed, candidates, evaluations, wavelengthMediumM }: ReportInput): string {
   const rows: [name: string, value: string][] = [
     ['Version', markupText(version)],
     ['Seed', String(seed)],
     ['Candidates asked for', String(candidates)],
     ['Evaluations', String(evaluations)],
-    ['Duration', timeText(seconds)],
     ['Wavelength in the medium', quantityText(wavelengthMediumM, 'm')],
   ];
   return `<dl>${rows.map(([name, value]) => `<div><dt>${name}</dt><dd>${value}</dd></div>`).join('')}</dl>`;

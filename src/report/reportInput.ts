@@ -1,4 +1,5 @@
 import type { OutlineElement } from '../outline/shape.ts';
+import type { Scores } from '../score/scores.ts';
 
 /** One design as the report shows it: plain data in SI units, with the keys of a results file's `scores`. */
 export interface ReportDesign {
@@ -13,7 +14,7 @@ export interface ReportDesign {
   scores: {
     gain: number;
     /** Relative to `gain`, over every particle, wavelength and position, and of the mean over a distribution: 0.01 is 1 %. */
-    correction: { worst: number; rms: number; population?: number };
+    correction: Scores['correction'];
     lobe: { ratio: number };
     /** `time_s` is null where no time can be said. */
     snr: { required: number; time_s: number | null };
@@ -43,7 +44,10 @@ export interface ReportInput {
   /** Largest |correction| that the target allows. */
   targetCorrection: number;
   evaluations: number;
-  seconds: number;
+  /** Why the run ended and how much it still brought, in a sentence or two. */
+  ending: string;
+  /** What to change in the brief to get further. */
+  hints: readonly string[];
   seed: number;
   /** Candidates that the search was asked for. */
   candidates: number;

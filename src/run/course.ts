@@ -6,8 +6,13 @@ import { Workshop } from '../crew/workshop.ts';
 import type { Aim } from '../score/aim.ts';
 import type { Design } from '../score/design.ts';
 import type { Brief } from './brief.ts';
+import type { JobMemory } from './journal.ts';
+import type { Progress } from './progress.ts';
+import { Pace } from './progress.ts';
 import { missesOf } from './ranking.ts';
-import type { Findings, Progress } from './rounds.ts';
+import type { Hands } from './remembering.ts';
+import { remembering } from './remembering.ts';
+import type { Findings } from './rounds.ts';
 import { Rounds } from './rounds.ts';
 
 export interface CourseOptions {
@@ -16,6 +21,8 @@ export interface CourseOptions {
   onProgress?: (progress: Progress) => void;
   /** Ends the search early; what was found so far is still finished and ranked. */
   signal?: AbortSignal;
+  /** What has been done before an interruption, and where to write down what is done now. */
+  memory?: JobMemory;
   /** Absolute path of the compiled worker, for tests that run from the sources. */
   workerEntry?: string;
 }
@@ -35,6 +42,9 @@ export interface CourseResult {
   seconds: number;
   /** Set where the search was stopped before its budget was spent. */
   stopped: boolean;
+  /** As in `Findings`. */
+  settled: boolean;
+  movedInLastQuarter: number | null;
 }
 
 /** Times that a candidate beyond the target is refined once more, and how far beyond it may be for that. */
@@ -51,7 +61,7 @@ export async function runCourse(
   options: CourseOptions,
   conclude: (finish: Finish) => Promise<Design[]>,
 ): Promise<CourseResult> {
-  const started = performance.now();
+  const pace = new Pace(options.memory?.seconds ?? 0);
   const { task, families } = brief;
   const orders: Orders = { task, families };
   // The variants are what the main thread needs of it; it also finishes what a stopped crew has left.
@@ -62,19 +72,21 @@ export async function runCourse(
   // A signal that came before, or while the crew started, tells nobody any more.
   if (options.signal?.aborted) stop();
   try {
-    const quest = { task, variants: workshop.variants, aims, ...brief.search };
-    const rounds = new Rounds(quest, crew, options.onProgress ?? (() => {}));
+    const { variants, distances } = workshop.space;
+    const quest = { task, variants, distances, aims, ...brief.search };
+    const hands = options.memory ? remembered(crew, options.memory, pace) : crew;
+    const rounds = new Rounds(quest, hands, (progress) => options.onProgress?.(pace.timed(progress)));
     await runRounds(rounds, options.signal);
     const finishWith = (hands: Hands, mayRepair: boolean) =>
       conclude(finishing(rounds, brief, aims, hands, mayRepair));
     const designs = await untilStopped(
-      () => finishWith(crew, true),
+      () => finishWith(hands, true),
       () => finishWith(handsOf(workshop), false),
       options.signal,
     );
-    const seconds = (performance.now() - started) / 1000;
+    const { evaluations, settled, movedInLastQuarter } = rounds.findings;
     const stopped = options.signal?.aborted ?? false;
-    return { designs, evaluations: rounds.findings.evaluations, seconds, stopped };
+    return { designs, evaluations, seconds: pace.elapsedS, stopped, settled, movedInLastQuarter };
   } finally {
     options.signal?.removeEventListener('abort', stop);
     await crew.dismiss();
@@ -105,7 +117,14 @@ async function untilStopped<Result>(
   }
 }
 
-type Hands = Pick<Crew, 'do'>;
+function remembered(crew: Crew, memory: JobMemory, pace: Pace): Hands {
+  return remembering(
+    crew,
+    memory,
+    () => pace.elapsedS,
+    (result) => pace.recall('evaluations' in result ? result.evaluations : 0),
+  );
+}
 
 function handsOf(workshop: Workshop): Hands {
   return { do: async <J extends Job>(job: J): Promise<ResultOf<J>> => workshop.do(job) };

@@ -7,6 +7,7 @@ const MACHINE_WORDS: Record<string, string> = {
   EPERM: 'no permission',
   EROFS: 'the disk is read-only',
   EMFILE: 'too many files are open',
+  EFBIG: 'a file may not grow any further',
 };
 
 /** Places that a user chose badly: another name helps. */

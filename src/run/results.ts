@@ -4,6 +4,7 @@ import type { BriefJson } from './briefJson.ts';
 import { briefToJson } from './briefJson.ts';
 import type { DesignJson } from './designJson.ts';
 import { designToJson } from './designJson.ts';
+import type { Ending } from './ending.ts';
 import type { RankedDesign } from './ranking.ts';
 import type { SearchResult, SmallestResult } from './search.ts';
 
@@ -25,6 +26,7 @@ export interface SearchJson {
   seconds: number;
   /** Whether the search was interrupted before its budget was spent. */
   stopped: boolean;
+  ending: Ending;
 }
 
 /**
@@ -36,7 +38,7 @@ export function searchToJson(
   nearest: Nearest | null,
   warnings: readonly string[],
 ): SearchJson {
-  const { designs, evaluations, seconds, stopped } = result;
+  const { designs, evaluations, seconds, stopped, ending } = result;
   return {
     brief: briefToJson(brief),
     designs: designs.map(designToJson),
@@ -45,6 +47,7 @@ export function searchToJson(
     evaluations,
     seconds,
     stopped,
+    ending,
   };
 }
 
@@ -59,6 +62,7 @@ export interface SmallestJson {
   evaluations: number;
   seconds: number;
   stopped: boolean;
+  ending: Ending;
 }
 
 /** The plain form of the result of `smallest`. */
@@ -67,7 +71,7 @@ export function smallestToJson(
   result: SmallestResult,
   warnings: readonly string[],
 ): SmallestJson {
-  const { design, nearest, misses, evaluations, seconds, stopped } = result;
+  const { design, nearest, misses, evaluations, seconds, stopped, ending } = result;
   return {
     brief: briefToJson(brief),
     design: design && designToJson(design),
@@ -77,5 +81,6 @@ export function smallestToJson(
     evaluations,
     seconds,
     stopped,
+    ending,
   };
 }

@@ -7,24 +7,31 @@ import type { Aim } from '../score/aim.ts';
 import { missedLimits } from '../score/aim.ts';
 import type { Task } from '../score/task.ts';
 import { ParetoArchive } from '../search/paretoArchive.ts';
+import { FrontHistory } from './frontHistory.ts';
 import { FRONT_REACH } from './ranking.ts';
+import { maskJobs, seedsOf } from './seeding.ts';
+import type { FamilyStanding } from './standing.ts';
+import { Standing } from './standing.ts';
 
 /** What a search is asked. */
 export interface Quest {
   task: Task;
   variants: readonly Variant[];
+  /** Ascending, metres. */
+  distances: readonly number[];
   /** The first is the main one. */
   aims: readonly Aim[];
   candidates: number;
   seed: number;
 }
 
-/** How far a search has come. */
-export interface Progress {
+/** How far the rounds have come. */
+export interface RoundsProgress {
   evaluations: number;
   candidates: number;
   /** The best candidate for the main aim so far. */
   best: Candidate | null;
+  families: FamilyStanding[];
   /** What was worked on last. */
   variant: string;
 }
@@ -36,10 +43,14 @@ export interface Findings {
   best: { candidate: Candidate; value: number }[][];
   /** Trade-offs of correction, time and radius within the brief's limits. */
   front: Candidate[];
+  /** Whether the laps came to their end before the candidates did. */
+  settled: boolean;
+  /** As `FrontHistory` says. */
+  movedInLastQuarter: number | null;
 }
 
 /** Shares of the budget that the seeds and the first look get; laps of digging and refining share the rest. */
-const SHARES = { seed: 0.1, scout: 0.25 };
+const SHARES = { seed: 0.25, scout: 0.15 };
 
 /** Share of the budget that is kept for refining once more what finer judging finds a little beyond the target. */
 const RESERVE = 0.08;
@@ -58,13 +69,8 @@ const LEAST_REFINE = 250;
 /** Evaluations for one candidate that is refined once more. */
 const AGAIN_BUDGET = 400;
 
-/** Variants that are seeded from the least radial masks, and the distances (by place) and gains to solve those for. */
-const SEEDED = ['rings-4'];
-const SEED_PLACES = [0, 0.33, 0.67, 1];
-const SEED_GAINS = [0.5, 1, 2];
-
 /** Evaluations that a seed's descent may take. */
-const SEED_BUDGET = 300;
+const SEED_BUDGET = 500;
 
 /** Evaluations of one job when digging; a run of CMA-ES in a handful of dimensions comes to rest in about as many. */
 const DIG = 1200;
@@ -80,25 +86,35 @@ const LEAST_LOOK = 40;
 export class Rounds {
   readonly #quest: Quest;
   readonly #crew: Pick<Crew, 'do'>;
-  readonly #onProgress: (progress: Progress) => void;
+  readonly #onProgress: (progress: RoundsProgress) => void;
   readonly #best: Map<string, { candidate: Candidate; value: number }>[];
   readonly #archive = new ParetoArchive<Candidate>(FRONT_RESOLUTION, 60);
+  readonly #standing: Standing;
+  readonly #history: FrontHistory;
   #evaluations = 0;
+  /** Those whose candidates are kept, in the order of the jobs. */
+  #kept = 0;
   #stream = 0;
-  /** The best for the main aim that a report has shown. */
-  #shown: ExploreResult['best'] = null;
+  #settled = false;
 
-  constructor(quest: Quest, crew: Pick<Crew, 'do'>, onProgress: (progress: Progress) => void) {
+  constructor(quest: Quest, crew: Pick<Crew, 'do'>, onProgress: (progress: RoundsProgress) => void) {
     this.#quest = quest;
     this.#crew = crew;
     this.#onProgress = onProgress;
+    this.#standing = new Standing(quest.variants, quest.aims[0]);
+    this.#history = new FrontHistory(quest.candidates);
     this.#best = quest.aims.map(() => new Map());
   }
 
   /** Runs all rounds. When the crew is dismissed in between, what has been found stays in `findings`. */
   async run(): Promise<void> {
-    await this.#round(this.#scout());
-    for (let lap = 0; lap < MOST_LAPS && this.#left > 0.03 * this.#quest.candidates; lap++) {
+    const seeds = await this.#seeds();
+    await this.#round([...seeds, ...this.#glances()]);
+    for (let lap = 0; this.#left > 0.03 * this.#quest.candidates; lap++) {
+      if (lap === MOST_LAPS) {
+        this.#settled = true;
+        return;
+      }
       // Early laps leave something for later ones, which start from what is found by then.
       const share = this.#left / Math.max(1, LAPS - lap);
       await this.#round(this.#dig(DIG_SHARE * share, lap === 0));
@@ -127,26 +143,29 @@ export class Rounds {
       evaluations: this.#evaluations,
       best: this.#best.map((found) => [...found.values()].sort((a, b) => a.value - b.value)),
       front: this.#archive.members().map(({ payload }) => payload),
+      settled: this.#settled,
+      movedInLastQuarter: this.#history.movedInLastQuarter(this.#kept, this.#objectives()),
     };
   }
 
-  /** Every family gets the same share, split over its variants; rings are also seeded from the least masks. */
-  #scout(): ExploreJob[] {
-    return [...this.#seeds(), ...this.#glances()];
+  #objectives(): (readonly number[])[] {
+    return this.#archive.members().map(({ objectives }) => objectives);
   }
 
-  #seeds(): ExploreJob[] {
-    const { variants, candidates, task } = this.#quest;
-    const places = task.detector.distanceM[0] === task.detector.distanceM[1] ? [0] : SEED_PLACES;
-    const gains = task.target.gain === 'one' ? [1] : SEED_GAINS;
-    const rings = variants.filter(({ id }) => SEEDED.includes(id));
-    const jobs = rings.flatMap(({ id }) =>
-      places.flatMap((place) => gains.map((gain) => ({ id, mask: { place, gain } }))),
-    );
-    const budget = Math.min(SEED_BUDGET, (SHARES.seed * candidates) / jobs.length);
-    return jobs.map(({ id, mask }) => ({ ...this.#job(id, 0, budget), method: 'seed' as const, mask }));
+  /** Descents from what the least masks stand for. */
+  async #seeds(): Promise<ExploreJob[]> {
+    const budget = SHARES.seed * this.#quest.candidates;
+    const jobs = maskJobs(this.#quest, budget);
+    const results = await Promise.all(jobs.map((job) => this.#crew.do(job)));
+    const seeds = seedsOf(this.#quest, jobs, results);
+    return seeds.map(({ variant, vector }) => ({
+      ...this.#job(variant, 0, Math.min(SEED_BUDGET, budget / seeds.length)),
+      method: 'seed' as const,
+      from: vector,
+    }));
   }
 
+  /** Every family gets the same share, split over its variants. */
   #glances(): ExploreJob[] {
     const { variants, candidates } = this.#quest;
     const families = [...new Set(variants.map(({ family }) => family))];
@@ -238,8 +257,10 @@ export class Rounds {
     }
   }
 
-  #keep(job: ExploreJob, { best, front }: ExploreResult): void {
+  #keep(job: ExploreJob, { best, front, evaluations }: ExploreResult): void {
     for (const candidate of front) this.#offer(candidate);
+    this.#kept += evaluations;
+    this.#history.note(this.#kept, () => this.#objectives());
     if (best === null) return;
     const found = this.#best[this.#quest.aims.indexOf(job.aim)];
     const held = found.get(job.variant);
@@ -254,13 +275,13 @@ export class Rounds {
     this.#archive.add(frontObjectives(candidate), candidate);
   }
 
-  #report(job: ExploreJob, { best }: ExploreResult): void {
-    const isMain = job.aim === this.#quest.aims[0];
-    if (isMain && best && (this.#shown === null || best.value < this.#shown.value)) this.#shown = best;
+  #report(job: ExploreJob, result: ExploreResult): void {
+    this.#standing.note(job, result);
     this.#onProgress({
       evaluations: this.#evaluations,
       candidates: this.#quest.candidates,
-      best: this.#shown?.candidate ?? null,
+      best: this.#standing.best,
+      families: this.#standing.families,
       variant: job.variant,
     });
   }

@@ -4,6 +4,8 @@ import type { Design } from '../score/design.ts';
 import type { Brief } from './brief.ts';
 import type { CourseOptions } from './course.ts';
 import { runCourse } from './course.ts';
+import type { Ending } from './ending.ts';
+import { endingOf } from './ending.ts';
 import type { RankedDesign } from './ranking.ts';
 import { missesOf, rankAll, rankFront } from './ranking.ts';
 
@@ -14,6 +16,7 @@ export interface SearchResult {
   seconds: number;
   /** Set where the search was stopped before its budget was spent. */
   stopped: boolean;
+  ending: Ending;
 }
 
 export interface SmallestResult {
@@ -26,6 +29,7 @@ export interface SmallestResult {
   evaluations: number;
   seconds: number;
   stopped: boolean;
+  ending: Ending;
 }
 
 /** Corrections that a search aims for, over the target: the front shows what more or less of it costs. */
@@ -54,7 +58,9 @@ export async function search(brief: Brief, options: CourseOptions): Promise<Sear
     const rest = [...others, ...best[0].slice(ON_TARGET)].map(({ candidate }) => candidate);
     return [...onTarget, ...(await finish.asTheyAre([...front, ...rest]))];
   });
-  return { ...course, designs: rankFront(course.designs, brief.task) };
+  const { evaluations, seconds, stopped } = course;
+  const designs = rankFront(course.designs, brief.task);
+  return { designs, evaluations, seconds, stopped, ending: endingOf(course, brief, designs) };
 }
 
 /** Searches for the one design with the least `measure` that meets the target. */
@@ -73,5 +79,9 @@ export async function smallest(
   // It stands alone: the others that were judged do not number it.
   const nearest = chosen ? { ...chosen, id: `${chosen.family}-1`, rank: 1 } : null;
   const design = nearest?.meetsTarget ? nearest : null;
-  return { ...course, design, nearest, misses: nearest ? missesOf(nearest, task) : [] };
+  const { evaluations, seconds, stopped } = course;
+  // Its front is a by-product, of which nothing is told.
+  const ending = endingOf({ ...course, movedInLastQuarter: null }, brief, nearest ? [nearest] : []);
+  const misses = nearest ? missesOf(nearest, task) : [];
+  return { design, nearest, misses, evaluations, seconds, stopped, ending };
 }

@@ -15,14 +15,16 @@ export interface Outcome {
   stderr: string;
 }
 
-/** Runs the compiled program as a user would, in the folder `cwd`. */
+/** Runs the compiled program as a user would, in the folder `cwd`; `under` is a command that runs it in turn. */
 export function runCli(
   args: readonly string[],
   cwd: string,
   env: Record<string, string> = {},
+  under: readonly string[] = [],
 ): Promise<Outcome> {
+  const [command, ...rest] = [...under, process.execPath, MAIN, ...args];
   return new Promise((resolve, reject) => {
-    const child = spawn(process.execPath, [MAIN, ...args], {
+    const child = spawn(command, rest, {
       cwd,
       env: { ...process.env, ...env },
       stdio: ['ignore', 'pipe', 'pipe'],

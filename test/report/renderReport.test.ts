@@ -128,7 +128,8 @@ describe('report', () => {
     for (const part of [
       '0.1.0',
       '20012',
-      '93.2 s',
+      'because its candidates were spent: 19520 of 20000',
+      'target.lobe: 2 of 7 designs lie at 10 %, a higher limit may lead further',
       'light.drift: 0 nm',
       'The narrowest ring is 1.3 µm wide.',
     ]) {

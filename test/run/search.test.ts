@@ -3,7 +3,7 @@ import type { FamilyName } from '../../src/outline/families/family.ts';
 import type { Brief } from '../../src/run/brief.ts';
 import type { CourseOptions } from '../../src/run/course.ts';
 import { FRONT_REACH, missesOf } from '../../src/run/ranking.ts';
-import type { Progress } from '../../src/run/rounds.ts';
+import type { Progress } from '../../src/run/progress.ts';
 import { search, smallest } from '../../src/run/search.ts';
 import { REPORT_FINENESS } from '../../src/score/fineness.ts';
 import { Judge } from '../../src/score/judge.ts';

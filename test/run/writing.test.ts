@@ -15,7 +15,12 @@ import fc from 'fast-check';
 import { describe, expect, it, onTestFinished } from 'vitest';
 import { RimwrightError } from '../../src/base/errors.ts';
 import { diskFault } from '../../src/run/diskFault.ts';
-import { prepareFolder, writeResultsFolder } from '../../src/run/resultsFolder.ts';
+import {
+  claimResultsFolder,
+  fillResultsFolder,
+  prepareFolder,
+  unfinishedFolders,
+} from '../../src/run/resultsFolder.ts';
 import { slug } from '../../src/run/slug.ts';
 import { writeWhole } from '../../src/run/writeWhole.ts';
 
@@ -108,29 +113,56 @@ describe('writeWhole', () => {
   });
 });
 
-describe('writeResultsFolder', () => {
+describe('results folders', () => {
   const FILES = [
     { path: 'front.json', text: '{}' },
     { path: 'drawings/a.svg', text: '<svg/>' },
   ];
 
-  it('takes the next free name, files and broken links counted as taken', () => {
+  it('take the next free name, files and broken links counted as taken', () => {
     const parent = folder();
-    expect(writeResultsFolder(parent, 'run', FILES)).toBe(join(parent, 'run'));
+    expect(claimResultsFolder(parent, 'run', () => {})).toBe(join(parent, 'run'));
     writeFileSync(join(parent, 'run-2'), 'a file');
     mkdirSync(join(parent, 'run-3'));
-    writeFileSync(join(parent, 'run-3/x'), '');
     symlinkSync('/no/such/place', join(parent, 'run-4'));
-    expect(writeResultsFolder(parent, 'run', FILES)).toBe(join(parent, 'run-5'));
+    expect(claimResultsFolder(parent, 'run', () => {})).toBe(join(parent, 'run-5'));
     expect(readdirSync(parent)).toEqual(['run', 'run-2', 'run-3', 'run-4', 'run-5']);
-    expect(readFileSync(join(parent, 'run-5/drawings/a.svg'), 'utf8')).toBe('<svg/>');
+    expect(readdirSync(join(parent, 'run'))).toEqual(['unfinished']);
+    expect(unfinishedFolders(parent, 'run')).toEqual([join(parent, 'run')]);
   });
 
-  it('leaves nothing behind where writing fails half-way', () => {
+  it('leave nothing behind where they cannot be prepared', () => {
     const parent = folder();
-    const bad = [...FILES, { path: 'front.json/inside-a-file', text: 'x' }];
-    expect(faultOf(() => writeResultsFolder(parent, 'run', bad)).code).toBe('input');
+    const full = Object.assign(new Error('full'), { code: 'ENOSPC' });
+    const claim = () =>
+      claimResultsFolder(parent, 'run', () => {
+        throw full;
+      });
+    expect(faultOf(claim).message).toBe(`cannot write ${parent}: the disk is full`);
     expect(readdirSync(parent)).toEqual([]);
+  });
+
+  it('are filled in place of the results of an interruption, and nothing else in them is touched', () => {
+    const run = claimResultsFolder(folder(), 'run', () => {});
+    fillResultsFolder(run, [...FILES, { path: 'drawings/old.svg', text: 'old' }]);
+    writeFileSync(join(run, 'my notes'), 'mine');
+    fillResultsFolder(run, [{ path: 'front.json', text: '{"a":1}' }, FILES[1]]);
+    expect(readdirSync(run).sort()).toEqual(['drawings', 'front.json', 'my notes', 'unfinished']);
+    expect(readdirSync(join(run, 'drawings'))).toEqual(['a.svg']);
+    expect(readFileSync(join(run, 'front.json'), 'utf8')).toBe('{"a":1}');
+    expect(readdirSync(join(run, 'unfinished'))).toEqual([]);
+  });
+
+  it('stay as they were where writing fails half-way', () => {
+    const run = claimResultsFolder(folder(), 'run', () => {});
+    fillResultsFolder(run, FILES);
+    const bad = [
+      { path: 'front.json', text: 'new' },
+      { path: 'front.json/inside-a-file', text: 'x' },
+    ];
+    expect(faultOf(() => fillResultsFolder(run, bad)).code).toBe('input');
+    expect(readFileSync(join(run, 'front.json'), 'utf8')).toBe('{}');
+    expect(readdirSync(join(run, 'unfinished'))).toEqual([]);
   });
 });
 
