@@ -11,7 +11,6 @@ import { openBrief } from '../run/openBrief.ts';
 import type { RankedDesign } from '../run/ranking.ts';
 import { rankGiven, scoreGiven } from '../run/scoreGiven.ts';
 import { outlineOf, present, readingWarnings } from '../run/warnings.ts';
-import { fieldsFor } from '../score/farZoneError.ts';
 import type { Task } from '../score/task.ts';
 import { DESIGN_COLUMNS, MEETS_COLUMN, shopColumn } from './designColumns.ts';
 import { EXIT } from './exit.ts';
@@ -38,7 +37,7 @@ export async function run(
   const { brief } = opened;
   const { task } = brief;
   const wanted = options.exact ? 'exact' : 'far';
-  const compared = scoreAll(opened, choices, distance, fieldsFor(task, wanted));
+  const compared = scoreAll(opened, choices, distance, wanted);
   const designs = rankGiven(compared.designs);
   const warnings = present([...compared.warnings, ...readingWarnings(task, wanted, designs.map(outlineOf))]);
   if (!options.json) noteDefaults(brief.defaults);

@@ -12,7 +12,6 @@ import { responseCsv } from '../run/responseCsv.ts';
 import { prepareFolder } from '../run/resultsFolder.ts';
 import { readingWarnings } from '../run/warnings.ts';
 import { refuseExisting, writeWhole } from '../run/writeWhole.ts';
-import { fieldsFor } from '../score/farZoneError.ts';
 import { shortCount } from './designColumns.ts';
 import { EXIT } from './exit.ts';
 import { uninterrupted } from './interrupt.ts';
@@ -50,14 +49,13 @@ export async function run(place: string, options: Options): Promise<number> {
   const { given, warnings: ofResults } = chooseDesign(opened, options);
   const index = loadIndexModel('materials', material, presetsFolder());
   const spheres = { fromM, toM, count, index, material };
-  const wanted = options.exact ? 'exact' : 'far';
-  const fields = fieldsFor(task, wanted);
+  const fields = options.exact ? 'exact' : 'far';
   const response = responseOf(task, given, spheres, distance, fields);
   const ends = [fromM, toM].map((diameterM) => ({ diameterM, index, material }));
   // The brief's own particles count too: they calibrate the gain.
   const all = { ...task, particles: [...task.particles, ...ends] };
   const outline = { radiusM: response.radius_m, distanceM: response.distance_m };
-  const warnings = [...ofResults, ...readingWarnings(all, wanted, [outline])];
+  const warnings = [...ofResults, ...readingWarnings(all, fields, [outline])];
   if (csv !== undefined) {
     const file = { path: csv, text: responseCsv(response) };
     uninterrupted(() => writeWhole([file], options.force ?? false));

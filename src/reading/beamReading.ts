@@ -11,8 +11,16 @@ import type { BoundaryNodes } from './boundaryReading.ts';
  * A node beyond the table's reach gives NaN.
  *
  * @param px, py place of the particle, metres, within the table's offset of the axis
+ * @param axisX, axisY where the beam's axis meets the plane that the nodes are in, metres
  */
-export function beamReading(table: BeamTable, nodes: BoundaryNodes, px: number, py: number): number {
+export function beamReading(
+  table: BeamTable,
+  nodes: BoundaryNodes,
+  px: number,
+  py: number,
+  axisX = 0,
+  axisY = 0,
+): number {
   const { pieces, cells, cellsPerM2, axis, perUnit, shadow } = table;
   const p2 = px * px + py * py;
   if (p2 > table.farthestM ** 2) return 0;
@@ -21,8 +29,8 @@ export function beamReading(table: BeamTable, nodes: BoundaryNodes, px: number, 
   const scatteredAt = 8 * table.terms + curvedAt;
   const twofoldAt = scatteredAt + 16;
   const stride = axis === null ? twofoldAt : twofoldAt + 8 * table.terms + 4;
-  const cx = shadow * px;
-  const cy = shadow * py;
+  const cx = axisX + shadow * px;
+  const cy = axisY + shadow * py;
   const ux = perUnit * px;
   const uy = perUnit * py;
   const u2 = perUnit * p2;

@@ -68,20 +68,11 @@ function checkLight({ light }: BriefValues, report: Report): void {
 /** What a focused beam asks of the light and of the particles. */
 function checkFocus({ light, medium }: BriefValues, particles: Particle[], report: Report): void {
   if (light?.beam === undefined || typeof light.beam === 'string') return;
-  const path: Path = ['light', 'beam'];
-  if (light.also)
-    report.refuse(path, 'flat, for a focused beam has one line', 'a focused beam of several lines');
-  if (light.sourceAngle !== undefined && light.sourceAngle > 0) {
-    report.refuse(
-      path,
-      'flat, for a focused beam has no source of an angular size',
-      'a focused beam and a sourceAngle',
-    );
-  }
   const { waist, focus = 0 } = light.beam;
   if (waist === undefined || light.wavelength === undefined || medium === undefined) return;
-  if (!coversWavelength(medium.item, light.wavelength)) return;
-  const wavelength = light.wavelength / refractiveIndex(medium.item, light.wavelength)[0];
+  const lines = [light, ...(light.also ?? [])].flatMap(({ wavelength }) => wavelength ?? []);
+  if (!lines.every((line) => coversWavelength(medium.item, line))) return;
+  const wavelength = Math.max(...lines.map((line) => line / refractiveIndex(medium.item, line)[0]));
   const radius = Math.max(0, ...particles.map(({ diameterM }) => diameterM / 2));
   for (const { key, expected } of beamProblems({ waistM: waist, focusM: focus }, wavelength, radius)) {
     report.refuse((key ?? '').split('.'), expected);

@@ -3,7 +3,6 @@ import { formatQuantity } from '../base/quantity.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
 import { ringsRadius } from '../outline/area.ts';
 import type { Fields } from '../reading/tableShelf.ts';
-import { fieldsFor } from '../score/farZoneError.ts';
 import { REPORT_FINENESS } from '../score/fineness.ts';
 import { Judge } from '../score/judge.ts';
 import type { Task } from '../score/task.ts';
@@ -30,7 +29,7 @@ export interface OutlineJudge {
  *
  * @param distanceM in place of the outline's own or the brief's
  * @param place the one place of the particle that will be asked for, metres; null for all that the brief allows
- * @param fields of the sphere that are wanted: the far zone's, or the exact ones (see `fieldsFor`)
+ * @param fields of the sphere: the far zone's, or the exact ones
  * @throws RimwrightError `input` where no distance is given, or the geometry is out of reach of the far-zone form or of
  *   this machine's memory
  */
@@ -50,8 +49,7 @@ export function judgeOutline(
   };
   checkGeometry(around, given.file);
   checkEffort(around, place === null, given.file);
-  const used = fieldsFor(task, fields);
-  return { judge: new Judge(around, REPORT_FINENESS, used), fields: used, distanceM: distance, radiusM };
+  return { judge: new Judge(around, REPORT_FINENESS, fields), fields, distanceM: distance, radiusM };
 }
 
 function chooseDistance({ detector }: Task, given: GivenDesign, chosen: number | null): number {

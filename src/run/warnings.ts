@@ -4,7 +4,7 @@ import { isTabled } from '../optics/particle.ts';
 import { spreadOf } from '../reading/spreadOf.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import type { Design } from '../score/design.ts';
-import { farZoneError, fieldsFor } from '../score/farZoneError.ts';
+import { farZoneError } from '../score/farZoneError.ts';
 import type { Task } from '../score/task.ts';
 
 /** Share of the target correction from which the far-zone form's own error is worth a word. */
@@ -23,10 +23,8 @@ interface Outline {
  */
 export function readingWarnings(task: Task, wanted: Fields, outlines: readonly Outline[]): string[] {
   // Tables of amplitudes stay in the far zone whatever is asked for.
-  const far =
-    fieldsFor(task, wanted) === 'far' ? task : { ...task, particles: task.particles.filter(isTabled) };
+  const far = wanted === 'far' ? task : { ...task, particles: task.particles.filter(isTabled) };
   return present([
-    beamFieldsWarning(task, wanted),
     tabledFieldsWarning(task, wanted),
     ...outlines.flatMap(({ distanceM }) => [
       far.particles.length === 0 ? null : farZoneWarning(far, distanceM),
@@ -48,7 +46,7 @@ export function farZoneWarning(task: Task, distanceM: number): string | null {
   const particle = `particles of ${formatQuantity(largest.diameterM, 'length', 3)} at ${formatQuantity(distanceM, 'length', 3)}`;
   const about = formatQuantity(error, 'ratio', 2);
   const allowed = formatQuantity(task.target.correction, 'ratio', 3);
-  const tells = task.light.beam === undefined && !isTabled(largest) ? ': --exact tells' : '';
+  const tells = !isTabled(largest) ? ': --exact tells' : '';
   return `The far-zone form may be off by about ${about} of the extinction for ${particle}, and the target allows ${allowed}${tells}`;
 }
 
@@ -65,12 +63,6 @@ export function fieldsWarning(task: Task, designs: readonly Design[]): string | 
       ? 'the far zone, and the exact ones meet the target where it is said to be met'
       : 'the exact solution';
   return `Far-zone and exact fields differ by up to ${formatQuantity(difference, 'ratio', 2)} of the extinction for these designs. Scores are of ${leading}`;
-}
-
-/** Where exact fields are wanted and cannot be had. */
-function beamFieldsWarning({ light }: Task, wanted: Fields): string | null {
-  if (wanted === 'far' || light.beam === undefined) return null;
-  return "Exact fields are not computed in a focused beam: these are the far zone's";
 }
 
 /** Where exact fields are wanted of particles that are known by their far-zone amplitudes alone. */

@@ -1,24 +1,21 @@
-import { inputError, RimwrightError } from '../base/errors.ts';
+import { RimwrightError } from '../base/errors.ts';
 import { LegendreRules } from '../numeric/gaussLegendre.ts';
-import { axialIrradiance } from '../optics/gaussianBeam.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
 import { nodesArea, ringsRadius } from '../outline/area.ts';
 import { boundaryNodes } from '../outline/boundaryNodes.ts';
 import { ringNodes } from '../outline/ringNodes.ts';
 import type { OutlineElement, Shape } from '../outline/shape.ts';
 import { shapeRadius } from '../outline/shapeRadius.ts';
-import { beamPath, particleIrradiance } from '../reading/beamPath.ts';
+import { irradianceAt } from '../reading/beamLines.ts';
 import type { FlightMeans } from '../reading/flightMeans.ts';
-import { farthest, plainFlights } from '../reading/flightMeans.ts';
-import { litArea } from '../reading/litArea.ts';
+import { plainFlights } from '../reading/flightMeans.ts';
+import { lightThrough } from '../reading/litArea.ts';
 import type { Symmetry } from '../reading/positions.ts';
 import { NO_FLIGHT } from '../reading/positions.ts';
 import { Readers } from '../reading/readers.ts';
 import type { EdgeDensity } from '../reading/roughEdge.ts';
 import type { Scenario } from '../reading/scenario.ts';
-import { coherence } from '../reading/scenario.ts';
 import { spreadOf } from '../reading/spreadOf.ts';
-import { tableDensity } from '../reading/tableDensity.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import { correctionOf } from './correction.ts';
 import type { ElementArea } from './cost.ts';
@@ -66,8 +63,7 @@ export class Judge {
   readonly #populations: readonly Population[];
 
   /**
-   * @param fields those of the far zone, or the exact ones: see `farZoneError` for when that matters. In a focused beam they are
-   *   the far zone's in any case: see `fieldsFor`.
+   * @param fields those of the far zone, or the exact ones: see `farZoneError` for when that matters
    */
   constructor(task: Task, fineness: Fineness, fields: Fields = 'far') {
     this.task = task;
@@ -96,9 +92,8 @@ export class Judge {
   localIrradiance(scenario: number, distanceM: number, [x, y, z]: readonly [number, number, number]): number {
     const { beam } = this.task.light;
     if (beam === undefined) return 1;
-    const { wavenumber } = coherence(this.scenarios[scenario]);
-    const path = beamPath(beam, wavenumber, z, distanceM - z, this.#spreadsM[scenario]);
-    return particleIrradiance(path, x * x + y * y) * axialIrradiance(beam, wavenumber, z);
+    const spreadM = this.#spreadsM[scenario];
+    return irradianceAt(this.scenarios[scenario], beam, { x, y, z, distanceM, spreadM });
   }
 
   /** Scores a shape as its family draws it; the ratios reading/extinction behind the correction come along. */
@@ -177,7 +172,6 @@ export class Judge {
    *
    * @param radiusM how far from the axis it will be asked for
    * @param place of the particle, metres
-   * @throws RimwrightError `input` in a focused beam
    */
   edgeDensity(
     scenario: number,
@@ -185,26 +179,14 @@ export class Judge {
     radiusM: number,
     [px, py]: readonly [x: number, y: number],
   ): EdgeDensity {
-    if (this.task.light.beam !== undefined) {
-      const expected = 'beam: flat, for rough edges are not read in a focused beam';
-      throw inputError([{ key: 'light.beam', found: 'a focused beam', expected }]);
-    }
     const flight = this.#sampling.flight(radiusM, distanceM);
-    const table = this.#readers.tables(distanceM, radiusM + Math.hypot(px, py) + farthest(flight))[scenario];
     const points = flight.map((along, i) => along + (i % 2 === 0 ? px : py));
-    return tableDensity(table, points, this.scenarios[scenario].extinctionM2);
-  }
-
-  /**
-   * Ratios reading/extinction of a shape at a few places along one radius, whatever breaks its symmetry: for linear programs.
-   *
-   * @param radiusM radius of the outline whose sampling is wanted, at least the shape's own
-   */
-  shapeRatios(shape: Shape, distanceM: number, radiusM: number): Float64Array {
-    const elements = this.shapeNodes(shape, distanceM);
-    const positions = this.#sampling.maskPositions(radiusM, distanceM, shape);
-    const flights = this.#sampling.flights(positions, radiusM, distanceM, shape);
-    return flatten(this.#ratios(elements, radiusM, distanceM, flights, this.#sampling.depths()));
+    const density = this.#readers.density(scenario, distanceM, radiusM, points);
+    const { extinctionM2 } = this.scenarios[scenario];
+    return (x, y, out) => {
+      density(x, y, out);
+      for (let i = 0; i < 3; i++) out[i] /= extinctionM2;
+    };
   }
 
   /** Boundary nodes of a shape, dense enough for every place, depth and line of the task. */
@@ -249,11 +231,12 @@ export class Judge {
 
   /** Elements with the areas that would collect as much power in a flat wave. */
   #lit(elements: readonly ElementNodes[], distanceM: number): readonly ElementArea[] {
-    const { beam } = this.task.light;
+    const { light, medium } = this.task;
+    const { beam } = light;
     if (beam === undefined) return elements;
     return elements.map(({ weight, nodes }) => ({
       weight,
-      areaM2: litArea(beam, (2 * Math.PI) / this.wavelengthM, distanceM, nodes),
+      areaM2: lightThrough({ ...light, beam }, medium, distanceM, nodes),
     }));
   }
 

@@ -8,16 +8,13 @@ import { flightMirrors, flightSymmetry } from '../reading/flightMirrors.ts';
 import type { Fringes } from '../reading/fringes.ts';
 import { fringesAt } from '../reading/fringes.ts';
 import { farthestRead } from '../reading/placement.ts';
-import type { FlightRule, MostPlaces, Symmetry } from '../reading/positions.ts';
+import type { FlightRule, Symmetry } from '../reading/positions.ts';
 import { flightPoints, flightRule, samplePositions } from '../reading/positions.ts';
 import type { Fineness } from './fineness.ts';
 import type { Task } from './task.ts';
 
 /** An outline without any symmetry that is known of. */
 export const NO_SYMMETRY: Symmetry = { folds: 1, mirror: false };
-
-/** Places along one radius: enough for a mask that a search only begins with, and few enough for its linear program. */
-const MASK_PLACES: MostPlaces = { circles: 6, steps: 1 };
 
 /** Where and how densely a task is sampled: places of the particle, points of its flight, nodes of a boundary. */
 export class Sampling {
@@ -48,13 +45,19 @@ export class Sampling {
   /** How densely boundaries are sampled for every place, depth and line. */
   density(distanceM: number): NodeDensity {
     const { placement, light } = this.#task;
-    const lines = linesOf(light).map(({ wavelengthM }) => wavelengthM);
-    const shortest = (Math.min(...lines) - light.driftM) / light.wavelengthM;
-    const places = [-placement.depthM, 0, placement.depthM].map((placeM) => this.fringes(distanceM, placeM));
-    const magnification = Math.max(...places.map((fringes) => fringes.magnification));
+    const { beam, driftM } = light;
+    const fringes = linesOf(light).flatMap(({ wavelengthM }) => {
+      const wavenumber = (this.#wavenumber * light.wavelengthM) / (wavelengthM - driftM);
+      return [-placement.depthM, 0, placement.depthM].map((placeM) =>
+        fringesAt(beam, wavenumber, distanceM, placeM),
+      );
+    });
+    const magnification = Math.max(...fringes.map((one) => one.magnification));
+    // Tilted beams of a source move what is seen; a flat wave's table holds their mean.
+    const shiftM = beam === undefined ? 0 : distanceM * Math.tan(light.sourceAngleRad ?? 0);
     return {
-      kappa: Math.max(...places.map(({ kappa }) => kappa)) / shortest,
-      offsetM: magnification * farthestRead(placement),
+      kappa: Math.max(...fringes.map(({ kappa }) => kappa)),
+      offsetM: magnification * farthestRead(placement) + shiftM,
       perRadian: this.#fineness.perRadian,
       least: 6,
     };
@@ -96,7 +99,10 @@ export class Sampling {
 
   /** Points and weights of the flight, for its mean. */
   flightRule(radiusM: number, distanceM: number): FlightRule {
-    return flightRule(this.#task.placement.crossing, this.phasePerMetre(radiusM, distanceM), this.#rules);
+    const { placement } = this.#task;
+    // Fringes pass a particle the faster, the farther it is from the far rim.
+    const farthestM = radiusM + farthestRead(placement);
+    return flightRule(placement.crossing, this.phasePerMetre(farthestM, distanceM), this.#rules);
   }
 
   /**
@@ -116,17 +122,5 @@ export class Sampling {
     const phasePerMetre = 2 * kappa * (radiusM + farthestRead(placement));
     const grid = new FlightGrid(middles, crossing, { phasePerMetre, mirrors, tail: this.#fineness.tail });
     return grid.readings < (middles.length / 2) * rule.weights.length ? grid : plain;
-  }
-
-  /** Places along one radius, whatever breaks the outline's symmetry: for linear programs. */
-  maskPositions(radiusM: number, distanceM: number, symmetry: Symmetry): Float64Array {
-    const perMetre = 2 * this.fringes(distanceM, 0).kappa * radiusM;
-    return samplePositions(
-      this.#task.placement.offsetM,
-      perMetre,
-      this.#fineness.spacing,
-      symmetry,
-      MASK_PLACES,
-    );
   }
 }

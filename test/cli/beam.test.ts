@@ -50,17 +50,27 @@ describe('rimwright in a focused beam', () => {
     },
   );
 
-  it('says that exact fields are not to be had, and uses those of the far zone', async () => {
+  it('reads the exact fields', async () => {
     const { code, stdout } = await read('--exact');
-    const { fields, warnings } = JSON.parse(stdout);
-    expect([code, fields]).toEqual([0, 'far']);
-    expect(warnings).toContain("Exact fields are not computed in a focused beam: these are the far zone's");
+    expect([code, JSON.parse(stdout).fields]).toEqual([0, 'exact']);
   });
 
-  it('refuses rough edges there', async () => {
-    const { code, stderr } = await read('--rough', '1 um, 5 um');
-    expect(code).toBe(2);
-    expect(stderr).toContain('light.beam: found a focused beam, expected beam: flat');
+  it('reads rough edges as the closed estimate has it', async () => {
+    const { code, stdout } = await read('--rough', '0.5 um, 5 um', '--position', '40 um, -30 um');
+    expect(code).toBe(0);
+    const [{ first }] = JSON.parse(stdout).rough.readings;
+    expect(first.spread / first.estimate.spread).toBeGreaterThan(0.6);
+    expect(first.spread / first.estimate.spread).toBeLessThan(1.6);
+    expect(Math.abs(first.mean - first.estimate.mean)).toBeLessThan(first.estimate.spread);
+  });
+
+  it('reads a second line and a source of an angular size', async () => {
+    const light = 'also: [{ wavelength: 532 nm, share: 40 % }], sourceAngle: 1 mrad, beam:';
+    const folder = folderWith({ 'brief.yaml': BRIEF.replace('beam:', light), 'square.csv': OUTLINE });
+    const files = [join(folder, 'brief.yaml'), '--outline', join(folder, 'square.csv')];
+    const { code, stdout } = await runHere(['reading', ...files, '--json']);
+    expect(code).toBe(0);
+    expect(JSON.parse(stdout).readings[0].local_irradiance).toBeCloseTo(1, 12);
   });
 
   it('searches the brief of the shelf', async () => {
@@ -81,6 +91,9 @@ describe('rimwright in a focused beam', () => {
     const text = readFileSync(join(folder, 'latex-beads-in-a-focused-beam', 'front.json'), 'utf8');
     const { designs } = JSON.parse(text);
     expect(designs.length).toBeGreaterThan(0);
-    for (const { fields, otherFields } of designs) expect([fields, otherFields]).toEqual(['far', undefined]);
+    for (const { fields, otherFields } of designs) {
+      expect(fields).toBe('far');
+      expect(otherFields.difference).toBeLessThan(1e-3);
+    }
   });
 });

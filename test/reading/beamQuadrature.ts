@@ -1,6 +1,7 @@
 import { gaussLegendre } from '../../src/numeric/gaussLegendre.ts';
 import { scatteringAmplitudes } from '../../src/optics/mieAmplitudes.ts';
 import type { MieCoefficients } from '../../src/optics/mieCoefficients.ts';
+import { FIELD_NUMBERS, scatteredField } from '../../src/optics/scatteredField.ts';
 
 /** A particle in a beam before a plane, metres; `focusM` and `z` from the nominal place, the plane at `planeM`. */
 export interface Arrangement {
@@ -10,6 +11,8 @@ export interface Arrangement {
   planeM: number;
   place: readonly [x: number, y: number, z: number];
   sphere: MieCoefficients;
+  /** Whether the sphere's exact fields are taken, at the plane's distance. */
+  near?: boolean;
   /** Angle of the field from x, radians; unpolarised light without it. */
   polarizationRad?: number;
 }
@@ -129,7 +132,7 @@ function scatteredAmplitude(set: Arrangement, half: number, d: number) {
   const at = Array.from({ length: count }, (_, i) => Math.cos((Math.PI * (i + 0.5)) / count));
   const waves = spectrum(set);
   const values = new Float64Array(6 * count * count);
-  const table = amplitudeTable(sphere);
+  const table = amplitudeTable(sphere, set.near ? k * d : null);
   const s = new Float64Array(4);
   for (let i = 0; i < count; i++) {
     for (let j = 0; j < count; j++) {
@@ -201,13 +204,26 @@ function spectrum({ wavenumber: k, waistM, focusM, place }: Arrangement): number
   return out;
 }
 
-/** S1 and S2 from a fine table in √(1 − cosΘ). */
-function amplitudeTable(sphere: MieCoefficients) {
+/**
+ * S1 and S2 from a fine table in √(1 − cosΘ). At a finite kr what stands for them in the crossed flux: the mean of the transverse
+ * electric and magnetic fields, for light that runs along r.
+ */
+function amplitudeTable(sphere: MieCoefficients, kr: number | null) {
   const cells = 4000;
   const most = 1;
   const known = new Float64Array(4 * (cells + 4));
-  for (let i = 0; i < cells + 4; i++)
-    scatteringAmplitudes(sphere, 1 - ((i - 1) / cells) ** 2 * most, known, 4 * i);
+  const field = new Float64Array(FIELD_NUMBERS);
+  for (let i = 0; i < cells + 4; i++) {
+    const versine = ((i - 1) / cells) ** 2 * most;
+    if (kr === null) scatteringAmplitudes(sphere, 1 - versine, known, 4 * i);
+    else {
+      scatteredField(sphere, kr, versine, field);
+      for (let c = 0; c < 2; c++) {
+        known[4 * i + c] = (field[2 + c] + field[6 + c]) / 2;
+        known[4 * i + 2 + c] = (field[c] + field[8 + c]) / 2;
+      }
+    }
+  }
   return (versine: number, out: Float64Array) => {
     const position = Math.sqrt(versine / most) * cells + 1;
     const cell = Math.floor(position);

@@ -163,6 +163,41 @@ describe('beamReading, against direct quadrature over the plane with every plane
   });
 });
 
+describe('beamReading, exact fields', () => {
+  it.each([
+    ['on the axis', [0, 0], 1e-5],
+    ['beside it', [40, 30], 1e-5],
+  ] as const)(
+    'is the sum over the plane waves, each with its field at the plane: %s',
+    (_name, [x, y], allowed) => {
+      const sphere = { diameterM: 20 * UM, index: [1.5, 0.01] } as const;
+      const [waistM, planeM, radiusM] = [100 * UM, 3 * MM, 150 * UM];
+      const scenario = scenarioOf(sphere, 0.3);
+      const offsetM = Math.hypot(x, y) * UM;
+      const place = placement(planeM, radiusM, { offsetM });
+      const beam = { waistM, focusM: 0 };
+      const outline = { rings: [star(radiusM, 5, 0.5)] };
+      const read = (fields: 'far' | 'exact') => {
+        const table = buildBeamTable(scenario, beam, { ...place, fields });
+        return beamReading(table, nodesOf(outline, table, offsetM), x * UM, y * UM) / scenario.extinctionM2;
+      };
+      const sphereOf = mieCoefficients((K * sphere.diameterM) / 2, sphere.index);
+      const rule = ruleOf(outline, radiusM, buildBeamTable(scenario, beam, place), offsetM);
+      const set = {
+        wavenumber: K,
+        waistM,
+        focusM: 0,
+        planeM,
+        place: [x * UM, y * UM, 0] as const,
+        sphere: sphereOf,
+      };
+      const quadrature = quadratureReading({ ...set, near: true }, rule) / scenario.extinctionM2;
+      expect(Math.abs(read('exact') - quadrature)).toBeLessThan(allowed);
+      expect(Math.abs(read('far') - quadrature)).toBeGreaterThan(5e-4);
+    },
+  );
+});
+
 describe('beamReading, limits', () => {
   const ring = Float64Array.from(star(400 * UM, 5, 0.5));
   const distanceM = 20 * MM;
