@@ -66,12 +66,17 @@ describe('Judge: flights', () => {
     expect(Math.max(...here.map((ratio, i) => Math.abs(ratio - there[i])))).toBeLessThan(1e-4);
   });
 
-  it('stay within the cone that particles are solved for, however wide the offset', () => {
-    // The corner of the rectangle about these flights is 1.4 times farther out than any of them.
-    const { detector, ...task } = flying({ spanM: 1e-4, headingRad: 0 }, 1e-3);
-    const limits = { ...detector, radiusM: [5e-5, 2e-4], distanceM: [Z, Z] } satisfies Task['detector'];
-    const judge = new Judge({ ...task, detector: limits }, SEARCH_FINENESS);
-    const { scores } = judge.scoreShape(drawn(variantNamed('disc'), [9]), Z);
-    expect(Number.isFinite(scores.correction.worst)).toBe(true);
+  it('are read within the cone that particles are solved for, however wide the offset', () => {
+    // The corner of the rectangle about these flights is 1.3 times farther out than any of them.
+    const offsetM = 3.6e-4;
+    const { detector, light, ...task } = flying({ spanM: 1.4e-4, headingRad: 0 }, offsetM);
+    const limits = { ...detector, radiusM: [5e-5, 1e-4], distanceM: [Z, Z] } satisfies Task['detector'];
+    const judge = new Judge({ ...task, light: { ...light, driftM: 0 }, detector: limits }, SEARCH_FINENESS);
+    const square = { weight: 1, rings: [Float64Array.of(1e-4, 0, 0, 1e-4, -1e-4, 0, 0, -1e-4)] };
+    // Few enough places, and each flight would be read for itself.
+    const most = { circles: 16, steps: 300 };
+    const places = samplePositions(offsetM, 5e6, 0.5, { folds: 1, mirror: false }, most);
+    const { ratios } = judge.outlineRatios([square], Z, places);
+    expect(ratios[0].every(Number.isFinite)).toBe(true);
   });
 });
