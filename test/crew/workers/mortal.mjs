@@ -4,7 +4,7 @@ import { Workshop } from '../../../dist/crew/workshop.js';
 
 const workshop = new Workshop(workerData);
 let jobs = 0;
-parentPort.on('message', (job) => {
+parentPort.on('message', async (job) => {
   if (++jobs === 3) process.exit(0);
-  parentPort.postMessage({ result: workshop.do(job) });
+  parentPort.postMessage({ result: await workshop.do(job) });
 });
