@@ -1,0 +1,159 @@
+import type { RandomSource } from '../base/random.ts';
+import type { Member } from './frontMember.ts';
+import { CORNER, type FrontPopulation } from './frontPopulation.ts';
+import { hypervolume } from './hypervolume.ts';
+import { type LocalFit, localFit } from './localFit.ts';
+
+/** Least and largest number of neighbours of a model, by their logarithm alike. */
+const NEIGHBOURS = [12, 50] as const;
+
+/** Places that are looked at for one point, and neighbours that decide what a place would be worth. */
+const PLACES = 6;
+const NEAREST = 20;
+
+/** Chance and size of a random part, in units of differences between neighbours. */
+const NOISE_CHANCE = 0.1;
+const NOISE = 0.5;
+
+/** How far below its neighbours a new point may aim, in units of the best of them. */
+const AMBITION = 3;
+
+/** Weight of the penalty on the slope along the height: few neighbours know little of it. */
+const SLOPE_PENALTY = 0.1;
+
+/**
+ * A point for a gap of the front, from a linear model of the coordinates as functions of the place on the front.
+ *
+ * The best points of a smooth problem form a smooth sheet of one dimension less than there are objectives (the regularity
+ * used by Zhang, Zhou & Jin (2008), IEEE Trans. Evol. Comput. 12, 41); the model from objectives to coordinates is that of
+ * Cheng, Jin, Narukawa & Sendhoff (2015), IEEE Trans. Evol. Comput. 19, 838, with least squares in place of their
+ * Gaussian processes. A fit over many neighbours evens out what is accidental in each; its slope along the height,
+ * across the front, leads downhill. Of several places near a worthy point the one with most hypervolume to gain is taken.
+ *
+ * @returns undefined where there are too few points for a model
+ */
+export function modelled(population: FrontPopulation, random: RandomSource): Float64Array | undefined {
+  const { members } = population;
+  const centre = population.worthy(random);
+  const dimension = centre.place.length - 1;
+  const [few, many] = NEIGHBOURS;
+  const count = Math.min(members.length, 1 + Math.round(few * (many / few) ** random.uniform()));
+  if (centre.violation > 0 || count < 2 * dimension + 4) return undefined;
+  const neighbours = nearest(members, centre, count);
+  if (neighbours.length < 2 * dimension + 4) return undefined;
+
+  const middle = alongFront(centre.place);
+  const offsets = neighbours.map(({ place }) => alongFront(place).map((v, j) => v - middle[j]));
+  const heights = neighbours.map(({ place }) => height(place));
+  const flat = localFit(offsets.map((v) => [1, ...v]));
+  const coefficients = flat?.coefficients(heights);
+  if (!coefficients) return undefined;
+
+  const draw = () => someOffset(offsets, random);
+  const target = bestOffset(draw, neighbours.slice(0, NEAREST), middle, coefficients);
+  const excess = heights.map((h, k) => h - predicted(coefficients, offsets[k]));
+  const aim = AMBITION * random.uniform() * Math.min(...excess);
+  const full = localFit(
+    offsets.map((v, k) => [1, ...v, excess[k]]),
+    [0, ...target.map(() => 0), SLOPE_PENALTY],
+  );
+  const weights = (full as LocalFit | undefined)?.weights([1, ...target, aim]);
+  if (!weights) return undefined;
+
+  const isNoisy = random.uniform() < NOISE_CHANCE;
+  const any = () => neighbours[Math.floor(neighbours.length * random.uniform())].unit;
+  return centre.unit.map((_, i) => {
+    let x = 0;
+    for (let k = 0; k < neighbours.length; k++) x += weights[k] * neighbours[k].unit[i];
+    if (isNoisy) x += NOISE * random.normal() * (any()[i] - any()[i]);
+    return Math.min(1, Math.max(0, x));
+  });
+}
+
+/** Mean of the objectives: how far a place is from the best corner. */
+function height(place: readonly number[]): number {
+  return place.reduce((sum, x) => sum + x, 0) / place.length;
+}
+
+/** Coordinates across the direction (1, 1, …), one fewer than objectives: no two points of a front share them. */
+function alongFront(place: readonly number[]): number[] {
+  let sum = 0;
+  return place.slice(1).map((x, j) => {
+    sum += place[j];
+    return (sum - (j + 1) * x) / Math.sqrt((j + 1) * (j + 2));
+  });
+}
+
+/** The place with these coordinates along the front and this height. */
+function placeAt(along: readonly number[], high: number): number[] {
+  const place = new Array<number>(along.length + 1).fill(high);
+  for (const [j, v] of along.entries()) {
+    const part = v / Math.sqrt((j + 1) * (j + 2));
+    for (let i = 0; i <= j; i++) place[i] += part;
+    place[j + 1] -= (j + 1) * part;
+  }
+  return place;
+}
+
+function predicted(coefficients: readonly number[], offset: readonly number[]): number {
+  return offset.reduce((sum, v, j) => sum + coefficients[j + 1] * v, coefficients[0]);
+}
+
+/** Somewhere between the centre and its next neighbours, or a little beyond on the other side. */
+function someOffset(offsets: readonly (readonly number[])[], random: RandomSource): number[] {
+  const dimension = offsets[0].length;
+  const sum = new Array<number>(dimension).fill(0);
+  for (let part = 0; part < dimension; part++) {
+    const neighbour = offsets[1 + Math.floor((2 * dimension + 2) * random.uniform())];
+    const share = 1.3 * random.uniform() - 0.5;
+    for (let j = 0; j < dimension; j++) sum[j] += share * neighbour[j];
+  }
+  return sum;
+}
+
+/** Of some offsets the one where a point at the height of the model would add most. */
+function bestOffset(
+  draw: () => number[],
+  neighbours: readonly Member[],
+  middle: readonly number[],
+  coefficients: readonly number[],
+): number[] {
+  const corner = new Array<number>(middle.length + 1).fill(CORNER);
+  let best = draw();
+  let most = 0;
+  for (let k = 0, offset = best; k < PLACES; k++, offset = draw()) {
+    const along = middle.map((v, j) => v + offset[j]);
+    const place = placeAt(along, predicted(coefficients, offset));
+    if (place.some((x) => x >= CORNER)) continue;
+    const whole = place.reduce((product, x) => product * (CORNER - x), 1);
+    const taken = neighbours.map((member) => member.place.map((x, j) => Math.max(x, place[j])));
+    const gain = whole - hypervolume(taken, corner);
+    if (gain <= most) continue;
+    most = gain;
+    best = offset;
+  }
+  return best;
+}
+
+/** The members nearest to one along the front, itself first; at most `count`, only allowed ones. */
+function nearest(members: readonly Member[], centre: Member, count: number): Member[] {
+  const middle = alongFront(centre.place);
+  const found = [centre];
+  const distances = [-1];
+  for (const member of members) {
+    if (member === centre || member.violation > 0) continue;
+    const along = alongFront(member.place);
+    let squared = 0;
+    for (let j = 0; j < along.length; j++) squared += (along[j] - middle[j]) ** 2;
+    if (found.length === count && squared >= distances[count - 1]) continue;
+    if (found.length === count) {
+      found.pop();
+      distances.pop();
+    }
+    let at = found.length;
+    while (distances[at - 1] > squared) at--;
+    found.splice(at, 0, member);
+    distances.splice(at, 0, squared);
+  }
+  return found;
+}
