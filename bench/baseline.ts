@@ -1,7 +1,6 @@
 import optimjs from 'optimization-js';
 import { randomStream } from '../src/base/random.ts';
 import { tryCandidate } from '../src/crew/candidate.ts';
-import type { Job, ResultOf } from '../src/crew/messages.ts';
 import { Workshop } from '../src/crew/workshop.ts';
 import type { FamilyName, Variant } from '../src/outline/families/family.ts';
 import { Rounds } from '../src/run/rounds.ts';
@@ -38,9 +37,9 @@ export async function benchBaseline() {
     const variant = space.variants.find((one) => one.id === id) as Variant;
     for (const seed of SEEDS) {
       const workshop = new Workshop({ task, families: [family] });
-      const hands = { do: async <J extends Job>(job: J): Promise<ResultOf<J>> => workshop.do(job) };
-      const quest = { task, variants: workshop.variants, aims: [aim], candidates: BUDGET, seed };
-      const rounds = new Rounds(quest, hands, () => {});
+      const { variants, distances } = workshop.space;
+      const quest = { task, variants, distances, aims: [aim], candidates: BUDGET, seed };
+      const rounds = new Rounds(quest, workshop, () => {});
       await rounds.run();
       ours.push(Math.exp(rounds.findings.best[0][0].value) / floor);
       const f = (x: number[]) => tryCandidate(judge, space, variant, Float64Array.from(x), aim).value;

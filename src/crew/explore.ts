@@ -3,12 +3,10 @@ import { randomStream } from '../base/random.ts';
 import type { Variant } from '../outline/families/family.ts';
 import type { Aim } from '../score/aim.ts';
 import type { Judge } from '../score/judge.ts';
-import { leastRadialMask, maskRims } from '../score/radialMask.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
 import { nelderMead } from '../search/nelderMead.ts';
 import { RestartedCma } from '../search/restartedCma.ts';
 import type { Candidate } from './candidate.ts';
-import { distanceAt } from './candidate.ts';
 import { descend } from './descend.ts';
 import { Trials } from './trials.ts';
 
@@ -24,14 +22,11 @@ export interface ExploreJob {
   stream: number;
   /**
    * `glance`: descents from many starts. `evolve`: CMA-ES from start after start, then a descent from its best.
-   * `refine`: descents and Nelder–Mead from `from`, at its distance and at neighbouring ones. `seed`: a descent from the
-   * rings of the least radial mask.
+   * `refine`: descents and Nelder–Mead from `from`, at its distance and at neighbouring ones. `seed`: one descent from there.
    */
   method: 'glance' | 'evolve' | 'refine' | 'seed';
-  /** Vector of the candidate to refine. */
+  /** Where to refine or seed from; a start of the variant's own if left out. */
   from?: number[];
-  /** Place on the distance grid and gain of the mask to seed from. */
-  mask?: { place: number; gain: number };
 }
 
 export interface ExploreResult {
@@ -48,15 +43,18 @@ const DESCENT_SHARE = 0.2;
 /** Differences in the logarithm of what is made small below this are not worth a generation: the descent finds them. */
 const LEAST_GAIN = 1e-4;
 
+/** First steps from a seed, over the variant's natural lengths. */
+const SEED_STEP = 0.5;
+
 /** Does one job within its budget. */
 export function explore(job: ExploreJob, judge: Judge, space: SearchSpace): ExploreResult {
   const variant = space.variants.find(({ id }) => id === job.variant) as Variant;
   const trials = new Trials(judge, space, variant, job.aim, job.budget);
   const random = randomStream(job.seed, job.stream);
+  const from = Float64Array.from(job.from ?? drawStart(trials, random).start);
   if (job.method === 'glance') glance(trials, random);
   else if (job.method === 'evolve') evolve(trials, random);
-  else if (job.mask) descendFromMask(trials, job.mask);
-  else refine(trials, Float64Array.from(job.from ?? drawStart(trials, random).start), random);
+  else (job.method === 'seed' ? descendOnce : refine)(trials, from, random);
   return { evaluations: trials.spent, best: trials.best, front: trials.front };
 }
 
@@ -85,21 +83,14 @@ function evolve(trials: Trials, random: RandomSource): void {
   if (best && trials.left > 0) descend(trials, Float64Array.from(best.candidate.vector), scales);
 }
 
-/** A descent from the rings of the least radial mask, for a variant that draws as many rims. */
-function descendFromMask(trials: Trials, { place: at, gain }: { place: number; gain: number }): void {
-  const { judge, space, variant, aim } = trials;
-  const count = variant.parameters.length;
-  if (count % 2 === 1) return;
-  const distanceM = distanceAt(space, at);
-  const largestPhase = Math.min(
-    variant.parameters[0].high,
-    judge.kappa(distanceM) * judge.task.detector.radiusM[1] ** 2,
+/** One descent from a start that is known to be good. */
+function descendOnce(trials: Trials, from: Float64Array, random: RandomSource): void {
+  const { scales } = drawStart(trials, random);
+  descend(
+    trials,
+    from,
+    scales.map((scale) => SEED_STEP * scale),
   );
-  const mask = leastRadialMask(judge, distanceM, aim.correction, gain, largestPhase);
-  const rims = maskRims(mask, count / 2).map((rim) => Math.max(rim, variant.parameters[0].low));
-  // Where the mask has fewer rings, the rest begin without width at the outer end.
-  while (rims.length < count) rims.push(largestPhase * 0.999);
-  descend(trials, Float64Array.from([...rims, ...place(space, at)]), new Float64Array(count).fill(0.1));
 }
 
 /** Descents from a candidate, walking along the distances while that helps; Nelder–Mead has the last word. */

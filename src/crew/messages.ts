@@ -3,6 +3,7 @@ import type { FamilyName } from '../outline/families/family.ts';
 import type { Task } from '../score/task.ts';
 import type { ExploreJob, ExploreResult } from './explore.ts';
 import type { FinishJob, FinishResult } from './finish.ts';
+import type { MaskJob, MaskResult } from './maskJob.ts';
 
 /** What every worker is told when it starts. */
 export interface Orders {
@@ -10,12 +11,18 @@ export interface Orders {
   families: readonly FamilyName[];
 }
 
-export type Job = ExploreJob | FinishJob;
+export type Job = ExploreJob | FinishJob | MaskJob;
+
+export type Result = ExploreResult | FinishResult | MaskResult;
 
 /** The result that belongs to a kind of job. */
-export type ResultOf<J extends Job> = J extends ExploreJob ? ExploreResult : FinishResult;
+export type ResultOf<J extends Job> = J extends ExploreJob
+  ? ExploreResult
+  : J extends MaskJob
+    ? MaskResult
+    : FinishResult;
 
 /** From a worker: what came of its job. An error's code, message and problems travel as plain data. */
 export type Reply =
-  | { result: ExploreResult | FinishResult }
+  | { result: Result }
   | { error: { code: ErrorCode; message: string; problems: readonly Problem[] } };

@@ -6,13 +6,13 @@ import { Workshop } from './workshop.ts';
 /** The body of a worker thread: takes a job, does it, replies, and waits for the next. */
 const workshop = new Workshop(workerData as Orders);
 
-parentPort?.on('message', (job: Job) => {
-  parentPort?.postMessage(replyTo(job));
+parentPort?.on('message', async (job: Job) => {
+  parentPort?.postMessage(await replyTo(job));
 });
 
-function replyTo(job: Job): Reply {
+async function replyTo(job: Job): Promise<Reply> {
   try {
-    return { result: workshop.do(job) };
+    return { result: await workshop.do(job) };
   } catch (error) {
     const message = error instanceof Error ? error.message : String(error);
     const { code, problems } =

@@ -1,15 +1,18 @@
-import type { Variant } from '../outline/families/family.ts';
+import { LinearModels } from '../numeric/linearModel.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import { Certifier } from '../score/certifier.ts';
-import { fieldsFor, leadingFields } from '../score/farZoneError.ts';
+import { leadingFields } from '../score/farZoneError.ts';
 import { REPORT_FINENESS, SEARCH_FINENESS } from '../score/fineness.ts';
 import { Judge } from '../score/judge.ts';
+import { boundTools } from '../score/maskBound.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
 import { searchSpace } from '../score/searchSpace.ts';
 import { explore } from './explore.ts';
 import type { FinishingJudges } from './finish.ts';
 import { finish } from './finish.ts';
-import type { Job, Orders, ResultOf } from './messages.ts';
+import type { MaskTools } from './maskJob.ts';
+import { findMasks } from './maskJob.ts';
+import type { Job, Orders, Result, ResultOf } from './messages.ts';
 
 /** Does jobs one after the other: what a worker holds, and what a test can hold without a thread. */
 export class Workshop {
@@ -18,6 +21,8 @@ export class Workshop {
   readonly #fields: Fields;
   /** Made when the first design is to be finished: they solve more wavelengths. */
   #fine: FinishingJudges | null = null;
+  /** Likewise, for the first least mask. */
+  #masks: MaskTools | null = null;
   readonly #space: SearchSpace;
 
   constructor(orders: Orders) {
@@ -27,24 +32,41 @@ export class Workshop {
     this.#space = searchSpace(orders.task, orders.families, this.#judge);
   }
 
-  /** Every way to draw that the brief allows. */
-  get variants(): readonly Variant[] {
-    return this.#space.variants;
+  /** Every way to draw, and every distance, that the brief allows. */
+  get space(): SearchSpace {
+    return this.#space;
   }
 
-  do<J extends Job>(job: J): ResultOf<J> {
-    if (job.kind === 'explore') return explore(job, this.#judge, this.#space) as ResultOf<J>;
-    this.#fine ??= this.#finishingJudges();
-    return finish(job, this.#fine, this.#space) as ResultOf<J>;
+  async do<J extends Job>(job: J): Promise<ResultOf<J>> {
+    return (await this.#resultOf(job)) as ResultOf<J>;
   }
+
+  async #resultOf(job: Job): Promise<Result> {
+    switch (job.kind) {
+      case 'explore':
+        return explore(job, this.#judge, this.#space);
+      case 'finish':
+        this.#fine ??= this.#finishingJudges();
+        return finish(job, this.#fine, this.#space);
+      case 'mask':
+        this.#masks ??= await this.#maskTools();
+        return findMasks(job, this.#orders.task, this.#masks);
+    }
+  }
+
+  async #maskTools(): Promise<MaskTools> {
+    const models = await LinearModels.load();
+    return { models, ...boundTools(this.#orders.task, this.#fields) };
+  }
+
   #finishingJudges(): FinishingJudges {
     const { task } = this.#orders;
-    const other = fieldsFor(task, this.#fields === 'far' ? 'exact' : 'far');
+    const other = this.#fields === 'far' ? 'exact' : 'far';
     const judge = new Judge(task, REPORT_FINENESS, this.#fields);
     return {
       judge,
       certifier: new Certifier(judge, this.#fields),
-      otherJudge: other === this.#fields ? null : new Judge(task, REPORT_FINENESS, other),
+      otherJudge: new Judge(task, REPORT_FINENESS, other),
       fields: this.#fields,
     };
   }

@@ -75,8 +75,13 @@ export async function runCourse(
     const { variants, distances } = workshop.space;
     const quest = { task, variants, distances, aims, ...brief.search };
     const hands = options.memory ? remembered(crew, options.memory, pace) : crew;
-    const rounds = new Rounds(quest, hands, (progress) => options.onProgress?.(pace.timed(progress)));
+    let last: Progress | null = null;
+    const rounds = new Rounds(quest, hands, (progress) => {
+      last = pace.timed(progress);
+      options.onProgress?.(last);
+    });
     await runRounds(rounds, options.signal);
+    if (last !== null) options.onProgress?.({ ...(last as Progress), phase: 'judging', remainingS: null });
     const finishWith = (hands: Hands, mayRepair: boolean) =>
       conclude(finishing(rounds, brief, aims, hands, mayRepair));
     const designs = await untilStopped(

@@ -26,7 +26,7 @@ export interface MaskBound {
 const MISS = 0.01;
 
 /** Programs solved for one gain, at most: more would tighten the bound no further than it can be told. */
-const MOST_CUTS = 40;
+export const MOST_CUTS = 40;
 
 /**
  * The least area over gain for one distance: cutting planes. A program for few places is solved, the worst places of its mask
@@ -56,18 +56,25 @@ export class MaskBounds {
     this.#cells = new RadialCells(task, tools.reader, distanceM, radiusM);
     this.#program = new MaskProgram(models, this.#cells, kind);
     for (const condition of tools.conditions) {
-      for (const part of task.placement.offsetM === 0 ? [0] : [0, 1])
-        this.#program.add(this.#cells.row(condition, part * task.placement.offsetM));
+      for (const position of firstPositions(task)) this.#program.add(this.#cells.row(condition, position));
     }
   }
 
-  /** @throws RimwrightError `machine` where the solver fails */
-  at(gain: number): MaskBound {
+  /** η of the circle that masks stay within. */
+  get largestPhase(): number {
+    return this.#cells.largestPhase;
+  }
+
+  /**
+   * @param cuts programs to be solved at most: fewer give a bound that is as true, and less tight
+   * @throws RimwrightError `machine` where the solver fails
+   */
+  at(gain: number, cuts = MOST_CUTS): MaskBound {
     const { correction } = this.#task.target;
     const { distanceM, radiusM } = this.#cells;
     let least: LeastMask | null = null;
     let worst = Number.POSITIVE_INFINITY;
-    for (let cut = 0; cut < MOST_CUTS; cut++) {
+    for (let cut = 0; cut < cuts; cut++) {
       least = this.#program.solve(gain, correction);
       if (least === null) break;
       const discs = this.#cells.discsOf(least.shares);
@@ -76,7 +83,7 @@ export class MaskBounds {
       if (worst <= correction * (1 + MISS)) break;
       for (const { condition, positionM, correction: missed } of cases) {
         if (Math.abs(missed) > correction * (1 + MISS))
-          this.#program.add(this.#cells.row(condition, Math.hypot(...positionM)));
+          this.#program.add(this.#cells.row(condition, positionM));
       }
     }
     return {
@@ -111,6 +118,22 @@ export function boundTools(task: Task, fields: Fields): BoundTools {
     })),
   );
   return { worst: new WorstCases(task, fields), reader: new ConditionReader(task, fields), conditions };
+}
+
+/** The axis and the rim of the offset disc, on both axes where something tells directions apart. */
+function firstPositions(task: Task): [x: number, y: number][] {
+  const { offsetM } = task.placement;
+  if (offsetM === 0) return [[0, 0]];
+  const onX: [number, number][] = [
+    [0, 0],
+    [offsetM, 0],
+  ];
+  return hasDirection(task) ? [...onX, [0, offsetM]] : onX;
+}
+
+/** Whether turning an outline about the axis makes a difference: polarised light or a flight. */
+export function hasDirection({ light, placement }: Task): boolean {
+  return light.polarizationRad !== null || placement.crossing !== null;
 }
 
 /** Circles about the axis. */

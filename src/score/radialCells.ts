@@ -2,6 +2,9 @@ import { LegendreRules } from '../numeric/gaussLegendre.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
 import { boundaryNodes } from '../outline/boundaryNodes.ts';
 import { ringLoop } from '../outline/families/rings.ts';
+import { plainFlights } from '../reading/flightMeans.ts';
+import { farthestRead } from '../reading/placement.ts';
+import type { FlightRule } from '../reading/positions.ts';
 import type { ConditionReader } from './conditionReader.ts';
 import type { Condition } from './conditions.ts';
 import { REPORT_FINENESS } from './fineness.ts';
@@ -30,41 +33,47 @@ export class RadialCells implements MaskCells {
   readonly radiiM: Float64Array;
   readonly distanceM: number;
   readonly radiusM: number;
+  /** η of that radius. */
+  readonly largestPhase: number;
   readonly #discs: Float64Array[];
   readonly #reader: ConditionReader;
-  readonly #offsetM: number;
+  readonly #flight: FlightRule;
+  readonly #farthestM: number;
 
   /** @param radiusM of the outermost cell's outer end, metres */
   constructor(task: Task, reader: ConditionReader, distanceM: number, radiusM: number) {
     const wavelengthM = task.light.wavelengthM / refractiveIndex(task.medium, task.light.wavelengthM)[0];
     const rules = new LegendreRules();
     const sampling = new Sampling(task, REPORT_FINENESS, (2 * Math.PI) / wavelengthM, rules);
-    const phase = sampling.fringes(distanceM, 0).kappa * radiusM * radiusM;
-    this.count = Math.ceil(Math.min(MOST_CELLS, Math.max(LEAST_CELLS, phase / CELL_PHASE)));
+    this.largestPhase = sampling.fringes(distanceM, 0).kappa * radiusM * radiusM;
+    this.count = Math.ceil(Math.min(MOST_CELLS, Math.max(LEAST_CELLS, this.largestPhase / CELL_PHASE)));
     const fine = SPLIT * this.count;
     this.fineArea = (Math.PI * radiusM * radiusM) / (fine * wavelengthM * distanceM);
     this.radiiM = Float64Array.from({ length: fine }, (_, j) => radiusM * Math.sqrt((j + 1) / fine));
     this.distanceM = distanceM;
     this.radiusM = radiusM;
     this.#reader = reader;
-    this.#offsetM = task.placement.offsetM;
+    this.#flight = sampling.flightRule(radiusM, distanceM);
+    this.#farthestM = farthestRead(task.placement);
     const density = sampling.density(distanceM);
     this.#discs = Array.from(this.radiiM, (rim) => boundaryNodes([ringLoop(rim, 1)], density, rules));
   }
 
   /**
-   * What each fine cell adds to reading/extinction.
+   * What each fine cell adds to reading/extinction: the mean over the flight, if there is one.
    *
-   * @param axisM how far the particle is from the axis: the direction makes no difference
+   * @param position of the particle, the middle of its flight, metres
    */
-  row(condition: Condition, axisM: number): Float64Array {
-    const { distanceM, radiusM } = this;
-    const read = this.#reader.at(condition, { distanceM, radiusM, offsetM: this.#offsetM });
+  row(condition: Condition, position: readonly [x: number, y: number]): Float64Array {
+    const flight = plainFlights(Float64Array.from(position), this.#flight);
+    const view = { distanceM: this.distanceM, radiusM: this.radiusM, offsetM: this.#farthestM };
+    const read = this.#reader.at(condition, view);
+    const mean = new Float64Array(1);
     let before = 0;
     return Float64Array.from(this.#discs, (nodes) => {
-      const within = read(nodes, axisM, 0);
-      const cell = within - before;
-      before = within;
+      flight.means((x, y) => read(nodes, x, y), mean);
+      const cell = mean[0] - before;
+      before = mean[0];
       return cell;
     });
   }

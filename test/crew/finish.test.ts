@@ -18,10 +18,10 @@ const CANDIDATES = [
   { variant: 'sectors-arc-2-fold-1', vector: [0.8, 1, 4] },
 ];
 
-describe('finish', () => {
+describe('finish', async () => {
   const judge = new Judge(OFFSET, REPORT_FINENESS);
   const space = searchSpace(OFFSET, FAMILY_NAMES, judge);
-  const { designs } = new Workshop({ task: OFFSET, families: FAMILY_NAMES }).do({
+  const { designs } = await new Workshop({ task: OFFSET, families: FAMILY_NAMES }).do({
     kind: 'finish',
     candidates: CANDIDATES,
   });
@@ -63,11 +63,11 @@ describe('finish', () => {
     }
   });
 
-  it('is the same from a workshop, again and again', () => {
+  it('is the same from a workshop, again and again', async () => {
     const workshop = new Workshop({ task: OFFSET, families: FAMILY_NAMES });
     const job = { kind: 'finish', candidates: CANDIDATES.slice(0, 3) } as const;
-    expect(workshop.do(job).designs).toEqual(designs.slice(0, 3));
-    expect(workshop.do(job).designs).toEqual(designs.slice(0, 3));
+    expect((await workshop.do(job)).designs).toEqual(designs.slice(0, 3));
+    expect((await workshop.do(job)).designs).toEqual(designs.slice(0, 3));
   });
 
   it('asks the shop where there is one', async () => {
@@ -75,7 +75,7 @@ describe('finish', () => {
     const { shop } = await presetTask('road-dust');
     const asked = new Workshop({ task: { ...OFFSET, shop }, families: FAMILY_NAMES });
     // Two rings leave the sheet between them without hold; a star can be cut.
-    const [, rings, , , star] = asked.do({ kind: 'finish', candidates: CANDIDATES }).designs;
+    const [, rings, , , star] = (await asked.do({ kind: 'finish', candidates: CANDIDATES })).designs;
     expect(star.shop.fits).toBe(true);
     expect(star.shop.notes.length).toBeGreaterThan(0);
     expect(rings.shop.misfit > 0).toBe(!rings.shop.fits);

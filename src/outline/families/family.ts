@@ -36,6 +36,11 @@ export interface Variant {
   draw(values: ArrayLike<number>, unitM: number): Shape | Misdrawn;
   /** Numbers that must all be 0 or above for the outline to be drawn, smooth in the values; none where any values do. */
   margins?(values: ArrayLike<number>): Float64Array;
+  /**
+   * Values that come near a star about the axis whose ρ², as a phase, is `profile(u)` at the share u of half a fold's azimuth, from
+   * its tip (0) to the valley (1), falling all the way; none where the variant draws nothing of the kind.
+   */
+  fromProfile?(profile: (share: number) => number): number[];
   /** A promising place to start from, and how far around it to look, both in the parameters' own units. */
   start(random: RandomSource): { values: number[]; spreads: number[] };
 }

@@ -18,7 +18,9 @@ interface Expansion {
  */
 export function fourierVariants(limits: PhaseLimits): Variant[] {
   const expansions: Expansion[] = [
-    ...[2, 3, 4, 5, 6, 8].map((folds) => ({ of: 'square', folds, terms: 6, sines: false }) as const),
+    ...[2, 3, 4, 5, 6].map((folds) => ({ of: 'square', folds, terms: 6, sines: false }) as const),
+    ...[5, 8].map((folds) => ({ of: 'square', folds, terms: 10, sines: false }) as const),
+    ...[5, 8].map((folds) => ({ of: 'square', folds, terms: 14, sines: false }) as const),
     ...[3, 5].map((folds) => ({ of: 'radius', folds, terms: 6, sines: false }) as const),
     ...[3, 5].map((folds) => ({ of: 'square', folds, terms: 3, sines: true }) as const),
     { of: 'square', folds: 1, terms: 6, sines: true },
@@ -31,7 +33,7 @@ function fourierVariant(expansion: Expansion, limits: PhaseLimits): Variant {
   const harmonics = terms - 1;
   const largest = of === 'square' ? limits.high : Math.sqrt(limits.high);
   const swing = Math.min(largest, of === 'square' ? 60 : 8);
-  const parameters = [{ name: 'c0', low: of === 'square' ? LEAST : Math.sqrt(LEAST), high: largest }];
+  const parameters = [{ name: 'c0', low: leastOf(of), high: largest }];
   for (let k = 1; k <= harmonics; k++) parameters.push({ name: `c${k}`, low: -swing, high: swing });
   if (sines)
     for (let k = 1; k <= harmonics; k++) parameters.push({ name: `s${k}`, low: -swing, high: swing });
@@ -41,6 +43,7 @@ function fourierVariant(expansion: Expansion, limits: PhaseLimits): Variant {
     parameters,
     draw: (values, unitM) => drawFourier(values, expansion, unitM),
     margins: (values) => seriesMargins(values, expansion),
+    fromProfile: (profile) => expandProfile(profile, expansion),
     start: (random) => startFourier(random, expansion, limits),
   };
 }
@@ -77,16 +80,54 @@ function seriesMargins(values: ArrayLike<number>, expansion: Expansion): Float64
   const { of, folds, terms, sines } = expansion;
   const out = new Float64Array(2);
   const probes = (sines ? 12 : 6) * terms;
-  const least = of === 'square' ? LEAST : Math.sqrt(LEAST);
+  const least = leastOf(of);
   return Float64Array.from({ length: probes + 1 }, (_, i) => {
     sumSeries(values, expansion, ((sines ? 2 : 1) * Math.PI * i) / (probes * folds), out);
     return out[0] - least;
   });
 }
 
+/** Least value of a series. */
+function leastOf(of: Expansion['of']): number {
+  return of === 'square' ? LEAST : Math.sqrt(LEAST);
+}
+
+/** Azimuths at which a profile is sampled to expand it. */
+const PROFILE_SAMPLES = 400;
+
+/**
+ * Cosine coefficients of a profile, smoothed by Lanczos' factors against the overshoot at its steps, and with the swing reduced
+ * where the series would still come too near to the axis.
+ */
+function expandProfile(profile: (share: number) => number, { of, terms, sines }: Expansion): number[] {
+  const own = (share: number) => (of === 'square' ? profile(share) : Math.sqrt(profile(share)));
+  const series = Array.from({ length: terms }, (_, k) => {
+    let sum = 0;
+    for (let i = 0; i < PROFILE_SAMPLES; i++) {
+      const share = (i + 0.5) / PROFILE_SAMPLES;
+      sum += own(share) * Math.cos(k * Math.PI * share);
+    }
+    const turn = (Math.PI * k) / terms;
+    return (sum / PROFILE_SAMPLES) * (k === 0 ? 1 : (2 * Math.sin(turn)) / turn);
+  });
+  let lowest = Number.POSITIVE_INFINITY;
+  for (let i = 0; i <= PROFILE_SAMPLES; i++) {
+    const turn = (Math.PI * i) / PROFILE_SAMPLES;
+    lowest = Math.min(
+      lowest,
+      series.reduce((sum, value, k) => sum + value * Math.cos(k * turn), 0),
+    );
+  }
+  const mean = Math.max(series[0], 2 * leastOf(of));
+  const share = Math.min(1, (mean - 1.5 * leastOf(of)) / Math.max(mean - lowest, leastOf(of)));
+  const kept = series.map((value, k) => (k === 0 ? mean : share * value));
+  return sines ? [...kept, ...Array<number>(terms - 1).fill(0)] : kept;
+}
+
 function drawFourier(values: ArrayLike<number>, expansion: Expansion, unitM: number): Shape | Misdrawn {
   const { of, folds, sines } = expansion;
-  const least = Math.min(...seriesMargins(values, expansion));
+  // Margins a little below 0 are still drawn, so that a search can take differences where they hold with equality.
+  const least = Math.min(...seriesMargins(values, expansion)) + leastOf(of) / 2;
   if (least < 0) return { misdrawnBy: -least };
   const area = unitM * unitM;
   const squared = (phi: number, out: Float64Array) => {

@@ -31,8 +31,15 @@ function polygonVariant(kind: string, folds: number, perFold: number, limits: Ph
     id: kind === 'free' ? `polygon-free-${folds}-fold-${perFold}` : `polygon-${kind}-${folds}`,
     parameters,
     draw: (values, unitM) => drawPolygon(values, folds, perFold, unitM),
+    ...(perFold > 1 && { fromProfile: (profile) => verticesOf(profile, perFold) }),
     start: (random) => startPolygon(random, perFold, limits),
   };
+}
+
+/** Vertices at even azimuths of a fold, the first at its tip; edges between them fall below the profile, so tips reach beyond. */
+function verticesOf(profile: (share: number) => number, perFold: number): number[] {
+  const vertices = Array.from({ length: perFold }, (_, i) => profile(1 - Math.abs(1 - (2 * i) / perFold)));
+  return [...vertices.map((phase) => Math.max(2 * LEAST, phase)), 0];
 }
 
 function drawPolygon(values: ArrayLike<number>, folds: number, perFold: number, unitM: number): Shape {

@@ -35,6 +35,7 @@ function peakVariant(folds: number, limits: PhaseLimits): Variant {
     id: `ramp-peak-${folds}-fold`,
     parameters: twoHeights(limits),
     draw: (values, unitM) => drawRuns([0, 0.5, 1], [values[0], values[1], values[0]], folds, unitM, true),
+    fromProfile: (profile) => [Math.max(2 * LEAST, profile(0.8)), Math.max(2 * LEAST, profile(0.2))],
     start: (random) => startHeights(random, limits),
   };
 }
@@ -56,6 +57,11 @@ function knotsVariant(folds: number, knots: number, limits: PhaseLimits): Varian
       const places = [0];
       for (const share of shares) places.push(places[places.length - 1] + share / total);
       return drawRuns(places, [...heights, heights[0]], folds, unitM, false);
+    },
+    fromProfile(profile) {
+      // Knots at even azimuths, from the tip down to the valley and up again.
+      const heights = Array.from({ length: knots }, (_, i) => profile(1 - Math.abs(1 - (2 * i) / knots)));
+      return [...heights.map((height) => Math.max(2 * LEAST, height)), ...heights.map(() => 0.5)];
     },
     start(random) {
       const { values, spreads } = startHeights(random, limits);

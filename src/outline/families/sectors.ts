@@ -14,7 +14,7 @@ const LEAST_PHASE = 0.01;
 export function sectorsVariants(limits: PhaseLimits): Variant[] {
   return [
     ...[2, 3, 4, 6, 8].map((folds) => hubVariant(folds, 1, limits)),
-    ...[3, 5].map((folds) => hubVariant(folds, 2, limits)),
+    ...[3, 5, 8].map((folds) => hubVariant(folds, 2, limits)),
     ...[2, 3, 5].map((folds) => arcVariant(folds, 1, limits)),
     ...[2, 3, 5].map((folds) => arcVariant(folds, 2, limits)),
   ];
@@ -32,6 +32,7 @@ function hubVariant(folds: number, count: number, limits: PhaseLimits): Variant 
     parameters,
     draw: (values, unitM) => drawHub(Array.from(values), folds, count, unitM),
     margins: (values) => Float64Array.of(spareShare(Array.from(values).filter((_, i) => i % 2 === 1))),
+    fromProfile: (profile) => sectorsOf(profile, count),
     start(random) {
       const values = [0.05 + 0.2 * random.uniform()];
       const spreads = [0.1];
@@ -42,6 +43,33 @@ function hubVariant(folds: number, count: number, limits: PhaseLimits): Variant 
       return { values, spreads };
     },
   };
+}
+
+/** Azimuths at which a profile is sampled to cut it into sectors. */
+const PROFILE_SAMPLES = 200;
+
+/** A hub and sectors that open as much azimuth as a falling profile does, cut at its largest steps. */
+function sectorsOf(profile: (share: number) => number, count: number): number[] {
+  const phases = Array.from({ length: PROFILE_SAMPLES }, (_, i) => profile((i + 0.5) / PROFILE_SAMPLES));
+  const cuts = phases
+    .map((phase, i) => ({ at: i + 1, step: phase - (phases[i + 1] ?? 0) }))
+    .sort((p, q) => q.step - p.step)
+    .slice(0, count)
+    .map(({ at }) => at)
+    .sort((p, q) => p - q);
+  const last = cuts[count - 1];
+  const rest = phases.slice(last).reduce((sum, phase) => sum + phase, 0) / (PROFILE_SAMPLES - last || 1);
+  const values = [Math.max(2 * LEAST_PHASE, rest)];
+  const room = 1 - (count + 1) * LEAST_SHARE;
+  cuts.forEach((at, i) => {
+    const from = cuts[i - 1] ?? 0;
+    const mean = phases.slice(from, at).reduce((sum, phase) => sum + phase, 0) / (at - from);
+    values.push(
+      Math.max(2 * LEAST_SHARE, (room * (at - from)) / PROFILE_SAMPLES),
+      Math.max(mean, 2 * LEAST_PHASE),
+    );
+  });
+  return values;
 }
 
 function drawHub(values: number[], folds: number, count: number, unitM: number): Shape | Misdrawn {

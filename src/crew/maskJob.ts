@@ -1,0 +1,67 @@
+import type { LinearModels } from '../numeric/linearModel.ts';
+import type { BoundTools } from '../score/maskBound.ts';
+import { MaskBounds } from '../score/maskBound.ts';
+import type { MaskKind } from '../score/maskProgram.ts';
+import type { MaskStep } from '../score/maskSteps.ts';
+import { stepsOf } from '../score/maskSteps.ts';
+import { radiusWithinLobe } from '../score/radiusWithinLobe.ts';
+import type { Task } from '../score/task.ts';
+
+/** The least masks of one distance, for several gains. */
+export interface MaskJob {
+  kind: 'mask';
+  masks: MaskKind;
+  distanceM: number;
+  gains: readonly number[];
+  /** Programs to be solved for each gain at most: few for masks to begin a search with, more for a tight bound. */
+  cuts: number;
+}
+
+export interface MaskResult {
+  /** In the order of the gains; null where no mask keeps the target. */
+  found: (FoundMask | null)[];
+}
+
+/** A bound, and the mask that comes nearest to it. */
+export interface FoundMask {
+  gain: number;
+  /** Proven: no mask has less (area / gain) over λz. */
+  areaOverFloor: number;
+  /** Taken off for finite cells and tables. */
+  error: number;
+  mask: { areaOverFloor: number; worst: number; steps: MaskStep[] };
+}
+
+/** The loaded solver, and what all least masks of a task share. */
+export interface MaskTools extends BoundTools {
+  models: LinearModels;
+}
+
+/** Finds least masks for a task. */
+export function findMasks(job: MaskJob, task: Task, tools: MaskTools): MaskResult {
+  const { distanceM, gains, masks, cuts } = job;
+  const bounds = new MaskBounds(
+    task,
+    tools.models,
+    tools,
+    distanceM,
+    radiusWithinLobe(task, distanceM),
+    masks,
+  );
+  try {
+    const found = gains.map((gain) => {
+      const { areaOverFloor, error, mask } = bounds.at(gain, cuts);
+      if (areaOverFloor === null || mask === null) return null;
+      const steps = stepsOf(mask.shares, bounds.largestPhase);
+      return {
+        gain,
+        areaOverFloor,
+        error,
+        mask: { areaOverFloor: mask.areaOverFloor, worst: mask.worst, steps },
+      };
+    });
+    return { found };
+  } finally {
+    bounds.dispose();
+  }
+}
