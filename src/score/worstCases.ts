@@ -47,19 +47,19 @@ const SIGNS = [1, -1] as const;
 const TABLE_EFFORT = 10;
 const MOST_STEPS = 1e9;
 /** Local maxima that are climbed to, and the share of the worst first look below which none is. */
-const CLIMBS = 8;
-const WORTH = 0.85;
+const CLIMBS = 5;
+const WORTH = 0.9;
 /** First looks of one kind and sign whose size parameters lie nearer than this are one maximum. */
 const APART = 0.25;
 /** Rounds over place, wavelength, depth and diameter, and the gain in correction that is worth another, over the worst. */
 const ROUNDS = 3;
-const LEAST_GAIN = 1e-4;
+const LEAST_GAIN = 1e-3;
 /** First and last step of a place, radians of phase at the rim (see `samplePositions`). */
 const PLACE_STEPS = [0.25, 0.015] as const;
 /** First step of a diameter in size parameter: as those that telling diameters are found with. */
 const SIZE_STEP = 0.01;
 /** Readings that need a table of their own, for each line that is climbed along. */
-const TABLES = { diameter: 8, wavelength: 4, depth: 4 } as const;
+const TABLES = { diameter: 6, wavelength: 3, depth: 3 } as const;
 
 /**
  * Finds where designs for one task read worst, not among samples, but by climbing: over the particle's place, the depth, the
