@@ -77,7 +77,8 @@ export function lineText(progress: Progress): string {
   ].join('; ');
 }
 
-function timesText({ elapsedS, remainingS }: Progress): string {
+function timesText({ phase, elapsedS, remainingS }: Progress): string {
+  if (phase === 'judging') return `${durationText(elapsedS)}, judging the best finely`;
   const left = remainingS === null ? '' : `, about ${durationText(remainingS)} to go`;
   return `${durationText(elapsedS)}${left}`;
 }

@@ -2,9 +2,11 @@ import type { RoundsProgress } from './rounds.ts';
 
 /** How far a search has come, and how long it takes. */
 export interface Progress extends RoundsProgress {
+  /** `judging`: the rounds are over, and the best are judged finely, some of them refined once more. */
+  phase: 'searching' | 'judging';
   /** Seconds spent, those before an interruption counted in. */
   elapsedS: number;
-  /** Seconds to go for the rounds, as far as the pace so far tells; null before anything was tried. */
+  /** Seconds to go for the rounds, as far as their pace so far tells; null where it does not. */
   remainingS: number | null;
 }
 
@@ -13,6 +15,8 @@ export class Pace {
   readonly #earlierS: number;
   readonly #started = performance.now();
   #recalled = 0;
+  /** When the first new result came: what it takes to start is no measure of the pace. */
+  #first: { elapsedS: number; fresh: number } | null = null;
 
   /** @param earlierS seconds spent before the interruption */
   constructor(earlierS: number) {
@@ -33,8 +37,11 @@ export class Pace {
     const { elapsedS } = this;
     const { evaluations, candidates } = progress;
     const fresh = evaluations - this.#recalled;
+    if (this.#first === null && fresh > 0) this.#first = { elapsedS, fresh };
+    const since = this.#first ?? { elapsedS, fresh };
     const left = Math.max(0, candidates - evaluations);
-    const remainingS = fresh > 0 ? ((elapsedS - this.#earlierS) / fresh) * left : null;
-    return { ...progress, elapsedS, remainingS };
+    const remainingS =
+      fresh > since.fresh ? ((elapsedS - since.elapsedS) / (fresh - since.fresh)) * left : null;
+    return { ...progress, phase: 'searching', elapsedS, remainingS };
   }
 }

@@ -39,6 +39,7 @@ describe('lineText', () => {
         { family: 'rings', best: BEST },
       ],
       variant: 'disc',
+      phase: 'searching',
       elapsedS: 9,
       remainingS: 141,
     };
@@ -47,6 +48,9 @@ describe('lineText', () => {
     );
     expect(lineText({ ...progress, best: null, families: [], remainingS: null })).toBe(
       '1200 of 20000 candidates, 9 s; nothing drawn yet',
+    );
+    expect(lineText({ ...progress, phase: 'judging' })).toMatch(
+      /^1200 .*, 9 s, judging the best finely; best/,
     );
   });
 });

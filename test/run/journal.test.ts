@@ -152,7 +152,8 @@ describe('a search with a journal', () => {
     expect(rest.seconds).toBeGreaterThan(earlier);
     // Nothing can be said of the pace before something new is done.
     expect(seen[0].remainingS).toBeNull();
-    expect(seen.at(-1)?.remainingS).toBeGreaterThan(0);
+    expect(seen.at(-2)?.remainingS).toBeGreaterThan(0);
+    expect(seen.at(-1)?.phase).toBe('judging');
     // Once more, there is nothing left to do.
     const full = opened(path).size;
     expect(full).toBeGreaterThan(size);
