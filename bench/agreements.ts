@@ -12,6 +12,7 @@ import type { Placement } from '../src/reading/placement.ts';
 import { REPORT_FINENESS } from '../src/score/fineness.ts';
 import { Judge } from '../src/score/judge.ts';
 import type { Task } from '../src/score/task.ts';
+import { beamAgreements } from './beamAgreements.ts';
 import { presetBrief } from './sampleTask.ts';
 
 /** `npm run agreements`: each effect beside a brute-force form of it, as the largest difference over the extinction. */
@@ -163,6 +164,7 @@ const rows: [string, number][] = [
     'beam with a waist of 5 m, against a flat wave',
     Math.abs(ratioAt({ beam: { waistM: 5, focusM: 0 } }, {}, [PLACE])[0] - ratioAt({}, {}, [PLACE])[0]),
   ],
+  ...beamAgreements(task),
   ['energy balance near a sphere of x = 250, relative', energyAgreement()],
   ["Owen's T of complex h, against mpmath, absolute", owenAgreement()],
   ['coated sphere of Bohren & Huffman p. 489, Qext, relative', layeredAgreement()],

@@ -2,6 +2,7 @@ import { availableParallelism, cpus } from 'node:os';
 import { benchBaseline } from './baseline.ts';
 import { benchCandidates } from './candidates.ts';
 import { benchEffects } from './effects.ts';
+import { benchFronts } from './fronts.ts';
 import { benchPolygons } from './polygons.ts';
 import { benchReadings } from './readings.ts';
 
@@ -12,13 +13,24 @@ const effects = await benchEffects();
 const candidates = await benchCandidates();
 const roadDust = await benchCandidates('road-dust');
 const baseline = await benchBaseline();
+const fronts = benchFronts();
 const machine = { node: process.version, cores: availableParallelism(), processor: cpus()[0]?.model };
 
 if (process.argv.includes('--json')) {
   const { twoWorkersOverOne, candidatesPerSecond } = candidates;
   console.log(
     JSON.stringify(
-      { ...readings, candidatesPerSecond, twoWorkersOverOne, polygons, effects, roadDust, baseline, machine },
+      {
+        ...readings,
+        candidatesPerSecond,
+        twoWorkersOverOne,
+        polygons,
+        effects,
+        roadDust,
+        baseline,
+        fronts,
+        machine,
+      },
       null,
       2,
     ),
@@ -37,8 +49,9 @@ if (process.argv.includes('--json')) {
   row('closed form of a polygon, ns an edge, η = 10', polygons.nsPerEdgeAt10.toFixed(0));
   row('closed form of a polygon, ns an edge, η = 1e6', polygons.nsPerEdgeAt1e6.toFixed(0));
   row('  η = 1e6 over η = 10', polygons.ratio.toFixed(2));
-  for (const { effect, tableMs, readingsPerSecond } of effects) {
+  for (const { effect, solveMs, tableMs, readingsPerSecond } of effects) {
     row(`radial table to 0.55 mm, effect: ${effect}, ms`, tableMs.toFixed(2));
+    row('  particle solved, ms', solveMs.toFixed(2));
     row('  readings per second', readingsPerSecond);
   }
   for (const [name, { candidatesPerSecond, twoWorkersOverOne }] of Object.entries({
@@ -52,6 +65,11 @@ if (process.argv.includes('--json')) {
   for (const { family, evaluations, ours, optimizationJs } of baseline) {
     row(`area over λz, ${family}, ${evaluations} evaluations`, ours.toPrecision(4));
     row('  optimization-js', optimizationJs.toPrecision(4));
+  }
+  const shares = (quartiles: readonly number[]) => quartiles.map((share) => share.toFixed(4)).join(' ');
+  for (const { name, variables, evaluations, ours, optimizationJs } of fronts) {
+    row(`share of the front, ${name}, n = ${variables}, ${evaluations} evaluations`, shares(ours));
+    row('  optimization-js', shares(optimizationJs));
   }
   console.log(`Node ${machine.node}, ${machine.cores} cores, ${machine.processor}`);
 }

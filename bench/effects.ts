@@ -1,11 +1,18 @@
+import { constantIndex } from '../src/optics/indexModel.ts';
+import { isTabled } from '../src/optics/particle.ts';
+import { beamReading } from '../src/reading/beamReading.ts';
+import { buildBeamTable } from '../src/reading/beamTable.ts';
 import { boundaryReading } from '../src/reading/boundaryReading.ts';
 import { nearAmplitudes } from '../src/reading/nearAmplitudes.ts';
 import type { Placement } from '../src/reading/placement.ts';
 import { flightPoints } from '../src/reading/positions.ts';
 import { buildRadialTable } from '../src/reading/radialTable.ts';
+import type { Reader } from '../src/reading/readers.ts';
+import type { Scenario } from '../src/reading/scenario.ts';
 import { SEARCH_FINENESS } from '../src/score/fineness.ts';
 import { Judge } from '../src/score/judge.ts';
 import type { Task } from '../src/score/task.ts';
+import { taskScenarios } from '../src/score/taskScenarios.ts';
 import { lobedRing, median, presetBrief } from './sampleTask.ts';
 
 const VERTICES = 512;
@@ -32,11 +39,28 @@ const EFFECTS: readonly Effect[] = [
   { effect: 'linewidth', change: (task) => ({ ...task, light: { ...task.light, linewidthM: 1e-9 } }) },
   { effect: 'polarisation', change: (task) => ({ ...task, light: { ...task.light, polarizationRad: 0.3 } }) },
   { effect: 'exact fields', change: (task) => task, exact: true },
+  {
+    effect: 'layered particle',
+    change: (task) => ({
+      ...task,
+      particles: task.particles.map((one) =>
+        isTabled(one) ? one : { ...one, core: { share: 0.6, index: constantIndex(1.7, 0.1) } },
+      ),
+    }),
+  },
+  {
+    effect: 'focused beam',
+    change: (task) => ({ ...task, light: { ...task.light, beam: { waistM: 200e-6, focusM: 0 } } }),
+  },
+  {
+    effect: 'tightly focused beam',
+    change: (task) => ({ ...task, light: { ...task.light, beam: { waistM: 20e-6, focusM: 0 } } }),
+  },
   { effect: 'crossing', change: (task) => placed(task, { crossing: { spanM: 1e-4, headingRad: 0.5 } }) },
 ];
 
 /**
- * What each effect costs: milliseconds to build one radial table to 0.55 mm, and readings per second of a 512-vertex
+ * What each effect costs: milliseconds to solve the particle, to build one radial table to 0.55 mm (of a beam: the table that stands for it), and readings per second of a 512-vertex
  * outline from it, a flight counting as one reading. Medians of several rounds, the first of them not counted.
  */
 export async function benchEffects() {
@@ -47,32 +71,50 @@ export async function benchEffects() {
   }));
 }
 
-function timeEffect(task: Task, isExact: boolean): { tableMs: number; readingsPerSecond: number } {
+interface EffectTimes {
+  solveMs: number;
+  tableMs: number;
+  readingsPerSecond: number;
+}
+
+function timeEffect(task: Task, isExact: boolean): EffectTimes {
   const judge = new Judge(task, SEARCH_FINENESS);
   const [distanceM] = task.detector.distanceM;
-  const [scenario] = judge.scenarios;
-  const build = () => {
-    const colours = isExact
-      ? scenario.colours.map(({ weight, sphere }) => ({ weight, sphere: nearAmplitudes(sphere, distanceM) }))
-      : scenario.colours;
-    return buildRadialTable({ ...scenario, colours }, distanceM, TABLE_RADIUS_M, task.placement.spreadM);
-  };
+  const solveMs = medianOf(() => Array.from({ length: TABLES }, () => taskScenarios(task, 1))).ms / TABLES;
+  const build = () => readerOf(task, judge.scenarios[0], distanceM, isExact);
   const tableMs = medianOf(() => Array.from({ length: TABLES }, build)).ms / TABLES;
-  const table = build();
-  const radiusM = Math.sqrt(25 / judge.kappa(distanceM));
+  const read = build();
+  // The flat wave's κ, so that every row reads the same outline.
+  const kappa = Math.PI / (judge.wavelengthM * distanceM);
+  const radiusM = Math.sqrt(25 / kappa);
   const nodes = edgeMiddles(lobedRing(VERTICES, radiusM));
-  const points = flightPoints(task.placement.crossing, 2 * judge.kappa(distanceM) * radiusM).length / 2;
+  const points = flightPoints(task.placement.crossing, 2 * kappa * radiusM).length / 2;
   const batch = Math.ceil(4000 / points);
   const { ms, value } = medianOf(() => {
     let sum = 0;
     for (let i = 0; i < batch * points; i++) {
-      sum += boundaryReading(table, nodes, ((i % 97) - 48) * 2e-7, ((i % 89) - 44) * 2e-7);
+      sum += read(nodes, ((i % 97) - 48) * 2e-7, ((i % 89) - 44) * 2e-7);
     }
     return sum;
   });
   // A sum that is looked at cannot be compiled away.
   if (!Number.isFinite(value)) throw new Error('a reading is not finite');
-  return { tableMs, readingsPerSecond: Math.round((1000 * batch) / ms) };
+  return { solveMs, tableMs, readingsPerSecond: Math.round((1000 * batch) / ms) };
+}
+
+function readerOf(task: Task, scenario: Scenario, distanceM: number, isExact: boolean): Reader {
+  const { spreadM } = task.placement;
+  const { beam } = task.light;
+  if (beam !== undefined) {
+    const place = { placeM: 0, distanceM, spreadM, offsetM: 2e-5, radiusM: TABLE_RADIUS_M };
+    const table = buildBeamTable(scenario, beam, place);
+    return (nodes, x, y) => beamReading(table, nodes, x, y);
+  }
+  const colours = isExact
+    ? scenario.colours.map(({ weight, sphere }) => ({ weight, sphere: nearAmplitudes(sphere, distanceM) }))
+    : scenario.colours;
+  const table = buildRadialTable({ ...scenario, colours }, distanceM, TABLE_RADIUS_M, spreadM);
+  return (nodes, x, y) => boundaryReading(table, nodes, x, y);
 }
 
 function medianOf<Result>(work: () => Result): { ms: number; value: Result } {

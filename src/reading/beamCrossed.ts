@@ -27,7 +27,10 @@ import type { BeamPath } from './beamPath.ts';
 export interface BeamCrossed {
   /** E(s), the fast part that all c_n share: e^{ik(r − d)}/r and the beam's, of both together 1 on the axis. */
   wave(s: number): Complex;
-  /** Writes the slow parts c_n/E at s, re and im of each; for polarised light then as many of the part with cos 2φ. */
+  /**
+   * Writes the slow parts c_n/E at s, re and im of each, and as many each of: the part with p² if `curved`; for polarised light
+   * then those with the forms (ρ, p) and (p, p) of cos 2φ; for polarised light in any case that with cos 2φ itself.
+   */
   slow(s: number, out: Float64Array): void;
   /** K(p²), 1 on the axis. */
   factor(p2: number): Complex;
@@ -65,6 +68,8 @@ export function beamCrossed(
   const lit = divide([atParticle[0] ** 2 + atParticle[1] ** 2, 0], blurred);
   const strength = divide(multiply([0, -1 / wavenumber], lit), onAxis);
   const axis = changesOnAxis(jet, path, offset, shadow);
+  /** e: with p times that added to ρ, directions count from that of the wave. */
+  const lean = subtract([shadow - 1, 0], tilt);
 
   function slow(s: number, out: Float64Array): void {
     const r = slantDistance(wave, s);
@@ -111,8 +116,15 @@ export function beamCrossed(
       seriesTimes(series, [b0, b1], out.subarray(2 * terms, 4 * terms));
     }
     if (polarised) {
-      // It begins with θ²: the tilt is left out.
       const twofold: Complex = [(work[2] - work[0]) / 2, (work[3] - work[1]) / 2];
+      if (curved) {
+        // Its plane of scattering is that of ρ + ep: cos 2φ becomes a form of that vector, over s.
+        const overS = s > 0 ? scale(twofold, unitM2 / s) : scale(twofoldOnAxis(work, angle), unitM2);
+        const once = scale(multiply(lean, overS), 2);
+        const twice = multiply(square(lean), overS);
+        seriesTimes(series, [once, multiply(once, fade)], out.subarray(4 * terms, 6 * terms));
+        seriesTimes(series, [twice, multiply(twice, fade)], out.subarray(6 * terms, 8 * terms));
+      }
       seriesTimes(series, [twofold, multiply(twofold, fade)], out.subarray(out.length - 2 * terms));
     }
   }
@@ -123,6 +135,11 @@ export function beamCrossed(
     slow,
     factor: (p2) => crossedFactor(path, axis, p2),
   };
+}
+
+/** (S2 − S1)/2s on the axis, from the jet there. */
+export function twofoldOnAxis(work: Float64Array, distance: Complex): Complex {
+  return divide([(work[4] - work[6]) / 4, (work[5] - work[7]) / 4], square(distance));
 }
 
 /** What changes with p² in the middle of the shadow: K(p²) but for the field at the particle, which is known for any p. */

@@ -1,5 +1,6 @@
 import { waveIrradiance } from './beamPath.ts';
 import type { BeamTable } from './beamTable.ts';
+import { meanTerms } from './beamTable.ts';
 
 /**
  * Adds to `out` the flux density that a beam table was made of, and its two derivatives: what `beamReading` integrates.
@@ -29,42 +30,63 @@ export function addBeamDensity(
   const nu = perUnit * (dx * px + dy * py);
   const [factorRe, factorIm] = table.crossedFactor(p2);
   const [cos2, sin2] = axis ?? [0, 0];
-  const turn = (dx * dx - dy * dy) * cos2 + 2 * dx * dy * sin2;
-  const [turnX, turnY] = [2 * (dx * cos2 + dy * sin2), 2 * (dx * sin2 - dy * cos2)];
+  const turnX = dx * cos2 + dy * sin2;
+  const turnY = dx * sin2 - dy * cos2;
+  const [formX, formY] = [px * cos2 + py * sin2, px * sin2 - py * cos2];
+  const plain: Shape = { degree: 0, value: 1, slopeX: 0, slopeY: 0 };
+  const form: Shape = { degree: 1, value: dx * formX + dy * formY, slopeX: formX, slopeY: formY };
+  const turn: Shape = { degree: 2, value: dx * turnX + dy * turnY, slopeX: 2 * turnX, slopeY: 2 * turnY };
+  const formP = px * formX + py * formY;
 
-  /** The piece at an address, times ν^order and, where `twofold` is 2, times ρ² cos 2φ. */
-  function add(at: number, factor: number, order: number, twofold: 0 | 2): void {
+  /** The piece at an address, times ν^order and a shape. */
+  function add(at: number, factor: number, order: number, { degree, value, slopeX, slopeY }: Shape): void {
     const [a, b, c, d] = pieces.subarray(at, at + 4);
-    const value = a + t * (b + t * (c + t * d));
+    const piece = a + t * (b + t * (c + t * d));
     const first = (b + t * (2 * c + 3 * t * d)) * cellsPerM2;
     const second = (2 * c + 6 * t * d) * cellsPerM2 * cellsPerM2;
-    const degree = order + twofold;
-    const even = factor * weight * ((degree + 2) * value + 2 * s * first);
-    const slope = factor * weight * 2 * ((degree + 4) * first + 2 * s * second);
+    const all = order + degree;
+    const even = factor * weight * ((all + 2) * piece + 2 * s * first);
+    const slope = factor * weight * 2 * ((all + 4) * first + 2 * s * second);
     const power = nu ** order;
-    const shape = twofold === 0 ? 1 : turn;
-    const along = order === 0 ? 0 : even * order * nu ** (order - 1) * perUnit * shape;
-    out[0] += even * power * shape;
-    out[1] += slope * dx * power * shape + along * px + (twofold === 0 ? 0 : even * power * turnX);
-    out[2] += slope * dy * power * shape + along * py + (twofold === 0 ? 0 : even * power * turnY);
+    const along = order === 0 ? 0 : even * order * nu ** (order - 1) * perUnit * value;
+    out[0] += even * power * value;
+    out[1] += slope * dx * power * value + along * px + even * power * slopeX;
+    out[2] += slope * dy * power * value + along * py + even * power * slopeY;
   }
 
-  const pairs = (from: number, factor: number, twofold: 0 | 2) => {
+  const pairs = (from: number, factor: number, shape: Shape) => {
     for (let n = 0; n < terms; n++) {
-      add(from + 8 * n, factor * factorRe, n, twofold);
-      add(from + 8 * n + 4, -factor * factorIm, n, twofold);
+      add(from + 8 * n, factor * factorRe, n, shape);
+      add(from + 8 * n + 4, -factor * factorIm, n, shape);
     }
   };
-  const meanNumbers = 8 * terms * (curved ? 2 : 1);
-  const stride = meanNumbers + 16 + (axis === null ? 0 : 8 * terms + 4);
+  const isTurned = curved && axis !== null;
+  const meanNumbers = 8 * meanTerms({ terms, curved, polarised: axis !== null });
+  const scatteredNumbers = isTurned ? 28 : 16;
+  const stride = meanNumbers + scatteredNumbers + (axis === null ? 0 : 8 * terms + 4);
   const at = cell * stride;
-  pairs(at, 1, 0);
-  if (curved) pairs(at + 8 * terms, perUnit * p2, 0);
+  pairs(at, 1, plain);
+  if (curved) pairs(at + 8 * terms, perUnit * p2, plain);
   const irradiance = waveIrradiance(table.path, p2);
   const scattered = at + meanNumbers;
-  for (let n = 0; n < 3; n++) add(scattered + 4 * n, irradiance, n, 0);
-  add(scattered + 12, irradiance * p2, 0, 0);
+  for (let n = 0; n < 3; n++) add(scattered + 4 * n, irradiance, n, plain);
+  add(scattered + 12, irradiance * p2, 0, plain);
+  if (isTurned) {
+    pairs(at + 16 * terms, perUnit, form);
+    pairs(at + 24 * terms, perUnit * formP, plain);
+    add(scattered + 16, irradiance, 0, form);
+    add(scattered + 20, irradiance, 1, form);
+    add(scattered + 24, irradiance * formP, 0, plain);
+  }
   if (axis === null) return;
-  pairs(scattered + 16, 1, 2);
-  add(at + stride - 4, irradiance, 0, 2);
+  pairs(scattered + scatteredNumbers, 1, turn);
+  add(at + stride - 4, irradiance, 0, turn);
+}
+
+/** What a piece is multiplied with: a polynomial in ρ, its degree and its derivatives. */
+interface Shape {
+  degree: number;
+  value: number;
+  slopeX: number;
+  slopeY: number;
 }

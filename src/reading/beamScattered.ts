@@ -2,11 +2,12 @@ import type { Complex } from '../numeric/complex.ts';
 import { divide, multiply, scale, square, subtract } from '../numeric/complex.ts';
 import type { AmplitudeJet } from '../optics/amplitudeJet.ts';
 import { JET_NUMBERS, jetAt } from '../optics/amplitudeJet.ts';
+import { twofoldOnAxis } from './beamCrossed.ts';
 import type { BeamPath } from './beamPath.ts';
 import { meanPlace } from './beamPath.ts';
 
-/** q_0 … q_3 of the mean over azimuth, and q_0 of the part with cos 2φ. */
-export const SCATTERED_NUMBERS = 5;
+/** q_0 … q_3 of the mean over azimuth, q_0 of the part with cos 2φ, and of its forms (ρ, p), ν(ρ, p) and (p, p). */
+export const SCATTERED_NUMBERS = 8;
 
 /**
  * The scattered flux density in a focused beam, −cosθ |S|²/(kr)², over the irradiance at the particle: with ν = p·ρ and ρ
@@ -18,7 +19,7 @@ export const SCATTERED_NUMBERS = 5;
  * by σ²∇²/2, to second order. The plane of scattering turns with the tilt τ of the wave: to S2 − S1 belongs the square of a
  * vector v, and where that is complex |v_x² − v_y²|² + 4|v_x v_y|² exceeds |v_x² + v_y²|² by 8 (Im τ × v)².
  *
- * @returns writes q_0 … q_3 and q_0 of the twofold part into `out` from 0 on
+ * @returns writes `SCATTERED_NUMBERS` into `out`
  */
 export function beamScattered(
   jet: AmplitudeJet,
@@ -30,9 +31,10 @@ export function beamScattered(
   const work = new Float64Array(JET_NUMBERS);
   const mean = meanPlace(path);
   const tilt = divide([distanceM, 0], atParticle);
-  const lean = (mean * tilt[1]) / distanceM;
+  /** See `BeamCrossed`. */
+  const lean = subtract([shadow - mean, 0], scale(tilt, mean));
   const motion = (mean * (spreadM * (1 + tilt[0])) ** 2) / (2 * distanceM * distanceM);
-  const lag = square(divide(subtract([shadow - mean, 0], scale(tilt, mean)), [distanceM, 0]));
+  const lag = square(divide(lean, [distanceM, 0]));
   return (s, out) => {
     const r2 = distanceM * distanceM + s;
     const r = Math.sqrt(r2);
@@ -61,13 +63,19 @@ export function beamScattered(
       out[3] -= weight * mu * inner(s0, multiply(s1, lag));
       out[4] += sign * weight * power;
     }
-    // (S2 − S1)/2 over sin²θ; on the axis from the derivatives.
-    const [re, im] = [0, 1].map((part) =>
-      s > 0 ? (work[2 + part] - work[part]) / (2 * sin2) : (work[4 + part] - work[6 + part]) / 4,
-    );
-    const turned = 16 * weight * (re * re + im * im) * lean * lean;
-    out[2] -= (turned * unitM2 * unitM2) / r2;
-    out[3] += turned * sin2;
+    const twofold: Complex =
+      s > 0
+        ? [(work[2] - work[0]) / (2 * s), (work[3] - work[1]) / (2 * s)]
+        : twofoldOnAxis(work, [distanceM, 0]);
+    const turned = 16 * weight * inner(twofold, twofold) * lean[1] * lean[1];
+    out[2] -= turned * unitM2 * unitM2;
+    out[3] += turned * s;
+    const s0: Complex = [(work[0] + work[2]) / 2, (work[1] + work[3]) / 2];
+    const a1 = multiply([(work[4] + work[6]) / 2, (work[5] + work[7]) / 2], delta);
+    const once = scale(multiply(lean, twofold), 2);
+    out[5] = 4 * weight * inner(s0, once);
+    out[6] = 4 * weight * inner(a1, once);
+    out[7] = 4 * weight * inner(s0, multiply(square(lean), twofold));
   };
 }
 

@@ -46,7 +46,9 @@ export interface BeamTable {
   cells: number;
   /**
    * Cubic pieces over s (see `rayIntegrals`), cell by cell: for each power of y = ν · perUnit 8 numbers (re, im) of the crossed
-   * flux, as many of its part with p² · perUnit if `curved`, 16 of the scattered; for polarised light as many of the twofold crossed flux and 4 of the scattered.
+   * flux; if `curved` as many of its part with p² · perUnit and, in polarised light, with the forms (ρ, p) and (p, p) of cos 2φ, times
+   * perUnit; 16 of the scattered, and 12 with those forms; in polarised light as many as at first of the twofold crossed flux, and 4
+   * of the scattered.
    */
   pieces: Float64Array;
   terms: number;
@@ -158,9 +160,18 @@ function phaseRate({ colours }: Scenario, path: BeamPath, reachM: number): numbe
   return (Math.max(...fringes) + slowRate(sphere, path) / 4) * Math.min(8, ratio ** 0.25);
 }
 
+/** Complex columns of crossed flux without cos 2φ. */
+export function meanTerms({ terms, curved, polarised }: Omit<SeriesForm, 'unitM2'>): number {
+  if (!curved) return terms;
+  return polarised ? 4 * terms : 2 * terms;
+}
+
 function columnsOf({ terms, polarised, curved }: SeriesForm): RayColumn[] {
   const crossed = Array.from({ length: 2 * terms }, (_, i) => i >> 1);
-  const mean = [...crossed, ...(curved ? crossed : []), 0, 1, 2, 0];
+  const mean = [...crossed, ...(curved ? crossed : [])];
+  if (curved && polarised) mean.push(...crossed.map((order) => order + 1), ...crossed);
+  mean.push(0, 1, 2, 0);
+  if (curved && polarised) mean.push(1, 2, 0);
   const twofold = polarised ? [...crossed, 0] : [];
   return [
     ...mean.map((order): RayColumn => ({ order, twofold: 0 })),
@@ -181,7 +192,8 @@ function sampleFlux(
   const samples = new Float64Array(width * rows);
   const central = pathOf(wavenumber);
   const inStep = countWhile(rows, (i) => crossedPath(central, i * stepM2) < pathM);
-  const meanPairs = form.terms * (form.curved ? 2 : 1);
+  const isTurned = form.curved && form.polarised;
+  const meanPairs = meanTerms(form);
   const pairs = meanPairs + (form.polarised ? form.terms : 0);
   for (const [c, { weight, sphere }] of scenario.colours.entries()) {
     const path = pathOf(sphere.wavenumber);
@@ -193,7 +205,7 @@ function sampleFlux(
       const [re, im] = crossed.wave(i * stepM2);
       for (let n = 0; n < pairs; n++) {
         const from = 2 * (i * pairs + n);
-        const at = i * width + 2 * n + (n < meanPairs ? 0 : 4);
+        const at = i * width + 2 * n + (n < meanPairs ? 0 : isTurned ? 7 : 4);
         samples[at] += weight * (re * slow[from] - im * slow[from + 1]);
         samples[at + 1] += weight * (re * slow[from + 1] + im * slow[from]);
       }
@@ -203,8 +215,11 @@ function sampleFlux(
       writeScattered(i * stepM2, out),
     );
     for (let i = 0; i < rows; i++) {
-      for (let n = 0; n < 4; n++) samples[i * width + 2 * meanPairs + n] += weight * scattered[5 * i + n];
-      if (form.polarised) samples[(i + 1) * width - 1] += weight * scattered[5 * i + 4];
+      const from = SCATTERED_NUMBERS * i;
+      const at = i * width + 2 * meanPairs;
+      for (let n = 0; n < 4; n++) samples[at + n] += weight * scattered[from + n];
+      if (isTurned) for (let n = 4; n < 7; n++) samples[at + n] += weight * scattered[from + n + 1];
+      if (form.polarised) samples[(i + 1) * width - 1] += weight * scattered[from + 4];
     }
   }
   return samples;

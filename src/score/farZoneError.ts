@@ -18,13 +18,7 @@ export function farZoneError({ light, medium, particles, placement }: Task, dist
   return (wavenumber * (diameterM / 2) ** 2) / (4 * (distanceM - placement.depthM));
 }
 
-/** Which of two fields readings can be had of: in a focused beam those of the far zone alone. */
-export function fieldsFor({ light }: Task, wanted: Fields): Fields {
-  return light.beam === undefined ? wanted : 'far';
-}
-
 /** The fields that a search is led by: the far zone's where they serve, since they do not change with the distance. */
 export function leadingFields(task: Task): Fields {
-  if (fieldsFor(task, 'exact') === 'far') return 'far';
   return farZoneError(task, task.detector.distanceM[0]) > LEADING * task.target.correction ? 'exact' : 'far';
 }

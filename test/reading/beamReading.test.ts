@@ -129,6 +129,7 @@ describe('beamReading, against direct quadrature over the plane with every plane
     ['five wavelengths and radii, a waist off', limit, [3.175, 0, 5000, 300], [3.175, 0, 0], disc, 2e-5],
     ['five wavelengths and radii, out of focus', limit, [3.175, -30, 5000, 300], [2, 2, 0], stars, 2e-5],
     ['five wavelengths and radii, the whole beam', limit, [3.175, 0, 5000, 1200], [2, 0, 0], disc, 8e-5],
+    ['five wavelengths and radii, polarised', limit, [3.175, 0, 5000, 300], [1.6, 0.5, 0], stars, 2e-5, 0.3],
     ['five wavelengths, a waist off', small, [3.175, 0, 5000, 200], [3.175, 0, 0], stars, 1e-6],
     ['five radii of a large sphere', giant, [50, 0, 20000, 200], [0, 0, 0], disc, 1e-6],
     ['five radii of a large sphere, a waist off', giant, [50, -3000, 20000, 200], [30, 40, 0], stars, 2e-5],
