@@ -73,7 +73,7 @@ export function roughReadings(
   gain: number,
   place: readonly [x: number, y: number] | null,
 ): RoughResult {
-  const phasePerMetre = 2 * judge.kappa(distanceM) * radiusM;
+  const phasePerMetre = judge.phasePerMetre(radiusM, distanceM);
   const { offsetM } = judge.task.placement;
   const places =
     place === null

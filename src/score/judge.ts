@@ -83,6 +83,11 @@ export class Judge {
     return this.#sampling.fringes(distanceM, 0).kappa;
   }
 
+  /** Phase, or change of the light itself, that a step of the particle across the axis makes at the rim, rad/m. */
+  phasePerMetre(radiusM: number, distanceM: number): number {
+    return this.#sampling.phasePerMetre(radiusM, distanceM);
+  }
+
   /**
    * Irradiance at a place of the particle over that on the axis at its nominal place, as a mean over its random motion:
    * 1 in a flat wave.
