@@ -3,14 +3,18 @@ import { isTabled } from '../src/optics/particle.ts';
 import { beamReading } from '../src/reading/beamReading.ts';
 import { buildBeamTable } from '../src/reading/beamTable.ts';
 import { boundaryReading } from '../src/reading/boundaryReading.ts';
+import { FlightGrid } from '../src/reading/flightGrid.ts';
+import { plainFlights } from '../src/reading/flightMeans.ts';
+import { flightMirrors } from '../src/reading/flightMirrors.ts';
 import { nearAmplitudes } from '../src/reading/nearAmplitudes.ts';
 import type { Placement } from '../src/reading/placement.ts';
-import { flightPoints } from '../src/reading/positions.ts';
+import { NO_FLIGHT, samplePositions } from '../src/reading/positions.ts';
 import { buildRadialTable } from '../src/reading/radialTable.ts';
 import type { Reader } from '../src/reading/readers.ts';
 import type { Scenario } from '../src/reading/scenario.ts';
 import { SEARCH_FINENESS } from '../src/score/fineness.ts';
 import { Judge } from '../src/score/judge.ts';
+import { NO_SYMMETRY } from '../src/score/sampling.ts';
 import type { Task } from '../src/score/task.ts';
 import { taskScenarios } from '../src/score/taskScenarios.ts';
 import { lobedRing, median, presetBrief } from './sampleTask.ts';
@@ -20,6 +24,8 @@ const ROUNDS = 5;
 /** Tables built in one round. */
 const TABLES = 20;
 const TABLE_RADIUS_M = 5.5e-4;
+/** The particle's places, which a search takes flights through, lie within this of the axis. */
+const OFFSET_M = 1e-5;
 
 /** One row: a task with one effect more than the plain one, and whether the sphere's exact fields are read. */
 interface Effect {
@@ -61,7 +67,8 @@ const EFFECTS: readonly Effect[] = [
 
 /**
  * What each effect costs: milliseconds to solve the particle, to build one radial table to 0.55 mm (of a beam: the table that stands for it), and readings per second of a 512-vertex
- * outline from it, a flight counting as one reading. Medians of several rounds, the first of them not counted.
+ * outline from it at the places of a search, a flight through one of them counting as one reading. Medians of several rounds,
+ * the first of them not counted.
  */
 export async function benchEffects() {
   const { task } = await presetBrief('nominal-sphere');
@@ -88,18 +95,29 @@ function timeEffect(task: Task, isExact: boolean): EffectTimes {
   const kappa = Math.PI / (judge.wavelengthM * distanceM);
   const radiusM = Math.sqrt(25 / kappa);
   const nodes = edgeMiddles(lobedRing(VERTICES, radiusM));
-  const points = flightPoints(task.placement.crossing, 2 * kappa * radiusM).length / 2;
-  const batch = Math.ceil(4000 / points);
+  const middles = samplePositions(OFFSET_M, 2 * kappa * radiusM, 0.5, NO_SYMMETRY);
+  const { crossing } = task.placement;
+  const flights =
+    crossing === null
+      ? plainFlights(middles, NO_FLIGHT)
+      : new FlightGrid(middles, crossing, {
+          phasePerMetre: 2 * kappa * (radiusM + OFFSET_M + crossing.spanM),
+          mirrors: flightMirrors(NO_SYMMETRY, crossing.headingRad, false),
+          tail: SEARCH_FINENESS.tail,
+        });
+  const batch = Math.ceil(4000 / flights.count);
+  const means = new Float64Array(flights.count);
   const { ms, value } = medianOf(() => {
     let sum = 0;
-    for (let i = 0; i < batch * points; i++) {
-      sum += read(nodes, ((i % 97) - 48) * 2e-7, ((i % 89) - 44) * 2e-7);
+    for (let i = 0; i < batch; i++) {
+      flights.means((x, y) => read(nodes, x, y), means);
+      sum += means[i % means.length];
     }
     return sum;
   });
   // A sum that is looked at cannot be compiled away.
   if (!Number.isFinite(value)) throw new Error('a reading is not finite');
-  return { solveMs, tableMs, readingsPerSecond: Math.round((1000 * batch) / ms) };
+  return { solveMs, tableMs, readingsPerSecond: Math.round((1000 * batch * flights.count) / ms) };
 }
 
 function readerOf(task: Task, scenario: Scenario, distanceM: number, isExact: boolean): Reader {
