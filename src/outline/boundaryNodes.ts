@@ -62,8 +62,8 @@ function nodeCount(segment: Segment, density: NodeDensity): number {
   const { kappa, offsetM, perRadian, least } = density;
   const point = new Float64Array(4);
   if (segment.kind === 'polar' && isClosed(segment)) {
-    // One fold is probed, and every fold gets the same whole number of nodes.
-    const probes = 4 * PROBES;
+    // One fold is probed, five times for the shortest wave of 13 harmonics; every fold gets the same whole number of nodes.
+    const probes = 8 * PROBES;
     const step = (2 * Math.PI) / (segment.folds * probes);
     let own = 0;
     let largest = 0;
