@@ -13,6 +13,7 @@ import { REPORT_FINENESS } from '../src/score/fineness.ts';
 import { Judge } from '../src/score/judge.ts';
 import type { Task } from '../src/score/task.ts';
 import { beamAgreements } from './beamAgreements.ts';
+import { moreAgreements } from './moreAgreements.ts';
 import { presetBrief } from './sampleTask.ts';
 
 /** `npm run agreements`: each effect beside a brute-force form of it, as the largest difference over the extinction. */
@@ -156,7 +157,7 @@ function nearZoneDifference(): number {
 const rows: [string, number][] = [
   ['random spread of 20 µm, against a mean over 1600 places', spreadAgreement()],
   ['flight of 200 µm, against a mean over 400 places', crossingAgreement()],
-  ['source of 2 mrad, against a mean over 2560 places', sourceAgreement()],
+  ['source of 2 mrad, directions less 2560 places (what the paraxial form leaves out)', sourceAgreement()],
   ['Gaussian line of 2 nm, against 300 colours', lineAgreement('gaussian', 2e-9)],
   ['Gaussian band of 30 nm, against 300 colours', lineAgreement('gaussian', 30e-9)],
   ['Lorentzian line of 2 nm, against 300 colours', lineAgreement('lorentzian', 2e-9)],
@@ -169,5 +170,6 @@ const rows: [string, number][] = [
   ["Owen's T of complex h, against mpmath, absolute", owenAgreement()],
   ['coated sphere of Bohren & Huffman p. 489, Qext, relative', layeredAgreement()],
   ['exact less far-zone fields, 50 µm at 5 mm, 0.4 mm square', nearZoneDifference()],
+  ...moreAgreements(task),
 ];
-for (const [what, value] of rows) console.log(`${what.padEnd(60)}${value.toExponential(1).padStart(10)}`);
+for (const [what, value] of rows) console.log(`${what.padEnd(82)}${value.toExponential(1).padStart(10)}`);

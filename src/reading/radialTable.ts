@@ -8,7 +8,7 @@ import type { FluxSamples } from './fluxDensity.ts';
 import { fluxDensity } from './fluxDensity.ts';
 import { addSpreadFlux, FARTHEST_SPREAD } from './randomSpread.ts';
 import type { Fading, Scenario } from './scenario.ts';
-import { discMeans } from './sourceDisc.ts';
+import { tiltedMeans, tiltedPlace } from './sourceDisc.ts';
 
 /** The cumulative flux of one scenario at one distance, ready for boundary integrals. */
 export interface RadialTable extends CumulativeFlux {
@@ -23,7 +23,7 @@ const PHASE_STEP = 1 / 8;
 const POINT_SWING = 1e-4;
 
 /**
- * Builds the table of one scenario. A source with an angular size is a disc of places (see `discMeans`).
+ * Builds the table of one scenario. A source with an angular size is a mean over tilted waves (see `tiltedMeans`).
  *
  * @param distanceM from particle to detector plane, metres
  * @param radiusM largest distance from the particle's axis that will be asked for, metres
@@ -51,8 +51,12 @@ export function buildRadialTable(
   if (discM === 0) return still(radiusM);
   const cells = cellsTo(radiusM);
   const count = cells + MARGIN;
-  const point = still(Math.sqrt(count * stepM2) + discM);
-  return tableOf(discMeans(point, discM, kappa, stepM2, count), stepM2, cells, scenario.polarizationRad);
+  const { sourceAngleRad = 0, polarizationRad } = scenario;
+  const [rho, sin, cos] = [Math.sqrt(count * stepM2), Math.sin(sourceAngleRad), Math.cos(sourceAngleRad)];
+  const farthest = Math.sqrt(tiltedPlace(rho, distanceM, sin, cos, -1).s);
+  const point = still(Math.max(rho + discM, farthest));
+  const means = tiltedMeans(point, sourceAngleRad, distanceM, kappa, stepM2, count);
+  return tableOf(means, stepM2, cells, polarizationRad);
 }
 
 /** Samples beyond the cells, for the six-point rules. */

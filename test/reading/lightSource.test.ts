@@ -204,7 +204,8 @@ describe('a source with an angular size', () => {
       }
     });
     const fast = ratioOf(wide, DISTANCE_M, nodes, [1.5e-5, -5e-6], spread);
-    expect(Math.abs(fast - slow / point.extinctionM2)).toBeLessThan(2e-6);
+    // Places are the paraxial form of directions: see the tests against tilted waves for the exact one.
+    expect(Math.abs(fast - slow / point.extinctionM2)).toBeLessThan(a > 0.01 ? 1e-3 : 2e-4);
     const still = ratioOf(point, DISTANCE_M, nodes, [1.5e-5, -5e-6], spread);
     // It must have made a difference for this to mean anything.
     expect(Math.abs(fast - still)).toBeGreaterThan(a > 1e-3 ? 1e-3 : 1e-5);
