@@ -4,25 +4,30 @@ export interface LinePoint {
   value: number;
 }
 
-/** Part of a bracket that a trial keeps away from the best point, so that brackets shrink. */
+/** How a climb begins and when it has done enough. */
+export interface ClimbOptions {
+  /** First step, above 0. */
+  step: number;
+  /** Gain in value that another evaluation is worth. */
+  tolerance: number;
+  /** Most evaluations. */
+  evaluations: number;
+}
+
+/** Share of the narrower side that a trial keeps away from the best point, so that brackets shrink. */
 const APART = 0.1;
-/** Golden section's share of the wider side. */
-const GOLDEN = 0.382;
 
 /**
- * Climbs to a local maximum of a smooth function on [low, high]: steps uphill until the best point has a lower one on either
- * side or lies at an end, then tries the vertex of the parabola through the three, or golden section where that leads nowhere.
+ * Climbs to a local maximum of a smooth function on [low, high]: steps uphill, longer and longer, until the best point lies at an end or has
+ * a lower one on either side; then to the vertex of the parabola through the three, until that promises no more.
  *
  * @param start between low and high, with its value; the result is never lower
- * @param step first step, above 0
- * @param evaluations most that are spent
  */
 export function climbLine(
   f: (at: number) => number,
   start: LinePoint,
-  step: number,
   [low, high]: readonly [number, number],
-  evaluations: number,
+  { step, tolerance, evaluations }: ClimbOptions,
 ): LinePoint {
   let left = evaluations;
   const tryAt = (at: number): LinePoint => {
@@ -43,8 +48,10 @@ export function climbLine(
       if (best.at > low) below = tryAt(Math.max(low, best.at - stride));
     }
   }
-  while (left > 0 && above.at - below.at > 1e-9 * (high - low)) {
-    const trial = tryAt(nextTrial(below, best, above));
+  while (left > 0 && below.at < best.at && best.at < above.at) {
+    const { at, gain } = vertex(below, best, above);
+    if (gain < tolerance) break;
+    const trial = tryAt(at);
     const [lower, upper] = trial.at < best.at ? [trial, best] : [best, trial];
     if (trial.value > best.value) {
       [below, above] = trial === lower ? [below, best] : [best, above];
@@ -54,15 +61,16 @@ export function climbLine(
   return [below, above].reduce((most, point) => (point.value > most.value ? point : most), best);
 }
 
-function nextTrial(below: LinePoint, best: LinePoint, above: LinePoint): number {
+/** Where the parabola through three points is highest, kept apart from the best of them, and what it gains there. */
+function vertex(below: LinePoint, best: LinePoint, above: LinePoint): { at: number; gain: number } {
   const [p, q] = [best.at - below.at, above.at - best.at];
-  if (p > 0 && q > 0) {
-    const [fallP, fallQ] = [(best.value - below.value) / p, (best.value - above.value) / q];
-    const vertex = best.at + (p * q * (fallP / p - fallQ / q)) / (2 * (fallP + fallQ) || 1);
-    const apart = APART * Math.min(p, q);
-    if (Math.abs(vertex - best.at) >= apart && vertex > below.at && vertex < above.at) return vertex;
-    // The best point is the vertex as far as that can be told: the wider side closes in.
-    if (Math.abs(vertex - best.at) < apart) return p > q ? best.at - apart : best.at + apart;
-  }
-  return p > q ? best.at - GOLDEN * p : best.at + GOLDEN * q;
+  const [fallP, fallQ] = [(best.value - below.value) / p, (best.value - above.value) / q];
+  const bend = (fallP + fallQ) / (p + q);
+  const slope = (fallP * q - fallQ * p) / (p + q);
+  const away = slope / (2 * bend);
+  const gain = (slope * away) / 2;
+  const apart = APART * Math.min(p, q);
+  if (bend === 0) return { at: best.at, gain: 0 };
+  const at = best.at + Math.sign(away || 1) * Math.max(apart, Math.abs(away));
+  return { at: Math.min(above.at - apart, Math.max(below.at + apart, at)), gain };
 }

@@ -1,4 +1,5 @@
 import type { IndexModel } from '../optics/indexModel.ts';
+import type { Light } from '../optics/light.ts';
 import type { Particle } from '../optics/particle.ts';
 import type { Task } from './task.ts';
 import { tellingDiameters } from './tellingDiameters.ts';
@@ -89,7 +90,7 @@ export function firstConditions(task: Task, kinds: readonly Kind[]): FirstCondit
     }),
   );
   const inside = kinds.flatMap((kind) =>
-    diametersInside(kind, medium, light.wavelengthM).map((diameterM) => ({ kind, diameterM })),
+    diametersInside(kind, medium, light).map((diameterM) => ({ kind, diameterM })),
   );
   const isFew = inside.length * ends.length <= MOST_BETWEEN;
   const between = inside.flatMap((one, i) =>
@@ -103,12 +104,12 @@ function endsOf(middle: number, reach: number): number[] {
 }
 
 /** Of more telling diameters than can be looked at, those with the extremes of turn. */
-function diametersInside(kind: Kind, medium: IndexModel, wavelengthM: number): number[] {
+function diametersInside(kind: Kind, medium: IndexModel, light: Light): number[] {
   const { leastM, largestM } = kind;
-  const telling = tellingDiameters(kind, medium, wavelengthM).sort((p, q) => p.turn - q.turn);
+  const telling = tellingDiameters(kind, medium, light).sort((p, q) => p.turn - q.turn);
   const half = MOST_DIAMETERS / 2;
   const kept = telling.filter((_, i) => i < half || i >= telling.length - half);
-  const steps = Math.ceil((Math.PI * (largestM - leastM)) / (SIZE_STEP * wavelengthM));
+  const steps = Math.ceil((Math.PI * (largestM - leastM)) / (SIZE_STEP * light.wavelengthM));
   const count = Math.min(MOST_DIAMETERS, steps);
   const even = Array.from(
     { length: Math.max(0, count - 1) },

@@ -43,7 +43,8 @@ interface Climb {
 
 const SIGNS = [1, -1] as const;
 
-/** Steps along boundaries that one number of a table is worth, and all that a first look may take: a few seconds. */
+/** Steps along boundaries that solving a particle for one colour is worth, and one number of a table; all that a first look may take: a few seconds. */
+const SOLVING_EFFORT = 2e5;
 const TABLE_EFFORT = 10;
 const MOST_STEPS = 1e9;
 /** Local maxima that are climbed to, and the share of the worst first look below which none is. */
@@ -59,7 +60,7 @@ const PLACE_STEPS = [0.25, 0.015] as const;
 /** First step of a diameter in size parameter: as those that telling diameters are found with. */
 const SIZE_STEP = 0.01;
 /** Readings that need a table of their own, for each line that is climbed along. */
-const TABLES = { diameter: 6, wavelength: 3, depth: 3 } as const;
+const TABLES = { diameter: 7, wavelength: 4, depth: 4 } as const;
 
 /**
  * Finds where designs for one task read worst, not among samples, but by climbing: over the particle's place, the depth, the
@@ -162,13 +163,14 @@ export class WorstCases {
     return kept.filter(({ value }) => value >= WORTH * kept[0].value).slice(0, CLIMBS);
   }
 
-  /** Conditions of the first look: of a large outline, whose tables take long, only every second or third of those between. */
+  /** Conditions of the first look: of a large outline or a wide line, whose tables take long, only every second or third of those between. */
   #firstOf({ nodes, view }: Scene, flights: FlightMeans): Condition[] {
     const reader = this.#reader;
-    const steps = TABLE_EFFORT * reader.colours * reader.tableSize(view) + (flights.count * nodes.length) / 4;
+    const table = reader.colours * (SOLVING_EFFORT + TABLE_EFFORT * reader.tableSize(view));
+    const steps = table + (flights.count * nodes.length) / 4;
     const { given, between } = this.#first;
     const stride = Math.ceil((between.length * steps) / MOST_STEPS);
-    return [...given, ...between.filter((_, i) => i % stride === 0)];
+    return [...given, ...between.filter((_, i) => (i + Math.floor(i / stride)) % stride === 0)];
   }
 
   /** Where the brief's own particles read most and least, at the nominal wavelength and every depth; and the axis. */
@@ -270,7 +272,9 @@ export class WorstCases {
   #climbAlong(scene: Scene, from: Climb, { at, range, step, tables, conditionAt }: Line): Climb {
     const flight = scene.flightsOf(Float64Array.of(from.x, from.y));
     const f = (place: number) => from.sign * this.#corrections(conditionAt(place), scene, flight)[0];
-    const reached = climbLine(f, { at, value: from.value }, step, range, tables);
+    const tolerance = LEAST_GAIN * from.value;
+    const options = { step, tolerance, evaluations: tables };
+    const reached = climbLine(f, { at, value: from.value }, range, options);
     return { ...from, condition: conditionAt(reached.at), value: reached.value };
   }
 }
