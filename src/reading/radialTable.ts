@@ -22,6 +22,10 @@ const PHASE_STEP = 1 / 8;
 /** Swing of the phase over the disc of places below which it is a point: the flux changes by a square of it over 8. */
 const POINT_SWING = 1e-4;
 
+/** κD² of a disc of places up to which the usual cells serve, and how much finer they become beyond. */
+const STEADY_DISC = 10;
+const MOST_FINER = 16;
+
 /**
  * Builds the table of one scenario. A source with an angular size is a mean over tilted waves (see `tiltedMeans`).
  *
@@ -49,14 +53,16 @@ export function buildRadialTable(
     return tableOf(samples, stepM2, cells, scenario.polarizationRad);
   };
   if (discM === 0) return still(radiusM);
-  const cells = cellsTo(radiusM);
+  // Near the axis the mean turns as J₀(2κρD), faster over ρ² than η does where κD² is large.
+  const fineM2 = stepM2 / Math.min(MOST_FINER, Math.max(1, (kappa * discM * discM) / STEADY_DISC));
+  const cells = Math.floor((radiusM * radiusM) / fineM2) + 2;
   const count = cells + MARGIN;
   const { sourceAngleRad = 0, polarizationRad } = scenario;
-  const [rho, sin, cos] = [Math.sqrt(count * stepM2), Math.sin(sourceAngleRad), Math.cos(sourceAngleRad)];
+  const [rho, sin, cos] = [Math.sqrt(count * fineM2), Math.sin(sourceAngleRad), Math.cos(sourceAngleRad)];
   const farthest = Math.sqrt(tiltedPlace(rho, distanceM, sin, cos, -1).s);
   const point = still(Math.max(rho + discM, farthest));
-  const means = tiltedMeans(point, sourceAngleRad, distanceM, kappa, stepM2, count);
-  return tableOf(means, stepM2, cells, polarizationRad);
+  const means = tiltedMeans(point, sourceAngleRad, distanceM, kappa, fineM2, count);
+  return tableOf(means, fineM2, cells, polarizationRad);
 }
 
 /** Samples beyond the cells, for the six-point rules. */

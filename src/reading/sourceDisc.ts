@@ -92,8 +92,8 @@ interface TiltedPlace {
  * direction p̂ at the distance r with the phase kr(1 − p̂·q̂) between it and the scattered wave, an untilted one with
  * k(r₀ − z). The unpolarised crossed flux is along p̂ + q̂. What is left out is that the angle between p̂ and q̂ is not quite that of
  * r₀, which is a part θa of it.
- * Readings of discs up to η = 100 in sources up to 10 mrad are within 4e-6 of the extinction of those of tilted vector waves; at 30 mrad
- * 1.4e-4 (η = 3).
+ * Readings of discs up to η = 100 in sources up to 10 mrad, and of η = 3 at 30 mrad, are within 4e-6 of the extinction of those of
+ * tilted vector waves.
  *
  * @param rho of the point, metres; q̂ = (sin cos φ, sin sin φ, cos), φ from the point's own direction
  */

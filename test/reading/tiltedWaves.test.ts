@@ -12,7 +12,7 @@ describe('a source with an angular size, against the sum of exactly tilted vecto
     { d: 2e-6, m: [1.5, 0.1] as const, eta: 30, a: 1e-2 },
     // Small and clear: the crossed flux is many times what counts.
     { d: 3e-7, m: [1.33, 0] as const, eta: 3, a: 3e-3 },
-    { d: 2e-6, m: [1.59, 0] as const, eta: 3, a: 1e-2 },
+    { d: 2e-6, m: [1.59, 0] as const, eta: 3, a: 3e-2 },
   ])('reads within 1e-5 of the extinction: $d m, η = $eta, $a rad', ({ d, m, eta, a }) => {
     const scenario = { ...sphereScenario(d, m), sourceAngleRad: a };
     const { coefficients, wavenumber } = scenario.colours[0].sphere;
