@@ -1,5 +1,4 @@
 import optimjs from 'optimization-js';
-import { randomStream } from '../src/base/random.ts';
 import { tryCandidate } from '../src/crew/candidate.ts';
 import { Workshop } from '../src/crew/workshop.ts';
 import type { FamilyName, Variant } from '../src/outline/families/family.ts';
@@ -8,6 +7,7 @@ import { SEARCH_FINENESS } from '../src/score/fineness.ts';
 import { Judge } from '../src/score/judge.ts';
 import { searchSpace } from '../src/score/searchSpace.ts';
 import { median, presetBrief } from './sampleTask.ts';
+import { withSeed } from './withSeed.ts';
 
 const SEEDS = [1, 2, 3, 4, 5];
 const BUDGET = 4000;
@@ -51,16 +51,4 @@ export async function benchBaseline() {
     rows.push({ family, evaluations: BUDGET, ours: median(ours), optimizationJs: median(theirs) });
   }
   return rows;
-}
-
-/** optimization-js draws from Math.random: it is lent a seeded source. */
-function withSeed<Result>(seed: number, run: () => Result): Result {
-  const original = Math.random;
-  const source = randomStream(seed);
-  Math.random = () => source.uniform();
-  try {
-    return run();
-  } finally {
-    Math.random = original;
-  }
 }

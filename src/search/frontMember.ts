@@ -11,12 +11,15 @@ export interface Outcome {
 
 /** A scored point of the search for a front. */
 export interface Member {
-  /** Place in the unit cube that stands for the box. */
+  readonly x: Float64Array;
+  /** Its place in the unit cube that stands for the box. */
   readonly unit: Float64Array;
   readonly objectives: readonly number[];
   readonly violation: number;
   /** Objectives in units of the population's spans: 0 at the best, 1 at the worst. */
   place: number[];
+  /** Its place along the front, see `alongFront`. */
+  along: number[];
   /** Hypervolume that would be lost without it, in those units; 0 for points that are not on the front. */
   worth: number;
 }
@@ -24,23 +27,31 @@ export interface Member {
 /**
  * A member made of what was told.
  *
+ * @param count number of objectives
  * @param label how a message calls the candidate
  * @throws RimwrightError `machine` at NaN, −Infinity, a violation below 0, or a wrong number of objectives
  */
-export function memberOf(unit: Float64Array, outcome: Outcome, count: number, label: string): Member {
-  const { objectives, violation = 0 } = outcome;
+export function memberOf(
+  { x, unit }: Pick<Member, 'x' | 'unit'>,
+  { objectives, violation = 0 }: Outcome,
+  count: number,
+  label: string,
+): Member {
   const isSound =
-    violation >= 0 && objectives.length === count && objectives.every((x) => x > Number.NEGATIVE_INFINITY);
+    violation >= 0 &&
+    objectives.length === count &&
+    objectives.every((value) => value > Number.NEGATIVE_INFINITY);
   if (!isSound) {
-    const found = `[${objectives.join(', ')}] with violation ${violation}`;
+    const found = `[${objectives.join(', ')}] with violation ${violation} at [${x.join(', ')}]`;
     throw new RimwrightError('machine', `${label} scored ${found}, expected ${count} numbers and one ≥ 0`);
   }
-  const isUsable = objectives.every(Number.isFinite);
   return {
+    x,
     unit,
     objectives: objectives.slice(),
-    violation: isUsable ? violation : Number.POSITIVE_INFINITY,
+    violation: objectives.every(Number.isFinite) ? violation : Number.POSITIVE_INFINITY,
     place: [],
+    along: [],
     worth: 0,
   };
 }
@@ -52,4 +63,13 @@ export function memberOf(unit: Float64Array, outcome: Outcome, count: number, la
 export function beats(a: Member, b: Member): boolean {
   if (a.violation > 0 || b.violation > 0) return a.violation < b.violation;
   return dominates(a.objectives, b.objectives);
+}
+
+/** Coordinates across the direction (1, 1, …), one fewer than objectives: no two points of a front share them. */
+export function alongFront(place: readonly number[]): number[] {
+  let sum = 0;
+  return place.slice(1).map((x, j) => {
+    sum += place[j];
+    return (sum - (j + 1) * x) / Math.sqrt((j + 1) * (j + 2));
+  });
 }

@@ -2,7 +2,7 @@ import type { RandomSource } from '../base/random.ts';
 import type { Member } from './frontMember.ts';
 import { CORNER, type FrontPopulation } from './frontPopulation.ts';
 import { hypervolume } from './hypervolume.ts';
-import { type LocalFit, localFit } from './localFit.ts';
+import { localFit } from './localFit.ts';
 
 /** Least and largest number of neighbours of a model, by their logarithm alike. */
 const NEIGHBOURS = [12, 50] as const;
@@ -42,11 +42,11 @@ export function modelled(population: FrontPopulation, random: RandomSource): Flo
   const neighbours = nearest(members, centre, count);
   if (neighbours.length < 2 * dimension + 4) return undefined;
 
-  const middle = alongFront(centre.place);
-  const offsets = neighbours.map(({ place }) => alongFront(place).map((v, j) => v - middle[j]));
+  const middle = centre.along;
+  const offsets = neighbours.map(({ along }) => along.map((v, j) => v - middle[j]));
   const heights = neighbours.map(({ place }) => height(place));
   const flat = localFit(offsets.map((v) => [1, ...v]));
-  const coefficients = flat?.coefficients(heights);
+  const coefficients = flat.coefficients(heights);
   if (!coefficients) return undefined;
 
   const draw = () => someOffset(offsets, random);
@@ -57,7 +57,7 @@ export function modelled(population: FrontPopulation, random: RandomSource): Flo
     offsets.map((v, k) => [1, ...v, excess[k]]),
     [0, ...target.map(() => 0), SLOPE_PENALTY],
   );
-  const weights = (full as LocalFit | undefined)?.weights([1, ...target, aim]);
+  const weights = full.weights([1, ...target, aim]);
   if (!weights) return undefined;
 
   const isNoisy = random.uniform() < NOISE_CHANCE;
@@ -73,15 +73,6 @@ export function modelled(population: FrontPopulation, random: RandomSource): Flo
 /** Mean of the objectives: how far a place is from the best corner. */
 function height(place: readonly number[]): number {
   return place.reduce((sum, x) => sum + x, 0) / place.length;
-}
-
-/** Coordinates across the direction (1, 1, …), one fewer than objectives: no two points of a front share them. */
-function alongFront(place: readonly number[]): number[] {
-  let sum = 0;
-  return place.slice(1).map((x, j) => {
-    sum += place[j];
-    return (sum - (j + 1) * x) / Math.sqrt((j + 1) * (j + 2));
-  });
 }
 
 /** The place with these coordinates along the front and this height. */
@@ -137,14 +128,13 @@ function bestOffset(
 
 /** The members nearest to one along the front, itself first; at most `count`, only allowed ones. */
 function nearest(members: readonly Member[], centre: Member, count: number): Member[] {
-  const middle = alongFront(centre.place);
+  const middle = centre.along;
   const found = [centre];
   const distances = [-1];
   for (const member of members) {
     if (member === centre || member.violation > 0) continue;
-    const along = alongFront(member.place);
     let squared = 0;
-    for (let j = 0; j < along.length; j++) squared += (along[j] - middle[j]) ** 2;
+    for (let j = 0; j < middle.length; j++) squared += (member.along[j] - middle[j]) ** 2;
     if (found.length === count && squared >= distances[count - 1]) continue;
     if (found.length === count) {
       found.pop();

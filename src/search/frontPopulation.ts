@@ -1,9 +1,9 @@
 import type { RandomSource } from '../base/random.ts';
 import { ascending } from './ascending.ts';
-import type { Member } from './frontMember.ts';
+import { alongFront, beats, type Member } from './frontMember.ts';
 import { firstAtLeast } from './hypervolume.ts';
 import { hypervolumeContributions } from './hypervolumeContributions.ts';
-import { nonDominatedRanks } from './pareto.ts';
+import { compareRows, nonDominatedRanks } from './pareto.ts';
 
 /** Worst corner of the hypervolume, in units of the spans: a tenth beyond the worst, so that the ends of the front count too. */
 export const CORNER = 1.1;
@@ -28,6 +28,9 @@ export class FrontPopulation {
   beaten: readonly Member[] = [];
   private resting: Member[] = [];
   private mayGrow = false;
+  /** Best and worst objectives that places are measured by. */
+  private best: number[] = [];
+  private worst: number[] = [];
   /** Running sums of worth over the front. */
   private sums: number[] = [];
 
@@ -42,32 +45,26 @@ export class FrontPopulation {
 
   /** Takes newcomers in, and leaves out who is not needed any more. */
   add(newcomers: readonly Member[]): void {
-    const all = [...this.members, ...newcomers];
-    if (this.mayGrow) all.push(...this.resting.splice(0));
-    const ranks = constrainedRanks(all);
-    this.measure(all, ranks);
-    const front = all.filter((member, k) => ranks[k] === 1 && member.violation === 0);
-    const corner = new Array<number>(all[0].objectives.length).fill(CORNER);
-    appraise(front, corner);
+    const arrivals = this.mayGrow ? [...newcomers, ...this.resting.splice(0)] : newcomers;
+    const isLarge = this.mayGrow && this.front.length >= this.least;
+    const { front, others, wide } = isLarge
+      ? merged(this.front, arrivals)
+      : ranked([...this.members, ...arrivals]);
+    this.measure(wide, arrivals);
+    // In order, the next appraisal need not sort it again.
+    front.sort((a, b) => ascending(a.place[a.place.length - 1], b.place[b.place.length - 1]));
+    appraise(front);
     while (!this.mayGrow && front.length > this.least) {
       const cheapest = front.reduce((least, { worth }, k) => (worth < front[least].worth ? k : least), 0);
       this.resting.push(...front.splice(cheapest, 1));
-      appraise(front, corner);
+      appraise(front);
     }
-    const onFront = new Set([...front, ...this.resting]);
-    const others = all
-      .map((member, k) => ({ member, rank: ranks[k] }))
-      .filter(({ member }) => !onFront.has(member));
-    others.sort((a, b) => a.rank - b.rank);
-    for (const { member } of others) member.worth = 0;
+    for (const member of others) member.worth = 0;
     const known = new Set(this.beaten);
-    this.beaten = [
-      ...this.beaten,
-      ...others.map(({ member }) => member).filter((member) => !known.has(member)),
-    ].slice(-this.least);
-    const fill = Math.max(0, this.least - front.length);
+    const losers = others.filter((member) => !known.has(member));
+    this.beaten = [...this.beaten, ...losers].slice(-this.least);
     this.front = front;
-    this.members = [...front, ...others.slice(0, fill).map(({ member }) => member)];
+    this.members = [...front, ...others.slice(0, Math.max(0, this.least - front.length))];
     let sum = 0;
     this.sums = front.map(({ worth }) => {
       sum += worth;
@@ -95,31 +92,74 @@ export class FrontPopulation {
     return this.front[Math.min(k, this.front.length - 1)];
   }
 
-  /** Gives every member its place. */
-  private measure(all: readonly Member[], ranks: readonly number[]): void {
-    const limit = ranks.toSorted(ascending)[Math.min(all.length, LEAST_FOR_SPANS) - 1];
-    const wide = all.filter((member, k) => ranks[k] <= limit && member.violation < Number.POSITIVE_INFINITY);
-    const best = all[0].objectives.map((_, j) =>
-      wide.reduce((x, { objectives }) => Math.min(x, objectives[j]), Infinity),
-    );
-    const worst = all[0].objectives.map((_, j) =>
-      wide.reduce((x, { objectives }) => Math.max(x, objectives[j]), -Infinity),
-    );
-    for (const member of all) {
-      member.place = member.objectives.map((x, j) => {
-        const span = worst[j] - best[j];
-        return (x - best[j]) / (span > 0 ? span : 1);
-      });
+  /** Gives all that are new their places, and everyone where the spans have changed. */
+  private measure(wide: readonly Member[], arrivals: readonly Member[]): void {
+    const extreme = (pick: (a: number, b: number) => number, start: number) =>
+      Array.from(wide[0]?.objectives ?? [], (_, j) =>
+        wide.reduce((x, { objectives }) => pick(x, objectives[j]), start),
+      );
+    const best = extreme(Math.min, Number.POSITIVE_INFINITY);
+    const worst = extreme(Math.max, Number.NEGATIVE_INFINITY);
+    const isSame = compareRows(best, this.best) === 0 && compareRows(worst, this.worst) === 0;
+    this.best = best;
+    this.worst = worst;
+    for (const member of isSame ? arrivals : [...this.members, ...this.beaten, ...arrivals]) {
+      member.place = best.map((least, j) => (member.objectives[j] - least) / (worst[j] - least || 1));
+      member.along = alongFront(member.place);
     }
   }
 }
 
-function appraise(front: readonly Member[], corner: readonly number[]): void {
+function appraise(front: readonly Member[]): void {
+  const corner = new Array<number>(front[0]?.place.length ?? 2).fill(CORNER);
   const worth = hypervolumeContributions(
     front.map(({ place }) => place),
     corner,
   );
   for (const [k, member] of front.entries()) member.worth = worth[k];
+}
+
+/** Members sorted into the front and the others by rank, and those that the spans are taken from. */
+interface Sorted {
+  front: Member[];
+  others: Member[];
+  wide: readonly Member[];
+}
+
+/** A front that is large enough to do without others: each arrival is only held against it. */
+function merged(old: readonly Member[], arrivals: readonly Member[]): Sorted {
+  let front = old.slice();
+  const others: Member[] = [];
+  for (const arrival of arrivals) {
+    if (front.some((member) => beats(member, arrival) || isEqual(member, arrival))) {
+      others.push(arrival);
+      continue;
+    }
+    const losers = front.filter((member) => beats(arrival, member));
+    if (losers.length > 0) {
+      others.push(...losers);
+      front = front.filter((member) => !losers.includes(member));
+    }
+    front.push(arrival);
+  }
+  return { front, others, wide: front };
+}
+
+function isEqual(a: Member, b: Member): boolean {
+  return a.violation === b.violation && compareRows(a.objectives, b.objectives) === 0;
+}
+
+/** Any members, by their ranks. */
+function ranked(members: readonly Member[]): Sorted {
+  const ranks = constrainedRanks(members);
+  const order = [...members.keys()].sort((a, b) => ranks[a] - ranks[b]);
+  const limit = ranks[order[Math.min(members.length, LEAST_FOR_SPANS) - 1]];
+  const isFront = (k: number) => ranks[k] === 1 && members[k].violation === 0;
+  return {
+    front: order.filter(isFront).map((k) => members[k]),
+    others: order.filter((k) => !isFront(k)).map((k) => members[k]),
+    wide: members.filter((member, k) => ranks[k] <= limit && member.violation < Number.POSITIVE_INFINITY),
+  };
 }
 
 /** Ranks of what is allowed, then all that is not by how far it is from allowed. */

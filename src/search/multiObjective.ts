@@ -1,5 +1,5 @@
 import { RimwrightError } from '../base/errors.ts';
-import { type Member, memberOf, type Outcome } from './frontMember.ts';
+import { memberOf, type Outcome } from './frontMember.ts';
 import { FrontPopulation } from './frontPopulation.ts';
 import {
   type CheckedMultiObjectiveOptions,
@@ -14,6 +14,13 @@ import { VariationChoice } from './variationChoice.ts';
 export interface FrontPoint {
   x: Float64Array;
   objectives: readonly number[];
+}
+
+/** A point, its place in the unit cube, and which way made it; −1 for the first ones. */
+interface Pending {
+  x: Float64Array;
+  unit: Float64Array;
+  way: number;
 }
 
 /** Share of the budget after which the front may grow beyond the least size. */
@@ -34,17 +41,15 @@ export class MultiObjectiveSearch {
   private readonly options: CheckedMultiObjectiveOptions;
   private readonly population: FrontPopulation;
   private readonly choice = new VariationChoice(VARIATIONS.length);
-  /** The points that are out for scoring, in the unit cube, and which way made each; −1 for the first ones. */
-  private pending: { unit: Float64Array; way: number }[];
+  /** The points that are out for scoring. */
+  private pending: Pending[];
   private scored = 0;
 
   /** @throws RimwrightError `input` that lists every mistake in the options */
   constructor(options: MultiObjectiveOptions) {
     this.options = checkedMultiObjectiveOptions(options);
     this.population = new FrontPopulation(this.options.population);
-    this.pending = this.firstPoints()
-      .slice(0, this.options.budget)
-      .map((unit) => ({ unit, way: -1 }));
+    this.pending = this.firstPoints().slice(0, this.options.budget);
   }
 
   /** Points scored so far. */
@@ -59,7 +64,7 @@ export class MultiObjectiveSearch {
 
   /** The points to score next, inside the bounds; none when the search is over. */
   ask(): Float64Array[] {
-    return this.pending.map(({ unit }) => this.inBox(unit));
+    return this.pending.map(({ x }) => x.slice());
   }
 
   /**
@@ -74,13 +79,8 @@ export class MultiObjectiveSearch {
     if (outcomes.length !== count) {
       throw new RimwrightError('input', `tell: ${outcomes.length} outcomes for ${count} points`);
     }
-    const newcomers = this.pending.map(({ unit }, k) =>
-      memberOf(
-        unit,
-        outcomes[k],
-        objectives,
-        `candidate ${k + 1} of ${count} at [${this.inBox(unit).join(', ')}]`,
-      ),
+    const newcomers = this.pending.map((point, k) =>
+      memberOf(point, outcomes[k], objectives, `candidate ${k + 1} of ${count}`),
     );
     this.scored += count;
     if (this.scored > APPROACH * budget) this.population.grow();
@@ -91,22 +91,27 @@ export class MultiObjectiveSearch {
     this.pending = Array.from({ length: Math.min(batch, budget - this.scored) }, () => this.nextPoint());
   }
 
-  /** All points that no other point told so far dominates, in the order of their objectives; none where none is allowed. */
+  /**
+   * All points that no other point told so far dominates, in the order of their objectives, one of each set of equal
+   * objectives; none where none is allowed.
+   */
   get front(): FrontPoint[] {
     return this.population
       .whole()
       .sort((a, b) => compareRows(a.objectives, b.objectives))
-      .map(({ unit, objectives }: Member) => ({ x: this.inBox(unit), objectives }));
+      .filter(({ objectives }, k, all) => k === 0 || compareRows(all[k - 1].objectives, objectives) !== 0)
+      .map(({ x, objectives }) => ({ x: x.slice(), objectives }));
   }
 
-  private nextPoint(): { unit: Float64Array; way: number } {
+  private nextPoint(): Pending {
     const { random } = this.options;
     const way = this.choice.draw(random);
-    return { unit: VARIATIONS[way](this.population, random), way };
+    const unit = VARIATIONS[way](this.population, random);
+    return { x: this.inBox(unit), unit, way };
   }
 
   /** The starts, and random points that share every coordinate out evenly: McKay, Beckman & Conover (1979), Technometrics 21, 239. */
-  private firstPoints(): Float64Array[] {
+  private firstPoints(): Pending[] {
     const { box, population, random, starts } = this.options;
     const columns = Array.from(box.lower, () => {
       const order = Array.from({ length: population }, (_, k) => k);
@@ -116,10 +121,15 @@ export class MultiObjectiveSearch {
       }
       return order.map((cell) => (cell + random.uniform()) / population);
     });
-    const given = starts.map((x) => x.map((v, i) => (v - box.lower[i]) / (box.upper[i] - box.lower[i])));
-    const spread = Array.from({ length: population }, (_, k) =>
-      Float64Array.from(columns, (column) => column[k]),
-    );
+    const given = starts.map((x) => ({
+      x: x.slice(),
+      unit: x.map((v, i) => (v - box.lower[i]) / (box.upper[i] - box.lower[i])),
+      way: -1,
+    }));
+    const spread = Array.from({ length: population }, (_, k) => {
+      const unit = Float64Array.from(columns, (column) => column[k]);
+      return { x: this.inBox(unit), unit, way: -1 };
+    });
     return [...given, ...spread];
   }
 

@@ -32,22 +32,27 @@ describe('CmaEs: speed', () => {
   }));
 
   // Own runs of the tutorial's algorithm, 51 seeds: test/reference/optimisation.json.
-  it.each(cases)('reaches 1e-10 as fast as the tutorial: $id', ({ n, f, value }) => {
-    const [start, sigma] = f === rosenbrock ? [0, 0.1] : [1, 1];
-    const counts = Array.from({ length: 21 }, (_, seed) => {
-      const cma = new CmaEs({
-        start: new Float64Array(n).fill(start),
-        sigma,
-        random: randomStream(seed + 1),
+  it.each(cases)(
+    'reaches 1e-10 as fast as the tutorial: $id',
+    ({ n, f, value }) => {
+      const [start, sigma] = f === rosenbrock ? [0, 0.1] : [1, 1];
+      const counts = Array.from({ length: 21 }, (_, seed) => {
+        const cma = new CmaEs({
+          start: new Float64Array(n).fill(start),
+          sigma,
+          random: randomStream(seed + 1),
+        });
+        run(f, cma, () => cma.best.value < 1e-10);
+        return cma.best.value < 1e-10 ? cma.evaluations : Number.POSITIVE_INFINITY;
       });
-      run(f, cma, () => cma.best.value < 1e-10);
-      return cma.best.value < 1e-10 ? cma.evaluations : Number.POSITIVE_INFINITY;
-    });
-    const median = counts.sort((a, b) => a - b)[10];
-    expect(median).toBeLessThan(1.1 * value.own_active_tutorial.median);
-    // Without negative weights the valleys take longer by more than a tenth: they are at work.
-    if (f !== sphere) expect(median).toBeLessThan(0.92 * value.own_positive_weights.median);
-  });
+      const median = counts.sort((a, b) => a - b)[10];
+      expect(median).toBeLessThan(1.1 * value.own_active_tutorial.median);
+      // Without negative weights the valleys take longer by more than a tenth: they are at work.
+      if (f !== sphere) expect(median).toBeLessThan(0.92 * value.own_positive_weights.median);
+      // Up to 350 000 evaluations: slow where the machine is busy.
+    },
+    60_000,
+  );
 });
 
 describe('CmaEs: invariance', () => {
