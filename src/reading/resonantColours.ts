@@ -12,7 +12,7 @@ export interface LineProfile {
 }
 
 /** A colour with what its sphere does to the light that it stands for. */
-export interface ResonantColour {
+interface ResonantColour {
   u: number;
   /** The weights of a line add up to 1. */
   weight: number;
