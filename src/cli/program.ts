@@ -9,6 +9,7 @@ const CANDIDATES = [100, 100_000_000] as const;
 const SEEDS = [0, 2 ** 31 - 1] as const;
 const WORKERS = [1, 64] as const;
 const DIAMETERS = [2, 2000] as const;
+const STEPS = [2, 12] as const;
 const ROUGH_OUTLINES = [2, 10_000] as const;
 
 const BRIEF = "a brief's path, or a brief's name on the shelf";
@@ -101,6 +102,34 @@ Example:
   $ rimwright draw disc.json`,
     )
     .action(async (brief, options) => done(await (await import('./smallestCommand.ts')).run(brief, options)));
+
+  withSearchOptions(
+    program
+      .command('trade')
+      .summary('what two keys of the brief cost each other')
+      .description(
+        'Finds the smallest detector for each pair of values of two keys of the brief, and writes a table and a map of them.',
+      )
+      .argument('[brief]', BRIEF),
+  )
+    .option('--over <keys>', 'two keys, each with a range if not that of the brief')
+    .option('--steps <n>', 'values of each key (default: 4)', wholeNumber('--steps', ...STEPS))
+    .option('--by <measure>', 'radius, area, cost or time (default: time)', oneOf('--by', MEASURES))
+    .option('--out <dir>', 'folder that results folders go into (default: results)')
+    .option('--resume <folder>', 'go on with a trade that did not end, in its results folder')
+    .addHelpText(
+      'after',
+      `
+Every pair takes a search of its own, with all the candidates of the brief or
+of --candidates. A key without a range goes over that of the brief, or from half
+to twice its value; steps are geometric, and even from 0.
+
+Examples:
+  $ rimwright trade my.yaml --over distance,offset --candidates 5000
+  $ rimwright trade my.yaml --over "distance=10 mm..60 mm, offset=0 um..20 um"
+  writes results/my-trade/ with trade.csv, trade.json and trade.svg.`,
+    )
+    .action(async (brief, options) => done(await (await import('./tradeCommand.ts')).run(brief, options)));
 
   program
     .command('reading')

@@ -1,12 +1,10 @@
-import { inputError } from '../base/errors.ts';
 import { jsonText } from '../run/jsonText.ts';
 import { missesOf } from '../run/ranking.ts';
 import type { Nearest } from '../run/results.ts';
 import { searchToJson } from '../run/results.ts';
-import { prepareFolder, UNFINISHED } from '../run/resultsFolder.ts';
 import type { SearchResult } from '../run/search.ts';
 import { search, smallest } from '../run/search.ts';
-import { SearchRun } from '../run/searchRun.ts';
+import type { SearchRun } from '../run/searchRun.ts';
 import { diffusionWarning, fieldsWarning, outlineOf, present } from '../run/warnings.ts';
 import { EXIT } from './exit.ts';
 import { printFront } from './front.ts';
@@ -14,32 +12,22 @@ import { interruptible, uninterrupted } from './interrupt.ts';
 import { note, print, warn } from './notes.ts';
 import { printEnding } from './printEnding.ts';
 import { resultFiles } from './resultFiles.ts';
-import { noteResume, resumeLine } from './resuming.ts';
-import type { SearchingOptions } from './searching.ts';
-import { openForSearch, withProgress, workersOf } from './searching.ts';
+import type { ResumableOptions } from './resuming.ts';
+import { keepingCheckpoint, noteResume, openRun } from './resuming.ts';
+import { withProgress, workersOf } from './searching.ts';
 
 const COMMAND = 'search';
-
-/** Where results folders go unless the user says. */
-const RESULTS = 'results';
 
 /** Share of the candidates that looking for the nearest design gets, where nothing keeps the brief's limits. */
 const NEAREST_SHARE = 0.25;
 const LEAST_CANDIDATES = 100;
 
-interface Options extends SearchingOptions {
-  out?: string;
-  resume?: string;
-}
-
 /** Runs `rimwright search` and gives its exit code. */
-export async function run(place: string | undefined, options: Options): Promise<number> {
-  const run = await (options.resume === undefined
-    ? begun(place, options)
-    : resumed(place, options, options.resume));
+export async function run(place: string | undefined, options: ResumableOptions): Promise<number> {
+  const run = await openRun(COMMAND, place, options, async () => null);
   const { opened, folder } = run;
   const { brief } = opened;
-  const { result, nearest } = await keepingCheckpoint(run, options, () =>
+  const { result, nearest } = await keepingCheckpoint(run, COMMAND, options, () =>
     interruptible((signal) => searchOrNearest(run, options, signal)),
   );
   const { designs } = result;
@@ -58,64 +46,14 @@ export async function run(place: string | undefined, options: Options): Promise<
   }
   // A long search is not lost where the disk fails: what it found has been printed.
   if ('fault' in written) {
-    noteResume(folder);
+    noteResume(folder, COMMAND);
     throw written.fault;
   }
   const parts = '  report.html  front.json  front.csv  run.json  drawings/';
   if (!options.json) print(`\nWritten to ${folder}/\n${parts}`);
   else if (!options.quiet) note(`Written to ${folder}`);
-  if (result.stopped) noteResume(folder);
+  if (result.stopped) noteResume(folder, COMMAND);
   return designs.some(({ meetsTarget }) => meetsTarget) ? EXIT.done : EXIT.target;
-}
-
-async function begun(place: string | undefined, options: Options): Promise<SearchRun> {
-  if (place === undefined) {
-    throw inputError([
-      { key: 'brief', found: 'none', expected: "a brief, or --resume with a search's folder" },
-    ]);
-  }
-  const opened = await openForSearch(place, options);
-  const parent = options.out ?? RESULTS;
-  prepareFolder(parent);
-  const others = SearchRun.unfinished(parent, COMMAND, opened, null);
-  const run = SearchRun.begin(parent, COMMAND, opened, null);
-  if (!options.quiet) {
-    for (const other of others)
-      note(`${other} holds a search of this brief that has not ended: ${resumeLine(other)}`);
-    note(`Checkpoint in ${run.folder}/${UNFINISHED}; after a break ${resumeLine(run.folder)}`);
-  }
-  return run;
-}
-
-async function resumed(place: string | undefined, options: Options, folder: string): Promise<SearchRun> {
-  const given = {
-    brief: place,
-    '--candidates': options.candidates,
-    '--seed': options.seed,
-    '--out': options.out,
-  };
-  const problems = Object.entries(given)
-    .filter(([, value]) => value !== undefined)
-    .map(([key, value]) => ({
-      key,
-      found: String(value),
-      expected: 'none: --resume goes on as the search began',
-    }));
-  if (problems.length > 0) throw inputError(problems);
-  const run = SearchRun.resume<null>(folder, COMMAND);
-  if (!options.quiet) note(`Going on with ${folder}: ${run.size} pieces of it are done.`);
-  return run;
-}
-
-/** Where a search fails, says that its checkpoint stays; one that nothing came of goes. */
-async function keepingCheckpoint<T>(run: SearchRun, options: Options, work: () => Promise<T>): Promise<T> {
-  try {
-    return await work();
-  } catch (error) {
-    if (run.size === 0 && options.resume === undefined) run.discard();
-    else noteResume(run.folder);
-    throw error;
-  }
 }
 
 function tried<T>(work: () => T): { value: T } | { fault: unknown } {
@@ -129,7 +67,7 @@ function tried<T>(work: () => T): { value: T } | { fault: unknown } {
 /** Searches; where no design keeps the brief's limits at all, looks for the one that comes nearest. */
 async function searchOrNearest(
   run: SearchRun,
-  options: Options,
+  options: ResumableOptions,
   signal: AbortSignal,
 ): Promise<{ result: SearchResult; nearest: Nearest | null }> {
   const { brief } = run.opened;

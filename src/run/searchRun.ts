@@ -63,12 +63,12 @@ export class SearchRun<Asked = null> {
    * @throws RimwrightError `input` where there is nothing that this command, in this version, can go on with
    */
   static resume<Asked>(folder: string, command: string): SearchRun<Asked> {
-    const refused = (found: string, expected = 'the results folder of a search that has not ended') =>
+    const refused = (found: string, expected = `the results folder of a ${command} that has not ended`) =>
       inputError([{ file: folder, found, expected }]);
     if (!existsSync(folder)) throw refused('no such folder');
     if (!existsSync(checkpointIn(folder))) {
       const ended = existsSync(join(folder, 'run.json'));
-      throw refused(ended ? 'a search that has ended' : 'no checkpoint in it');
+      throw refused(ended ? 'one that has ended' : 'no checkpoint in it');
     }
     const journal = Journal.open(checkpointIn(folder));
     if (journal === null) throw refused('a damaged checkpoint');

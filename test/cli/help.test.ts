@@ -3,7 +3,7 @@ import { join } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { folderWith, runCli, runHere } from './runCli.ts';
 
-const COMMANDS = ['search', 'smallest', 'reading', 'response', 'compare', 'draw', 'presets'];
+const COMMANDS = ['search', 'smallest', 'trade', 'reading', 'response', 'compare', 'draw', 'presets'];
 
 /** Scripts that a run of the program loaded, after the coverage that V8 writes. */
 function scriptsIn(folder: string): string[] {
@@ -29,6 +29,7 @@ describe('help', () => {
       'cli/optionRules.js',
       'cli/program.js',
       'score/aim.js',
+      'score/scores.js',
     ]);
     const packages = scripts.flatMap((url) => url.split('/node_modules/')[1]?.split('/')[0] ?? []);
     expect([...new Set(packages)]).toEqual(['commander']);

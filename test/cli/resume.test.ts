@@ -173,7 +173,7 @@ describe('rimwright search --resume', () => {
       [['nowhere'], 'nowhere: found no such folder'],
       [['empty'], 'empty: found no checkpoint in it'],
       [['damaged'], 'damaged: found a damaged checkpoint'],
-      [['ended'], 'ended: found a search that has ended'],
+      [['ended'], 'ended: found one that has ended'],
       [['nowhere', '--seed', '4'], '--seed: found 4, expected none'],
       [['nowhere', '--out', 'x'], '--out: found x, expected none'],
     ];
