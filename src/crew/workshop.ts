@@ -3,6 +3,7 @@ import type { Fields } from '../reading/tableShelf.ts';
 import { Certifier } from '../score/certifier.ts';
 import { leadingFields } from '../score/farZoneError.ts';
 import { REPORT_FINENESS, SEARCH_FINENESS } from '../score/fineness.ts';
+import { guardedTask } from '../score/guards.ts';
 import { Judge } from '../score/judge.ts';
 import { boundTools } from '../score/maskBound.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
@@ -28,7 +29,7 @@ export class Workshop {
   constructor(orders: Orders) {
     this.#orders = orders;
     this.#fields = leadingFields(orders.task);
-    this.#judge = new Judge(orders.task, SEARCH_FINENESS, this.#fields);
+    this.#judge = new Judge(guardedTask(orders.task), SEARCH_FINENESS, this.#fields);
     this.#space = searchSpace(orders.task, orders.families, this.#judge);
   }
 
