@@ -14,7 +14,7 @@ export interface MultiObjectiveOptions {
   random: RandomSource;
   /** Points to score first, inside the bounds: designs already known. */
   starts?: readonly Float64Array[];
-  /** Least number of points that are kept to breed from, at least 8; 30 if left out. */
+  /** Least number of points that are kept to breed from, at least 8; 50 if left out. */
   population?: number;
   /** Points a round, at least 1; 10 if left out. Larger ones keep more workers busy and learn a little more slowly. */
   batch?: number;
@@ -32,7 +32,7 @@ export interface CheckedMultiObjectiveOptions
  * @throws RimwrightError `input` that lists every mistake
  */
 export function checkedMultiObjectiveOptions(options: MultiObjectiveOptions): CheckedMultiObjectiveOptions {
-  const { objectives, budget, random, starts = [], population = 30, batch = 10 } = options;
+  const { objectives, budget, random, starts = [], population = 50, batch = 10 } = options;
   const problems: Problem[] = [];
   if (objectives !== 2 && objectives !== 3) {
     problems.push({ key: 'objectives', found: `${objectives}`, expected: '2 or 3' });

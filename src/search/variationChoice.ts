@@ -6,6 +6,9 @@ const LEAST_SHARE = 0.02;
 /** Share of what was learnt that is kept from one round to the next. */
 const MEMORY = 0.95;
 
+/** After so many rounds that brought nothing at all, all ways are alike again. */
+const PATIENCE = 5;
+
 /** Chances go as this power of what a way brings: a clear lead is used, noise does not decide. */
 const GREED = 3;
 
@@ -13,6 +16,7 @@ const GREED = 3;
 export class VariationChoice {
   private readonly gains: Float64Array;
   private readonly uses: Float64Array;
+  private barrenRounds = 0;
 
   constructor(count: number) {
     this.gains = new Float64Array(count);
@@ -44,6 +48,8 @@ export class VariationChoice {
     for (const numbers of [this.gains, this.uses]) {
       for (let k = 0; k < numbers.length; k++) numbers[k] *= MEMORY;
     }
+    this.barrenRounds = gains.some(({ gain }) => gain > 0) ? 0 : this.barrenRounds + 1;
+    if (this.barrenRounds >= PATIENCE) this.gains.fill(0);
     for (const { way, gain } of gains) {
       this.gains[way] += gain;
       this.uses[way]++;

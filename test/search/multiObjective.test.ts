@@ -23,16 +23,22 @@ const pair = ([x, y, z]: ArrayLike<number> & Iterable<number>): Outcome => ({
 
 describe('MultiObjectiveSearch: test problems', () => {
   // Exact hypervolumes of the whole fronts: test/reference/optimisation.json. All 11 seeds and 10 000 evaluations: npm run bench.
-  const least: Record<string, number> = { ZDT1: 0.97, ZDT2: 0.97, ZDT3: 0.92, DTLZ2: 0.95 };
+  // ZDT3's five pieces take longer to be found.
+  const least: Record<string, [evaluations: number, share: number]> = {
+    ZDT1: [2500, 0.97],
+    ZDT2: [2500, 0.97],
+    ZDT3: [5000, 0.97],
+    DTLZ2: [2500, 0.95],
+  };
   it.each(FRONT_PROBLEMS)(
-    'nears the whole front of $name in 2500 evaluations',
+    'nears the whole front of $name in a part of the evaluations',
     ({ name, exact, f, ...size }) => {
       const shares = [1, 2, 3].map((seed) => {
         const front = minimiseFront((x) => ({ objectives: f(x) }), {
           objectives: size.objectives,
           lower: new Float64Array(size.variables),
           upper: new Float64Array(size.variables).fill(1),
-          budget: 2500,
+          budget: least[name][0],
           random: randomStream(seed),
         });
         const reference = new Array<number>(size.objectives).fill(1.1);
@@ -44,13 +50,13 @@ describe('MultiObjectiveSearch: test problems', () => {
         );
       });
       for (const share of shares) expect(share).toBeLessThan(1);
-      expect(shares.sort((a, b) => a - b)[1]).toBeGreaterThan(least[name]);
+      expect(shares.sort((a, b) => a - b)[1]).toBeGreaterThan(least[name][1]);
     },
   );
 });
 
 describe('MultiObjectiveSearch', () => {
-  it.each([1, 7, 30, 31, 400, 405])('spends the budget of %i and no more, inside the bounds', (budget) => {
+  it.each([1, 7, 50, 51, 400, 405])('spends the budget of %i and no more, inside the bounds', (budget) => {
     const { lower, upper } = options();
     let count = 0;
     const front = minimiseFront((x) => {
@@ -165,9 +171,9 @@ describe('MultiObjectiveSearch', () => {
       'start[0]: found 9',
     );
     const search = new MultiObjectiveSearch(options());
-    expect(() => search.tell([])).toThrow('tell: 0 outcomes for 30 points');
+    expect(() => search.tell([])).toThrow('tell: 0 outcomes for 50 points');
     expect(() => minimiseFront(() => ({ objectives: [1, Number.NaN] }), options())).toThrow(
-      'candidate 1 of 30 scored [1, NaN] with violation 0 at [',
+      'candidate 1 of 50 scored [1, NaN] with violation 0 at [',
     );
     expect(() => minimiseFront(() => ({ objectives: [1, 2, 3] }), options())).toThrow('expected 2 numbers');
   });
