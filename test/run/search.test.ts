@@ -2,8 +2,8 @@ import { describe, expect, it } from 'vitest';
 import type { FamilyName } from '../../src/outline/families/family.ts';
 import type { Brief } from '../../src/run/brief.ts';
 import type { CourseOptions } from '../../src/run/course.ts';
-import { FRONT_REACH, missesOf } from '../../src/run/ranking.ts';
 import type { Progress } from '../../src/run/progress.ts';
+import { FRONT_REACH, missesOf } from '../../src/run/ranking.ts';
 import { search, smallest } from '../../src/run/search.ts';
 import { REPORT_FINENESS } from '../../src/score/fineness.ts';
 import { Judge } from '../../src/score/judge.ts';
@@ -120,7 +120,7 @@ describe('smallest', () => {
     expect(nearest?.family).toBe('disc');
     expect(nearest?.meetsTarget).toBe(false);
     expect(misses.map(({ limit }) => limit)).toEqual(['target.correction']);
-    expect(misses[0].factor).toBeCloseTo((nearest?.scores.correction.worst ?? 0) / 0.01, 9);
+    expect(misses[0].factor).toBeCloseTo((nearest?.scores.correction.certified ?? 0) / 0.01, 9);
   });
 
   it('makes small what it is asked to', async () => {
