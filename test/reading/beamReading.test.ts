@@ -199,6 +199,25 @@ describe('beamReading, exact fields', () => {
   );
 });
 
+describe('beamReading, amplitudes without coefficients', () => {
+  it('reads them as the sphere that they are of, at a waist of five wavelengths and radii', () => {
+    const scenario = scenarioOf({ diameterM: 1.27 * UM, index: [1.59, 0] }, 0.1);
+    const colours = scenario.colours.map(({ sphere: { coefficients: _, ...sphere }, ...colour }) => ({
+      ...colour,
+      sphere,
+    }));
+    const [x, radiusM] = [1.6 * UM, 300 * UM];
+    const [whole, bare] = [scenario, { ...scenario, colours }].map((one) => {
+      const place = placement(5 * MM, radiusM, { offsetM: x });
+      const table = buildBeamTable(one, { waistM: 3.175 * UM, focusM: 0 }, place);
+      return [0, x].map((at) => beamReading(table, discNodes(radiusM), at, 0) / scenario.extinctionM2);
+    });
+    bare.forEach((ratio, i) => {
+      expect(Math.abs(ratio - whole[i])).toBeLessThan(2e-5);
+    });
+  });
+});
+
 describe('beamReading, limits', () => {
   const ring = Float64Array.from(star(400 * UM, 5, 0.5));
   const distanceM = 20 * MM;
