@@ -9,9 +9,13 @@ import { missText } from './missText.ts';
 /** A design's scores as one paragraph, and what of the target it misses. */
 export function scoreText(design: RankedDesign, task: Task): string {
   const { gain, correction, lobe, snr, area_m2, areaOverFloor } = design.scores;
+  const worst = worstOf(design.scores);
   const scores = [
-    `worst correction ${percentText(worstOf(design.scores))}`,
-    ...(correction.certified === undefined ? [] : [`of the samples alone ${percentText(correction.worst)}`]),
+    `worst correction ${percentText(worst)}`,
+    // The same three digits twice would tell nothing.
+    ...(percentText(worst) === percentText(correction.worst)
+      ? []
+      : [`of the samples alone ${percentText(correction.worst)}`]),
     `rms ${percentText(correction.rms)}`,
     ...(correction.population === undefined
       ? []

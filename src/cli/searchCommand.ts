@@ -6,6 +6,7 @@ import type { SearchResult } from '../run/search.ts';
 import { search, smallest } from '../run/search.ts';
 import type { SearchRun } from '../run/searchRun.ts';
 import { diffusionWarning, fieldsWarning, outlineOf, present } from '../run/warnings.ts';
+import { worstOf } from '../score/scores.ts';
 import { EXIT } from './exit.ts';
 import { printFront } from './front.ts';
 import { interruptible, uninterrupted } from './interrupt.ts';
@@ -76,7 +77,7 @@ async function searchOrNearest(
   );
   const { designs } = result;
   if (designs.some(({ meetsTarget }) => meetsTarget)) return { result, nearest: null };
-  const [best] = designs.toSorted((a, b) => a.scores.correction.worst - b.scores.correction.worst);
+  const [best] = designs.toSorted((a, b) => worstOf(a.scores) - worstOf(b.scores));
   if (best !== undefined) return { result, nearest: { design: best, misses: missesOf(best, brief.task) } };
   if (result.stopped || signal.aborted) return { result, nearest: null };
   if (!options.quiet)
