@@ -16,7 +16,7 @@ import { randomStream } from '../../src/base/random.ts';
 import { folderWith, MAIN, QUICK_BRIEF, runCli, runHere } from './runCli.ts';
 
 /** Long enough to have all kinds of jobs in it, and a repair. */
-const BRIEF = QUICK_BRIEF.replace('candidates: 200', 'candidates: 1500');
+const BRIEF = QUICK_BRIEF.replace('candidates: 200', 'candidates: 1000');
 const BEGIN = ['search', 'quick.yaml', '--workers', '1', '--quiet'];
 const RESUME = ['search', '--resume', 'results/quick-look', '--workers', '1', '--quiet'];
 
@@ -74,6 +74,9 @@ async function fullDisk(
   return { ...outcome, checkpoint: existsSync(path) ? readFileSync(path, 'utf8') : '' };
 }
 
+/** The longest time to a kill, over a whole life: starting anew takes a good part of that. */
+const SITTING = 0.75;
+
 const isBegun = (folder: string) => existsSync(join(folder, 'results/quick-look/unfinished'));
 
 /** Lives of a search, one after the other, with `kills` at random moments of them; the results of each life. */
@@ -84,7 +87,7 @@ async function lives(kills: number, random: RandomSource, lifeMs: number): Promi
     const folder = folderWith({ 'quick.yaml': BRIEF });
     for (let isOver = false; !isOver; ) {
       const args = isBegun(folder) ? RESUME : BEGIN;
-      const isKilled = await killedAfter(args, folder, left > 0 ? random.uniform() * lifeMs : 1e6);
+      const isKilled = await killedAfter(args, folder, left > 0 ? random.uniform() * SITTING * lifeMs : 1e6);
       if (isKilled) left--;
       // Killed after its last act, it has nothing left to go on with.
       else isOver = true;
