@@ -62,8 +62,8 @@ function nodeCount(segment: Segment, density: NodeDensity): number {
   const { kappa, offsetM, perRadian, least } = density;
   const point = new Float64Array(4);
   if (segment.kind === 'polar' && isClosed(segment)) {
-    // One fold is probed, five times for the shortest wave of 13 harmonics; every fold gets the same whole number of nodes.
-    const probes = 8 * PROBES;
+    // One fold is probed, five times for each of its finest waves; every fold gets the same whole number of nodes.
+    const probes = Math.max(8 * PROBES, 5 * (segment.waves ?? 0));
     const step = (2 * Math.PI) / (segment.folds * probes);
     let own = 0;
     let largest = 0;
@@ -83,7 +83,8 @@ function nodeCount(segment: Segment, density: NodeDensity): number {
     const pace = slopes > 0 ? 1.5 * Math.sqrt(bends / slopes) : 0;
     const perTurn = 2 * Math.PI * (kappa * own + pace + 2 * kappa * offsetM * Math.sqrt(largest));
     const perFold = Math.ceil((least + perRadian * perTurn) / segment.folds);
-    return segment.folds * Math.max(perFold, 4);
+    // The area is a mean of ρ², exact from one node more than it has waves.
+    return segment.folds * Math.max(perFold, 4, (segment.waves ?? 0) + 2);
   }
   let phase = 0;
   let before = 0;

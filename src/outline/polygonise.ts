@@ -42,13 +42,17 @@ function onGrid(metres: number): number {
   return Math.round(metres * 1e9) / 1e9;
 }
 
+/** Vertices for each of the finest waves of a curve. */
+const PER_WAVE = 6;
+
 function pieceCount(segment: Segment, verticesPerTurn: number): number {
   if (segment.kind === 'line') return 1;
   const turns = Math.abs(segment.to - segment.from) / (2 * Math.PI);
   // A polar curve bends several times in a turn, and no stretch makes up for what its chords cut off.
   const density = segment.kind === 'polar' ? 4 : 1;
+  const ofWaves = segment.kind === 'polar' ? PER_WAVE * segment.folds * (segment.waves ?? 0) : 0;
   // A rounding error in the angles must not give one fold a vertex more than the next.
-  const wanted = Math.ceil(turns * verticesPerTurn * density - 1e-9);
+  const wanted = Math.ceil(turns * Math.max(verticesPerTurn * density, ofWaves) - 1e-9);
   const fitting =
     segment.kind === 'arc' ? Math.floor((turns * 2 * Math.PI * segment.radius) / LEAST_CHORD_M) : wanted;
   const pieces = Math.max(2, Math.min(wanted, fitting));

@@ -23,6 +23,8 @@ interface PolarSegment {
   from: number;
   to: number;
   folds: number;
+  /** Waves of the finest ripple in a fold, where it has more than a dozen. */
+  waves?: number;
   /** Writes ρ² and d(ρ²)/dφ at φ into out[0], out[1]. */
   squared: (phi: number, out: Float64Array) => void;
 }

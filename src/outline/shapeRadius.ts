@@ -2,8 +2,9 @@ import type { Segment } from './segment.ts';
 import { isClosed, pointOn } from './segment.ts';
 import type { Shape } from './shape.ts';
 
-/** Probes of a segment: five to the shortest wave of the series that families draw, of 13 harmonics a fold. */
+/** Probes of a segment, and of each of its finest waves. */
 const PROBES = 66;
+const PER_WAVE = 5;
 
 /** Radius of the circle about the axis around a shape, metres; curves are probed and the best probe refined, to 1e-6 or so. */
 export function shapeRadius(shape: Shape): number {
@@ -28,17 +29,18 @@ function farthestSquared(segment: Segment): number {
   const span = segment.kind === 'polar' ? 1 / segment.folds : 1;
   // A closed curve goes on beyond its ends.
   const within = (t: number) => (isClosed(segment) ? t : Math.min(span, Math.max(0, t)));
+  const probes = Math.max(PROBES, PER_WAVE * ((segment.kind === 'polar' && segment.waves) || 0));
   let best = 0;
   let place = 0;
-  for (let i = 0; i <= PROBES; i++) {
-    const value = squaredAt((span * i) / PROBES);
+  for (let i = 0; i <= probes; i++) {
+    const value = squaredAt((span * i) / probes);
     if (value > best) {
       best = value;
-      place = (span * i) / PROBES;
+      place = (span * i) / probes;
     }
   }
   // Parabolas through the best place and its neighbours, ever closer together.
-  for (let step = span / PROBES; step > 1e-3 * span; step /= 4) {
+  for (let step = span / probes; step > 1e-3 * span; step /= 4) {
     const before = squaredAt(within(place - step));
     const after = squaredAt(within(place + step));
     const bend = before - 2 * best + after;

@@ -15,6 +15,9 @@ interface Expansion {
 
 /**
  * Fourier boundaries: ρ² (or ρ) = c₀ + Σ c_k cos(k n φ) [+ s_k sin(k n φ)], n-fold; one-fold with sines is the free form.
+ *
+ * A series of ρ² must stay above 0. One of ρ may swing through it, since ρ² is its square and a little more: where it rests near 0,
+ * small ripples leave a valley down to a small hub. With many terms it comes near to any star.
  */
 export function fourierVariants(limits: PhaseLimits): Variant[] {
   const expansions: Expansion[] = [
@@ -22,6 +25,7 @@ export function fourierVariants(limits: PhaseLimits): Variant[] {
     ...[5, 8].map((folds) => ({ of: 'square', folds, terms: 10, sines: false }) as const),
     ...[5, 8].map((folds) => ({ of: 'square', folds, terms: 14, sines: false }) as const),
     ...[3, 5].map((folds) => ({ of: 'radius', folds, terms: 6, sines: false }) as const),
+    ...[14, 24, 30].map((terms) => ({ of: 'radius', folds: 6, terms, sines: false }) as const),
     ...[3, 5].map((folds) => ({ of: 'square', folds, terms: 3, sines: true }) as const),
     { of: 'square', folds: 1, terms: 6, sines: true },
   ];
@@ -33,7 +37,7 @@ function fourierVariant(expansion: Expansion, limits: PhaseLimits): Variant {
   const harmonics = terms - 1;
   const largest = of === 'square' ? limits.high : Math.sqrt(limits.high);
   const swing = Math.min(largest, of === 'square' ? 60 : 8);
-  const parameters = [{ name: 'c0', low: leastOf(of), high: largest }];
+  const parameters = [{ name: 'c0', low: of === 'square' ? LEAST : Math.sqrt(LEAST), high: largest }];
   for (let k = 1; k <= harmonics; k++) parameters.push({ name: `c${k}`, low: -swing, high: swing });
   if (sines)
     for (let k = 1; k <= harmonics; k++) parameters.push({ name: `s${k}`, low: -swing, high: swing });
@@ -42,7 +46,7 @@ function fourierVariant(expansion: Expansion, limits: PhaseLimits): Variant {
     id: `fourier-${of}-${folds}-fold-${terms}${sines ? '-sines' : ''}`,
     parameters,
     draw: (values, unitM) => drawFourier(values, expansion, unitM),
-    margins: (values) => seriesMargins(values, expansion),
+    ...(of === 'square' && { margins: (values) => seriesMargins(values, expansion) }),
     fromProfile: (profile) => expandProfile(profile, expansion),
     start: (random) => startFourier(random, expansion, limits),
   };
@@ -77,19 +81,13 @@ function sumSeries(
 
 /** How far the series stays above its least value, at even azimuths over one fold (half a fold where it is a mirror). */
 function seriesMargins(values: ArrayLike<number>, expansion: Expansion): Float64Array {
-  const { of, folds, terms, sines } = expansion;
+  const { folds, terms, sines } = expansion;
   const out = new Float64Array(2);
   const probes = (sines ? 12 : 6) * terms;
-  const least = leastOf(of);
   return Float64Array.from({ length: probes + 1 }, (_, i) => {
     sumSeries(values, expansion, ((sines ? 2 : 1) * Math.PI * i) / (probes * folds), out);
-    return out[0] - least;
+    return out[0] - LEAST;
   });
-}
-
-/** Least value of a series. */
-function leastOf(of: Expansion['of']): number {
-  return of === 'square' ? LEAST : Math.sqrt(LEAST);
 }
 
 /** Azimuths at which a profile is sampled to expand it. */
@@ -110,38 +108,46 @@ function expandProfile(profile: (share: number) => number, { of, terms, sines }:
     const turn = (Math.PI * k) / terms;
     return (sum / PROFILE_SAMPLES) * (k === 0 ? 1 : (2 * Math.sin(turn)) / turn);
   });
-  let lowest = Number.POSITIVE_INFINITY;
-  for (let i = 0; i <= PROFILE_SAMPLES; i++) {
-    const turn = (Math.PI * i) / PROFILE_SAMPLES;
-    lowest = Math.min(
-      lowest,
-      series.reduce((sum, value, k) => sum + value * Math.cos(k * turn), 0),
-    );
-  }
-  const mean = Math.max(series[0], 2 * leastOf(of));
-  const share = Math.min(1, (mean - 1.5 * leastOf(of)) / Math.max(mean - lowest, leastOf(of)));
-  const kept = series.map((value, k) => (k === 0 ? mean : share * value));
+  const [mean, ...waves] = series;
+  const kept =
+    of === 'radius' ? series : [Math.max(mean, 2 * LEAST), ...shrink(waves, Math.max(mean, 2 * LEAST))];
   return sines ? [...kept, ...Array<number>(terms - 1).fill(0)] : kept;
 }
 
+/** Waves about a mean, made smaller where they would take the series down to the axis. */
+function shrink(waves: readonly number[], mean: number): number[] {
+  let deepest = 0;
+  for (let i = 0; i <= PROFILE_SAMPLES; i++) {
+    const turn = (Math.PI * i) / PROFILE_SAMPLES;
+    const value = waves.reduce((sum, wave, k) => sum + wave * Math.cos((k + 1) * turn), 0);
+    deepest = Math.max(deepest, -value);
+  }
+  const share = Math.min(1, (mean - 1.5 * LEAST) / Math.max(deepest, LEAST));
+  return waves.map((wave) => share * wave);
+}
+
 function drawFourier(values: ArrayLike<number>, expansion: Expansion, unitM: number): Shape | Misdrawn {
-  const { of, folds, sines } = expansion;
-  // Margins a little below 0 are still drawn, so that a search can take differences where they hold with equality.
-  const least = Math.min(...seriesMargins(values, expansion)) + leastOf(of) / 2;
-  if (least < 0) return { misdrawnBy: -least };
+  const { of, folds, terms, sines } = expansion;
+  if (of === 'square') {
+    // Margins a little below 0 are still drawn, so that a search can take differences where they hold with equality.
+    const least = Math.min(...seriesMargins(values, expansion)) + LEAST / 2;
+    if (least < 0) return { misdrawnBy: -least };
+  }
   const area = unitM * unitM;
   const squared = (phi: number, out: Float64Array) => {
     sumSeries(values, expansion, phi, out);
     if (of === 'radius') {
       out[1] *= 2 * out[0];
-      out[0] *= out[0];
+      out[0] = out[0] * out[0] + LEAST / 2;
     }
     // Between the probes the boundary may dip a little lower, but never to the axis: there it keeps to a small circle.
     const isCut = out[0] < LEAST / 4;
     out[0] = isCut ? (LEAST / 4) * area : out[0] * area;
     out[1] = isCut ? 0 : out[1] * area;
   };
-  const loop = [{ kind: 'polar', from: 0, to: 2 * Math.PI, folds, squared }] as const;
+  // The square of a series has waves twice as fine.
+  const waves = (of === 'radius' ? 2 : 1) * (terms - 1);
+  const loop = [{ kind: 'polar', from: 0, to: 2 * Math.PI, folds, waves, squared }] as const;
   return { elements: [{ weight: 1, loops: [loop] }], folds, mirror: !sines };
 }
 
