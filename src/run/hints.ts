@@ -34,6 +34,7 @@ export function hintsFor(
     ...candidatesHints(brief, movedInLastQuarter),
     ...correctionHints(brief, designs, meeting),
     ...limitHints(brief, shown),
+    ...placeHints(brief, shown),
     ...keptOutHints(brief),
   ];
 }
@@ -123,6 +124,25 @@ function shopShare({ elements }: Design, shop: ShopRules): number {
     ];
   });
   return Math.max(0, ...shares);
+}
+
+/** Places at the edge of what the brief allows, where designs read worst. */
+function placeHints({ task }: Brief, shown: readonly Design[]): string[] {
+  const { offsetM, depthM } = task.placement;
+  const places = [
+    { key: 'placement.offset', most: offsetM, of: ([x, y]: readonly number[]) => Math.hypot(x, y) },
+    { key: 'placement.depth', most: depthM, of: ([, , z]: readonly number[]) => Math.abs(z) },
+  ];
+  return places.flatMap(({ key, most, of }) => {
+    if (most === 0) return [];
+    const count = shown.filter(({ scores }) => {
+      const at = scores.correction.certifiedAt;
+      return at !== undefined && of([...at.position_m, at.depth_m]) >= AT_LIMIT.from * most;
+    }).length;
+    if (count === 0) return [];
+    const designs = shown.length === 1 ? 'the design reads' : `${count} of ${shown.length} designs read`;
+    return [`${key}: ${designs} worst at ${formatQuantity(most, 'length', 3)}, less may lead further`];
+  });
 }
 
 /** What a brief does not allow at all: with it, nothing that was found is lost. */

@@ -62,6 +62,26 @@ describe('hintsFor', () => {
     expect(hintsFor(BRIEF, [design({}), design(parts)], null)).toEqual([expected]);
   });
 
+  it('says where designs read worst at the edge of where the particle may be', () => {
+    const { placement } = BRIEF.task;
+    const brief = {
+      ...BRIEF,
+      task: { ...BRIEF.task, placement: { ...placement, offsetM: 1e-5, depthM: 1e-3 } },
+    };
+    const worstAt = (position_m: [number, number], depth_m: number): Design => {
+      const one = design({});
+      const certifiedAt = { diameter_m: 2e-6, material: '1.59', wavelength_m: 6.35e-7, depth_m, position_m };
+      const correction = { ...one.scores.correction, certified: 0.006, certifiedAt };
+      return { ...one, scores: { ...one.scores, correction } };
+    };
+    const shown = [worstAt([6e-6, -8e-6], 0), worstAt([1e-6, 0], -1e-3), design({})];
+    expect(hintsFor(brief, shown, null)).toEqual([
+      'placement.offset: 1 of 3 designs read worst at 10 µm, less may lead further',
+      'placement.depth: 1 of 3 designs read worst at 1 mm, less may lead further',
+    ]);
+    expect(hintsFor(BRIEF, shown, null)).toEqual([]);
+  });
+
   it('counts those that meet the target, and what misses a limit does not lie at it', () => {
     const missing = design({ lobe: 0.099, worst: 0.02 });
     expect(hintsFor(BRIEF, [design({}), missing], null)).toEqual([]);
