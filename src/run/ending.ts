@@ -27,9 +27,10 @@ export function endingOf(
 /** Why a search ended and how much its front still moved, in a sentence or two. */
 export function endingText({ reason, movedInLastQuarter }: Ending, evaluations: number, candidates: number) {
   const tried = `${evaluations} of ${candidates} candidates were tried`;
-  // A share of the candidates is kept for designs that finer judging finds a little beyond the target.
+  // A share of the candidates is kept for designs that finer judging finds a little beyond the target: not all may need it.
+  const kept = evaluations < candidates ? ', the others were kept for repairs' : '';
   const why = {
-    spent: `The search ended because its candidates were spent: ${tried}, and no more repairs were needed.`,
+    spent: `The search ended because its candidates were spent: ${tried}${kept}.`,
     settled: `The search ended because every lap had settled: ${tried}.`,
     interrupted: `The search was interrupted: ${tried}.`,
   }[reason];

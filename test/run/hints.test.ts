@@ -127,7 +127,7 @@ describe('endingText', () => {
     [
       'spent',
       0.071,
-      'The search ended because its candidates were spent: 90 of 100 candidates were tried, and no more repairs were needed. In their last quarter the front moved by 7.1 %.',
+      'The search ended because its candidates were spent: 90 of 100 candidates were tried, the others were kept for repairs. In their last quarter the front moved by 7.1 %.',
     ],
     [
       'settled',
@@ -137,5 +137,12 @@ describe('endingText', () => {
     ['interrupted', null, 'The search was interrupted: 90 of 100 candidates were tried.'],
   ] as const)('%s', (reason, movedInLastQuarter, expected) => {
     expect(endingText({ reason, movedInLastQuarter, hints: [] }, 90, 100)).toBe(expected);
+  });
+
+  it('keeps nothing for repairs where all candidates were tried', () => {
+    const ending = { reason: 'spent' as const, movedInLastQuarter: null, hints: [] };
+    expect(endingText(ending, 100, 100)).toBe(
+      'The search ended because its candidates were spent: 100 of 100 candidates were tried.',
+    );
   });
 });
