@@ -34,10 +34,12 @@ const MISDRAWN = 1e3;
 const SHOP_VERTICES = 96;
 
 /**
- * Beyond this many times the allowed correction a candidate has other troubles than the shop's rules: it is taken to fit
- * until it comes nearer. Measuring openings and webs costs as much as a score.
+ * Beyond so many times the allowed correction a candidate has other troubles than the shop's rules, and is taken to fit: measuring
+ * openings and webs costs as much as a score. Nearer by they come to count more and more, all from the second number on; a step
+ * would hold descents at its edge.
  */
-const SHOP_FROM = 1.5;
+const SHOP_FROM = 5;
+const SHOP_ALL = 1.5;
 
 /** The distance that a place from 0 to 1 on the grid stands for. */
 export function distanceAt(space: SearchSpace, place: number): number {
@@ -101,9 +103,11 @@ function tooLargeBy({ task }: Judge, shape: Shape): number {
 function shopMisfit(judge: Judge, shape: Shape, scores: Scores, aim: Aim): number {
   const { shop } = judge.task;
   if (shop === null) return 0;
-  if (scores.correction.worst > SHOP_FROM * aim.correction) return 0;
+  const excess = scores.correction.worst / aim.correction;
+  if (excess > SHOP_FROM) return 0;
   const elements = shape.elements.map(({ loops }) => ({
     rings: loops.map((loop) => polygonise(loop, SHOP_VERTICES)),
   }));
-  return inspectOutline(elements, shop).misfit;
+  const share = Math.min(1, (SHOP_FROM - excess) / (SHOP_FROM - SHOP_ALL));
+  return share * inspectOutline(elements, shop).misfit;
 }

@@ -1,6 +1,7 @@
 import type { FoundMask, MaskJob, MaskResult } from '../crew/maskJob.ts';
 import type { Variant } from '../outline/families/family.ts';
 import { ringsOf, starProfile } from '../score/maskSteps.ts';
+import { radiusWithinLobe } from '../score/radiusWithinLobe.ts';
 import type { Task } from '../score/task.ts';
 
 /** A start for a descent, drawn from a least mask. */
@@ -55,10 +56,11 @@ export function seedsOf(ground: Ground, jobs: readonly MaskJob[], results: reado
     results[i].found.flatMap((found) => {
       if (found === null) return [];
       const at = ground.distances.indexOf(job.distanceM);
+      const slot = slotOf(ground.task, radiusWithinLobe(ground.task, job.distanceM));
       const place = ground.distances.length > 1 ? [at / (ground.distances.length - 1)] : [];
       return variantsFor(ground, job.masks).map((variant) => ({
         variant: variant.id,
-        vector: [...(job.masks === 'any' ? rimsFor(variant, found) : starFor(variant, found)), ...place],
+        vector: [...(job.masks === 'any' ? rimsFor(variant, found, slot) : starFor(variant, found)), ...place],
       }));
     }),
   );
@@ -71,10 +73,31 @@ function variantsFor({ variants }: Ground, masks: MaskJob['masks']): Variant[] {
 }
 
 /** Rims of a variant of rings; where the mask has fewer rings, the rest begin without width at the outer end. */
-function rimsFor({ parameters }: Variant, { mask: { steps } }: FoundMask): number[] {
-  const rims = ringsOf(steps, parameters.length / 2);
+function rimsFor({ parameters }: Variant, { mask: { steps } }: FoundMask, slot: number): number[] {
+  const unit = Math.sqrt(steps[steps.length - 1].end);
+  const rims = widened(ringsOf(steps, parameters.length / 2), slot * unit);
   while (rims.length < parameters.length) rims.push(steps[steps.length - 1].end * 0.999);
   return within(rims, parameters);
+}
+
+/** The shop's smallest opening over the radius of the mask; 0 without a shop. */
+function slotOf({ shop }: Task, radiusM: number): number {
+  return shop === null ? 0 : shop.smallestOpeningM / radiusM;
+}
+
+/**
+ * Rings at least so wide that the shop can cut them.
+ *
+ * @param rims in phase
+ * @param least width in the root of phase
+ */
+function widened(rims: readonly number[], least: number): number[] {
+  return Array.from({ length: rims.length / 2 }, (_, i) => {
+    const [inner, outer] = [Math.sqrt(rims[2 * i]), Math.sqrt(rims[2 * i + 1])];
+    const half = Math.max(outer - inner, 1.05 * least) / 2;
+    const middle = Math.max((inner + outer) / 2, half);
+    return [(middle - half) ** 2, (middle + half) ** 2];
+  }).flat();
 }
 
 function starFor({ parameters, fromProfile }: Variant, { mask: { steps } }: FoundMask): number[] {
