@@ -1,5 +1,6 @@
 import { countText, timeText } from '../draw/quantityText.ts';
 import type { RankedDesign } from '../run/ranking.ts';
+import type { Scores } from '../score/scores.ts';
 import { worstOf } from '../score/scores.ts';
 import type { Column } from './table.ts';
 
@@ -15,7 +16,13 @@ export const DESIGN_COLUMNS = {
   time: { title: ['time'], cell: ({ scores }) => timeText(scores.snr.time_s) },
   area: { title: ['area', 'mm²'], cell: ({ scores }) => shortCount(scores.area_m2 * 1e6) },
   overFloor: { title: ['area/', 'floor'], cell: ({ scores }) => countText(scores.areaOverFloor) },
+  overLeast: { title: ['area/', 'least'], cell: ({ scores }) => overLeastText(scores) },
 } satisfies Record<string, Column<RankedDesign>>;
+
+/** How much more area over gain a design has than it is proven to need, as a factor. */
+function overLeastText({ areaOverFloor, leastAreaOverFloor }: Scores): string {
+  return leastAreaOverFloor === undefined ? '–' : (areaOverFloor / leastAreaOverFloor).toFixed(3);
+}
 
 /** Four significant digits, so that a correction just beyond a target of 1 % does not look like one that keeps it. */
 function percentCell(ratio: number): string {

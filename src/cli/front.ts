@@ -26,8 +26,9 @@ export function printFront(
 
 /** One row a design. */
 export function designTable(designs: readonly RankedDesign[]): string {
-  const { distance, radius, gain, worst, lobe, snr, time, overFloor } = DESIGN_COLUMNS;
-  const columns = [distance, radius, gain, worst, lobe, snr, time, overFloor];
+  const { distance, radius, gain, worst, lobe, snr, time, overFloor, overLeast } = DESIGN_COLUMNS;
+  const isBounded = designs.some(({ scores }) => scores.leastAreaOverFloor !== undefined);
+  const columns = [distance, radius, gain, worst, lobe, snr, time, isBounded ? overLeast : overFloor];
   const name = {
     title: ['design'],
     cell: ({ id }: RankedDesign) => id,

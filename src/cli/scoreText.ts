@@ -8,7 +8,7 @@ import { missText } from './missText.ts';
 
 /** A design's scores as one paragraph, and what of the target it misses. */
 export function scoreText(design: RankedDesign, task: Task): string {
-  const { gain, correction, lobe, snr, area_m2, areaOverFloor } = design.scores;
+  const { gain, correction, lobe, snr, area_m2, areaOverFloor, leastAreaOverFloor } = design.scores;
   const worst = worstOf(design.scores);
   const scores = [
     `worst correction ${percentText(worst)}`,
@@ -26,6 +26,9 @@ export function scoreText(design: RankedDesign, task: Task): string {
     `time ${timeText(snr.time_s)}`,
     `area ${areaText(area_m2)}`,
     `${countText(areaOverFloor)} times the floor`,
+    ...(leastAreaOverFloor === undefined
+      ? []
+      : [`${(areaOverFloor / leastAreaOverFloor).toFixed(3)} times the least that any mask needs`]),
   ];
   const misses = missesOf(design, task).map((miss) => missText(miss, design, task));
   const target = misses.length === 0 ? 'The target is met.' : `The target is not met: ${misses.join('; ')}.`;

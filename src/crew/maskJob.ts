@@ -7,18 +7,18 @@ import { stepsOf } from '../score/maskSteps.ts';
 import { radiusWithinLobe } from '../score/radiusWithinLobe.ts';
 import type { Task } from '../score/task.ts';
 
-/** The least masks of one distance, for several gains. */
+/** The least masks of one distance, for several gains and corrections. */
 export interface MaskJob {
   kind: 'mask';
   masks: MaskKind;
   distanceM: number;
-  gains: readonly number[];
-  /** Programs to be solved for each gain at most: few for masks to begin a search with, more for a tight bound. */
+  asks: readonly { gain: number; correction: number }[];
+  /** Programs to be solved for each of them at most: few for masks to begin a search with, more for a tight bound. */
   cuts: number;
 }
 
 export interface MaskResult {
-  /** In the order of the gains; null where no mask keeps the target. */
+  /** In the order they were asked for; null where no mask keeps the correction. */
   found: (FoundMask | null)[];
 }
 
@@ -39,18 +39,18 @@ export interface MaskTools extends BoundTools {
 
 /** Finds least masks for a task. */
 export function findMasks(job: MaskJob, task: Task, tools: MaskTools): MaskResult {
-  const { distanceM, gains, masks, cuts } = job;
-  const bounds = new MaskBounds(
-    task,
-    tools.models,
-    tools,
+  const { distanceM, asks, masks, cuts } = job;
+  const radiusM = radiusWithinLobe(task, distanceM);
+  // Seeds are rings and stars drawn from a radial mask, whatever has a direction.
+  const bounds = new MaskBounds(task, tools.models, tools, {
     distanceM,
-    radiusWithinLobe(task, distanceM),
-    masks,
-  );
+    radiusM,
+    kind: masks,
+    cells: 'radial',
+  });
   try {
-    const found = gains.map((gain) => {
-      const { areaOverFloor, error, mask } = bounds.at(gain, cuts);
+    const found = asks.map(({ gain, correction }) => {
+      const { areaOverFloor, error, mask } = bounds.at(gain, correction, cuts);
       if (areaOverFloor === null || mask === null) return null;
       const steps = stepsOf(mask.shares, bounds.largestPhase);
       return {

@@ -44,8 +44,17 @@ function scoreList({ rank, distanceM, elements, scores, meetsTarget }: ReportDes
     ['Time', timeText(scores.snr.time_s)],
     ['Area', areaText(scores.area_m2)],
     ['Area over floor', countText(scores.areaOverFloor)],
+    ...leastRow(scores),
   ];
   return `<dl>${rows.map(([name, value]) => `<div><dt>${name}</dt><dd>${value}</dd></div>`).join('')}</dl>`;
+}
+
+/** What any mask would need at that distance, of that gain and worst correction. */
+function leastRow({ areaOverFloor, leastAreaOverFloor: least }: ReportDesign['scores']): [string, string][] {
+  if (least === undefined) return [];
+  return [
+    ['Least of any mask', `${countText(least)}, exceeded by ${percentText(areaOverFloor / least - 1)}`],
+  ];
 }
 
 /** Where the worst was found, and what the samples alone would say. */

@@ -21,6 +21,7 @@ export interface ReportDesign {
     area_m2: number;
     radius_m: number;
     areaOverFloor: number;
+    leastAreaOverFloor?: number;
     /** `fits` is null where the brief names no shop. */
     shop: { fits: boolean | null; notes: readonly string[] };
   };

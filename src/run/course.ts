@@ -14,6 +14,7 @@ import type { Hands } from './remembering.ts';
 import { remembering } from './remembering.ts';
 import type { Findings } from './rounds.ts';
 import { Rounds } from './rounds.ts';
+import { withBounds } from './withBounds.ts';
 
 export interface CourseOptions {
   /** Worker threads, 1 or more. */
@@ -34,10 +35,12 @@ export interface Finish {
   asTheyAre(candidates: readonly Candidate[]): Promise<Design[]>;
   /** The same for the best `count` of an aim; those that finer judging finds a little beyond the target are refined with more room. */
   untilMet(aim: number, count: number): Promise<Design[]>;
+  /** Says of every design how little area a mask could do with in its place. */
+  bounded<D extends Design>(designs: readonly D[]): Promise<D[]>;
 }
 
-export interface CourseResult {
-  designs: Design[];
+export interface CourseResult<D extends Design> {
+  designs: D[];
   evaluations: number;
   seconds: number;
   /** Set where the search was stopped before its budget was spent. */
@@ -55,12 +58,12 @@ const REPAIRABLE = 1.3;
 const BATCH = 3;
 
 /** Runs a search from the first look to finished designs, with a crew of its own. */
-export async function runCourse(
+export async function runCourse<D extends Design>(
   brief: Brief,
   aims: readonly Aim[],
   options: CourseOptions,
-  conclude: (finish: Finish) => Promise<Design[]>,
-): Promise<CourseResult> {
+  conclude: (finish: Finish) => Promise<D[]>,
+): Promise<CourseResult<D>> {
   const pace = new Pace(options.memory?.seconds ?? 0);
   const { task, families } = brief;
   const orders: Orders = { task, families };
@@ -172,5 +175,6 @@ function finishing(
     }
     return all;
   };
-  return { findings: rounds.findings, asTheyAre, untilMet };
+  const bounded = <D extends Design>(designs: readonly D[]) => withBounds(designs, brief.task, hands);
+  return { findings: rounds.findings, asTheyAre, untilMet, bounded };
 }

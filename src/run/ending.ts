@@ -16,7 +16,7 @@ export interface Ending {
 
 /** @param designs those that the search ends with */
 export function endingOf(
-  { stopped, settled, movedInLastQuarter }: CourseResult,
+  { stopped, settled, movedInLastQuarter }: Omit<CourseResult<never>, 'designs'>,
   brief: Brief,
   designs: readonly Design[],
 ): Ending {

@@ -26,6 +26,8 @@ const COLUMNS: readonly [title: string, cell: (design: RankedDesign) => Cell][] 
   ['snr_required', ({ scores }) => scores.snr.required],
   ['time_s', ({ scores }) => scores.snr.time_s],
   ['area_over_floor', ({ scores }) => scores.areaOverFloor],
+  // Empty where nothing is proven of it.
+  ['least_area_over_floor', ({ scores }) => scores.leastAreaOverFloor ?? ''],
   ['shop_fits', ({ shop }) => shop.fits],
   ['shop_notes', ({ shop }) => shop.notes.join('; ')],
 ];

@@ -56,10 +56,10 @@ export async function search(brief: Brief, options: CourseOptions): Promise<Sear
     const { front, best } = finish.findings;
     const others = aims.slice(1).flatMap((_, k) => best[k + 1].slice(0, 1));
     const rest = [...others, ...best[0].slice(ON_TARGET)].map(({ candidate }) => candidate);
-    return [...onTarget, ...(await finish.asTheyAre([...front, ...rest]))];
+    const all = [...onTarget, ...(await finish.asTheyAre([...front, ...rest]))];
+    return finish.bounded(rankFront(all, brief.task));
   });
-  const { evaluations, seconds, stopped } = course;
-  const designs = rankFront(course.designs, brief.task);
+  const { designs, evaluations, seconds, stopped } = course;
   return { designs, evaluations, seconds, stopped, ending: endingOf(course, brief, designs) };
 }
 
@@ -71,13 +71,15 @@ export async function smallest(
 ): Promise<SmallestResult> {
   const { task } = brief;
   const aim: Aim = { measure, correction: MARGIN * task.target.correction };
-  const course = await runCourse(brief, [aim], options, (finish) => finish.untilMet(0, FINALISTS));
   const target: Aim = { measure, correction: task.target.correction };
   const worth = ({ scores, shop }: Design) => aimValue(scores, shop.misfit, target, task);
-  const ranked = rankAll(course.designs, task).sort((a, b) => worth(a) - worth(b));
-  const chosen = ranked.find(({ meetsTarget }) => meetsTarget) ?? ranked[0];
-  // It stands alone: the others that were judged do not number it.
-  const nearest = chosen ? { ...chosen, id: `${chosen.family}-1`, rank: 1 } : null;
+  const course = await runCourse(brief, [aim], options, async (finish) => {
+    const ranked = rankAll(await finish.untilMet(0, FINALISTS), task).sort((a, b) => worth(a) - worth(b));
+    const chosen = ranked.find(({ meetsTarget }) => meetsTarget) ?? ranked[0];
+    // It stands alone: the others that were judged do not number it.
+    return chosen ? finish.bounded([{ ...chosen, id: `${chosen.family}-1`, rank: 1 }]) : [];
+  });
+  const [nearest = null] = course.designs;
   const design = nearest?.meetsTarget ? nearest : null;
   const { evaluations, seconds, stopped } = course;
   // Its front is a by-product, of which nothing is told.

@@ -29,7 +29,7 @@ const CUTS = 8;
 const RINGS = ['rings-4', 'rings-2'];
 
 /** Evaluations that a seed's descent should have, at the least; what a budget leaves room for decides how many masks are solved. */
-export const LEAST_SEED = 60;
+const LEAST_SEED = 60;
 
 /** Least masks to begin with, for as many seeds as a budget of evaluations has room for. */
 export function maskJobs(ground: Ground, evaluations: number): MaskJob[] {
@@ -44,7 +44,7 @@ export function maskJobs(ground: Ground, evaluations: number): MaskJob[] {
       kind: 'mask' as const,
       masks,
       distanceM: distances[Math.round(place * (distances.length - 1))],
-      gains,
+      asks: gains.map((gain) => ({ gain, correction: task.target.correction })),
       cuts: CUTS,
     }));
   });
@@ -60,7 +60,10 @@ export function seedsOf(ground: Ground, jobs: readonly MaskJob[], results: reado
       const place = ground.distances.length > 1 ? [at / (ground.distances.length - 1)] : [];
       return variantsFor(ground, job.masks).map((variant) => ({
         variant: variant.id,
-        vector: [...(job.masks === 'any' ? rimsFor(variant, found, slot) : starFor(variant, found)), ...place],
+        vector: [
+          ...(job.masks === 'any' ? rimsFor(variant, found, slot) : starFor(variant, found)),
+          ...place,
+        ],
       }));
     }),
   );

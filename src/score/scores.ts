@@ -12,6 +12,11 @@ export interface Scores {
   area_m2: number;
   radius_m: number;
   areaOverFloor: number;
+  /**
+   * Proven by linear programming, for designs of a search: no mask at that distance, of that gain and that worst correction, has less
+   * `areaOverFloor`. Left out where it was not asked for, or a direction of the light or of flights asks for more than it can do.
+   */
+  leastAreaOverFloor?: number;
 }
 
 /** The worst correction of a design that a local maximisation finds (see `WorstCases`), and where. */
