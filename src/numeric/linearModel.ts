@@ -18,38 +18,57 @@ export interface LinearOptimum {
  */
 export class LinearModel {
   readonly #model: Model;
-  readonly #indices: Int32Array;
+  #columns = 0;
   #rows = 0;
 
   /** Use `LinearModels.open`. */
   constructor(solver: Highs, costs: Float64Array, upper: Float64Array) {
-    const count = costs.length;
     this.#model = solver.createModel();
     this.#model.options.set('output_flag', false);
-    this.#indices = Int32Array.from({ length: count }, (_, j) => j);
-    this.#model.addCols({
-      cost: costs,
-      lower: new Float64Array(count),
-      upper,
-      matrix: {
-        format: 'csc',
-        numRows: 0,
-        numCols: count,
-        starts: new Int32Array(count + 1),
-        indices: new Int32Array(0),
-        values: new Float64Array(0),
-      },
-    });
+    this.addColumns(costs, upper, []);
   }
 
   get rows(): number {
     return this.#rows;
   }
 
+  get columns(): number {
+    return this.#columns;
+  }
+
   /** Adds lower ≤ coefficients·x ≤ upper; either may be infinite. */
   addRow(coefficients: Float64Array, lower: number, upper: number): void {
-    this.#model.addRow(lower, upper, { indices: this.#indices, values: coefficients });
+    this.#model.addRow(lower, upper, nonZero(coefficients));
     this.#rows++;
+  }
+
+  /**
+   * Adds variables.
+   *
+   * @param costs one a variable
+   * @param upper largest value of each, may be infinite
+   * @param columns of each, its coefficients in all rows; none where there are no rows yet
+   */
+  addColumns(costs: Float64Array, upper: Float64Array, columns: readonly Float64Array[]): void {
+    const entries = columns.map(nonZero);
+    const starts = new Int32Array(costs.length + 1);
+    entries.forEach(({ values }, j) => {
+      starts[j + 1] = starts[j] + values.length;
+    });
+    this.#model.addCols({
+      cost: costs,
+      lower: new Float64Array(costs.length),
+      upper,
+      matrix: {
+        format: 'csc',
+        numRows: this.#rows,
+        numCols: costs.length,
+        starts,
+        indices: Int32Array.from(entries.flatMap(({ indices }) => indices)),
+        values: Float64Array.from(entries.flatMap(({ values }) => values)),
+      },
+    });
+    this.#columns += costs.length;
   }
 
   /** Changes the limits of a row. */
@@ -74,6 +93,14 @@ export class LinearModel {
   dispose(): void {
     this.#model.dispose();
   }
+}
+
+function nonZero(values: Float64Array): { indices: number[]; values: number[] } {
+  const indices: number[] = [];
+  values.forEach((value, i) => {
+    if (value !== 0) indices.push(i);
+  });
+  return { indices, values: indices.map((i) => values[i]) };
 }
 
 /** The solver's own numbers for how a run ended. */

@@ -1,3 +1,4 @@
+import { RimwrightError } from '../base/errors.ts';
 import type { GaussianBeam } from '../optics/gaussianBeam.ts';
 import { axialIrradiance } from '../optics/gaussianBeam.ts';
 import { addBeamDensity } from './beamDensity.ts';
@@ -7,6 +8,8 @@ import type { LineTable } from './beamShelf.ts';
 import { BeamShelf } from './beamShelf.ts';
 import type { BoundaryNodes } from './boundaryReading.ts';
 import { boundaryReading } from './boundaryReading.ts';
+import type { DensityTable } from './densityTable.ts';
+import { densityTable } from './densityTable.ts';
 import { farthest } from './flightMeans.ts';
 import type { EdgeDensity } from './roughEdge.ts';
 import type { Scenario } from './scenario.ts';
@@ -93,6 +96,16 @@ export class Readers {
         }
       }
     };
+  }
+
+  /**
+   * The density of every scenario in a flat wave over the place, for a particle on the axis `placeM` towards the detector: see `DensityTable`.
+   *
+   * @throws RimwrightError `input` in a focused beam, where it does not depend on the distance from the particle's axis alone
+   */
+  densityTables(distanceM: number, placeM: number, radiusM: number, offsetM: number): DensityTable[] {
+    if (this.#beam !== undefined) throw new RimwrightError('input', 'a focused beam has no radial density');
+    return this.#flat.tables(distanceM - placeM, radiusM + offsetM).map(densityTable);
   }
 
   #directions(tables: readonly LineTable[], distanceM: number, radiusM: number, offsetM: number) {

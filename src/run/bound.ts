@@ -4,7 +4,7 @@ import { refractiveIndex } from '../optics/indexModel.ts';
 import { measurementTime } from '../score/cost.ts';
 import { leadingFields } from '../score/farZoneError.ts';
 import type { BoundTools } from '../score/maskBound.ts';
-import { boundTools, MaskBounds } from '../score/maskBound.ts';
+import { boundTools, hasDirection, MaskBounds } from '../score/maskBound.ts';
 import type { MaskKind } from '../score/maskProgram.ts';
 import { radiusWithinLobe } from '../score/radiusWithinLobe.ts';
 import type { Task } from '../score/task.ts';
@@ -50,11 +50,17 @@ export async function boundsOf(
   const found: BoundJson[] = [];
   for (const distanceM of distancesM) {
     const radiusM = radiusWithinLobe(task, distanceM);
-    const [any, star] = (['any', 'star'] as const).map((kind) =>
-      leasts(task, models, tools, { distanceM, radiusM, kind }, gains),
-    );
+    const leastsOf = (kind: MaskKind) => leasts(task, models, tools, { distanceM, radiusM, kind }, gains);
+    const any = leastsOf('any');
+    const star = hasDirection(task) ? null : leastsOf('star');
     gains.forEach((gain, i) => {
-      const bound = { distance_m: distanceM, gain, radius_m: radiusM, any: any[i], star: star[i] };
+      const bound = {
+        distance_m: distanceM,
+        gain,
+        radius_m: radiusM,
+        any: any[i],
+        star: star === null ? null : star[i],
+      };
       found.push(bound);
       onBound(bound);
     });
@@ -80,7 +86,8 @@ function leasts(
   { distanceM, radiusM, kind }: { distanceM: number; radiusM: number; kind: MaskKind },
   gains: readonly number[],
 ): (LeastJson | null)[] {
-  const bounds = new MaskBounds(task, models, tools, distanceM, radiusM, kind);
+  const cells = hasDirection(task) ? 'plane' : 'radial';
+  const bounds = new MaskBounds(task, models, tools, { distanceM, radiusM, kind, cells });
   try {
     return gains.map((gain) => {
       const { areaOverFloor, error, mask } = bounds.at(gain);
@@ -112,10 +119,9 @@ function leastTime(task: Task, areaM2: number, gain: number): number | null {
   return measurementTime([{ weight: 1, areaM2 }], target.correction, gain, extinctionM2, electronics);
 }
 
-function checkDirection({ light, placement }: Task): void {
-  const expected = 'unpolarised light and no crossing: masks are taken to depend on the radius alone';
-  if (light.polarizationRad !== null)
-    throw inputError([{ key: 'light.polarization', found: 'polarised light', expected }]);
-  if (placement.crossing !== null)
-    throw inputError([{ key: 'placement.crossing', found: 'a crossing', expected }]);
+function checkDirection(task: Task): void {
+  if (task.light.beam === undefined || !hasDirection(task)) return;
+  const key = task.light.polarizationRad === null ? 'placement.crossing' : 'light.polarization';
+  const expected = 'unpolarised light and no crossing where light.beam is focused';
+  throw inputError([{ key, found: 'a preferred direction in a focused beam', expected }]);
 }

@@ -1,4 +1,5 @@
 import type { BoundaryNodes } from '../reading/boundaryReading.ts';
+import type { DensityTable } from '../reading/densityTable.ts';
 import { Readers } from '../reading/readers.ts';
 import type { Scenario } from '../reading/scenario.ts';
 import { spreadOf } from '../reading/spreadOf.ts';
@@ -44,18 +45,35 @@ export class ConditionReader {
   }
 
   at(condition: Condition, view: View): RatioReader {
+    const { scenario, readers } = this.#held(condition, view);
     const { distanceM, radiusM, offsetM } = view;
-    const { kind, diameterM, wavelengthM, depthM } = condition;
+    const read = readers.at(distanceM, condition.depthM, radiusM, offsetM)[0];
+    return (nodes, x, y) => read(nodes, x, y) / scenario.extinctionM2;
+  }
+
+  /**
+   * What a unit of detector area adds to a reading, and the extinction that it is over, m².
+   *
+   * @throws RimwrightError `input` in a focused beam, whose density has no such table
+   */
+  density(condition: Condition, view: View): { table: DensityTable; extinctionM2: number } {
+    const { scenario, readers } = this.#held(condition, view);
+    const { distanceM, radiusM, offsetM } = view;
+    const tables = readers.densityTables(distanceM, condition.depthM, radiusM, offsetM);
+    return { table: tables[0], extinctionM2: scenario.extinctionM2 };
+  }
+
+  #held(condition: Condition, view: View): { scenario: Scenario; readers: Readers } {
+    const { kind, diameterM, wavelengthM } = condition;
     const key = `${kind.id} ${diameterM} ${wavelengthM}`;
     const scenario = held(this.#scenarios, key, MOST_SOLVED, () => {
       return this.#solve([particleOf(condition)], [wavelengthM])[0];
     });
-    if (distanceM !== this.#distanceM) this.#readers.clear();
-    this.#distanceM = distanceM;
+    if (view.distanceM !== this.#distanceM) this.#readers.clear();
+    this.#distanceM = view.distanceM;
     const most = Math.max(1, Math.floor(CAPACITY / this.tableSize(view)));
     const readers = held(this.#readers, key, most, () => this.#readersOf(scenario));
-    const read = readers.at(distanceM, depthM, radiusM, offsetM)[0];
-    return (nodes, x, y) => read(nodes, x, y) / scenario.extinctionM2;
+    return { scenario, readers };
   }
 
   /** Numbers that the table of one condition holds, about. */

@@ -1,10 +1,14 @@
 import type { LinearModels } from '../numeric/linearModel.ts';
+import type { Symmetry } from '../reading/positions.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import { ConditionReader } from './conditionReader.ts';
 import type { Condition } from './conditions.ts';
 import { kindsOf } from './conditions.ts';
+import type { ElementNodes } from './judge.ts';
 import type { LeastMask, MaskKind } from './maskProgram.ts';
 import { MaskProgram } from './maskProgram.ts';
+import { PlaneCells } from './planeCells.ts';
+import { PlaneProgram } from './planeProgram.ts';
 import { RadialCells } from './radialCells.ts';
 import type { Task } from './task.ts';
 import { WorstCases } from './worstCases.ts';
@@ -26,78 +30,134 @@ export interface MaskBound {
 const MISS = 0.01;
 
 /** Programs solved for one gain, at most: more would tighten the bound no further than it can be told. */
-export const MOST_CUTS = 40;
+const MOST_CUTS = 40;
 
 /**
  * The least area over gain for one distance: cutting planes. A program for few places is solved, the worst places of its mask
  * are found by climbing (`WorstCases`) and added, until no place is missed by more than a hundredth of the correction. Every
  * step's value is a bound, since places only add limits; the last one is the tightest.
  *
- * For briefs without a preferred direction: there the mean of a mask over all rotations keeps whatever the mask keeps, so that masks
- * which depend on the radius alone tell the least area of all.
+ * In a brief without a preferred direction the mean of a mask over all rotations keeps whatever the mask keeps, so that masks which
+ * depend on the radius alone tell the least area of all. In any other the cells are those of the plane (see `PlaneCells`).
  */
 export class MaskBounds {
   readonly #task: Task;
   readonly #worst: WorstCases;
-  readonly #cells: RadialCells;
-  readonly #program: MaskProgram;
+  readonly #told: Told;
 
-  /** @param radiusM of the circle that masks stay within, metres */
-  constructor(
-    task: Task,
-    models: LinearModels,
-    tools: BoundTools,
-    distanceM: number,
-    radiusM: number,
-    kind: MaskKind,
-  ) {
+  constructor(task: Task, models: LinearModels, tools: BoundTools, choice: BoundChoice) {
+    const { distanceM, radiusM, kind, cells } = choice;
     this.#task = task;
     this.#worst = tools.worst;
-    this.#cells = new RadialCells(task, tools.reader, distanceM, radiusM);
-    this.#program = new MaskProgram(models, this.#cells, kind);
+    if (cells === 'plane') {
+      const plane = new PlaneCells(task, tools.reader, distanceM, radiusM);
+      this.#told = telling(plane, new PlaneProgram(models, plane));
+    } else {
+      const annuli = new RadialCells(task, tools.reader, distanceM, radiusM);
+      this.#told = telling(annuli, new MaskProgram(models, annuli, kind));
+    }
     for (const condition of tools.conditions) {
-      for (const position of firstPositions(task)) this.#program.add(this.#cells.row(condition, position));
+      for (const position of this.#told.cells.firstPositions) this.#told.tell(condition, position);
     }
   }
 
   /** η of the circle that masks stay within. */
   get largestPhase(): number {
-    return this.#cells.largestPhase;
+    return this.#told.cells.largestPhase;
   }
 
   /**
+   * @param correction what masks may read wrong; the brief's target if left out
    * @param cuts programs to be solved at most: fewer give a bound that is as true, and less tight
    * @throws RimwrightError `machine` where the solver fails
    */
-  at(gain: number, cuts = MOST_CUTS): MaskBound {
-    const { correction } = this.#task.target;
-    const { distanceM, radiusM } = this.#cells;
+  at(gain: number, correction = this.#task.target.correction, cuts = MOST_CUTS): MaskBound {
+    const { cells, program, tell } = this.#told;
+    const { distanceM, radiusM, symmetry } = cells;
     let least: LeastMask | null = null;
     let worst = Number.POSITIVE_INFINITY;
     for (let cut = 0; cut < cuts; cut++) {
-      least = this.#program.solve(gain, correction);
+      least = program.solve(gain, correction);
       if (least === null) break;
-      const discs = this.#cells.discsOf(least.shares);
-      const cases = this.#worst.find(discs, radiusM, distanceM, gain, ROUND);
+      const elements = cells.elementsOf(least.shares);
+      const cases = this.#worst.find(elements, radiusM, distanceM, gain, symmetry);
       worst = Math.abs(cases[0]?.correction ?? 0);
       if (worst <= correction * (1 + MISS)) break;
+      const before = program.places;
       for (const { condition, positionM, correction: missed } of cases) {
-        if (Math.abs(missed) > correction * (1 + MISS))
-          this.#program.add(this.#cells.row(condition, positionM));
+        if (Math.abs(missed) > correction * (1 + MISS)) tell(condition, positionM);
       }
+      // What is missed at places that the program knows of is the error of its cells.
+      if (program.places === before) break;
     }
+    const proof = least?.prove();
     return {
       gain,
-      areaOverFloor: least && least.proven / gain,
-      error: (least?.error ?? 0) / gain,
+      areaOverFloor: proof ? proof.proven / gain : null,
+      error: (proof?.error ?? 0) / gain,
       mask: least && { shares: least.shares, areaOverFloor: least.area / gain, worst },
-      places: this.#program.places,
+      places: program.places,
     };
   }
 
   dispose(): void {
-    this.#program.dispose();
+    this.#told.program.dispose();
   }
+}
+
+/** One distance, and which masks are meant. */
+export interface BoundChoice {
+  distanceM: number;
+  /** Of the circle that masks stay within, metres. */
+  radiusM: number;
+  /** On the plane, any. */
+  kind: MaskKind;
+  /** `radial` is for tasks without a preferred direction; in others it gives masks to begin a search with, and no bound for all. */
+  cells: 'radial' | 'plane';
+}
+
+/** Cells of either kind. */
+interface Cells<Row> {
+  distanceM: number;
+  radiusM: number;
+  largestPhase: number;
+  /** Of its masks. */
+  symmetry: Symmetry;
+  /** Where a program is told of each particle first. */
+  firstPositions: [x: number, y: number][];
+  row: (condition: Condition, position: readonly [x: number, y: number]) => Row;
+  /** A mask, ready to be read. */
+  elementsOf: (shares: Float64Array) => ElementNodes[];
+}
+
+/** A program of either kind. */
+interface Program<Row> {
+  readonly places: number;
+  add: (row: Row) => void;
+  solve: (gain: number, correction: number) => LeastMask | null;
+  dispose: () => void;
+}
+
+/** A program with its cells, whatever a row of them is. */
+interface Told {
+  cells: Omit<Cells<unknown>, 'row'>;
+  program: Omit<Program<unknown>, 'add'>;
+  /** Adds a place, unless the program knows it. */
+  tell: (condition: Condition, position: readonly [x: number, y: number]) => void;
+}
+
+function telling<Row>(cells: Cells<Row>, program: Program<Row>): Told {
+  const known = new Set<string>();
+  return {
+    cells,
+    program,
+    tell: (condition, position) => {
+      const { kind, diameterM, wavelengthM, depthM } = condition;
+      const key = [kind.id, diameterM, wavelengthM, depthM, ...position].join(' ');
+      if (!known.has(key)) program.add(cells.row(condition, position));
+      known.add(key);
+    },
+  };
 }
 
 /** What bounds at several distances share. */
@@ -120,21 +180,7 @@ export function boundTools(task: Task, fields: Fields): BoundTools {
   return { worst: new WorstCases(task, fields), reader: new ConditionReader(task, fields), conditions };
 }
 
-/** The axis and the rim of the offset disc, on both axes where something tells directions apart. */
-function firstPositions(task: Task): [x: number, y: number][] {
-  const { offsetM } = task.placement;
-  if (offsetM === 0) return [[0, 0]];
-  const onX: [number, number][] = [
-    [0, 0],
-    [offsetM, 0],
-  ];
-  return hasDirection(task) ? [...onX, [0, offsetM]] : onX;
-}
-
 /** Whether turning an outline about the axis makes a difference: polarised light or a flight. */
 export function hasDirection({ light, placement }: Task): boolean {
   return light.polarizationRad !== null || placement.crossing !== null;
 }
-
-/** Circles about the axis. */
-const ROUND = { folds: Number.POSITIVE_INFINITY, mirror: true };

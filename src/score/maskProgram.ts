@@ -19,6 +19,11 @@ export interface LeastMask {
   shares: Float64Array;
   /** Its area over λz. */
   area: number;
+  /** What its prices prove for every other. */
+  prove: () => Proof;
+}
+
+export interface Proof {
   /** No mask that keeps these readings has less area over λz: see `MaskProgram`. */
   proven: number;
   /** What was taken off `proven` for the finite size of the fine cells and of the tables. */
@@ -81,18 +86,16 @@ export class MaskProgram {
     const optimum = this.#model.solve();
     if (optimum === null) return null;
     const prices = optimum.prices.slice(first);
-    const { split } = this.#cells;
-    const [fine, half] = [1, 2].map((size) => this.#certificate(prices, lower, upper, size));
-    const error =
-      2 * Math.abs(half - fine) +
-      READING_ERROR * gain * prices.reduce((sum, price) => sum + Math.abs(price), 0);
     const shares = this.#kind === 'any' ? optimum.values : openShares(optimum.values);
-    return {
-      shares,
-      area: shares.reduce((sum, share) => sum + share, 0) * split * this.#cells.fineArea,
-      proven: fine - error,
-      error,
-    };
+    const area = shares.reduce((sum, share) => sum + share, 0) * this.#cells.split * this.#cells.fineArea;
+    return { shares, area, prove: () => this.#proof(prices, lower, upper) };
+  }
+
+  #proof(prices: Float64Array, lower: number, upper: number): Proof {
+    const [fine, half] = [1, 2].map((size) => this.#certificate(prices, lower, upper, size));
+    const size = prices.reduce((sum, price) => sum + Math.abs(price), 0);
+    const error = 2 * Math.abs(half - fine) + READING_ERROR * upper * size;
+    return { proven: fine - error, error };
   }
 
   dispose(): void {

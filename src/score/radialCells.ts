@@ -35,6 +35,8 @@ export class RadialCells implements MaskCells {
   readonly radiusM: number;
   /** η of that radius. */
   readonly largestPhase: number;
+  readonly symmetry = { folds: Number.POSITIVE_INFINITY, mirror: true };
+  readonly #task: Task;
   readonly #discs: Float64Array[];
   readonly #reader: ConditionReader;
   readonly #flight: FlightRule;
@@ -52,6 +54,7 @@ export class RadialCells implements MaskCells {
     this.radiiM = Float64Array.from({ length: fine }, (_, j) => radiusM * Math.sqrt((j + 1) / fine));
     this.distanceM = distanceM;
     this.radiusM = radiusM;
+    this.#task = task;
     this.#reader = reader;
     this.#flight = sampling.flightRule(radiusM, distanceM);
     this.#farthestM = farthestRead(task.placement);
@@ -78,8 +81,21 @@ export class RadialCells implements MaskCells {
     });
   }
 
+  /** The axis and the rim of the offset disc, on both axes where something tells directions apart. */
+  get firstPositions(): [x: number, y: number][] {
+    const { light, placement } = this.#task;
+    const { offsetM } = placement;
+    if (offsetM === 0) return [[0, 0]];
+    const onX: [number, number][] = [
+      [0, 0],
+      [offsetM, 0],
+    ];
+    const isRound = light.polarizationRad === null && placement.crossing === null;
+    return isRound ? onX : [...onX, [0, offsetM]];
+  }
+
   /** A mask as weighted discs, ready to be read. */
-  discsOf(shares: Float64Array): ElementNodes[] {
+  elementsOf(shares: Float64Array): ElementNodes[] {
     const discs: ElementNodes[] = [];
     for (let j = 0; j < shares.length; j++) {
       const weight = shares[j] - (shares[j + 1] ?? 0);

@@ -19,7 +19,12 @@ const offset = await presetTask('offset-range');
 const sizes = await presetTask('size-range');
 
 function boundOf(task: Task, kind: MaskKind, gain = 1, radiusM = R): MaskBound & { largestPhase: number } {
-  const bounds = new MaskBounds(task, models, boundTools(task, 'far'), Z, radiusM, kind);
+  const bounds = new MaskBounds(task, models, boundTools(task, 'far'), {
+    distanceM: Z,
+    radiusM,
+    kind,
+    cells: 'radial',
+  });
   const bound = { ...bounds.at(gain), largestPhase: bounds.largestPhase };
   bounds.dispose();
   return bound;
@@ -87,7 +92,12 @@ describe('MaskBounds', () => {
   it('asks less for a looser correction, and at least as much over a larger gain', () => {
     const looser = { ...offset, target: { ...offset.target, correction: 0.03 } };
     expect(boundOf(looser, 'any').areaOverFloor).toBeLessThan(offsetAny.areaOverFloor ?? 0);
-    const bounds = new MaskBounds(sizes, models, boundTools(sizes, 'far'), Z, R, 'any');
+    const bounds = new MaskBounds(sizes, models, boundTools(sizes, 'far'), {
+      distanceM: Z,
+      radiusM: R,
+      kind: 'any',
+      cells: 'radial',
+    });
     const overGain = [0.5, 1, 2, 4].map((gain) => bounds.at(gain).areaOverFloor ?? 0);
     expect(overGain.toSorted((a, b) => a - b)).toEqual(overGain);
     bounds.dispose();

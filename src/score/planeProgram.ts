@@ -1,0 +1,189 @@
+import type { LinearModel, LinearModels } from '../numeric/linearModel.ts';
+import type { LeastMask, Proof } from './maskProgram.ts';
+import type { PlaneRow } from './planeCells.ts';
+import { FINE_SHARES } from './planeCells.ts';
+
+/** What a program needs to know of the cells. */
+interface Cells {
+  count: number;
+  /** Area of each over λz. */
+  areas: Float64Array;
+  fine: (row: PlaneRow) => Float64Array;
+}
+
+/** Relative error of a density from a table (see `DensityTable`). */
+const DENSITY_ERROR = 2e-5;
+
+/** Cells that enter the program at once, at most, and rounds of that. */
+const MOST_ENTERING = 1500;
+const ROUNDS = 60;
+
+/** Share of the bound that cells outside the program may still take from it. */
+const TAKEN = 1e-5;
+
+/** What a reading that is missed by the whole extinction costs, in whole circles. */
+const MISSED = 300;
+
+/** A bound of so many whole circles tells for sure that there is no mask, however coarse the cells. */
+const SURELY = 2;
+
+/** Part of the difference from coarser sums that is taken off. */
+const SAFETY = 1 / 3;
+
+/**
+ * The least area over λz of a mask of cells in the plane, as `MaskProgram` finds it for annuli, with many more cells than a solver can take.
+ *
+ * Nearly all cells stay closed. So the program begins with none, and with costly slack at every place; what the prices of a solution say of
+ * each cell tells which would pay, and the best of them enter, until none does (sifting: Bixby, Gregory, Lustig, Marsten and Shanno 1992).
+ *
+ * The certificate ∫ min(0, 1 − Σ y_i ω_i) da is summed over nine places in each cell, in thirds of its sides. The sum over the middles of
+ * whole cells, and that over the cells' means, err by about nine times as much; what they differ from the first, the larger of both, is
+ * therefore eight times its error. A third of it is taken off.
+ */
+export class PlaneProgram {
+  readonly #cells: Cells;
+  readonly #model: LinearModel;
+  readonly #rows: PlaneRow[] = [];
+  /** What stands in each column of the model: a cell, or −1 for slack. */
+  readonly #columns: number[] = [];
+  readonly #isIn: Uint8Array;
+  readonly #whole: number;
+
+  constructor(models: LinearModels, cells: Cells) {
+    this.#cells = cells;
+    this.#model = models.open(new Float64Array(0), new Float64Array(0));
+    this.#isIn = new Uint8Array(cells.count);
+    this.#whole = cells.areas.reduce((sum, area) => sum + area, 0);
+  }
+
+  get places(): number {
+    return this.#rows.length;
+  }
+
+  /** Cells that have entered so far. */
+  get entered(): number {
+    return this.#isIn.reduce((sum, one) => sum + one, 0);
+  }
+
+  add(row: PlaneRow): void {
+    const coefficients = Float64Array.from(this.#columns, (cell) => (cell < 0 ? 0 : row.added[cell]));
+    this.#model.addRow(coefficients, -Infinity, Infinity);
+    this.#rows.push(row);
+    const [more, less] = [1, -1].map((sign) => {
+      const column = new Float64Array(this.#rows.length);
+      column[this.#rows.length - 1] = sign;
+      return column;
+    });
+    const cost = MISSED * this.#whole;
+    this.#enter([-1, -1], Float64Array.of(cost, cost), Infinity, [more, less]);
+  }
+
+  /** @returns null where no mask keeps all places */
+  solve(gain: number, correction: number): LeastMask | null {
+    const [lower, upper] = [gain * (1 - correction), gain * (1 + correction)];
+    this.#rows.forEach((_, i) => {
+      this.#model.setRow(i, lower, upper);
+    });
+    let best: { prices: Float64Array; bound: number } | null = null;
+    let values: Float64Array = new Float64Array(0);
+    for (let round = 0; round < ROUNDS; round++) {
+      const optimum = this.#model.solve();
+      if (optimum === null) return null;
+      const { prices } = optimum;
+      values = optimum.values;
+      const worth = this.#worth(prices);
+      const taken = this.#takenBy(worth);
+      if (best === null || optimum.objective + taken > best.bound)
+        best = { prices, bound: optimum.objective + taken };
+      if (best.bound > SURELY * this.#whole) return null;
+      if (-taken <= TAKEN * optimum.objective) break;
+      this.#enterBest(worth);
+    }
+    if (best === null) return null;
+    const shares = this.#sharesOf(values);
+    const area = shares.reduce((sum, share, cell) => sum + share * this.#cells.areas[cell], 0);
+    const { prices } = best;
+    return { shares, area, prove: () => this.#proof(prices, lower, upper) };
+  }
+
+  dispose(): void {
+    this.#model.dispose();
+  }
+
+  /** Area less what the prices pay, for each cell. */
+  #worth(prices: Float64Array): Float64Array {
+    const worth = this.#cells.areas.slice();
+    prices.forEach((price, i) => {
+      if (price === 0) return;
+      const { added } = this.#rows[i];
+      for (let j = 0; j < worth.length; j++) worth[j] -= price * added[j];
+    });
+    return worth;
+  }
+
+  /** What cells outside the program would take from its value, at most. */
+  #takenBy(worth: Float64Array): number {
+    return worth.reduce((sum, value, cell) => (this.#isIn[cell] === 1 ? sum : sum + Math.min(0, value)), 0);
+  }
+
+  #enterBest(worth: Float64Array): void {
+    const { areas } = this.#cells;
+    const paying: number[] = [];
+    worth.forEach((value, cell) => {
+      if (value < 0 && this.#isIn[cell] === 0) paying.push(cell);
+    });
+    const entering = paying.sort((p, q) => worth[p] / areas[p] - worth[q] / areas[q]).slice(0, MOST_ENTERING);
+    const columns = entering.map((cell) => Float64Array.from(this.#rows, ({ added }) => added[cell]));
+    for (const cell of entering) this.#isIn[cell] = 1;
+    this.#enter(
+      entering,
+      Float64Array.from(entering, (cell) => areas[cell]),
+      1,
+      columns,
+    );
+  }
+
+  #enter(cells: readonly number[], costs: Float64Array, most: number, columns: Float64Array[]): void {
+    this.#model.addColumns(costs, new Float64Array(costs.length).fill(most), columns);
+    this.#columns.push(...cells);
+  }
+
+  #sharesOf(values: Float64Array): Float64Array {
+    const shares = new Float64Array(this.#cells.count);
+    this.#columns.forEach((cell, column) => {
+      if (cell >= 0) shares[cell] = Math.min(1, Math.max(0, values[column]));
+    });
+    return shares;
+  }
+
+  /** The bound that prices prove. */
+  #proof(prices: Float64Array, lower: number, upper: number): Proof {
+    const { areas, count } = this.#cells;
+    const fine = FINE_SHARES.length;
+    const worth = new Float64Array(fine * count);
+    for (let j = 0; j < worth.length; j++) worth[j] = areas[Math.floor(j / fine)];
+    let limits = 0;
+    let size = 0;
+    prices.forEach((price, i) => {
+      if (price === 0) return;
+      limits += price * (price > 0 ? lower : upper);
+      size += Math.abs(price);
+      const values = this.#cells.fine(this.#rows[i]);
+      for (let j = 0; j < worth.length; j++) worth[j] -= price * values[j];
+    });
+    let [thirds, middles, means] = [limits, limits, limits];
+    for (let cell = 0; cell < count; cell++) {
+      let mean = 0;
+      for (let j = 0; j < fine; j++) {
+        const value = FINE_SHARES[j] * worth[fine * cell + j];
+        mean += value;
+        thirds += Math.min(0, value);
+      }
+      means += Math.min(0, mean);
+      middles += Math.min(0, worth[fine * cell + (fine - 1) / 2]);
+    }
+    const differs = Math.max(Math.abs(middles - thirds), Math.abs(means - thirds));
+    const error = SAFETY * differs + DENSITY_ERROR * upper * size;
+    return { proven: thirds - error, error };
+  }
+}
