@@ -42,7 +42,7 @@ const SHOP_FROM = 5;
 const SHOP_ALL = 1.5;
 
 /** The distance that a place from 0 to 1 on the grid stands for. */
-export function distanceAt(space: SearchSpace, place: number): number {
+function distanceAt(space: SearchSpace, place: number): number {
   const last = space.distances.length - 1;
   return space.distances[Math.min(last, Math.max(0, Math.round(place * last)))];
 }

@@ -1,8 +1,9 @@
 import type { OutlineElement } from '../outline/shape.ts';
 import type { Symmetry } from '../reading/positions.ts';
 import type { Fields } from '../reading/tableShelf.ts';
-import type { Judge, Judgement } from './judge.ts';
+import type { Judge } from './judge.ts';
 import { NO_SYMMETRY } from './sampling.ts';
+import type { Judgement } from './scorer.ts';
 import type { Certificate } from './scores.ts';
 import type { WorstCase } from './worstCases.ts';
 import { WorstCases } from './worstCases.ts';

@@ -1,7 +1,6 @@
-import { RimwrightError } from '../base/errors.ts';
 import { LegendreRules } from '../numeric/gaussLegendre.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
-import { nodesArea, ringsRadius } from '../outline/area.ts';
+import { ringsRadius } from '../outline/area.ts';
 import { boundaryNodes } from '../outline/boundaryNodes.ts';
 import { ringNodes } from '../outline/ringNodes.ts';
 import type { OutlineElement, Shape } from '../outline/shape.ts';
@@ -9,7 +8,6 @@ import { shapeRadius } from '../outline/shapeRadius.ts';
 import { irradianceAt } from '../reading/beamLines.ts';
 import type { FlightMeans } from '../reading/flightMeans.ts';
 import { plainFlights } from '../reading/flightMeans.ts';
-import { lightThrough } from '../reading/litArea.ts';
 import type { Symmetry } from '../reading/positions.ts';
 import { NO_FLIGHT } from '../reading/positions.ts';
 import { Readers } from '../reading/readers.ts';
@@ -17,36 +15,16 @@ import type { EdgeDensity } from '../reading/roughEdge.ts';
 import type { Scenario } from '../reading/scenario.ts';
 import { spreadOf } from '../reading/spreadOf.ts';
 import type { Fields } from '../reading/tableShelf.ts';
-import { correctionOf } from './correction.ts';
-import type { ElementArea } from './cost.ts';
-import { areaOverFloor, lobeRatio, measurementTime, requiredSnr } from './cost.ts';
+import type { ElementNodes } from './elementNodes.ts';
+import { elementNodes } from './elementNodes.ts';
 import type { Fineness } from './fineness.ts';
-import type { Population } from './population.ts';
-import { populationCorrection, populationsOf } from './population.ts';
 import { NO_SYMMETRY, Sampling } from './sampling.ts';
-import type { Scores } from './scores.ts';
+import type { Judgement, SampledReadings } from './scorer.ts';
+import { Scorer } from './scorer.ts';
 import type { Task } from './task.ts';
 import { taskScenarios } from './taskScenarios.ts';
 
-/** Scores, and the ratios reading/extinction that they come from: one for each scenario, depth and position. */
-export interface Judgement {
-  scores: Scores;
-  ratios: Float64Array;
-}
-
-/** One detector element ready for integration. */
-export interface ElementNodes extends ElementArea {
-  nodes: Float64Array;
-}
-
-/** A design as it is read over all samples. */
-export interface SampledReadings {
-  elements: readonly ElementNodes[];
-  radiusM: number;
-  distanceM: number;
-  /** Ratios reading/extinction, a row for each scenario: position by position, the nominal depth first. */
-  rows: readonly Float64Array[];
-}
+export type { ElementNodes };
 
 /** Scores designs for one task. Holds the solved particles and the radial tables, so make one and keep it. */
 export class Judge {
@@ -58,9 +36,7 @@ export class Judge {
   readonly #spreadsM: readonly number[];
   readonly #rules = new LegendreRules();
   readonly #sampling: Sampling;
-  readonly #leastExtinctionM2: number;
-  readonly #largestDiameterM: number;
-  readonly #populations: readonly Population[];
+  readonly #scorer: Scorer;
 
   /**
    * @param fields those of the far zone, or the exact ones: see `farZoneError` for when that matters
@@ -73,9 +49,7 @@ export class Judge {
     const spreadsM = this.scenarios.map(({ particle }) => spreadOf(task.placement, particle.diameterM));
     this.#spreadsM = spreadsM;
     this.#readers = new Readers(this.scenarios, { spreadsM, beam: task.light.beam, fields });
-    this.#leastExtinctionM2 = Math.min(...this.scenarios.map(({ extinctionM2 }) => extinctionM2));
-    this.#largestDiameterM = Math.max(...task.particles.map(({ diameterM }) => diameterM));
-    this.#populations = populationsOf(this.scenarios);
+    this.#scorer = new Scorer(task, this.scenarios, this.wavelengthM);
   }
 
   /** κ = k/(2z) at the nominal wavelength, 1/m²; in a focused beam what stands for it (see `Fringes`). */
@@ -198,14 +172,14 @@ export class Judge {
   shapeNodes(shape: Shape, distanceM: number): ElementNodes[] {
     const density = this.#sampling.density(distanceM);
     return shape.elements.map(({ weight, loops }) =>
-      withArea(weight, boundaryNodes(loops, density, this.#rules)),
+      elementNodes(weight, boundaryNodes(loops, density, this.#rules)),
     );
   }
 
   /** As `shapeNodes`, of an outline given by its points. */
   outlineNodes(elements: readonly OutlineElement[], distanceM: number): ElementNodes[] {
     const density = this.#sampling.density(distanceM);
-    return elements.map(({ weight, rings }) => withArea(weight, ringNodes(rings, density, this.#rules)));
+    return elements.map(({ weight, rings }) => elementNodes(weight, ringNodes(rings, density, this.#rules)));
   }
 
   #ratios(
@@ -234,17 +208,6 @@ export class Judge {
     return ratios;
   }
 
-  /** Elements with the areas that would collect as much power in a flat wave. */
-  #lit(elements: readonly ElementNodes[], distanceM: number): readonly ElementArea[] {
-    const { light, medium } = this.task;
-    const { beam } = light;
-    if (beam === undefined) return elements;
-    return elements.map(({ weight, nodes }) => ({
-      weight,
-      areaM2: lightThrough({ ...light, beam }, medium, distanceM, nodes),
-    }));
-  }
-
   #read(
     elements: readonly ElementNodes[],
     radiusM: number,
@@ -263,46 +226,7 @@ export class Judge {
    *
    * @param found further ratios reading/extinction that a free gain takes in: of cases worse than the samples
    */
-  judge({ elements, radiusM, distanceM, rows }: SampledReadings, found: readonly number[] = []): Judgement {
-    const { target, detector, light } = this.task;
-    const ratios = flatten(rows);
-    const { gain, worst, rms } = correctionOf(ratios, target.gain, found);
-    if (!Number.isFinite(worst)) {
-      throw new RimwrightError(
-        'machine',
-        `a score is not finite: outline of radius ${radiusM} m at ${distanceM} m`,
-      );
-    }
-    const population = populationCorrection(this.#populations, rows, gain);
-    const electronics = { ...detector, ...light };
-    const extinctionM2 = this.#leastExtinctionM2;
-    const lit = this.#lit(elements, distanceM);
-    const scores: Scores = {
-      gain,
-      correction: { worst, rms, ...(population !== null && { population }) },
-      lobe: { ratio: lobeRatio(radiusM, distanceM, this.wavelengthM, this.#largestDiameterM) },
-      snr: {
-        required: requiredSnr(lit, target.correction, gain, extinctionM2),
-        time_s: measurementTime(lit, target.correction, gain, extinctionM2, electronics),
-      },
-      area_m2: elements.reduce((sum, { areaM2 }) => sum + areaM2, 0),
-      radius_m: radiusM,
-      areaOverFloor: areaOverFloor(elements, gain, this.wavelengthM, distanceM),
-    };
-    return { scores, ratios };
+  judge(readings: SampledReadings, found: readonly number[] = []): Judgement {
+    return this.#scorer.score(readings, found);
   }
-}
-
-function withArea(weight: number, nodes: Float64Array): ElementNodes {
-  return { weight, nodes, areaM2: nodesArea(nodes) };
-}
-
-function flatten(rows: readonly Float64Array[]): Float64Array {
-  const out = new Float64Array(rows.reduce((sum, { length }) => sum + length, 0));
-  let at = 0;
-  for (const row of rows) {
-    out.set(row, at);
-    at += row.length;
-  }
-  return out;
 }
