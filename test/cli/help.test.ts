@@ -3,7 +3,17 @@ import { join } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { folderWith, runCli, runHere } from './runCli.ts';
 
-const COMMANDS = ['search', 'smallest', 'trade', 'reading', 'response', 'compare', 'draw', 'presets'];
+const COMMANDS = [
+  'search',
+  'smallest',
+  'trade',
+  'reading',
+  'response',
+  'bound',
+  'compare',
+  'draw',
+  'presets',
+];
 
 /** Scripts that a run of the program loaded, after the coverage that V8 writes. */
 function scriptsIn(folder: string): string[] {
@@ -24,9 +34,14 @@ describe('help', () => {
       'base/errors.js',
       'base/nearestName.js',
       'base/version.js',
+      'cli/commander.js',
+      'cli/declareFiles.js',
+      'cli/declareReading.js',
+      'cli/declareSearching.js',
       'cli/exit.js',
       'cli/main.js',
       'cli/optionRules.js',
+      'cli/optionTexts.js',
       'cli/program.js',
       'score/aim.js',
       'score/scores.js',

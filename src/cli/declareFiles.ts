@@ -1,0 +1,43 @@
+import type { Command } from './commander.ts';
+import type { Done } from './optionTexts.ts';
+import { AS_JSON } from './optionTexts.ts';
+
+/** Commands that hand out files: drawings, and what is on the shelf. */
+export function declareFiles(program: Command, done: Done): void {
+  program
+    .command('draw')
+    .summary('drawings for the shop')
+    .description('Draws a design for the shop: DXF at true size, and an SVG sheet to read.')
+    .argument('<design>', "a design's JSON, front.json#ID, a CSV with --distance, or a brief with --design")
+    .option('--design <id>', "a design of that front.json, or of the brief's own results")
+    .option('--distance <length>', 'distance from particle to mask, for the notes on the sheet')
+    .option('--out <dir>', 'folder to draw into', '.')
+    .option('--formats <list>', 'dxf, svg, or both', 'dxf,svg')
+    .option('--force', 'replace drawings that are there')
+    .addHelpText(
+      'after',
+      `
+Example:
+  $ rimwright draw results/my/front.json#rings-1 --out shop --formats dxf
+  $ rimwright draw my.yaml --design rings-1 --out shop`,
+    )
+    .action(async (design, options) => done(await (await import('./drawCommand.ts')).run(design, options)));
+
+  program
+    .command('presets')
+    .summary('what is on the shelf')
+    .description('Lists media, materials, shops and briefs that briefs can name, or prints one of them.')
+    .argument('[shelf]', 'media, materials, shops or briefs')
+    .argument('[name]', 'print this one')
+    .option('--json', AS_JSON)
+    .addHelpText(
+      'after',
+      `
+Example:
+  $ rimwright presets media
+  $ rimwright presets briefs road-dust > my.yaml`,
+    )
+    .action(async (shelf, name, options) =>
+      done(await (await import('./presetsCommand.ts')).run(shelf, name, options)),
+    );
+}
