@@ -43,7 +43,7 @@ function onGrid(metres: number): number {
 }
 
 /** Vertices for each of the finest waves of a curve. */
-const PER_WAVE = 6;
+const PER_WAVE = 16;
 
 function pieceCount(segment: Segment, verticesPerTurn: number): number {
   if (segment.kind === 'line') return 1;

@@ -22,8 +22,7 @@ interface Expansion {
 export function fourierVariants(limits: PhaseLimits): Variant[] {
   const expansions: Expansion[] = [
     ...[2, 3, 4, 5, 6].map((folds) => ({ of: 'square', folds, terms: 6, sines: false }) as const),
-    ...[5, 8].map((folds) => ({ of: 'square', folds, terms: 10, sines: false }) as const),
-    ...[5, 8].map((folds) => ({ of: 'square', folds, terms: 14, sines: false }) as const),
+    ...[10, 14].map((terms) => ({ of: 'square', folds: 6, terms, sines: false }) as const),
     ...[3, 5].map((folds) => ({ of: 'radius', folds, terms: 6, sines: false }) as const),
     ...[14, 24, 30].map((terms) => ({ of: 'radius', folds: 6, terms, sines: false }) as const),
     ...[3, 5].map((folds) => ({ of: 'square', folds, terms: 3, sines: true }) as const),
