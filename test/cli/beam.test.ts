@@ -79,7 +79,7 @@ describe('rimwright in a focused beam', () => {
       'search',
       'tight-focus',
       '--candidates',
-      '300',
+      '100',
       '--workers',
       '1',
       '--quiet',
