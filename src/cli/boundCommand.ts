@@ -44,12 +44,12 @@ function printBounds(bounds: readonly BoundJson[], correction: number): void {
     `Least detector area over gain at which any mask reads within ${percentText(correction)} everywhere, proven by linear programming:`,
   );
   print('');
-  print(table(COLUMNS, bounds));
+  const hasStar = bounds.some(({ star }) => star !== undefined);
+  print(table(hasStar ? [...COLUMNS, STAR] : COLUMNS, bounds));
   print('');
   const error = Math.max(...bounds.flatMap(({ any, star }) => [any?.error ?? 0, star?.error ?? 0]));
   printWrapped(
-    `Units of λz. "Star" holds for outlines that every ray from the axis leaves just once: discs, ramps, Fourier boundaries. ` +
-      `Up to ${countText(error)} has been taken off for the finite size of cells and tables; ` +
+    `Units of λz. ${hasStar ? ABOUT_STAR : ABOUT_PLANE} Up to ${countText(error)} has been taken off for the finite size of cells and tables; ` +
       `a mask that the program found comes within ${percentText(largestGap(bounds))} of each bound. ` +
       `"none" means that no mask within the radius keeps the target at that gain.`,
   );
@@ -58,7 +58,9 @@ function printBounds(bounds: readonly BoundJson[], correction: number): void {
 /** How far the masks found lie above their bounds, at most. */
 function largestGap(bounds: readonly BoundJson[]): number {
   const gaps = bounds.flatMap(({ any, star }) =>
-    [any, star].map((least) => (least === null ? 0 : least.mask.areaOverFloor / least.areaOverFloor - 1)),
+    [any, star ?? null].map((least) =>
+      least === null ? 0 : least.mask.areaOverFloor / least.areaOverFloor - 1,
+    ),
   );
   return Math.max(...gaps);
 }
@@ -72,8 +74,17 @@ const COLUMNS: readonly Column<BoundJson>[] = [
   { title: ['any mask', 'λz'], cell: ({ any }) => (any === null ? NONE : overFloor(any.areaOverFloor)) },
   { title: ['area'], cell: ({ any }) => (any === null ? '' : areaText(any.area_m2)) },
   { title: ['time'], cell: ({ any }) => (any === null ? '' : timeText(any.time_s)) },
-  { title: ['star', 'λz'], cell: ({ star }) => (star === null ? NONE : overFloor(star.areaOverFloor)) },
 ];
+
+const STAR: Column<BoundJson> = {
+  title: ['star', 'λz'],
+  cell: ({ star }) => (star ? overFloor(star.areaOverFloor) : NONE),
+};
+
+const ABOUT_STAR = `"Star" holds for outlines that every ray from the axis leaves just once: discs, ramps, Fourier boundaries.`;
+
+const ABOUT_PLANE =
+  'Polarised light or a flight has a direction: masks are taken on cells of the plane, with no bound of their own for stars.';
 
 function overFloor(value: number): string {
   return value.toFixed(value < 10 ? 4 : 2);

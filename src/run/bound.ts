@@ -18,8 +18,11 @@ export interface BoundJson {
   radius_m: number;
   /** For any mask; null where none keeps the correction. */
   any: LeastJson | null;
-  /** For outlines about the axis that every ray from it leaves once: discs, ramps, Fourier boundaries, polygons. */
-  star: LeastJson | null;
+  /**
+   * For outlines about the axis that every ray from it leaves once: discs, ramps, Fourier boundaries, polygons. Left out in a brief
+   * with a preferred direction.
+   */
+  star?: LeastJson | null;
 }
 
 export interface LeastJson {
@@ -59,7 +62,7 @@ export async function boundsOf(
         gain,
         radius_m: radiusM,
         any: any[i],
-        star: star === null ? null : star[i],
+        ...(star === null ? {} : { star: star[i] }),
       };
       found.push(bound);
       onBound(bound);

@@ -19,7 +19,9 @@ export interface LeastMask {
   shares: Float64Array;
   /** Its area over λz. */
   area: number;
-  /** What its prices prove for every other. */
+  /** One a place: how much the area rises with its active limit. */
+  prices: Float64Array;
+  /** What they prove for every other mask. */
   prove: () => Proof;
 }
 
@@ -88,7 +90,7 @@ export class MaskProgram {
     const prices = optimum.prices.slice(first);
     const shares = this.#kind === 'any' ? optimum.values : openShares(optimum.values);
     const area = shares.reduce((sum, share) => sum + share, 0) * this.#cells.split * this.#cells.fineArea;
-    return { shares, area, prove: () => this.#proof(prices, lower, upper) };
+    return { shares, area, prices, prove: () => this.#proof(prices, lower, upper) };
   }
 
   #proof(prices: Float64Array, lower: number, upper: number): Proof {

@@ -10,27 +10,19 @@ import { SEARCH_FINENESS } from './fineness.ts';
 import type { ElementNodes } from './judge.ts';
 import { planeNodes } from './planeEdges.ts';
 import type { PlaneGrid } from './planeGrid.ts';
-import { planeGrid } from './planeGrid.ts';
+import { cellIntegrals, neighbours, planeGrid } from './planeGrid.ts';
 import type { PlaneSymmetry } from './planeSymmetry.ts';
 import { imagesOf, planeSymmetry } from './planeSymmetry.ts';
 import { Sampling } from './sampling.ts';
 import type { Task } from './task.ts';
 
-/** Where in a cell densities are taken along the radius and the azimuth, as parts of its side, and how much each counts. */
-interface CellRule {
-  places: readonly number[];
-  shares: readonly number[];
-}
-
-/** Gauss's rule of two points: a cell's integral errs by h⁴/4320 of its phase h. */
-const GAUSS: CellRule = { places: [0.5 - Math.sqrt(1 / 12), 0.5 + Math.sqrt(1 / 12)], shares: [0.5, 0.5] };
-
-/** Maclaurin's rule, the middles of thirds: as good to the third degree, and the middle of the cell is among them. */
-const THIRDS: CellRule = { places: [1 / 6, 1 / 2, 5 / 6], shares: [3 / 8, 1 / 4, 3 / 8] };
+/** Middles of thirds of a cell's side, and Maclaurin's shares of them: as good to the third degree. */
+const THIRDS = [1 / 6, 1 / 2, 5 / 6];
+const THIRD_SHARES = [3 / 8, 1 / 4, 3 / 8];
 
 /** Share of the cell that each of its nine middles of thirds stands for; the fifth is the middle of it all. */
-export const FINE_SHARES: readonly number[] = THIRDS.shares.flatMap((along) =>
-  THIRDS.shares.map((across) => along * across),
+export const FINE_SHARES: readonly number[] = THIRD_SHARES.flatMap((along) =>
+  THIRD_SHARES.map((across) => along * across),
 );
 
 /** Points of a flight for each radian of phase along it, and beside them: a mean errs by less than 1e-6. */
@@ -44,7 +36,10 @@ const POINT_STEP = 4;
 export interface PlaneRow {
   condition: Condition;
   position: readonly [x: number, y: number];
-  added: Float64Array;
+  /** If all of the cell were as in its middle. */
+  middles: Float32Array;
+  /** In all. */
+  added: Float32Array;
 }
 
 /**
@@ -125,30 +120,53 @@ export class PlaneCells {
    * @param position of the particle, the middle of its flight, metres
    */
   row(condition: Condition, position: readonly [x: number, y: number]): PlaneRow {
-    const added = new Float64Array(this.count);
-    const fourth = GAUSS.shares[0] ** 2;
-    this.#sample(condition, position, GAUSS, (cell, _, value) => {
-      added[cell] += fourth * value;
+    const middles = new Float32Array(this.count);
+    const add = this.#adder(condition, position);
+    this.#eachCell((cell, annulus, piece) => {
+      middles[cell] = add(annulus, piece, 0.5, 0.5);
     });
-    return { condition, position, added };
+    return { condition, position, middles, added: cellIntegrals(this.#grid, middles) };
   }
 
-  /** What each cell would add if all of it were as in the middles of its thirds, nine numbers a cell. */
-  fine({ condition, position }: PlaneRow): Float64Array {
-    const values = new Float64Array(FINE_SHARES.length * this.count);
-    this.#sample(condition, position, THIRDS, (cell, place, value) => {
-      values[FINE_SHARES.length * cell + place] = value;
+  /**
+   * What each of some cells would add if all of it were as in the middles of its thirds, nine numbers a cell, in the order of the cells.
+   *
+   * @param chosen 1 for each of those cells
+   */
+  fine({ condition, position }: PlaneRow, chosen: Uint8Array): Float64Array {
+    const values = new Float64Array(FINE_SHARES.length * chosen.reduce((sum, one) => sum + one, 0));
+    const add = this.#adder(condition, position);
+    let at = 0;
+    this.#eachCell((cell, annulus, piece) => {
+      if (chosen[cell] === 0) return;
+      for (const along of THIRDS) {
+        for (const across of THIRDS) values[at++] = add(annulus, piece, along, across);
+      }
     });
     return values;
   }
 
-  /** Takes at every place of every cell the density, mean over images and flight, times the cell's area, over the extinction. */
-  #sample(
-    condition: Condition,
-    position: readonly [x: number, y: number],
-    { places }: CellRule,
-    take: (cell: number, place: number, value: number) => void,
-  ): void {
+  /** Those cells in which, or beside which, a function of the plane falls below a limit, from its values in their middles. */
+  around(middles: Float64Array, limit: number): Uint8Array {
+    const chosen = new Uint8Array(this.count);
+    this.#eachCell((cell, annulus, piece) => {
+      const isBelow =
+        middles[cell] < limit ||
+        neighbours(this.#grid, annulus, piece).some((other) => middles[other] < limit);
+      chosen[cell] = isBelow ? 1 : 0;
+    });
+    return chosen;
+  }
+
+  #eachCell(take: (cell: number, annulus: number, piece: number) => void): void {
+    const { pieces, first } = this.#grid;
+    for (let a = 0; a < pieces.length; a++) {
+      for (let piece = 0; piece < pieces[a]; piece++) take(first[a] + piece, a, piece);
+    }
+  }
+
+  /** The density at a place of a cell, mean over images and flight, times the cell's area, over the extinction. */
+  #adder(condition: Condition, position: readonly [x: number, y: number]) {
     const view = { distanceM: this.distanceM, radiusM: this.radiusM, offsetM: this.#farthestM };
     const { table, extinctionM2 } = this.#reader.density(condition, view);
     const images = imagesOf(this.#mirrors, position);
@@ -157,30 +175,23 @@ export class PlaneCells {
     const [hx, hy] = [Math.cos(crossing?.headingRad ?? 0), Math.sin(crossing?.headingRad ?? 0)];
     const flights = new Flights(spanM, this.#rules);
     const reachM = offsetM + spanM / 2;
-    const { axisRad, wedgeRad, pieces, first } = this.#grid;
-    for (let a = 0; a < pieces.length; a++) {
-      const scale = (2 * this.#annulusM2) / (pieces[a] * images.length * extinctionM2);
-      for (let piece = 0; piece < pieces[a]; piece++) {
-        for (let j = 0; j < places.length; j++) {
-          const azimuth = axisRad + (wedgeRad * (piece + places[j])) / pieces[a];
-          const [cos, sin] = [Math.cos(azimuth), Math.sin(azimuth)];
-          for (let i = 0; i < places.length; i++) {
-            const rho = this.radiusM * Math.sqrt((a + places[i]) / pieces.length);
-            const [x, y] = [rho * cos, rho * sin];
-            const flight = flights.of(this.#flightPhase * (Math.abs(x * hx + y * hy) + reachM));
-            let sum = 0;
-            for (let n = 0; n < images.length; n += 2) {
-              const [u, v] = [x - images[n], y - images[n + 1]];
-              for (let f = 0; f < flight.places.length; f++) {
-                const along = flight.places[f];
-                sum += flight.weights[f] * densityAt(table, u - along * hx, v - along * hy);
-              }
-            }
-            take(first[a] + piece, places.length * i + j, scale * sum);
-          }
+    const { radiusM } = this;
+    const { axisRad, wedgeRad, pieces } = this.#grid;
+    const scale = (2 * this.#annulusM2) / (images.length * extinctionM2);
+    return (annulus: number, piece: number, along: number, across: number): number => {
+      const azimuth = axisRad + (wedgeRad * (piece + across)) / pieces[annulus];
+      const rho = radiusM * Math.sqrt((annulus + along) / pieces.length);
+      const [x, y] = [rho * Math.cos(azimuth), rho * Math.sin(azimuth)];
+      const { places, weights } = flights.of(this.#flightPhase * (Math.abs(x * hx + y * hy) + reachM));
+      let sum = 0;
+      for (let n = 0; n < images.length; n += 2) {
+        const [u, v] = [x - images[n], y - images[n + 1]];
+        for (let f = 0; f < places.length; f++) {
+          sum += weights[f] * densityAt(table, u - places[f] * hx, v - places[f] * hy);
         }
       }
-    }
+      return (scale * sum) / pieces[annulus];
+    };
   }
 
   /** A mask as weighted edges, ready to be read. */

@@ -1,18 +1,8 @@
 import type { LinearModel, LinearModels } from '../numeric/linearModel.ts';
-import type { LeastMask, Proof } from './maskProgram.ts';
+import type { LeastMask } from './maskProgram.ts';
 import type { PlaneRow } from './planeCells.ts';
-import { FINE_SHARES } from './planeCells.ts';
-
-/** What a program needs to know of the cells. */
-interface Cells {
-  count: number;
-  /** Area of each over λz. */
-  areas: Float64Array;
-  fine: (row: PlaneRow) => Float64Array;
-}
-
-/** Relative error of a density from a table (see `DensityTable`). */
-const DENSITY_ERROR = 2e-5;
+import type { ProofCells } from './planeProof.ts';
+import { planeProof } from './planeProof.ts';
 
 /** Cells that enter the program at once, at most, and rounds of that. */
 const MOST_ENTERING = 1500;
@@ -27,21 +17,14 @@ const MISSED = 300;
 /** A bound of so many whole circles tells for sure that there is no mask, however coarse the cells. */
 const SURELY = 2;
 
-/** Part of the difference from coarser sums that is taken off. */
-const SAFETY = 1 / 3;
-
 /**
  * The least area over λz of a mask of cells in the plane, as `MaskProgram` finds it for annuli, with many more cells than a solver can take.
  *
  * Nearly all cells stay closed. So the program begins with none, and with costly slack at every place; what the prices of a solution say of
  * each cell tells which would pay, and the best of them enter, until none does (sifting: Bixby, Gregory, Lustig, Marsten and Shanno 1992).
- *
- * The certificate ∫ min(0, 1 − Σ y_i ω_i) da is summed over nine places in each cell, in thirds of its sides. The sum over the middles of
- * whole cells, and that over the cells' means, err by about nine times as much; what they differ from the first, the larger of both, is
- * therefore eight times its error. A third of it is taken off.
  */
 export class PlaneProgram {
-  readonly #cells: Cells;
+  readonly #cells: ProofCells;
   readonly #model: LinearModel;
   readonly #rows: PlaneRow[] = [];
   /** What stands in each column of the model: a cell, or −1 for slack. */
@@ -49,10 +32,10 @@ export class PlaneProgram {
   readonly #isIn: Uint8Array;
   readonly #whole: number;
 
-  constructor(models: LinearModels, cells: Cells) {
+  constructor(models: LinearModels, cells: ProofCells) {
     this.#cells = cells;
     this.#model = models.open(new Float64Array(0), new Float64Array(0));
-    this.#isIn = new Uint8Array(cells.count);
+    this.#isIn = new Uint8Array(cells.areas.length);
     this.#whole = cells.areas.reduce((sum, area) => sum + area, 0);
   }
 
@@ -103,7 +86,8 @@ export class PlaneProgram {
     const shares = this.#sharesOf(values);
     const area = shares.reduce((sum, share, cell) => sum + share * this.#cells.areas[cell], 0);
     const { prices } = best;
-    return { shares, area, prove: () => this.#proof(prices, lower, upper) };
+    const prove = () => planeProof(this.#cells, this.#rows, prices, lower, upper);
+    return { shares, area, prices, prove };
   }
 
   dispose(): void {
@@ -149,41 +133,10 @@ export class PlaneProgram {
   }
 
   #sharesOf(values: Float64Array): Float64Array {
-    const shares = new Float64Array(this.#cells.count);
+    const shares = new Float64Array(this.#cells.areas.length);
     this.#columns.forEach((cell, column) => {
       if (cell >= 0) shares[cell] = Math.min(1, Math.max(0, values[column]));
     });
     return shares;
-  }
-
-  /** The bound that prices prove. */
-  #proof(prices: Float64Array, lower: number, upper: number): Proof {
-    const { areas, count } = this.#cells;
-    const fine = FINE_SHARES.length;
-    const worth = new Float64Array(fine * count);
-    for (let j = 0; j < worth.length; j++) worth[j] = areas[Math.floor(j / fine)];
-    let limits = 0;
-    let size = 0;
-    prices.forEach((price, i) => {
-      if (price === 0) return;
-      limits += price * (price > 0 ? lower : upper);
-      size += Math.abs(price);
-      const values = this.#cells.fine(this.#rows[i]);
-      for (let j = 0; j < worth.length; j++) worth[j] -= price * values[j];
-    });
-    let [thirds, middles, means] = [limits, limits, limits];
-    for (let cell = 0; cell < count; cell++) {
-      let mean = 0;
-      for (let j = 0; j < fine; j++) {
-        const value = FINE_SHARES[j] * worth[fine * cell + j];
-        mean += value;
-        thirds += Math.min(0, value);
-      }
-      means += Math.min(0, mean);
-      middles += Math.min(0, worth[fine * cell + (fine - 1) / 2]);
-    }
-    const differs = Math.max(Math.abs(middles - thirds), Math.abs(means - thirds));
-    const error = SAFETY * differs + DENSITY_ERROR * upper * size;
-    return { proven: thirds - error, error };
   }
 }
