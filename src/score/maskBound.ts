@@ -76,13 +76,15 @@ export class MaskBounds {
     const { distanceM, radiusM, symmetry } = cells;
     let least: LeastMask | null = null;
     let worst = Number.POSITIVE_INFINITY;
+    let nodes = 0;
     for (let cut = 0; cut < cuts; cut++) {
       least = program.solve(gain, correction);
       if (least === null) break;
       const elements = cells.elementsOf(least.shares);
       const cases = this.#worst.find(elements, radiusM, distanceM, gain, symmetry);
       worst = Math.abs(cases[0]?.correction ?? 0);
-      if (worst <= correction * (1 + MISS)) break;
+      nodes += elements.reduce((sum, element) => sum + element.nodes.length / 4, 0);
+      if (worst <= correction * (1 + MISS) || nodes > cells.mostNodes) break;
       const before = program.places;
       for (const { condition, positionM, correction: missed } of cases) {
         if (Math.abs(missed) > correction * (1 + MISS)) tell(condition, positionM);
@@ -123,6 +125,8 @@ interface Cells<Row> {
   largestPhase: number;
   /** Of its masks. */
   symmetry: Symmetry;
+  /** Boundary nodes of all masks of one gain whose worst places are looked for, at most: beyond them the bound is left as true, and less tight. */
+  mostNodes: number;
   /** Where a program is told of each particle first. */
   firstPositions: [x: number, y: number][];
   row: (condition: Condition, position: readonly [x: number, y: number]) => Row;

@@ -25,6 +25,9 @@ export const FINE_SHARES: readonly number[] = THIRD_SHARES.flatMap((along) =>
   THIRD_SHARES.map((across) => along * across),
 );
 
+/** Phase between the circles of first places. */
+const PLACE_SWING = 5;
+
 /** Points of a flight for each radian of phase along it, and beside them: a mean errs by less than 1e-6. */
 const PER_RADIAN = 0.55;
 const POINTS = 6;
@@ -58,6 +61,7 @@ export class PlaneCells {
   readonly largestPhase: number;
   /** Of all its masks. */
   readonly symmetry: Symmetry;
+  readonly mostNodes = 30_000;
   readonly #mirrors: PlaneSymmetry;
   readonly #grid: PlaneGrid;
   readonly #task: Task;
@@ -102,16 +106,25 @@ export class PlaneCells {
     this.#flightPhase = 2 * kappa * (crossing?.spanM ?? 0);
   }
 
-  /** First places to be told of: the axis, and the offset along and across the direction. */
+  /**
+   * First places to be told of: the axis, and circles out to the offset with places from the direction to its normal; the more of
+   * them, the farther fringes swing over the offset, for finding each by its being missed takes long.
+   */
   get firstPositions(): [x: number, y: number][] {
     const { offsetM } = this.#task.placement;
-    const [x, y] = [offsetM * Math.cos(this.#mirrors.axisRad), offsetM * Math.sin(this.#mirrors.axisRad)];
-    if (offsetM === 0) return [[0, 0]];
-    return [
-      [0, 0],
-      [x, y],
-      [-y, x],
-    ];
+    const { axisRad, mirrors } = this.#mirrors;
+    const swing = 2 * this.#density.kappa * this.radiusM * offsetM;
+    const circles = Math.min(3, Math.ceil(swing / PLACE_SWING));
+    const steps = Math.min(4, circles + 1) * (mirrors ? 1 : 2);
+    const places: [number, number][] = [[0, 0]];
+    for (let circle = 1; circle <= circles; circle++) {
+      const radius = (offsetM * circle) / circles;
+      for (let step = 0; step <= steps - (mirrors ? 0 : 1); step++) {
+        const azimuth = axisRad + ((mirrors ? Math.PI / 2 : Math.PI) * step) / steps;
+        places.push([radius * Math.cos(azimuth), radius * Math.sin(azimuth)]);
+      }
+    }
+    return places;
   }
 
   /**

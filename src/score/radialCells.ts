@@ -36,6 +36,7 @@ export class RadialCells implements MaskCells {
   /** η of that radius. */
   readonly largestPhase: number;
   readonly symmetry = { folds: Number.POSITIVE_INFINITY, mirror: true };
+  readonly mostNodes = Number.POSITIVE_INFINITY;
   readonly #task: Task;
   readonly #discs: Float64Array[];
   readonly #reader: ConditionReader;
