@@ -14,9 +14,6 @@ const TAKEN = 1e-5;
 /** What a reading that is missed by the whole extinction costs, in whole circles. */
 const MISSED = 300;
 
-/** A bound of so many whole circles tells for sure that there is no mask, however coarse the cells. */
-const SURELY = 2;
-
 /**
  * The least area over λz of a mask of cells in the plane, as `MaskProgram` finds it for annuli, with many more cells than a solver can take.
  *
@@ -43,11 +40,7 @@ export class PlaneProgram {
     return this.#rows.length;
   }
 
-  /** Cells that have entered so far. */
-  get entered(): number {
-    return this.#isIn.reduce((sum, one) => sum + one, 0);
-  }
-
+  /** Adds a place by what each cell adds to reading/extinction there. */
   add(row: PlaneRow): void {
     const coefficients = Float64Array.from(this.#columns, (cell) => (cell < 0 ? 0 : row.added[cell]));
     this.#model.addRow(coefficients, -Infinity, Infinity);
@@ -78,7 +71,7 @@ export class PlaneProgram {
       const taken = this.#takenBy(worth);
       if (best === null || optimum.objective + taken > best.bound)
         best = { prices, bound: optimum.objective + taken };
-      if (best.bound > SURELY * this.#whole) return null;
+      if (best.bound > this.#whole && this.#isImpossible(best.prices, lower, upper)) return null;
       if (-taken <= TAKEN * optimum.objective) break;
       this.#enterBest(worth);
     }
@@ -94,13 +87,22 @@ export class PlaneProgram {
     this.#model.dispose();
   }
 
+  /** Whether the prices prove more than the whole circle, by far more than what cells and their middles differ in. */
+  #isImpossible(prices: Float64Array, lower: number, upper: number): boolean {
+    const limits = prices.reduce((sum, price) => sum + price * (price > 0 ? lower : upper), 0);
+    const [means, middles] = (['added', 'middles'] as const).map((which) =>
+      this.#worth(prices, which).reduce((sum, value) => sum + Math.min(0, value), limits),
+    );
+    return means - 2 * Math.abs(means - middles) > this.#whole;
+  }
+
   /** Area less what the prices pay, for each cell. */
-  #worth(prices: Float64Array): Float64Array {
+  #worth(prices: Float64Array, which: 'added' | 'middles' = 'added'): Float64Array {
     const worth = this.#cells.areas.slice();
     prices.forEach((price, i) => {
       if (price === 0) return;
-      const { added } = this.#rows[i];
-      for (let j = 0; j < worth.length; j++) worth[j] -= price * added[j];
+      const row = this.#rows[i][which];
+      for (let j = 0; j < worth.length; j++) worth[j] -= price * row[j];
     });
     return worth;
   }

@@ -70,6 +70,15 @@ describe('MaskBounds on the plane', () => {
     expect(Math.abs(bound / (flightPlane.areaOverFloor ?? 9) - 1)).toBeLessThan(0.02);
   });
 
+  it('is none where no mask keeps the correction', () => {
+    // η is 9.9 at the rim: two zones of a gain of two each, no more.
+    const choice = { distanceM: Z, radiusM: R, kind: 'any', cells: 'plane' } as const;
+    const bounds = new MaskBounds(polarised, models, boundTools(polarised, 'far'), choice);
+    expect(bounds.at(6).areaOverFloor).toBeNull();
+    expect(bounds.at(1).areaOverFloor).toBeCloseTo(polarisedPlane.areaOverFloor ?? 0, 2);
+    bounds.dispose();
+  });
+
   it('turns with the direction', () => {
     const turned = { ...polarised, light: { ...polarised.light, polarizationRad: 1.3 } };
     const [one, other] = [polarisedPlane, boundOf(turned, 'plane')];
