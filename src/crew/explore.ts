@@ -8,6 +8,8 @@ import { nelderMead } from '../search/nelderMead.ts';
 import { RestartedCma } from '../search/restartedCma.ts';
 import type { Candidate } from './candidate.ts';
 import { descend } from './descend.ts';
+import { spread } from './spread.ts';
+import { boxOf, drawStart } from './startPoints.ts';
 import { Trials } from './trials.ts';
 
 /** One piece of searching, done by one worker without talking to the others. */
@@ -23,10 +25,13 @@ export interface ExploreJob {
   /**
    * `glance`: descents from many starts. `evolve`: CMA-ES from start after start, then a descent from its best.
    * `refine`: descents and Nelder–Mead from `from`, at its distance and at neighbouring ones. `seed`: one descent from there.
+   * `spread`: the whole front of correction, time and radius from `starts`.
    */
-  method: 'glance' | 'evolve' | 'refine' | 'seed';
+  method: 'glance' | 'evolve' | 'refine' | 'seed' | 'spread';
   /** Where to refine or seed from; a start of the variant's own if left out. */
   from?: number[];
+  /** Good candidates of the variant for `spread` to begin with. */
+  starts?: number[][];
 }
 
 export interface ExploreResult {
@@ -54,6 +59,7 @@ export function explore(job: ExploreJob, judge: Judge, space: SearchSpace): Expl
   const from = Float64Array.from(job.from ?? drawStart(trials, random).start);
   if (job.method === 'glance') glance(trials, random);
   else if (job.method === 'evolve') evolve(trials, random);
+  else if (job.method === 'spread') spread(trials, job.starts ?? [], random);
   else (job.method === 'seed' ? descendOnce : refine)(trials, from, random);
   return { evaluations: trials.spent, best: trials.best, front: trials.front };
 }
@@ -129,30 +135,4 @@ function refine(trials: Trials, from: Float64Array, random: RandomSource): void 
       tolFun: 1e-6,
     },
   );
-}
-
-/** Ranges of the parameters, and of the distance's place where there is a choice. */
-function boxOf({ variant, space }: Trials): { lower: Float64Array; upper: Float64Array } {
-  return {
-    lower: Float64Array.from([...variant.parameters.map(({ low }) => low), ...place(space, 0)]),
-    upper: Float64Array.from([...variant.parameters.map(({ high }) => high), ...place(space, 1)]),
-  };
-}
-
-/** A start of the variant's own within its ranges, anywhere on the distance grid, and natural lengths around it. */
-function drawStart({ variant, space }: Trials, random: RandomSource) {
-  const { values, spreads } = variant.start(random);
-  const within = values.map((value, i) => {
-    const { low, high } = variant.parameters[i];
-    return Math.min(Math.max(value, low), high);
-  });
-  return {
-    start: Float64Array.from([...within, ...place(space, random.uniform())]),
-    scales: Float64Array.from([...spreads, ...place(space, 0.2)]),
-  };
-}
-
-/** A coordinate for the distance, or none where the brief fixes it. */
-function place(space: SearchSpace, value: number): number[] {
-  return space.distances.length > 1 ? [value] : [];
 }

@@ -13,6 +13,9 @@ const FRONT_SIZE = 24;
 /** Differences that matter to the front: 5 % in correction, 3 % in time and radius. */
 export const FRONT_RESOLUTION = [0.05, 0.03, 0.03];
 
+/** Designs whose correction is beyond this many times the target are of no use to anyone. */
+export const FRONT_REACH = 4;
+
 /** What the front trades against each other, in logarithms: correction, time, radius. */
 export function frontObjectives({ scores }: Candidate): [number, number, number] {
   return [Math.log(scores.correction.worst), Math.log(scores.snr.time_s), Math.log(scores.radius_m)];
@@ -62,7 +65,9 @@ export class Trials {
     const { candidate, value } = trial;
     if (candidate) {
       if (this.#best === null || value < this.#best.value) this.#best = { candidate, value };
-      if (missedLimits(candidate.scores, candidate.misfit, this.judge.task).length === 0) {
+      const { task } = this.judge;
+      const isWithin = candidate.scores.correction.worst <= FRONT_REACH * task.target.correction;
+      if (isWithin && missedLimits(candidate.scores, candidate.misfit, task).length === 0) {
         this.#archive.add(frontObjectives(candidate), candidate);
       }
     }

@@ -1,9 +1,12 @@
+import { FRONT_REACH } from '../crew/trials.ts';
 import type { Miss } from '../score/aim.ts';
 import { missedLimits } from '../score/aim.ts';
 import type { Design } from '../score/design.ts';
 import { worstOf } from '../score/scores.ts';
 import type { Task } from '../score/task.ts';
 import { crowdingDistances, nonDominatedRanks } from '../search/pareto.ts';
+
+export { FRONT_REACH };
 
 /** A design of a front. */
 export interface RankedDesign extends Design {
@@ -13,9 +16,6 @@ export interface RankedDesign extends Design {
   rank: number;
   meetsTarget: boolean;
 }
-
-/** Designs whose correction is beyond this many times the target are of no use to anyone. */
-export const FRONT_REACH = 4;
 
 /** Most designs that a front keeps. */
 const FRONT_SIZE = 24;

@@ -1,14 +1,14 @@
 import type { Candidate } from '../crew/candidate.ts';
 import type { Crew } from '../crew/crew.ts';
 import type { ExploreJob, ExploreResult } from '../crew/explore.ts';
-import { FRONT_RESOLUTION, frontObjectives } from '../crew/trials.ts';
+import { FRONT_REACH, FRONT_RESOLUTION, frontObjectives } from '../crew/trials.ts';
 import type { Variant } from '../outline/families/family.ts';
 import type { Aim } from '../score/aim.ts';
 import { missedLimits } from '../score/aim.ts';
 import type { Task } from '../score/task.ts';
 import { ParetoArchive } from '../search/paretoArchive.ts';
+import { FrontCredit } from './frontCredit.ts';
 import { FrontHistory } from './frontHistory.ts';
-import { FRONT_REACH } from './ranking.ts';
 import { maskJobs, seedsOf } from './seeding.ts';
 import type { FamilyStanding } from './standing.ts';
 import { Standing } from './standing.ts';
@@ -23,6 +23,8 @@ export interface Quest {
   aims: readonly Aim[];
   candidates: number;
   seed: number;
+  /** Share of a lap that goes to whole fronts where there are several aims; `SPREAD_SHARE` if left out. */
+  spreadShare?: number;
 }
 
 /** How far the rounds have come. */
@@ -59,7 +61,13 @@ const RESERVE = 0.08;
 const LAPS = 3;
 const MOST_LAPS = 12;
 
-/** Share of a lap that goes to new starts. */
+/** Share of a lap that goes to whole fronts, where several aims ask for one; measured by `bench/realFronts.ts`. */
+const SPREAD_SHARE = 0.4;
+
+/** Evaluations of one search for a variant's whole front. */
+const SPREAD = 800;
+
+/** Share of what is left of a lap that goes to new starts. */
 const DIG_SHARE = 0.65;
 
 /** Candidates refined for each aim, and the evaluations below which a refinement is not worth its start. */
@@ -90,6 +98,7 @@ export class Rounds {
   readonly #best: Map<string, { candidate: Candidate; value: number }>[];
   readonly #archive = new ParetoArchive<Candidate>(FRONT_RESOLUTION, 60);
   readonly #standing: Standing;
+  readonly #credit: FrontCredit;
   readonly #history: FrontHistory;
   #evaluations = 0;
   /** Those whose candidates are kept, in the order of the jobs. */
@@ -101,6 +110,7 @@ export class Rounds {
     this.#quest = quest;
     this.#crew = crew;
     this.#onProgress = onProgress;
+    this.#credit = new FrontCredit(quest.variants);
     this.#standing = new Standing(quest.variants, quest.aims[0]);
     this.#history = new FrontHistory(quest.candidates);
     this.#best = quest.aims.map(() => new Map());
@@ -117,8 +127,9 @@ export class Rounds {
       }
       // Early laps leave something for later ones, which start from what is found by then.
       const share = this.#left / Math.max(1, LAPS - lap);
-      await this.#round(this.#dig(DIG_SHARE * share, lap === 0));
-      await this.#round(this.#refine((1 - DIG_SHARE) * share));
+      const spread = this.#spreadShare * share;
+      await this.#round(this.#dig(DIG_SHARE * (share - spread), lap === 0));
+      await this.#round([...this.#refine((1 - DIG_SHARE) * (share - spread)), ...this.#spread(spread)]);
     }
   }
 
@@ -142,7 +153,7 @@ export class Rounds {
     return {
       evaluations: this.#evaluations,
       best: this.#best.map((found) => [...found.values()].sort((a, b) => a.value - b.value)),
-      front: this.#archive.members().map(({ payload }) => payload),
+      front: this.#members(),
       settled: this.#settled,
       movedInLastQuarter: this.#history.movedInLastQuarter(this.#kept, this.#objectives()),
     };
@@ -220,6 +231,27 @@ export class Rounds {
     });
   }
 
+  /** Whole fronts, of the variants that have moved the common front of late, from what is known of each. */
+  #spread(budget: number): ExploreJob[] {
+    const count = Math.round(budget / SPREAD);
+    const ranked = this.findings.best[0].map(({ candidate }) => candidate.variant);
+    return this.#credit.deal(count, ranked).map((id) => {
+      const members = this.#members().filter(({ variant }) => variant === id);
+      const bests = this.#best.flatMap((found) => found.get(id)?.candidate ?? []);
+      const starts = [...members, ...bests].map(({ vector }) => vector);
+      return { ...this.#job(id, 0, budget / count), method: 'spread' as const, starts };
+    });
+  }
+
+  get #spreadShare(): number {
+    const { aims, spreadShare = SPREAD_SHARE } = this.#quest;
+    return aims.length > 1 ? spreadShare : 0;
+  }
+
+  #members(): Candidate[] {
+    return this.#archive.members().map(({ payload }) => payload);
+  }
+
   /** What the rounds may still spend. */
   get #left(): number {
     return (1 - RESERVE) * this.#quest.candidates - this.#evaluations;
@@ -239,6 +271,7 @@ export class Rounds {
 
   async #round(jobs: ExploreJob[]): Promise<void> {
     const worthwhile = jobs.filter(({ budget }) => budget > 0);
+    const before = this.#members();
     const results: (ExploreResult | undefined)[] = worthwhile.map(() => undefined);
     try {
       await Promise.all(
@@ -254,6 +287,7 @@ export class Rounds {
       results.forEach((result, i) => {
         if (result) this.#keep(worthwhile[i], result);
       });
+      this.#credit.note(before, this.#members());
     }
   }
 
