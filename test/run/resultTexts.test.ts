@@ -53,9 +53,9 @@ describe('frontCsv', () => {
   it('has one row a design under a header with units', () => {
     const [header, row, rest] = frontCsv([DESIGN]).split('\r\n');
     expect(header).toBe(
-      'id,family,rank,meets_target,distance_m,radius_m,area_m2,gain,correction_worst,correction_certified,correction_rms,correction_population,certified_diameter_m,certified_wavelength_m,certified_depth_m,certified_x_m,certified_y_m,lobe_ratio,snr_required,time_s,area_over_floor,shop_fits,shop_notes',
+      'id,family,rank,meets_target,distance_m,radius_m,area_m2,gain,correction_worst,correction_certified,correction_rms,correction_population,certified_diameter_m,certified_wavelength_m,certified_depth_m,certified_x_m,certified_y_m,lobe_ratio,snr_required,time_s,area_over_floor,least_area_over_floor,shop_fits,shop_notes',
     );
-    expect(row).toBe('disc-1,disc,1,true,0.02,0.0001,1e-8,2,0.01,,0.005,,,,,,,0.05,100000,1e-7,1.2,true,');
+    expect(row).toBe('disc-1,disc,1,true,0.02,0.0001,1e-8,2,0.01,,0.005,,,,,,,0.05,100000,1e-7,1.2,,true,');
     expect(rest).toBe('');
     const certifiedAt = {
       diameter_m: 2e-6,

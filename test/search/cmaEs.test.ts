@@ -36,7 +36,9 @@ describe('CmaEs: speed', () => {
     'reaches 1e-10 as fast as the tutorial: $id',
     ({ n, f, value }) => {
       const [start, sigma] = f === rosenbrock ? [0, 0.1] : [1, 1];
-      const counts = Array.from({ length: 21 }, (_, seed) => {
+      // Large n takes long, and its counts scatter less.
+      const seeds = n > 10 ? 9 : 21;
+      const counts = Array.from({ length: seeds }, (_, seed) => {
         const cma = new CmaEs({
           start: new Float64Array(n).fill(start),
           sigma,
@@ -45,7 +47,7 @@ describe('CmaEs: speed', () => {
         run(f, cma, () => cma.best.value < 1e-10);
         return cma.best.value < 1e-10 ? cma.evaluations : Number.POSITIVE_INFINITY;
       });
-      const median = counts.sort((a, b) => a - b)[10];
+      const median = counts.sort((a, b) => a - b)[(seeds - 1) / 2];
       expect(median).toBeLessThan(1.1 * value.own_active_tutorial.median);
       // Without negative weights the valleys take longer by more than a tenth: they are at work.
       if (f !== sphere) expect(median).toBeLessThan(0.92 * value.own_positive_weights.median);
