@@ -9,6 +9,7 @@ import type { Condition } from './conditions.ts';
 import { SEARCH_FINENESS } from './fineness.ts';
 import type { ElementNodes } from './judge.ts';
 import { planeNodes } from './planeEdges.ts';
+import { PlaneFlights } from './planeFlights.ts';
 import type { PlaneGrid } from './planeGrid.ts';
 import { cellIntegrals, neighbours, planeGrid } from './planeGrid.ts';
 import type { PlaneSymmetry } from './planeSymmetry.ts';
@@ -27,13 +28,6 @@ export const FINE_SHARES: readonly number[] = THIRD_SHARES.flatMap((along) =>
 
 /** Phase between the circles of first places. */
 const PLACE_SWING = 5;
-
-/** Points of a flight for each radian of phase along it, and beside them: a mean errs by less than 1e-6. */
-const PER_RADIAN = 0.55;
-const POINTS = 6;
-
-/** Numbers of points come in steps of this many. */
-const POINT_STEP = 4;
 
 /** A place, and what each cell adds to the reading of a particle there. */
 export interface PlaneRow {
@@ -186,7 +180,7 @@ export class PlaneCells {
     const { crossing, offsetM } = this.#task.placement;
     const spanM = crossing?.spanM ?? 0;
     const [hx, hy] = [Math.cos(crossing?.headingRad ?? 0), Math.sin(crossing?.headingRad ?? 0)];
-    const flights = new Flights(spanM, this.#rules);
+    const flights = new PlaneFlights(spanM, this.#rules);
     const reachM = offsetM + spanM / 2;
     const { radiusM } = this;
     const { axisRad, wedgeRad, pieces } = this.#grid;
@@ -222,32 +216,4 @@ export class PlaneCells {
 /** As outlines tell it: their mirror is the x axis, which an axis at right angles is as good as. */
 function symmetryOf({ axisRad, mirrors }: PlaneSymmetry): Symmetry {
   return { folds: 2, mirror: mirrors && Math.abs(Math.sin(2 * axisRad)) < 1e-9 };
-}
-
-/** Points of flights by the phase that runs along them. */
-class Flights {
-  readonly #spanM: number;
-  readonly #rules: LegendreRules;
-  readonly #held: { places: Float64Array; weights: Float64Array }[] = [];
-
-  constructor(spanM: number, rules: LegendreRules) {
-    this.#spanM = spanM;
-    this.#rules = rules;
-  }
-
-  /** Places from the middle of the flight along its heading, metres, and their shares. */
-  of(phase: number): { places: Float64Array; weights: Float64Array } {
-    const step = Math.ceil((PER_RADIAN * phase) / POINT_STEP);
-    this.#held[step] ??= this.#made(step);
-    return this.#held[step];
-  }
-
-  #made(step: number): { places: Float64Array; weights: Float64Array } {
-    if (this.#spanM === 0) return { places: new Float64Array(1), weights: Float64Array.of(1) };
-    const { nodes, weights } = this.#rules.rule(POINTS + POINT_STEP * step);
-    return {
-      places: nodes.map((node) => (node * this.#spanM) / 2),
-      weights: weights.map((weight) => weight / 2),
-    };
-  }
 }
