@@ -5,8 +5,9 @@ import { benchEffects } from './effects.ts';
 import { benchFronts } from './fronts.ts';
 import { benchPolygons } from './polygons.ts';
 import { benchReadings } from './readings.ts';
+import { benchRealFronts } from './realFronts.ts';
 
-/** `npm run bench`: a table; `npm run bench -- --json`: one JSON document. Medians of seeded, warmed runs. */
+/** `npm run bench`: a table; `npm run bench -- --json`: one JSON document; `--road-dust` adds that brief's fronts. Medians of seeded, warmed runs. */
 const readings = await benchReadings();
 const polygons = benchPolygons();
 const effects = await benchEffects();
@@ -14,6 +15,8 @@ const candidates = await benchCandidates();
 const roadDust = await benchCandidates('road-dust');
 const baseline = await benchBaseline();
 const fronts = benchFronts();
+const slowBriefs = process.argv.includes('--road-dust') ? ['road-dust'] : [];
+const realFronts = await benchRealFronts(['size-range', 'offset-range', ...slowBriefs]);
 const machine = { node: process.version, cores: availableParallelism(), processor: cpus()[0]?.model };
 
 if (process.argv.includes('--json')) {
@@ -29,6 +32,7 @@ if (process.argv.includes('--json')) {
         roadDust,
         baseline,
         fronts,
+        realFronts,
         machine,
       },
       null,
@@ -70,6 +74,11 @@ if (process.argv.includes('--json')) {
   for (const { name, variables, evaluations, ours, optimizationJs } of fronts) {
     row(`share of the front, ${name}, n = ${variables}, ${evaluations} evaluations`, shares(ours));
     row('  optimization-js', shares(optimizationJs));
+  }
+  for (const { name, candidates: count, wholeFronts, singleAims } of realFronts) {
+    const volumes = (found: readonly number[]) => found.map((volume) => volume.toFixed(3)).join(' ');
+    row(`real job, ${name}, ${count} candidates, seeds 1 to 3`, volumes(wholeFronts));
+    row('  single aims alone', volumes(singleAims));
   }
   console.log(`Node ${machine.node}, ${machine.cores} cores, ${machine.processor}`);
 }
