@@ -25,7 +25,7 @@ export interface BoundJson {
   star?: LeastJson | null;
 }
 
-export interface LeastJson {
+interface LeastJson {
   /** Proven: (area / gain) over λz is at least this. */
   areaOverFloor: number;
   area_m2: number;

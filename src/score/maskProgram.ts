@@ -121,7 +121,7 @@ export class MaskProgram {
 }
 
 /** Sums of `size` neighbours each. */
-export function merge(fine: Float64Array, size: number): Float64Array {
+function merge(fine: Float64Array, size: number): Float64Array {
   if (size === 1) return fine;
   const sums = new Float64Array(fine.length / size);
   for (let j = 0; j < fine.length; j++) sums[Math.floor(j / size)] += fine[j];
