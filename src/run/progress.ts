@@ -1,4 +1,4 @@
-import type { RoundsProgress } from './rounds.ts';
+import type { RoundsProgress } from './quest.ts';
 
 /** How far a search has come, and how long it takes. */
 export interface Progress extends RoundsProgress {
