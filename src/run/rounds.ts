@@ -2,6 +2,7 @@ import type { Candidate } from '../crew/candidate.ts';
 import type { Crew } from '../crew/crew.ts';
 import type { ExploreJob, ExploreResult } from '../crew/explore.ts';
 import { FRONT_REACH, FRONT_RESOLUTION, frontObjectives } from '../crew/trials.ts';
+import type { Aim } from '../score/aim.ts';
 import { missedLimits } from '../score/aim.ts';
 import { ParetoArchive } from '../search/paretoArchive.ts';
 import { FrontCredit } from './frontCredit.ts';
