@@ -13,7 +13,7 @@ export interface MaskJob {
   masks: MaskKind;
   distanceM: number;
   asks: readonly { gain: number; correction: number }[];
-  /** Programs to be solved for each of them at most: few for masks to begin a search with, more for a tight bound. */
+  /** Looks for the worst places for each of them at most: few for masks to begin a search with, more for a tight bound. */
   cuts: number;
 }
 
@@ -29,7 +29,7 @@ export interface FoundMask {
   areaOverFloor: number;
   /** Taken off for finite cells and tables. */
   error: number;
-  mask: { areaOverFloor: number; worst: number; steps: MaskStep[] };
+  mask: { areaOverFloor: number; worst: number | null; steps: MaskStep[] };
 }
 
 /** The loaded solver, and what all least masks of a task share. */

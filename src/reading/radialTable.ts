@@ -8,7 +8,7 @@ import type { FluxSamples } from './fluxDensity.ts';
 import { fluxDensity } from './fluxDensity.ts';
 import { addSpreadFlux, FARTHEST_SPREAD } from './randomSpread.ts';
 import type { Fading, Scenario } from './scenario.ts';
-import { tiltedMeans, tiltedPlace } from './sourceDisc.ts';
+import { discMeans, tiltedMeans, tiltedPlace } from './sourceDisc.ts';
 
 /** The cumulative flux of one scenario at one distance, ready for boundary integrals. */
 export interface RadialTable extends CumulativeFlux {
@@ -61,7 +61,9 @@ export function buildRadialTable(
   const [rho, sin, cos] = [Math.sqrt(count * fineM2), Math.sin(sourceAngleRad), Math.cos(sourceAngleRad)];
   const farthest = Math.sqrt(tiltedPlace(rho, distanceM, sin, cos, -1).s);
   const point = still(Math.max(rho + discM, farthest));
-  const means = tiltedMeans(point, sourceAngleRad, distanceM, kappa, fineM2, count);
+  const means = scenario.tiltsAsPlaces
+    ? discMeans(point, discM, kappa, fineM2, count)
+    : tiltedMeans(point, sourceAngleRad, distanceM, kappa, fineM2, count);
   return tableOf(means, fineM2, cells, polarizationRad);
 }
 

@@ -34,7 +34,7 @@ interface LeastJson {
   /** Taken off the bound for the finite size of cells and tables, in the unit of `areaOverFloor`. */
   error: number;
   /** A mask that comes this near, and its own worst correction. */
-  mask: { areaOverFloor: number; worst: number };
+  mask: { areaOverFloor: number; worst: number | null };
 }
 
 /** Gains that are tried where the brief leaves a choice. */

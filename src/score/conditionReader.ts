@@ -67,7 +67,8 @@ export class ConditionReader {
     const { kind, diameterM, wavelengthM } = condition;
     const key = `${kind.id} ${diameterM} ${wavelengthM}`;
     const scenario = held(this.#scenarios, key, MOST_SOLVED, () => {
-      return this.#solve([particleOf(condition)], [wavelengthM])[0];
+      // A climb asks for hundreds of tables.
+      return { ...this.#solve([particleOf(condition)], [wavelengthM])[0], tiltsAsPlaces: true };
     });
     if (view.distanceM !== this.#distanceM) this.#readers.clear();
     this.#distanceM = view.distanceM;

@@ -13,6 +13,8 @@ export interface Fineness {
   perRadian: number;
   /** Places of a flight's grid beyond its phase, over the cube root of it (see `FlightGrid`). */
   tail: number;
+  /** Whether directions of a source are taken for places (see `Scenario`). */
+  tiltsAsPlaces: boolean;
 }
 
 /** For every candidate of a search. */
@@ -23,6 +25,7 @@ export const SEARCH_FINENESS: Fineness = {
   most: { circles: 12, steps: 24 },
   perRadian: 0.45,
   tail: 3,
+  tiltsAsPlaces: true,
 };
 
 /** For what is reported: ten times denser in position, and finer in the rest. */
@@ -33,4 +36,5 @@ export const REPORT_FINENESS: Fineness = {
   most: { circles: 160, steps: 1200 },
   perRadian: 0.9,
   tail: 4.7,
+  tiltsAsPlaces: false,
 };

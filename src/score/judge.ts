@@ -44,7 +44,8 @@ export class Judge {
   constructor(task: Task, fineness: Fineness, fields: Fields = 'far') {
     this.task = task;
     this.wavelengthM = task.light.wavelengthM / refractiveIndex(task.medium, task.light.wavelengthM)[0];
-    this.scenarios = taskScenarios(task, fineness.drifts);
+    const { tiltsAsPlaces } = fineness;
+    this.scenarios = taskScenarios(task, fineness.drifts).map((scenario) => ({ ...scenario, tiltsAsPlaces }));
     this.#sampling = new Sampling(task, fineness, (2 * Math.PI) / this.wavelengthM, this.#rules);
     const spreadsM = this.scenarios.map(({ particle }) => spreadOf(task.placement, particle.diameterM));
     this.#spreadsM = spreadsM;

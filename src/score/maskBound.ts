@@ -20,8 +20,8 @@ export interface MaskBound {
   areaOverFloor: number | null;
   /** What was taken off for the finite size of cells and tables. */
   error: number;
-  /** The mask that the program ended with, its own areaOverFloor and worst correction; null where there is none. */
-  mask: { shares: Float64Array; areaOverFloor: number; worst: number } | null;
+  /** The mask that the program ended with, its own areaOverFloor, and its worst correction as far as that was looked for; null where there is none. */
+  mask: { shares: Float64Array; areaOverFloor: number; worst: number | null } | null;
   /** Places that the program was told of. */
   places: number;
 }
@@ -68,18 +68,18 @@ export class MaskBounds {
 
   /**
    * @param correction what masks may read wrong; the brief's target if left out
-   * @param cuts programs to be solved at most: fewer give a bound that is as true, and less tight
+   * @param cuts how often the worst places of a mask are looked for and added, at most: fewer give a bound that is as true, and less tight
    * @throws RimwrightError `machine` where the solver fails
    */
   at(gain: number, correction = this.#task.target.correction, cuts = MOST_CUTS): MaskBound {
     const { cells, program, tell } = this.#told;
     const { distanceM, radiusM, symmetry } = cells;
     let least: LeastMask | null = null;
-    let worst = Number.POSITIVE_INFINITY;
+    let worst: number | null = null;
     let nodes = 0;
-    for (let cut = 0; cut < cuts; cut++) {
+    for (let cut = 0; ; cut++) {
       least = program.solve(gain, correction);
-      if (least === null) break;
+      if (least === null || cut === cuts) break;
       const elements = cells.elementsOf(least.shares);
       const cases = this.#worst.find(elements, radiusM, distanceM, gain, symmetry);
       worst = Math.abs(cases[0]?.correction ?? 0);
