@@ -24,6 +24,9 @@ const MOST_LAPS = 12;
 /** Share of a lap that goes to whole fronts, where several aims ask for one; measured by `bench/realFronts.ts`. */
 const SPREAD_SHARE = 0.4;
 
+/** Corrections up to this many times what is aimed for count as met: repairs do the rest. */
+const MET = 1.02;
+
 /** Evaluations of one search for a variant's whole front. */
 const SPREAD = 800;
 
@@ -203,9 +206,19 @@ export class Rounds {
     });
   }
 
+  /** Until the target itself is met, all is spent on that. */
   get #spreadShare(): number {
     const { aims, spreadShare = SPREAD_SHARE } = this.#quest;
-    return aims.length > 1 ? spreadShare : 0;
+    return aims.length > 1 && this.#isTargetMet ? spreadShare : 0;
+  }
+
+  get #isTargetMet(): boolean {
+    const { aims, task } = this.#quest;
+    return [...this.#best[0].values()].some(
+      ({ candidate: { scores, misfit } }) =>
+        scores.correction.worst <= MET * aims[0].correction &&
+        missedLimits(scores, misfit, task).length === 0,
+    );
   }
 
   #members(): Candidate[] {

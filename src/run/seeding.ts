@@ -19,7 +19,7 @@ interface Ground {
 }
 
 /** Distances, as places on the grid, and gains that masks are solved for: the first few where the budget is small. */
-const PLACES = { any: [0, 1, 0.33, 0.67], star: [0.33] } as const;
+const PLACES = { any: [0, 0.2, 0.45, 0.75], star: [0, 0.33] } as const;
 const GAINS = { any: [0.5, 1, 2], star: [1.4] } as const;
 
 /**
