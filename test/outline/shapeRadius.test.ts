@@ -13,8 +13,8 @@ describe('shapeRadius', () => {
       for (let turn = 0; turn < 6; turn++) {
         const shape = variant.draw(someValues(variant, random, turn), UNIT_M);
         if (!isDrawn(shape)) continue;
-        const points = ringsRadius(ringsOf(shape, 5 * 1440));
-        // The polygon of a circle stretches by 3e-8 at so many vertices; points are rounded by up to 0.7 nm.
+        const points = ringsRadius(ringsOf(shape, 12 * 1440));
+        // The polygon of a circle stretches by 6e-9 at so many vertices; points are rounded by up to 0.7 nm.
         expect(Math.abs(shapeRadius(shape) - points)).toBeLessThan(1e-9 + 2e-5 * points);
       }
     },
