@@ -14,7 +14,7 @@ const COLUMNS: readonly Column[] = [
   { title: 'Distance, mm', cell: ({ distanceM }) => countText(1e3 * distanceM) },
   { title: 'Radius, µm', cell: ({ scores }) => countText(1e6 * scores.radius_m) },
   { title: 'Gain', cell: ({ scores }) => scores.gain.toFixed(3) },
-  { title: 'Worst correction, %', cell: ({ scores }) => countText(100 * worstOf(scores)) },
+  { title: 'Worst correction, %', cell: ({ scores }) => finePercent(worstOf(scores)) },
   { title: 'RMS correction, %', cell: ({ scores }) => countText(100 * scores.correction.rms) },
   { title: 'Lobe ratio', cell: ({ scores }) => countText(scores.lobe.ratio) },
   { title: 'Required SNR', cell: ({ scores }) => countText(scores.snr.required) },
@@ -23,6 +23,11 @@ const COLUMNS: readonly Column[] = [
   { title: 'Fits the shop', cell: ({ scores }) => shopText(scores.shop.fits) },
   { title: 'Meets target', cell: ({ meetsTarget }) => (meetsTarget ? 'yes' : 'no') },
 ];
+
+/** Four digits, so that a correction just beyond the target does not look like one that keeps it. */
+function finePercent(ratio: number): string {
+  return String(Number((100 * ratio).toPrecision(4)));
+}
 
 /**
  * One row a design, its id leading to its section.

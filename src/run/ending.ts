@@ -26,7 +26,11 @@ export function endingOf(
 
 /** Why a search ended and how much its front still moved, in a sentence or two. */
 export function endingText({ reason, movedInLastQuarter }: Ending, evaluations: number, candidates: number) {
-  const tried = `${evaluations} of ${candidates} candidates were tried`;
+  // Where no design keeps the limits, looking for the nearest comes on top.
+  const tried =
+    evaluations > candidates
+      ? `${evaluations} candidates were tried, those for the nearest design counted`
+      : `${evaluations} of ${candidates} candidates were tried`;
   // A share of the candidates is kept for designs that finer judging finds a little beyond the target: not all may need it.
   const kept = evaluations < candidates ? ', the others were kept for repairs' : '';
   const why = {
