@@ -12,6 +12,7 @@ const FOLDERS = [
   'reading',
   'shop',
   'score',
+  'metrology',
   'search',
   'crew',
   'run',
