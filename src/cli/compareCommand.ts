@@ -1,5 +1,6 @@
 import type { Problem } from '../base/errors.ts';
 import { inputError, RimwrightError } from '../base/errors.ts';
+import type { LengthUnit } from '../outline/files/lengthUnit.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import type { DesignChoice } from '../run/chooseDesign.ts';
 import { chooseDesign } from '../run/chooseDesign.ts';
@@ -25,10 +26,14 @@ type Compared = RankedDesign & { file: string };
 export async function run(
   place: string,
   files: readonly string[],
-  options: { design: readonly string[]; distance?: string; exact?: true; json?: true },
+  options: { design: readonly string[]; unit?: LengthUnit; distance?: string; exact?: true; json?: true },
 ): Promise<number> {
   const distance = await readDistance(options.distance);
-  const choices = [...files.map((outline) => ({ outline })), ...options.design.map((design) => ({ design }))];
+  const unit = options.unit === undefined ? {} : { unit: options.unit };
+  const choices = [
+    ...files.map((outline) => ({ outline, ...unit })),
+    ...options.design.map((design) => ({ design })),
+  ];
   if (choices.length === 0) {
     const expected = "files, or --design ID for designs of the brief's own results";
     throw inputError([{ key: 'files', found: 'nothing to compare', expected }]);

@@ -1,6 +1,7 @@
 import type { Command } from './commander.ts';
+import { lengthUnit } from './optionRules.ts';
 import type { Done } from './optionTexts.ts';
-import { AS_JSON } from './optionTexts.ts';
+import { AS_JSON, UNIT } from './optionTexts.ts';
 
 /** Commands that hand out files: drawings, and what is on the shelf. */
 export function declareFiles(program: Command, done: Done): void {
@@ -8,8 +9,12 @@ export function declareFiles(program: Command, done: Done): void {
     .command('draw')
     .summary('drawings for the shop')
     .description('Draws a design for the shop: DXF at true size, and an SVG sheet to read.')
-    .argument('<design>', "a design's JSON, front.json#ID, a CSV with --distance, or a brief with --design")
+    .argument(
+      '<design>',
+      "a design's JSON, front.json#ID, an outline with --distance, or a brief with --design",
+    )
     .option('--design <id>', "a design of that front.json, or of the brief's own results")
+    .option('--unit <unit>', UNIT, lengthUnit)
     .option('--distance <length>', 'distance from particle to mask, for the notes on the sheet')
     .option('--out <dir>', 'folder to draw into', '.')
     .option('--formats <list>', 'dxf, svg, or both', 'dxf,svg')

@@ -1,7 +1,7 @@
 import type { Command } from './commander.ts';
-import { wholeNumber } from './optionRules.ts';
+import { lengthUnit, wholeNumber } from './optionRules.ts';
 import type { Done } from './optionTexts.ts';
-import { AS_JSON, BRIEF, EXACT, ID, OUTLINE, SEEDS } from './optionTexts.ts';
+import { AS_JSON, BRIEF, EXACT, ID, OUTLINE, SEEDS, UNIT } from './optionTexts.ts';
 
 const DIAMETERS = [2, 2000] as const;
 const ROUGH_OUTLINES = [2, 10_000] as const;
@@ -15,6 +15,7 @@ export function declareReading(program: Command, done: Done): void {
     .argument('<brief>', BRIEF)
     .option('--outline <file>', OUTLINE)
     .option('--design <id>', ID)
+    .option('--unit <unit>', UNIT, lengthUnit)
     .option('--distance <length>', 'distance from particle to detector')
     .option('--position <x, y>', 'read at this place of the particle alone')
     .option('--exact', EXACT)
@@ -46,6 +47,7 @@ Example:
     .argument('<brief>', BRIEF)
     .option('--outline <file>', OUTLINE)
     .option('--design <id>', ID)
+    .option('--unit <unit>', UNIT, lengthUnit)
     .option('--distance <length>', 'distance from particle to detector')
     .option('--from <diameter>', 'smallest sphere', '0.2 um')
     .option('--to <diameter>', 'largest sphere', '10 um')
@@ -74,6 +76,7 @@ Example:
     .argument('<brief>', BRIEF)
     .argument('[files...]', OUTLINE)
     .option('--design <id>', "a design of the brief's own results; may be given again", repeated, [])
+    .option('--unit <unit>', UNIT, lengthUnit)
     .option('--distance <length>', 'distance from particle to detector, for all of them')
     .option('--exact', EXACT)
     .option('--json', AS_JSON)

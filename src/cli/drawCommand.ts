@@ -1,5 +1,6 @@
 import { extname, join } from 'node:path';
 import { inputError } from '../base/errors.ts';
+import type { LengthUnit } from '../outline/files/lengthUnit.ts';
 import { chooseDesign } from '../run/chooseDesign.ts';
 import type { GivenDesign } from '../run/givenDesign.ts';
 import { openBrief } from '../run/openBrief.ts';
@@ -16,6 +17,7 @@ import { readDistance } from './quantityOptions.ts';
 
 interface Options {
   design?: string;
+  unit?: LengthUnit;
   distance?: string;
   out: string;
   formats: string;
@@ -26,7 +28,7 @@ interface Options {
 export async function run(place: string, options: Options): Promise<number> {
   const formats = readFormats(options.formats);
   const chosen = await readDistance(options.distance);
-  const given = await openDesign(place, options.design);
+  const given = await openDesign(place, options);
   const distanceM = chosen ?? given.distanceM;
   if (distanceM === null) {
     const expected = 'a distance, such as --distance "20 mm"';
@@ -44,8 +46,12 @@ export async function run(place: string, options: Options): Promise<number> {
 }
 
 /** The design of a file; with an id, `place` may also be the brief in whose results it is. */
-async function openDesign(place: string, design: string | undefined): Promise<GivenDesign> {
-  if (design === undefined || extname(place) === '.json') return readDesignFile(place, design);
+async function openDesign(place: string, { design, unit }: Options): Promise<GivenDesign> {
+  if (design === undefined || extname(place).toLowerCase() === '.json') {
+    const given = readDesignFile(place, design, unit);
+    warn(given.notes ?? []);
+    return given;
+  }
   const { given, warnings } = chooseDesign(await openBrief(place), { design });
   warn(warnings);
   return given;

@@ -1,5 +1,7 @@
 import { inputError } from '../base/errors.ts';
 import { nearestName } from '../base/nearestName.ts';
+import type { LengthUnit } from '../outline/files/lengthUnit.ts';
+import { LENGTH_UNITS } from '../outline/files/lengthUnit.ts';
 
 /** Turns an option's text into its value. */
 type OptionRule<T> = (text: string) => T;
@@ -22,6 +24,11 @@ export function oneOf<const W extends string>(option: string, words: readonly W[
     const hint = nearest === undefined ? '' : ` (did you mean ${nearest}?)`;
     throw refused(option, text, `one of ${words.join(', ')}${hint}`);
   };
+}
+
+/** The value of `--unit`. */
+export function lengthUnit(text: string): LengthUnit {
+  return oneOf('--unit', Object.keys(LENGTH_UNITS) as LengthUnit[])(text);
 }
 
 function refused(option: string, text: string, expected: string) {

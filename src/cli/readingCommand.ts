@@ -1,6 +1,7 @@
 import { dirname } from 'node:path';
 import { formatQuantity } from '../base/quantity.ts';
 import { countText } from '../draw/quantityText.ts';
+import type { LengthUnit } from '../outline/files/lengthUnit.ts';
 import { chooseDesign } from '../run/chooseDesign.ts';
 import { designToJson } from '../run/designJson.ts';
 import type { GivenDesign } from '../run/givenDesign.ts';
@@ -30,6 +31,7 @@ import { table } from './table.ts';
 interface Options {
   outline?: string;
   design?: string;
+  unit?: LengthUnit;
   distance?: string;
   position?: string;
   exact?: true;

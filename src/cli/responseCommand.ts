@@ -3,6 +3,7 @@ import { presetsFolder } from '../base/presetsFolder.ts';
 import { formatQuantity } from '../base/quantity.ts';
 import { countText, percentText } from '../draw/quantityText.ts';
 import { loadIndexModel } from '../optics/shelf.ts';
+import type { LengthUnit } from '../outline/files/lengthUnit.ts';
 import { chooseDesign } from '../run/chooseDesign.ts';
 import { jsonText } from '../run/jsonText.ts';
 import { openBrief } from '../run/openBrief.ts';
@@ -23,6 +24,7 @@ import { table } from './table.ts';
 interface Options {
   outline?: string;
   design?: string;
+  unit?: LengthUnit;
   distance?: string;
   from: string;
   to: string;

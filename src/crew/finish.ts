@@ -1,3 +1,4 @@
+import { arcLoopOf, isCurved } from '../outline/arcLoop.ts';
 import type { Variant } from '../outline/families/family.ts';
 import { polygonise } from '../outline/polygonise.ts';
 import type { OutlineElement, Shape } from '../outline/shape.ts';
@@ -82,8 +83,14 @@ function askShop(elements: readonly OutlineElement[], shop: ShopRules | null): S
 function toPoints(shape: Shape, kappa: number): OutlineElement[] {
   const phase = kappa * shapeRadius(shape) ** 2;
   const vertices = 4 * Math.ceil(Math.min(1440, Math.max(180, Math.PI * Math.sqrt(50 * phase))) / 4);
-  return shape.elements.map(({ weight, loops }) => ({
-    weight,
-    rings: loops.map((loop) => polygonise(loop, vertices)),
-  }));
+  return shape.elements.map(({ weight, loops }) => {
+    const curves = loops.map(arcLoopOf).filter((loop) => loop !== null);
+    // Of an outline of straight edges alone the points say it all.
+    const isExact = curves.length === loops.length && curves.some(isCurved);
+    return {
+      weight,
+      rings: loops.map((loop) => polygonise(loop, vertices)),
+      ...(isExact && { curves }),
+    };
+  });
 }

@@ -1,4 +1,5 @@
 import { Colors, DxfWriter, LineTypes, LWPolylineFlags, point3d, Units } from '@tarikjabiri/dxf';
+import { arcPieces, circleOf } from '../outline/arcLoop.ts';
 import { ringArea } from '../outline/area.ts';
 import { checkDrawing, type Drawing, VIEW_NOTE } from './drawing.ts';
 import { elementArea, largestRadius } from './elementMeasure.ts';
@@ -12,7 +13,7 @@ const ELEMENT_COLORS = [Colors.Blue, Colors.Red, Colors.Green, Colors.Magenta, C
 
 /**
  * The drawing as a DXF text for the shop: millimetres, true size, every ring one closed LWPOLYLINE in the point order of
- * the design. Layers: `ELEMENT_1`, `ELEMENT_2`, … hold outer rings, `ELEMENT_1_HOLES`, … the holes inside them,
+ * the design, with arcs where its exact curves are known, or a CIRCLE. Layers: `ELEMENT_1`, `ELEMENT_2`, … hold outer rings, `ELEMENT_1_HOLES`, … the holes inside them,
  * `CENTRE` a small cross on the beam axis, `NOTES` the text. The same drawing always gives the same text.
  *
  * @throws RimwrightError `input` where `checkDrawing` does
@@ -36,14 +37,35 @@ function addElements(writer: DxfWriter, { elements }: Drawing): void {
     const color = ELEMENT_COLORS[e % ELEMENT_COLORS.length];
     writer.addLayer(name, color, LineTypes.Continuous);
     if (element.rings.some(isHole)) writer.addLayer(`${name}_HOLES`, color, LineTypes.Continuous);
-    for (const ring of element.rings) {
-      const vertices = Array.from({ length: ring.length / 2 }, (_, k) => ({
-        point: { x: 1e3 * ring[2 * k], y: 1e3 * ring[2 * k + 1] },
-      }));
+    element.rings.forEach((ring, r) => {
       const layerName = isHole(ring) ? `${name}_HOLES` : name;
-      writer.addLWPolyline(vertices, { flags: LWPolylineFlags.Closed, layerName });
-    }
+      const curve = element.curves?.[r];
+      if (curve === undefined) addPoints(writer, ring, layerName);
+      else addCurve(writer, curve, layerName);
+    });
   });
+}
+
+function addPoints(writer: DxfWriter, ring: Float64Array, layerName: string): void {
+  const vertices = Array.from({ length: ring.length / 2 }, (_, k) => ({
+    point: { x: 1e3 * ring[2 * k], y: 1e3 * ring[2 * k + 1] },
+  }));
+  writer.addLWPolyline(vertices, { flags: LWPolylineFlags.Closed, layerName });
+}
+
+/** Straight edges and arcs as they are; a circle as one. */
+function addCurve(writer: DxfWriter, curve: Float64Array, layerName: string): void {
+  const circle = circleOf(curve);
+  if (circle !== null) {
+    const [x, y] = circle.centre;
+    writer.addCircle(point3d(1e3 * x, 1e3 * y), 1e3 * circle.radius, { layerName });
+    return;
+  }
+  const vertices = arcPieces(curve).map(({ from: [x, y], bulge }) => ({
+    point: { x: 1e3 * x, y: 1e3 * y },
+    ...(bulge !== 0 && { bulge }),
+  }));
+  writer.addLWPolyline(vertices, { flags: LWPolylineFlags.Closed, layerName });
 }
 
 function isHole(ring: Float64Array): boolean {
@@ -70,7 +92,7 @@ function addNotes(writer: DxfWriter, drawing: Drawing): void {
     VIEW_NOTE,
     ...drawing.elements.map(
       (element, e) =>
-        `ELEMENT_${e + 1}: weight ${weightText(element.weight)}, open area ${areaText(elementArea(element))}`,
+        `ELEMENT_${e + 1}: weight ${exactWeight(element.weight)}, open area ${areaText(elementArea(element))}`,
     ),
     ...drawing.notes,
     `Design ${drawing.hash}`,
@@ -79,6 +101,13 @@ function addNotes(writer: DxfWriter, drawing: Drawing): void {
     if (line !== '')
       writer.addText(point3d(-radiusMm, -1.2 * radiusMm - 1.6 * k * height), height, line, { layerName });
   });
+}
+
+/** A weight as `readDxf` takes it back: in short where nothing is lost. */
+function exactWeight(weight: number): string {
+  const short = weightText(weight);
+  if (Number(short.replace('−', '-')) === weight) return short;
+  return weight > 0 ? `+${weight}` : String(weight);
 }
 
 /** A text that holds none of DXF's own escapes: `^` opens a control character, `%%` a symbol, `\U+` a code point. */

@@ -1,5 +1,7 @@
+import { reversedArcLoop } from './arcLoop.ts';
 import { ringArea } from './area.ts';
 import { orientation } from './orientation.ts';
+import type { OutlineElement } from './shape.ts';
 
 interface Box {
   left: number;
@@ -21,6 +23,18 @@ export function orientByNesting(rings: readonly Float64Array[]): Float64Array[] 
     const isHole = around.length % 2 === 1;
     return ringArea(ring) > 0 === isHole ? reversed(ring) : ring;
   });
+}
+
+/** An element whose rings have the sense that their nesting asks for (see `orientByNesting`), and their exact curves as well. */
+export function orientElement(element: OutlineElement): OutlineElement {
+  const { rings, curves } = element;
+  const oriented = orientByNesting(rings);
+  if (curves === undefined) return { ...element, rings: oriented };
+  return {
+    ...element,
+    rings: oriented,
+    curves: curves.map((loop, r) => (oriented[r] === rings[r] ? loop : reversedArcLoop(loop))),
+  };
 }
 
 /** Whether a point that is not on the ring lies within it: a ray to the right meets it an odd number of times. */

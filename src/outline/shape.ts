@@ -22,4 +22,9 @@ export interface Shape {
 export interface OutlineElement {
   weight: number;
   rings: readonly Float64Array[];
+  /**
+   * Where the outline consists of straight edges and arcs, these exactly: for each ring its arc loop (see `arcLoop.ts`). The ring is a
+   * polygon of the same area. Whoever changes the rings leaves this out.
+   */
+  curves?: readonly Float64Array[];
 }

@@ -2,6 +2,7 @@ import { existsSync } from 'node:fs';
 import { join } from 'node:path';
 import { isDeepStrictEqual } from 'node:util';
 import { inputError } from '../base/errors.ts';
+import type { LengthUnit } from '../outline/files/lengthUnit.ts';
 import type { Brief } from './brief.ts';
 import { briefToJson } from './briefJson.ts';
 import type { GivenDesign } from './givenDesign.ts';
@@ -18,6 +19,8 @@ const MOST_BYTES = 20_000_000;
 export interface DesignChoice {
   outline?: string;
   design?: string;
+  /** Of a drawing that states none. */
+  unit?: LengthUnit;
 }
 
 export interface ChosenDesign {
@@ -34,10 +37,13 @@ export interface ChosenDesign {
  */
 export function chooseDesign(
   opened: OpenedBrief,
-  { outline, design }: DesignChoice,
+  { outline, design, unit }: DesignChoice,
   results = RESULTS,
 ): ChosenDesign {
-  if (outline !== undefined) return { given: readDesignFile(outline, design), warnings: [] };
+  if (outline !== undefined) {
+    const given = readDesignFile(outline, design, unit);
+    return { given, warnings: [...(given.notes ?? [])] };
+  }
   if (design === undefined) {
     const expected = "--outline FILE, or --design ID for a design of the brief's own results";
     throw inputError([{ key: '--outline', found: 'no outline', expected }]);

@@ -15,4 +15,6 @@ export interface GivenDesign {
   elements: readonly OutlineElement[];
   /** Where it came from, for messages. */
   file: string;
+  /** What the user should know of how the file was read, such as the unit that was taken. */
+  notes?: readonly string[];
 }

@@ -2,40 +2,70 @@ import { existsSync } from 'node:fs';
 import { basename, extname } from 'node:path';
 import { inputError } from '../base/errors.ts';
 import { nearestName } from '../base/nearestName.ts';
+import type { ReadOutline } from '../outline/files/drawnOutline.ts';
+import { MOST_FILE_BYTES } from '../outline/files/drawnPath.ts';
+import type { LengthUnit } from '../outline/files/lengthUnit.ts';
+import { readDxf } from '../outline/files/readDxf.ts';
 import { orientByNesting } from '../outline/nesting.ts';
 import { readOutlineCsv } from '../outline/readOutlineCsv.ts';
 import type { GivenDesign } from './givenDesign.ts';
 import { readDesignJson } from './readDesignJson.ts';
-import { readTextFile } from './readTextFile.ts';
+import { readFileBytes, readTextFile } from './readTextFile.ts';
 import { slug } from './slug.ts';
 
 const MOST_BYTES = 20_000_000;
 
 /**
- * Reads an outline from a file: CSV, a design's own JSON, or one of the designs of a front.json.
+ * Reads an outline from a file: CSV, DXF, a design's own JSON, or one of the designs of a front.json. The name's ending says which it
+ * is, in capitals or not; a text that begins with a brace is JSON, and all else CSV.
  *
  * @param place a path, or a path and a design's id: `front.json#rings-2`
  * @param id which design of a front, unless `place` says so; not needed where there is only one
+ * @param unit of a drawing that states none
  * @throws RimwrightError `input` for what is missing, too long or broken; `machine` where the disk fails
  */
-export function readDesignFile(place: string, id?: string): GivenDesign {
+export function readDesignFile(place: string, id?: string, unit: LengthUnit | null = null): GivenDesign {
   const { path, wanted } = splitPlace(place, id);
-  const text = readTextFile(path, MOST_BYTES);
-  const isJson = extname(path).toLowerCase() === '.json' || /^\s*\{/.test(text);
-  if (isJson) return readDesignJson(oneDesign(parseJson(text, path), wanted, path), place);
-  if (wanted !== undefined) {
-    throw inputError([
-      { file: place, found: `the id ${JSON.stringify(wanted)}`, expected: 'a front.json with it' },
-    ]);
+  const ending = extname(path).toLowerCase();
+  const isDrawing = DRAWING_ENDINGS.includes(ending);
+  if (isDrawing) {
+    if (wanted !== undefined) refuseId(place, wanted);
+    return givenOutline(place, path, readDrawing(path, unit));
   }
+  const text = readTextFile(path, MOST_BYTES);
+  const isJson = ending === '.json' || /^\s*\{/.test(text);
+  if (isJson) return readDesignJson(oneDesign(parseJson(text, path), wanted, path), place);
+  if (wanted !== undefined) refuseId(place, wanted);
   const ring = readOutlineCsv(text, path);
+  return givenOutline(place, path, {
+    elements: [{ weight: 1, rings: orientByNesting([ring]) }],
+    notes: [],
+  });
+}
+
+const DRAWING_ENDINGS = ['.dxf'];
+
+function readDrawing(path: string, unit: LengthUnit | null): ReadOutline {
+  const bytes = readFileBytes(path, MOST_FILE_BYTES);
+  // Older drawings have other encodings, which only touches remarks and the names of layers.
+  return readDxf(new TextDecoder().decode(bytes), path, unit);
+}
+
+function givenOutline(place: string, path: string, { elements, notes }: ReadOutline): GivenDesign {
   return {
     id: slug(basename(path, extname(path))),
     family: 'given',
     distanceM: null,
-    elements: [{ weight: 1, rings: orientByNesting([ring]) }],
+    elements,
     file: place,
+    ...(notes.length > 0 && { notes }),
   };
+}
+
+function refuseId(place: string, id: string): never {
+  throw inputError([
+    { file: place, found: `the id ${JSON.stringify(id)}`, expected: 'a front.json with it' },
+  ]);
 }
 
 /** A file's name may hold a `#` of its own. */

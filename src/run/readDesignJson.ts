@@ -1,6 +1,6 @@
 import { inputError } from '../base/errors.ts';
 import { FAMILY_NAMES } from '../outline/families/family.ts';
-import { orientByNesting } from '../outline/nesting.ts';
+import { orientElement } from '../outline/nesting.ts';
 import { findRingsCrossing } from '../outline/selfCrossing.ts';
 import type { OutlineElement } from '../outline/shape.ts';
 import type { DesignJson } from './designJson.ts';
@@ -8,6 +8,7 @@ import type { GivenDesign } from './givenDesign.ts';
 import { DISTANCES_M } from './givenDesign.ts';
 import type { JsonMistakes } from './jsonMistakes.ts';
 import { jsonMistakes } from './jsonMistakes.ts';
+import { readCurves } from './readCurves.ts';
 import { isNumber, readRing } from './readRing.ts';
 
 const MOST_POINTS = 100_000;
@@ -27,7 +28,7 @@ const DESIGN_KEYS: readonly (keyof DesignJson)[] = [
   'rank',
   'meetsTarget',
 ];
-const ELEMENT_KEYS: readonly (keyof DesignJson['elements'][number])[] = ['weight', 'rings_mm'];
+const ELEMENT_KEYS: readonly (keyof DesignJson['elements'][number])[] = ['weight', 'rings_mm', 'curves_mm'];
 
 /**
  * Reads a design's geometry from its plain form. Its scores and rank are passed over: they belong to the brief that they
@@ -57,7 +58,7 @@ export function readDesignJson(value: unknown, file: string): GivenDesign {
     id: id as string,
     family: (family ?? 'given') as GivenDesign['family'],
     distanceM: distance_m as number,
-    elements: read.map(({ weight, rings }) => ({ weight, rings: orientByNesting(rings) })),
+    elements: read.map(orientElement),
     file,
   };
 }
@@ -81,7 +82,7 @@ function readElement(value: unknown, key: string, mistakes: JsonMistakes): Outli
   const nothing = { weight: 1, rings: [] };
   const element = mistakes.mapping(key, value, ELEMENT_KEYS);
   if (element === null) return nothing;
-  const { weight, rings_mm } = element;
+  const { weight, rings_mm, curves_mm } = element;
   if (!isNumber(weight, -LARGEST_WEIGHT, LARGEST_WEIGHT) || weight === 0) {
     const range = `from -${LARGEST_WEIGHT} to ${LARGEST_WEIGHT}`;
     mistakes.refuse(`${key}.weight`, weight, `a number other than 0, ${range}`);
@@ -91,7 +92,9 @@ function readElement(value: unknown, key: string, mistakes: JsonMistakes): Outli
     mistakes.refuse(`${key}.rings_mm`, rings_mm, 'a list with at least one ring of points [x, y]');
     return nothing;
   }
-  return { weight, rings: rings_mm.map((ring, r) => readRing(ring, `${key}.rings_mm[${r}]`, mistakes)) };
+  const rings = rings_mm.map((ring, r) => readRing(ring, `${key}.rings_mm[${r}]`, mistakes));
+  const curves = curves_mm === undefined ? null : readCurves(curves_mm, rings, `${key}.curves_mm`, mistakes);
+  return { weight, rings, ...(curves && { curves }) };
 }
 
 function checkSize(elements: readonly OutlineElement[], mistakes: JsonMistakes): void {

@@ -1,7 +1,7 @@
 import type { JsonMistakes } from './jsonMistakes.ts';
 
 /** Largest coordinate either way: a metre. */
-const MOST_MM = 1000;
+export const MOST_MM = 1000;
 
 /**
  * Reads one ring of a design file: at least three points [x, y] in mm, the last not repeated.

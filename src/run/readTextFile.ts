@@ -9,16 +9,24 @@ import { diskFault } from './diskFault.ts';
  *   the disk does not let it be read
  */
 export function readTextFile(path: string, mostBytes: number): string {
-  const bytes = readBytes(path, mostBytes + 1);
-  if (bytes.length > mostBytes) {
-    const expected = `at most ${mostBytes} bytes`;
-    throw inputError([{ file: path, found: `more than ${mostBytes} bytes`, expected }]);
-  }
+  const bytes = readFileBytes(path, mostBytes);
   try {
     return new TextDecoder('utf-8', { fatal: true }).decode(bytes);
   } catch {
     throw inputError([{ file: path, found: 'bytes that are not UTF-8', expected: 'a text file in UTF-8' }]);
   }
+}
+
+/**
+ * A file's bytes, as `readTextFile`.
+ *
+ * @throws RimwrightError `input` where there is no such file, or it is longer than `mostBytes`; `machine` where the disk fails
+ */
+export function readFileBytes(path: string, mostBytes: number): Buffer {
+  const bytes = readBytes(path, mostBytes + 1);
+  if (bytes.length <= mostBytes) return bytes;
+  const expected = `at most ${mostBytes} bytes`;
+  throw inputError([{ file: path, found: `more than ${mostBytes} bytes`, expected }]);
 }
 
 function readBytes(path: string, most: number): Buffer {
