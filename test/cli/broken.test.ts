@@ -11,6 +11,7 @@ const expectedIn = (kind: string): [file: string, messages: string[]][] =>
   Object.entries(JSON.parse(readFileSync(join(BROKEN, kind, 'expected.json'), 'utf8')));
 const BRIEFS = expectedIn('briefs');
 const OUTLINES = expectedIn('outlines');
+const DRAWINGS = expectedIn('drawings');
 
 /** Messages with the names on the shelf in place of `{media}` and the like. */
 const withShelf = (messages: string[]) =>
@@ -41,6 +42,13 @@ describe('broken files', () => {
     const { code, stdout, stderr } = await runHere(['reading', 'nominal-sphere', '--outline', path]);
     expect([code, stdout]).toEqual([2, '']);
     expect(stderr).toBe(withPath('outlines', messages));
+  });
+
+  it.each(DRAWINGS)('drawing %s', async (file, messages) => {
+    const path = join(BROKEN, 'drawings', file);
+    const { code, stdout, stderr } = await runHere(['compare', 'nominal-sphere', path]);
+    expect([code, stdout]).toEqual([2, '']);
+    expect(stderr).toBe(withPath('drawings', messages));
   });
 
   it('are refused by the real program too', async () => {

@@ -5,7 +5,7 @@ import { orientElement } from '../nesting.ts';
 import { findRingsCrossing } from '../selfCrossing.ts';
 import type { OutlineElement } from '../shape.ts';
 import type { Curve } from './curve.ts';
-import type { DrawnElement, DrawnPath } from './drawnPath.ts';
+import type { DrawnElement, DrawnPath, Place } from './drawnPath.ts';
 import { LARGEST_M, MOST_VERTICES, pointText, refuseAt } from './drawnPath.ts';
 import { flattenCurve } from './flatten.ts';
 
@@ -13,7 +13,7 @@ import { flattenCurve } from './flatten.ts';
 const SAG = (Math.PI / 1440) ** 2 / 2;
 /** And in parts of the ring's own size, so that a small ring beside the axis is round as well. */
 const OWN_SAG = (Math.PI / 180) ** 2 / 2;
-/** No ring with a smaller share of its width squared as its area is meant as an opening. */
+/** No ring with a smaller share of its length squared as its area is meant as an opening. */
 const LEAST_AREA_SHARE = 1e-9;
 
 /** What a file of any format holds. */
@@ -68,6 +68,9 @@ export function outlineOf(drawn: readonly DrawnElement[], file: string): Outline
         return ring;
       });
       refuseCrossing(rings, loops, file);
+      rings.forEach((ring, r) => {
+        refuseEmpty(ring, loops[r].place, file);
+      });
       const curves = loops.map(({ curves: pieces }) => arcsOf(pieces));
       const isExact = curves.every((loop) => loop !== null) && curves.some((loop) => loop && isCurved(loop));
       return orientElement({ weight, rings, ...(isExact && { curves: curves as Float64Array[] }) });
@@ -96,11 +99,20 @@ function ringOf({ curves, place }: DrawnPath, sizeM: number, most: number, file:
   }
   const last = points.length - 2;
   if (last > 0 && points[0] === points[last] && points[1] === points[last + 1]) points.length = last;
-  const ring = Float64Array.from(points);
-  if (ring.length < 6 || Math.abs(ringArea(ring)) <= LEAST_AREA_SHARE * width * width) {
-    refuseAt(file, place, `no area within ${place.name}`, 'outlines that enclose an area');
-  }
-  return ring;
+  if (points.length < 6) refuseEmpty(Float64Array.from(points), place, file);
+  return Float64Array.from(points);
+}
+
+function refuseEmpty(ring: Float64Array, place: Place, file: string): void {
+  const perimeter = ring.reduce(
+    (sum, x, i) =>
+      i % 2 === 1
+        ? sum
+        : sum + Math.hypot(ring[(i + 2) % ring.length] - x, ring[(i + 3) % ring.length] - ring[i + 1]),
+    0,
+  );
+  if (ring.length >= 6 && Math.abs(ringArea(ring)) > LEAST_AREA_SHARE * perimeter * perimeter) return;
+  refuseAt(file, place, `no area within ${place.name}`, 'outlines that enclose an area');
 }
 
 /** Adds points, leaving out those that repeat the one before. */

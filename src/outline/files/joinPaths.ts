@@ -85,11 +85,13 @@ function endPartners(paths: readonly DrawnPath[], jointM: number, file: string) 
     const found = meeting(end);
     if (found.length === 1) return found[0];
     const { place } = paths[end.path];
-    const [what, expected] =
-      found.length === 0
-        ? ['an open end', `another end there: outlines are closed, with gaps of at most ${gapText(jointM)}`]
-        : [`${found.length + 1} ends meeting`, 'two ends at each joint of an outline'];
-    return refuseAt(file, place, `${what} of ${place.name} at ${pointText(end.point)}`, expected);
+    const where = `of ${place.name} at ${pointText(end.point)}`;
+    if (found.length === 0) {
+      const expected = `another end there: outlines are closed, with gaps of at most ${gapText(jointM)}`;
+      return refuseAt(file, place, `an open end ${where}`, expected);
+    }
+    const others = found.length === 2 ? 'two others' : `${found.length} others`;
+    return refuseAt(file, place, `an end ${where} that meets ${others}`, 'one other end at each joint');
   });
   return ({ path, atStart }: Pick<End, 'path' | 'atStart'>) => partners[2 * path + (atStart ? 0 : 1)];
 }
