@@ -10,7 +10,7 @@ import type { Judge } from '../score/judge.ts';
 import type { Scores } from '../score/scores.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
 import { BEYOND_RADIUS } from '../score/taskScenarios.ts';
-import { inspectOutline } from '../shop/inspect.ts';
+import { widthMisfit } from '../shop/widthMisfit.ts';
 
 /** A point of the search, with its scores. */
 export interface Candidate {
@@ -109,5 +109,5 @@ function shopMisfit(judge: Judge, shape: Shape, scores: Scores, aim: Aim): numbe
     rings: loops.map((loop) => polygonise(loop, SHOP_VERTICES)),
   }));
   const share = Math.min(1, (SHOP_FROM - excess) / (SHOP_FROM - SHOP_ALL));
-  return share * inspectOutline(elements, shop).misfit;
+  return share * widthMisfit(elements, shop, shape);
 }

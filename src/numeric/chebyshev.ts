@@ -19,17 +19,45 @@ export function chebyshevFit(
     sample((low + high) / 2 + ((high - low) / 2) * t, out);
     values.set(out, i * width);
   }
+  const cosines = Float64Array.from({ length: 4 * count }, (_, q) => Math.cos((Math.PI * q) / (2 * count)));
   const coefficients = new Float64Array(count * width);
   for (let n = 0; n < count; n++) {
     for (let i = 0; i < count; i++) {
-      // The angle is reduced in whole numbers first: large n·i would lose digits.
-      const weight = Math.cos((Math.PI * ((n * (2 * i + 1)) % (4 * count))) / (2 * count));
+      const weight = cosines[(n * (2 * i + 1)) % (4 * count)];
       for (let j = 0; j < width; j++) coefficients[n * width + j] += values[i * width + j] * weight;
     }
     const scale = (n === 0 ? 1 : 2) / count;
     for (let j = 0; j < width; j++) coefficients[n * width + j] *= scale;
   }
   return coefficients;
+}
+
+/**
+ * As `chebyshevFit`, of four functions, as long as it takes for the last terms to carry nothing.
+ *
+ * @param first number of coefficients tried first; half as many again, up to `most`, until two spare ones show that the tail has been reached
+ * @param tolerance relative to the largest coefficient
+ */
+export function settledFit(
+  sample: (x: number, out: Float64Array) => void,
+  low: number,
+  high: number,
+  { first, most, tolerance }: { first: number; most: number; tolerance: number },
+): { series: Float64Array; terms: number } {
+  for (let count = first; ; count = Math.ceil(1.5 * count)) {
+    const tried = Math.min(count, most);
+    const series = chebyshevFit(sample, 4, low, high, tried);
+    const terms = usefulTerms(series, tried, tolerance);
+    if (terms + 2 <= tried || tried === most) return { series: series.slice(0, terms * 4), terms };
+  }
+}
+
+/** Number of terms before all further ones fall below the tolerance, relative to the largest. */
+function usefulTerms(series: Float64Array, count: number, tolerance: number): number {
+  const largest = series.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
+  let length = count * 4;
+  while (length > 4 && Math.abs(series[length - 1]) < tolerance * largest) length--;
+  return Math.ceil(length / 4);
 }
 
 /** Clenshaw's sum of four series at once at t in [−1, 1]; `coefficients` as from `chebyshevFit` with width 4. */

@@ -1,4 +1,4 @@
-import { chebyshevFit, chebyshevFour, chebyshevPairs } from '../numeric/chebyshev.ts';
+import { chebyshevFit, chebyshevFour, chebyshevPairs, settledFit } from '../numeric/chebyshev.ts';
 import type { IndexModel } from './indexModel.ts';
 import { refractiveIndex } from './indexModel.ts';
 import { layeredSphere } from './layeredSphere.ts';
@@ -144,19 +144,6 @@ export function fitAmplitudes(
   // They vary as e^{±ixθ} over the cone, and a rounded cosθ shows in them as 1e-17 x².
   const swing = x * Math.sqrt(1 - low);
   const tolerance = 1e-13 + 3e-17 * x * x;
-  for (let count = Math.ceil(swing + 8 * Math.cbrt(swing) + 14); ; count = Math.ceil(1.5 * count)) {
-    const tried = Math.min(count, most);
-    const series = chebyshevFit(sample, 4, low, 1, tried);
-    const terms = usefulTerms(series, tried, tolerance);
-    // Two spare terms show that the tail has really been reached.
-    if (terms + 2 <= tried || tried === most) return { series: series.slice(0, terms * 4), terms };
-  }
-}
-
-/** Number of terms before all further ones fall below the tolerance, relative to the largest. */
-function usefulTerms(series: Float64Array, count: number, tolerance: number): number {
-  const largest = series.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
-  let length = count * 4;
-  while (length > 4 && Math.abs(series[length - 1]) < tolerance * largest) length--;
-  return Math.ceil(length / 4);
+  const first = Math.ceil(swing + 8 * Math.cbrt(swing) + 14);
+  return settledFit(sample, low, 1, { first, most, tolerance });
 }

@@ -5,7 +5,8 @@ import type { SphereAmplitudes } from '../optics/sphereAmplitudes.ts';
 import { stillPoint } from './crossedAverage.ts';
 import type { CumulativeFlux } from './cumulativeFlux.ts';
 import type { FluxSamples } from './fluxDensity.ts';
-import { fluxDensity } from './fluxDensity.ts';
+import type { WeighedSphere } from './lineFlux.ts';
+import { addLineFlux } from './lineFlux.ts';
 import { addSpreadFlux, FARTHEST_SPREAD } from './randomSpread.ts';
 import type { Fading, Scenario } from './scenario.ts';
 import { discMeans, tiltedMeans, tiltedPlace } from './sourceDisc.ts';
@@ -116,22 +117,25 @@ function phaseStep(forward: readonly [number, number]): number {
 
 /** Samples of the flux density, summed over the colours of the light. */
 function sampleFlux(
-  scenario: Scenario,
+  { colours, incoherent = [] }: Scenario,
   distanceM: number,
   stepM2: number,
   count: number,
   spreadM: number,
 ): Pick<FluxSamples, 'mean' | 'twofold'> {
   const [mean, twofold] = [new Float64Array(count), new Float64Array(count)];
-  const counts = new Map<Fading | undefined, number>();
-  for (const { weight, sphere, fading } of scenario.colours) {
-    const crossedCount = counts.get(fading) ?? coherentCount(fading, distanceM, stepM2, count, spreadM);
-    counts.set(fading, crossedCount);
-    addFlux(sphere, distanceM, spreadM, weight, { stepM2, mean, twofold, crossedCount });
+  const add = (line: readonly WeighedSphere[], crossedCount: number) => {
+    const samples = { stepM2, mean, twofold, crossedCount };
+    if (spreadM === 0) addLineFlux(line, distanceM, samples);
+    else {
+      for (const { weight, sphere } of line) addSpreadFlux(sphere, distanceM, spreadM, weight, samples);
+    }
+  };
+  for (const fading of new Set(colours.map((colour) => colour.fading))) {
+    const line = colours.filter((colour) => colour.fading === fading);
+    add(line, coherentCount(fading, distanceM, stepM2, count, spreadM));
   }
-  for (const { weight, sphere } of scenario.incoherent ?? []) {
-    addFlux(sphere, distanceM, spreadM, weight, { stepM2, mean, twofold, crossedCount: 0 });
-  }
+  if (incoherent.length > 0) add(incoherent, 0);
   return { mean, twofold };
 }
 
@@ -150,28 +154,6 @@ function coherentCount(
   });
 }
 
-function addFlux(
-  sphere: SphereAmplitudes,
-  distanceM: number,
-  spreadM: number,
-  weight: number,
-  samples: FluxSamples,
-): void {
-  if (spreadM > 0) {
-    addSpreadFlux(sphere, distanceM, spreadM, weight, samples);
-    return;
-  }
-  const { stepM2, mean, twofold, crossedCount } = samples;
-  const out = new Float64Array(4);
-  const work = new Float64Array(4);
-  for (let i = 0; i < mean.length; i++) {
-    fluxDensity(sphere, distanceM, i * stepM2, out, work);
-    const lit = i < crossedCount ? weight : 0;
-    mean[i] += lit * out[0] + weight * out[2];
-    twofold[i] += lit * out[1] + weight * out[3];
-  }
-}
-
 /** Cubic pieces of G/s^power, where dG/ds = w/2. */
 function cumulativePieces(density: Float64Array, stepM2: number, cells: number, power: 1 | 2): Float64Array {
   const pieces = cellIntegrals(density, cells + 1);
@@ -185,8 +167,9 @@ function cumulativePieces(density: Float64Array, stepM2: number, cells: number, 
   for (let i = 1; i <= cells; i++) {
     cumulative += (pieces[i - 1] * stepM2) / 2;
     const s = i * stepM2;
-    values[i] = cumulative / s ** power;
-    slopes[i] = ((density[i] / 2) * s ** -power - (power * values[i]) / s) * stepM2;
+    const divisor = power === 1 ? s : s * s;
+    values[i] = cumulative / divisor;
+    slopes[i] = (density[i] / (2 * divisor) - (power * values[i]) / s) * stepM2;
   }
   if (power === 2) slopes[0] = values[1] - values[0];
   return hermitePieces(values, slopes, cells);

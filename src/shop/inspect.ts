@@ -3,6 +3,7 @@ import type { OutlineMeasures } from './measureOutline.ts';
 import { measureOutline } from './measureOutline.ts';
 import type { Width } from './narrowest.ts';
 import type { ShopRules } from './shopRules.ts';
+import { WIDTH_SLACK } from './widthMisfit.ts';
 
 /** Whether a shop can cut an outline, and what it should know. */
 export interface ShopReport {
@@ -15,9 +16,6 @@ export interface ShopReport {
    */
   misfit: number;
 }
-
-/** Widths may fall this share short: a polygonised circle is that much narrower than the circle it stands for. */
-const WIDTH_SLACK = 1e-3;
 
 /**
  * Holds an outline against a shop's rules. Openings and webs that are too narrow, and islands that fall out, do not fit.

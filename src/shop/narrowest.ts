@@ -9,6 +9,17 @@ export interface Width {
   at: [x: number, y: number];
 }
 
+/** What is looked for: without limits, the narrowest place of all. */
+interface NarrowSearch {
+  /** Only widths below these count. */
+  openingM: number;
+  webM: number;
+  /** Edges that widths are measured from: one of each set that the outline's symmetry makes alike is enough. */
+  isFrom: (fromX: number, fromY: number, toX: number, toY: number) => boolean;
+}
+
+const EVERYTHING: NarrowSearch = { openingM: Infinity, webM: Infinity, isFrom: () => true };
+
 /**
  * Finds the narrowest opening and the narrowest web.
  *
@@ -24,13 +35,12 @@ export interface Width {
  *
  * Every edge is paired with every vertex within reach: n² steps at worst.
  */
-export function narrowest(b: Boundary): { opening: Width | null; web: Width | null } {
+export function narrowest(b: Boundary, search = EVERYTHING): { opening: Width | null; web: Width | null } {
   const { count, x, y, tx, ty, lengthM, turnRad, next, previous, touchM } = b;
   const blocks = vertexBlocks(b);
   let opening: Width | null = null;
   let web: Width | null = null;
-  let openingM = Infinity;
-  let webM = Infinity;
+  let { openingM, webM } = search;
 
   const keep = (side: 1 | -1, widthM: number, atX: number, atY: number) => {
     if (side > 0 && widthM < openingM) {
@@ -58,6 +68,7 @@ export function narrowest(b: Boundary): { opening: Width | null; web: Width | nu
   for (let i = 0; i < count; i++) {
     const ax = x[i];
     const ay = y[i];
+    if (!search.isFrom(ax, ay, x[next[i]], y[next[i]])) continue;
     const ux = tx[i];
     const uy = ty[i];
     const length = lengthM[i];
