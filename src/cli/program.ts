@@ -1,6 +1,7 @@
 import { packageVersion } from '../base/version.ts';
 import { Command, CommanderError } from './commander.ts';
 import { declareFiles } from './declareFiles.ts';
+import { declareMeasuring } from './declareMeasuring.ts';
 import { declareReading } from './declareReading.ts';
 import { declareSearching } from './declareSearching.ts';
 import { EXIT, reportError } from './exit.ts';
@@ -48,6 +49,7 @@ machine. Results go to standard output, progress and notes to standard error.`,
 
   declareSearching(program, done);
   declareReading(program, done);
+  declareMeasuring(program, done);
   declareFiles(program, done);
   return program;
 }

@@ -38,6 +38,24 @@ export async function readDiameters(from: string, to: string): Promise<[from: nu
   throw refused('--to', to, `a diameter above that of --from, ${from}`);
 }
 
+/** `--diameter "2 um"` in metres, null where it is left out. */
+export async function readDiameter(text: string | undefined): Promise<number | null> {
+  if (text === undefined) return null;
+  const diameter = (await loadUnits()).parse(text, 'length', '--diameter');
+  if (diameter >= DIAMETERS_M[0] && diameter <= DIAMETERS_M[1]) return diameter;
+  throw refused('--diameter', text, 'a diameter from 0.01 nm to 10 mm');
+}
+
+/** Probabilities that an expanded uncertainty may be asked for. */
+const COVERAGES = [0.5, 0.9999] as const;
+
+/** `--coverage "95 %"` */
+export async function readCoverage(text: string): Promise<number> {
+  const coverage = (await loadUnits()).parse(text, 'ratio', '--coverage');
+  if (coverage >= COVERAGES[0] && coverage <= COVERAGES[1]) return coverage;
+  throw refused('--coverage', text, 'a probability from 50 % to 99.99 %');
+}
+
 /** Heights and correlation lengths that an edge may have, metres. */
 const ROUGH_M = [1e-9, 1e-2] as const;
 

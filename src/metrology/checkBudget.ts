@@ -14,24 +14,24 @@ export interface BudgetCheck {
   holds: boolean;
 }
 
-/** Digits of the standard uncertainty that count. */
-const DIGITS = 2;
 /** The run's own noise stays below this part of the tolerance (JCGM 101:2008, 8.2). */
 const FINER = 5;
 
 /**
  * Checks a budget by a Monte Carlo run (JCGM 101:2008, clause 8): the ends of its interval, value ± expanded uncertainty, against
  * those of the probabilistically symmetric one.
+ *
+ * @param digits of the standard uncertainty that count, 1 or 2
  */
 export function checkBudget(
   model: Model,
   inputs: readonly BudgetInput[],
   budget: Budget,
-  { seed, most }: Pick<Trials, 'seed' | 'most'>,
+  { seed, most, digits }: Pick<Trials, 'seed' | 'most'> & { digits: number },
   correlations: readonly Correlation[] = [],
 ): BudgetCheck {
   const { value, expandedUncertainty, coverage } = budget;
-  const tolerance = numericalTolerance(budget.standardUncertainty, DIGITS);
+  const tolerance = numericalTolerance(budget.standardUncertainty, digits);
   const trials = { coverage, seed, most, tolerance: tolerance / FINER };
   const run = monteCarlo(model, inputs, trials, correlations);
   const [low, high] = run.symmetric;

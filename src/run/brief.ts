@@ -1,3 +1,4 @@
+import type { Uncertainties } from '../metrology/uncertainties.ts';
 import type { FamilyName } from '../outline/families/family.ts';
 import type { Task } from '../score/task.ts';
 
@@ -12,6 +13,10 @@ export interface Brief {
   /** The medium's and the shop's names as written, for tables. */
   mediumName: string;
   shopName: string;
-  /** Keys that the brief left out, with the value used, in the brief's own notation: `light.drift: 0 nm`. */
+  /** Of the built instrument: what `budget` and `evaluate` count with. */
+  uncertainties: Uncertainties;
+  /** Keys of its `uncertainties` that the brief left out, as `defaults`. */
+  uncertaintyDefaults: string[];
+  /** Other keys that the brief left out, with the value used, in the brief's own notation: `light.drift: 0 nm`. */
   defaults: string[];
 }

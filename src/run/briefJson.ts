@@ -4,7 +4,7 @@ import type { Task } from '../score/task.ts';
 import type { Brief } from './brief.ts';
 
 /** A brief as results hold it: of tables of amplitudes, which may be long, their extent alone. */
-export type BriefJson = Omit<Brief, 'task'> & {
+export type BriefJson = Omit<Brief, 'task' | 'uncertainties' | 'uncertaintyDefaults'> & {
   task: Omit<Task, 'particles'> & { particles: ParticleJson[] };
 };
 
@@ -14,7 +14,8 @@ type ParticleJson =
       amplitudes: { rows: number; largestAngle_rad: number };
     });
 
-export function briefToJson(brief: Brief): BriefJson {
+/** The brief of a search, which knows nothing of the built instrument's uncertainties. */
+export function briefToJson({ uncertainties, uncertaintyDefaults, ...brief }: Brief): BriefJson {
   return { ...brief, task: { ...brief.task, particles: brief.task.particles.map(particleToJson) } };
 }
 

@@ -121,6 +121,16 @@ export function briefSchema(units: Units, presets: string, title: string) {
       lobe: withDefault('none', orNone(quantity('ratio', ['0.0001 %', '10000 %'], '10 %'))),
       time: withDefault('none', orNone(quantity('time', ['1 ns', '1e6 s'], '1 ms'))),
     }),
+    uncertainties: section({
+      averaging: withDefault('1 ms', quantity('time', ['1 ns', '1e6 s'], '1 ms')),
+      irradiance: withDefault('1 %', quantity('ratio', ['0 %', '50 %'], '1 %')),
+      responsivity: withDefault('1 %', quantity('ratio', ['0 %', '50 %'], '1 %')),
+      gain: withDefault('0 %', quantity('ratio', ['0 %', '50 %'], '0.5 %')),
+      lightDrift: withDefault('0.0001 %', quantity('ratio', ['0 %', '50 %'], '0.0001 %')),
+      nonlinearity: withDefault('0.1 %', quantity('ratio', ['0 %', '50 %'], '0.1 %')),
+      distance: withDefault('20 um', quantity('length', ['0 um', '1 m'], '20 um')),
+      wavelength: withDefault('0.1 nm', quantity('length', ['0 nm', '100 nm'], '0.1 nm')),
+    }),
     shop: withDefault('none', orNone(shops)),
     families: withDefault([...FAMILY_NAMES], words(FAMILY_NAMES)),
     search: section({

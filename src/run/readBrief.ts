@@ -58,6 +58,8 @@ function fillBrief(values: BriefValues, particles: Particle[], defaults: readonl
   const placement = filled(sections.placement);
   const detector = filled(sections.detector);
   const target = filled(sections.target);
+  const known = filled(sections.uncertainties);
+  const isOfUncertainties = (line: string) => line.startsWith('uncertainties.');
   const crossing = placement.crossing === null ? null : filled(placement.crossing);
   return {
     title,
@@ -104,7 +106,19 @@ function fillBrief(values: BriefValues, particles: Particle[], defaults: readonl
     search: filled(sections.search),
     mediumName: medium.name,
     shopName: shop === null ? 'none' : shop.name,
-    defaults: [...defaults],
+    uncertainties: {
+      averagingS: known.averaging,
+      irradiance: known.irradiance,
+      responsivity: known.responsivity,
+      gain: known.gain,
+      lightDrift: known.lightDrift,
+      nonlinearity: known.nonlinearity,
+      distanceM: known.distance,
+      wavelengthM: known.wavelength,
+    },
+    uncertaintyDefaults: defaults.filter(isOfUncertainties),
+    // Searches and readings do not ask for the built instrument's.
+    defaults: defaults.filter((line) => !isOfUncertainties(line)),
   };
 }
 

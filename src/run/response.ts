@@ -122,9 +122,15 @@ function runsOf(points: readonly ResponsePoint[]): [from: number, to: number][] 
   return runs;
 }
 
-function checkSpheres(
+/**
+ * @param from, to what the ends of the diameters are called in messages
+ * @throws RimwrightError `input` for spheres that cannot be computed in the brief's light and medium
+ */
+export function checkSpheres(
   { light, medium, placement }: Task,
-  { fromM, toM, index, material }: ReferenceSpheres,
+  { fromM, toM, index, material }: Omit<ReferenceSpheres, 'count'>,
+  from = '--from',
+  to = '--to',
 ): void {
   const [shortest, longest] = wavelengthRange(light);
   if (!coversWavelength(index, shortest) || !coversWavelength(index, longest)) {
@@ -147,26 +153,26 @@ function checkSpheres(
   const units = colours.map(
     (wavelengthM) => wavelengthM / (Math.PI * refractiveIndex(medium, wavelengthM)[0]),
   );
-  const found = `${inLength(fromM)} to ${inLength(toM)}`;
+  const found = fromM === toM ? inLength(fromM) : `${inLength(fromM)} to ${inLength(toM)}`;
   const least = SIZE_PARAMETERS[0] * Math.max(...units);
   const most = SIZE_PARAMETERS[1] * Math.min(...units);
   if (fromM < least || toM > most) {
     const expected = `diameters from ${inLength(least)} to ${inLength(most)} in this light`;
-    throw inputError([{ key: '--from', found, expected }]);
+    throw inputError([{ key: from, found, expected }]);
   }
   if (light.beam !== undefined) {
     const wavelengthM = light.wavelengthM / refractiveIndex(medium, light.wavelengthM)[0];
     const [problem] = beamProblems(light.beam, wavelengthM, toM / 2);
     if (problem !== undefined) {
       const expected = `smaller spheres: of light.beam.waist they ask ${problem.expected}`;
-      throw inputError([{ key: '--to', found: inLength(toM), expected }]);
+      throw inputError([{ key: to, found: inLength(toM), expected }]);
     }
   }
   if (placement.diffusion === undefined) return;
   const [small, large] = DIFFUSING_DIAMETERS_M;
   if (fromM >= small && toM <= large) return;
   const expected = `diameters from ${inLength(small)} to ${inLength(large)}, for which the brief's diffusion is known`;
-  throw inputError([{ key: '--from', found, expected }]);
+  throw inputError([{ key: from, found, expected }]);
 }
 
 const inLength = (metres: number) => formatQuantity(metres, 'length');

@@ -10,6 +10,14 @@ export interface ElementArea {
   areaM2: number;
 }
 
+/** Light on the detector, and what the electronics make of it. */
+export interface Electronics {
+  responsivityAW: number;
+  irradianceWm2: number;
+  noiseCurrentA: number;
+  intensityNoisePerHz: number;
+}
+
 /**
  * Lobe ratio: the outline's largest half-angle over the angle of the first dark ring, 1.22 λ/d.
  * Common practice, no source: at or below 1/10, where little forward-scattered light enters the detector.
@@ -48,13 +56,15 @@ export function measurementTime(
   targetCorrection: number,
   gain: number,
   extinctionM2: number,
-  electronics: {
-    responsivityAW: number;
-    irradianceWm2: number;
-    noiseCurrentA: number;
-    intensityNoisePerHz: number;
-  },
+  electronics: Electronics,
 ): number {
+  const perArea = electronics.responsivityAW * electronics.irradianceWm2;
+  const signal = targetCorrection * perArea * gain * extinctionM2;
+  return currentNoise(elements, electronics) / (signal * signal);
+}
+
+/** Noise of the weighted current, A²/Hz (one-sided): Σ w²(2e i + i_n²) + RIN (Σ w i)². */
+export function currentNoise(elements: readonly ElementArea[], electronics: Electronics): number {
   const perArea = electronics.responsivityAW * electronics.irradianceWm2;
   let independent = 0;
   let common = 0;
@@ -63,8 +73,7 @@ export function measurementTime(
     independent += weight * weight * (2 * ELEMENTARY_CHARGE * current + electronics.noiseCurrentA ** 2);
     common += weight * current;
   }
-  const signal = targetCorrection * perArea * gain * extinctionM2;
-  return (independent + electronics.intensityNoisePerHz * common * common) / (signal * signal);
+  return independent + electronics.intensityNoisePerHz * common * common;
 }
 
 /** (area / gain) over λ z, with λ in the medium: see the design floor in DEVELOPERS.md. */

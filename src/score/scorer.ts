@@ -1,10 +1,9 @@
 import { RimwrightError } from '../base/errors.ts';
-import { lightThrough } from '../reading/litArea.ts';
 import type { Scenario } from '../reading/scenario.ts';
 import { correctionOf } from './correction.ts';
-import type { ElementArea } from './cost.ts';
 import { areaOverFloor, lobeRatio, measurementTime, requiredSnr } from './cost.ts';
 import type { ElementNodes } from './elementNodes.ts';
+import { litElements } from './litElements.ts';
 import type { Population } from './population.ts';
 import { populationCorrection, populationsOf } from './population.ts';
 import type { Scores } from './scores.ts';
@@ -59,7 +58,7 @@ export class Scorer {
     const population = populationCorrection(this.#populations, rows, gain);
     const electronics = { ...detector, ...light };
     const extinctionM2 = this.#leastExtinctionM2;
-    const lit = this.#lit(elements, distanceM);
+    const lit = litElements(this.#task, elements, distanceM);
     const scores: Scores = {
       gain,
       correction: { worst, rms, ...(population !== null && { population }) },
@@ -73,17 +72,6 @@ export class Scorer {
       areaOverFloor: areaOverFloor(elements, gain, this.#wavelengthM, distanceM),
     };
     return { scores, ratios };
-  }
-
-  /** Elements with the areas that would collect as much power in a flat wave. */
-  #lit(elements: readonly ElementNodes[], distanceM: number): readonly ElementArea[] {
-    const { light, medium } = this.#task;
-    const { beam } = light;
-    if (beam === undefined) return elements;
-    return elements.map(({ weight, nodes }) => ({
-      weight,
-      areaM2: lightThrough({ ...light, beam }, medium, distanceM, nodes),
-    }));
   }
 }
 

@@ -73,6 +73,26 @@ describe('readBrief', () => {
       search: { candidates: 20_000, seed: 1 },
       mediumName: 'air',
       shopName: 'none',
+      uncertainties: {
+        averagingS: 1e-3,
+        irradiance: 0.01,
+        responsivity: 0.01,
+        gain: 0,
+        lightDrift: 1e-6,
+        nonlinearity: 1e-3,
+        distanceM: 2e-5,
+        wavelengthM: 1e-10,
+      },
+      uncertaintyDefaults: [
+        'uncertainties.averaging: 1 ms',
+        'uncertainties.irradiance: 1 %',
+        'uncertainties.responsivity: 1 %',
+        'uncertainties.gain: 0 %',
+        'uncertainties.lightDrift: 0.0001 %',
+        'uncertainties.nonlinearity: 0.1 %',
+        'uncertainties.distance: 20 um',
+        'uncertainties.wavelength: 0.1 nm',
+      ],
       defaults: [
         'title: shortest',
         'light.linewidth: 0 nm',
@@ -105,7 +125,8 @@ describe('readBrief', () => {
   });
 
   it('reads its own defaults as a brief would write them, and then leans on none', async () => {
-    const { defaults, ...first } = await readBrief(MINIMAL, 'a.yaml');
+    const { defaults: others, uncertaintyDefaults, ...first } = await readBrief(MINIMAL, 'a.yaml');
+    const defaults = [...others, ...uncertaintyDefaults];
     const sections = new Map<string, string[]>();
     let text = MINIMAL.replace('index: 1.59', 'index: 1.59, count: 1');
     for (const line of defaults.filter((line) => !line.startsWith('particles'))) {
@@ -117,7 +138,7 @@ describe('readBrief', () => {
       const added = text.replace(`${section}: {`, `${section}: { ${keys.join(', ')},`);
       text = added === text ? `${text}${section}: { ${keys.join(', ')} }\n` : added;
     }
-    expect(await readBrief(text, 'a.yaml')).toEqual({ ...first, defaults: [] });
+    expect(await readBrief(text, 'a.yaml')).toEqual({ ...first, defaults: [], uncertaintyDefaults: [] });
   });
 
   it('reads the complete example', async () => {
