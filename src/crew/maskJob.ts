@@ -15,6 +15,11 @@ export interface MaskJob {
   asks: readonly { gain: number; correction: number }[];
   /** Looks for the worst places for each of them at most: few for masks to begin a search with, more for a tight bound. */
   cuts: number;
+  /**
+   * Cells of the radius alone if left out. Whatever has a direction, rings and stars to begin a search with are drawn from such masks; a
+   * bound for all masks then needs cells of the plane.
+   */
+  cells?: 'plane';
 }
 
 export interface MaskResult {
@@ -29,6 +34,7 @@ export interface FoundMask {
   areaOverFloor: number;
   /** Taken off for finite cells and tables. */
   error: number;
+  /** `steps` along the radius; none for cells of the plane. */
   mask: { areaOverFloor: number; worst: number | null; steps: MaskStep[] };
 }
 
@@ -40,19 +46,19 @@ export interface MaskTools extends BoundTools {
 /** Finds least masks for a task. */
 export function findMasks(job: MaskJob, task: Task, tools: MaskTools): MaskResult {
   const { distanceM, asks, masks, cuts } = job;
+  const cells = job.cells ?? 'radial';
   const radiusM = radiusWithinLobe(task, distanceM);
-  // Seeds are rings and stars drawn from a radial mask, whatever has a direction.
   const bounds = new MaskBounds(task, tools.models, tools, {
     distanceM,
     radiusM,
     kind: masks,
-    cells: 'radial',
+    cells,
   });
   try {
     const found = asks.map(({ gain, correction }) => {
       const { areaOverFloor, error, mask } = bounds.at(gain, correction, cuts);
       if (areaOverFloor === null || mask === null) return null;
-      const steps = stepsOf(mask.shares, bounds.largestPhase);
+      const steps = cells === 'radial' ? stepsOf(mask.shares, bounds.largestPhase) : [];
       return {
         gain,
         areaOverFloor,

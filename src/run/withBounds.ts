@@ -8,29 +8,46 @@ import type { Hands } from './remembering.ts';
 /** Looks for the worst places for one design. */
 const CUTS = 12;
 
+/** Designs that are told their bound where each takes seconds: in a brief with a direction, on cells of the plane. */
+const MOST_DIRECTED = 4;
+
 /**
- * Designs with the least `areaOverFloor` that any mask could have at their distance, of their gain and worst correction; without,
- * where a bound would take longer than a search: directions, and sources of finite angle. */
+ * Designs with the least `areaOverFloor` that any mask could have at their distance, of their gain and worst correction. Left
+ * without: in a brief with a preferred direction all but the four fastest that keep the target's correction, or come nearest; all
+ * where a source has a finite angle, or a focused beam a direction.
+ */
 export async function withBounds<D extends Design>(
   designs: readonly D[],
   task: Task,
   hands: Hands,
 ): Promise<D[]> {
-  if (hasDirection(task) || task.light.sourceAngleRad) return [...designs];
-  const results = await Promise.all(designs.map((design) => hands.do(jobFor(design))));
-  return designs.map((design, i) => {
-    const [found] = results[i].found;
-    if (found === null) return design;
+  const asked = toBound(designs, task);
+  const results = await Promise.all(asked.map((design) => hands.do(jobFor(design, task))));
+  const leasts = new Map(asked.map((design, i) => [design, results[i].found[0]]));
+  return designs.map((design) => {
+    const found = leasts.get(design);
+    if (!found) return design;
     return { ...design, scores: { ...design.scores, leastAreaOverFloor: found.areaOverFloor } };
   });
 }
 
-function jobFor({ distanceM, scores }: Design): MaskJob {
+function toBound<D extends Design>(designs: readonly D[], task: Task): readonly D[] {
+  if (task.light.sourceAngleRad) return [];
+  if (!hasDirection(task)) return designs;
+  if (task.light.beam !== undefined) return [];
+  const beyond = ({ scores }: Design) => Math.max(1, worstOf(scores) / task.target.correction);
+  return designs
+    .toSorted((p, q) => beyond(p) - beyond(q) || p.scores.snr.time_s - q.scores.snr.time_s)
+    .slice(0, MOST_DIRECTED);
+}
+
+function jobFor({ distanceM, scores }: Design, task: Task): MaskJob {
   return {
     kind: 'mask',
     masks: 'any',
     distanceM,
     asks: [{ gain: scores.gain, correction: worstOf(scores) }],
     cuts: CUTS,
+    ...(hasDirection(task) && { cells: 'plane' as const }),
   };
 }

@@ -63,7 +63,7 @@ export function narrowest(b: Boundary, search = EVERYTHING): { opening: Width | 
     const isTip = Math.PI - Math.abs(turnRad[i]) < Math.acos(FACING_COSINE);
     if (isTip) keep(turnRad[i] > 0 ? 1 : -1, 0, x[i], y[i]);
   }
-  visitCornerLines(b, keep);
+  visitCornerLines(b, blocks, search.isFrom, (side) => (side > 0 ? openingM : webM), keep);
 
   for (let i = 0; i < count; i++) {
     const ax = x[i];

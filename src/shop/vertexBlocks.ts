@@ -8,6 +8,8 @@ export interface VertexBlocks {
   x: Float64Array;
   y: Float64Array;
   radiusM: Float64Array;
+  /** Of the circles that hold the edges from these vertices as well. */
+  edgesRadiusM: Float64Array;
 }
 
 /** Vertices that follow each other lie close together, so a search can pass over whole blocks that are out of its reach. */
@@ -18,6 +20,7 @@ export function vertexBlocks(b: Boundary): VertexBlocks {
     x: new Float64Array(count),
     y: new Float64Array(count),
     radiusM: new Float64Array(count),
+    edgesRadiusM: new Float64Array(count),
   };
   for (let block = 0; block < count; block++) {
     const first = block * VERTICES_PER_BLOCK;
@@ -32,6 +35,13 @@ export function vertexBlocks(b: Boundary): VertexBlocks {
     blocks.x[block] = (minX + maxX) / 2;
     blocks.y[block] = (minY + maxY) / 2;
     blocks.radiusM[block] = Math.hypot(maxX - minX, maxY - minY) / 2;
+    let reachM = blocks.radiusM[block];
+    for (let i = first; i < end; i++) {
+      const j = b.next[i];
+      const [dx, dy] = [b.x[j] - blocks.x[block], b.y[j] - blocks.y[block]];
+      reachM = Math.max(reachM, Math.sqrt(dx * dx + dy * dy));
+    }
+    blocks.edgesRadiusM[block] = reachM;
   }
   return blocks;
 }
