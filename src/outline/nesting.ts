@@ -37,7 +37,12 @@ export function orientElement(element: OutlineElement): OutlineElement {
   };
 }
 
-/** Whether a point that is not on the ring lies within it: a ray to the right meets it an odd number of times. */
+/** Whether a point that is not on the ring lies within it. */
+export function isWithin(ring: Float64Array, x: number, y: number): boolean {
+  return isInside(x, y, ring, boxOf(ring));
+}
+
+/** A ray to the right meets the ring an odd number of times. */
 function isInside(x: number, y: number, ring: Float64Array, box: Box): boolean {
   if (x < box.left || x > box.right || y < box.bottom || y > box.top) return false;
   let inside = false;

@@ -15,7 +15,7 @@ export const WIDTH_SLACK = 1e-3;
 const ROOM = 1e-6;
 
 /**
- * The misfit of `inspectOutline` alone, many times quicker: nothing wider than the rules ask for is looked at, and of an n-fold
+ * The misfit of `inspectOutline` alone, a hundred times quicker: widths are those between edges, nothing wider than the rules ask for is looked at, and of an n-fold
  * outline only one part from which the others follow. For searches; what is reported is inspected as a whole.
  *
  * @param elements rings as for `inspectOutline`

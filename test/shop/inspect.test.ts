@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { presetsFolder } from '../../src/base/presetsFolder.ts';
 import { inspectOutline } from '../../src/shop/inspect.ts';
 import { loadShop } from '../../src/shop/shelf.ts';
-import { circle, polygon, reversed, slot } from './rings.ts';
+import { circle, polar, polygon, reversed, slot } from './rings.ts';
 
 const etching = loadShop('photo-etching', presetsFolder());
 const mask = loadShop('photomask', presetsFolder());
@@ -24,7 +24,7 @@ describe('a shop', () => {
     expect(report.fits).toBe(false);
     expect(report.misfit).toBeCloseTo(1 - 60 / 76.2, 9);
     expect(report.notes[0]).toMatch(
-      /^the smallest opening, 60 µm at \(1\.\d{3}, 0\.000\) mm, is below the shop's 76\.2 µm$/,
+      /^the smallest opening, 60 µm at \(1\d{3}\.\d, 0\.0\) µm, is below the shop's 76\.2 µm$/,
     );
     expect(report.notes).toHaveLength(2);
   });
@@ -35,7 +35,7 @@ describe('a shop', () => {
     expect(report.misfit).toBeCloseTo(1 - 20 / 50, 2);
     expect(report.notes).toHaveLength(1);
     expect(report.notes[0]).toMatch(
-      /^the smallest web, 20 µm at \(0\.110, 0\.00\d\) mm, is below the shop's 50 µm$/,
+      /^the smallest web, 20 µm at \(110\.\d, \d\.\d\) µm, is below the shop's 50 µm; a disc of that width stops at \(110\.0, 4\d\.\d\) µm, \(110\.0, -4\d\.\d\) µm$/,
     );
   });
 
@@ -49,11 +49,11 @@ describe('a shop', () => {
     const etched = inspectOutline([{ rings }], etching);
     expect(etched).toMatchObject({ fits: false, misfit: 1 });
     expect(etched.notes).toEqual([
-      'a piece of sheet around (0.000, 0.000) mm falls out: bridges are needed to hold it',
+      'a piece of sheet around (0.0, 0.0) µm falls out: bridges are needed to hold it',
     ]);
     expect(inspectOutline([{ rings }], mask)).toMatchObject({ fits: true, misfit: 0 });
     const more = inspectOutline([{ rings: [...rings, circle(90, 300), reversed(circle(90, 100))] }], etching);
-    expect(more.notes[0]).toMatch(/^2 pieces of sheet fall out, the largest around \(0\.000, 0\.000\) mm/);
+    expect(more.notes[0]).toMatch(/^2 pieces of sheet fall out, the largest around \(0\.0, 0\.0\) µm/);
   });
 
   it('rounds corners without refusing them, and says how far off the tip', () => {
@@ -71,14 +71,18 @@ describe('a shop', () => {
     expect(report.fits).toBe(true);
     // A circle in a right angle stays (√2 − 1) r from the tip: 20.7 µm and 15.5 µm.
     expect(report.notes[1]).toMatch(
-      /^the tightest inside corner, drawn sharp at \(.*\) mm, will be rounded to a radius of 50 µm, up to 20\.7 µm off its tip$/,
+      /^the tightest inside corner, drawn sharp at \(.*\) µm, will be rounded to a radius of 50 µm, up to 20\.7 µm off its tip$/,
     );
     expect(report.notes[2]).toMatch(
       /^the tightest outside corner, .* radius of 37\.5 µm, up to 15\.5 µm off its tip$/,
     );
-    const rounded = inspectOutline([{ rings: [slot(500, 80, 40)] }], etching);
-    expect(rounded.fits).toBe(true);
-    expect(rounded.notes[1]).toMatch(/drawn with a radius of 40 µm at .* rounded to a radius of 50 µm$/);
+    const slotted = inspectOutline([{ rings: [slot(500, 80, 40)] }], etching);
+    expect(slotted).toMatchObject({ fits: true, notes: [expect.stringMatching('within the rules')] });
+    const blob = inspectOutline([{ rings: [slot(500, 300, 40)] }], { ...etching, insideCornerRadiusM: 2e-4 });
+    expect(blob.notes).toHaveLength(1);
+    const egg = polar(720, (phi) => 300 / (1 + 0.5 * Math.cos(phi)) ** 0.2 / (1 + 0.9 * Math.cos(phi) ** 2));
+    const tight = inspectOutline([{ rings: [egg] }], { ...etching, insideCornerRadiusM: 2e-4 });
+    expect(tight.notes.join()).toMatch(/drawn with a radius of \d+ µm at .* rounded to a radius of 200 µm$/);
   });
 
   it('judges each element by itself, misfits first', () => {

@@ -24,7 +24,9 @@ describe('the shops on the shelf', () => {
     expect(listShops(presetsFolder()).map(({ name }) => name)).toEqual([
       'laser-cutting',
       'photo-etching',
+      'photodiode-die',
       'photomask',
+      'wire-edm',
     ]);
   });
 
@@ -32,7 +34,9 @@ describe('the shops on the shelf', () => {
     '$name says whose practice it is, to ask, and what is dangerous',
     (shop) => {
       expect(loadShop(shop.name, presetsFolder())).toEqual(shop);
-      expect(shop.source).toMatch(/^Common practice among shops, no standard and no published source/);
+      expect(shop.source).toMatch(
+        /^(Common practice among shops|Our own estimate), no standard and no published source/,
+      );
       expect(shop.cautions.length).toBeGreaterThanOrEqual(3);
       expect(shop.cautions[0]).toContain('ask yours');
       expect(shop.cautions.at(-1)).toMatch(/licensed.*follow local codes/);
@@ -83,11 +87,29 @@ describe('the shops on the shelf', () => {
     expect(shop.islands).toBe('held');
   });
 
+  it('wire EDM follows common practice for its wire', () => {
+    const { wireEdm } = practice;
+    const shop = loadShop('wire-edm', presetsFolder());
+    const wireM = wireEdm.wireIn.value * INCH_M;
+    const [narrow, wide] = wireEdm.kerfIn.value.map((inch) => inch * INCH_M);
+    expect(shop.kerfM).toBeCloseTo((narrow + wide) / 2, 12);
+    expect(shop.insideCornerRadiusM).toBeCloseTo(wireEdm.insideRadiusOverWire.value[1] * wireM, 7);
+    expect(shop.smallestOpeningM).toBeGreaterThan(shop.kerfM);
+    expect(shop.islands).toBe('fall out');
+  });
+
+  it('a die says that its numbers are our own', () => {
+    const shop = loadShop('photodiode-die', presetsFolder());
+    expect(shop.source).toMatch(/^Our own estimate/);
+    expect(shop.islands).toBe('held');
+    expect(shop.gridM).toBeCloseTo(1e-7, 15);
+  });
+
   it('unknown names are refused, with what there is', () => {
     const error = refusal(() => loadShop('photo-ething', presetsFolder()));
     expect(error.code).toBe('input');
     expect(error.message).toBe(
-      'found "photo-ething", expected one of the shops on the shelf: laser-cutting, photo-etching, photomask (did you mean photo-etching?)',
+      'found "photo-ething", expected one of the shops on the shelf: laser-cutting, photo-etching, photodiode-die, photomask, wire-edm (did you mean photo-etching?)',
     );
     expect(refusal(() => loadShop('../media/air', presetsFolder())).code).toBe('input');
   });
