@@ -1,9 +1,10 @@
+import { randomUUID } from 'node:crypto';
 import { fileURLToPath } from 'node:url';
 import type { Worker } from 'node:worker_threads';
 import Pool from 'worker-threads-pool';
 import { RimwrightError } from '../base/errors.ts';
 import { jobName } from './jobName.ts';
-import type { Job, Orders, Reply, ResultOf } from './messages.ts';
+import type { Job, Orders, Reply, ResultOf, WorkerOrders } from './messages.ts';
 
 /** A job on its way, and what to do with its outcome. */
 interface Pending {
@@ -34,7 +35,7 @@ const MOST_DEATHS = 3;
 export class Crew {
   readonly #pool: Pool;
   readonly #size: number;
-  readonly #orders: Orders;
+  readonly #orders: WorkerOrders;
   readonly #entry: string;
   readonly #members = new Set<Member>();
   readonly #waiting: Pending[] = [];
@@ -45,7 +46,7 @@ export class Crew {
   private constructor(size: number, orders: Orders, entry: string) {
     this.#pool = new Pool({ max: size });
     this.#size = size;
-    this.#orders = orders;
+    this.#orders = { ...orders, channel: randomUUID() };
     this.#entry = entry;
   }
 

@@ -11,6 +11,11 @@ export interface Orders {
   families: readonly FamilyName[];
 }
 
+/** The same, and the channel on which the workers of one crew hand tables to each other. */
+export interface WorkerOrders extends Orders {
+  channel: string;
+}
+
 export type Job = ExploreJob | FinishJob | MaskJob;
 
 export type Result = ExploreResult | FinishResult | MaskResult;

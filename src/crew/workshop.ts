@@ -1,5 +1,5 @@
 import { LinearModels } from '../numeric/linearModel.ts';
-import type { Fields } from '../reading/tableShelf.ts';
+import type { Fields, TableShelf } from '../reading/tableShelf.ts';
 import { Certifier } from '../score/certifier.ts';
 import { leadingFields } from '../score/farZoneError.ts';
 import { REPORT_FINENESS, SEARCH_FINENESS } from '../score/fineness.ts';
@@ -31,6 +31,11 @@ export class Workshop {
     this.#fields = leadingFields(orders.task);
     this.#judge = new Judge(guardedTask(orders.task), SEARCH_FINENESS, this.#fields);
     this.#space = searchSpace(orders.task, orders.families, this.#judge);
+  }
+
+  /** The search's tables: the same for every workshop with these orders. */
+  get tables(): TableShelf {
+    return this.#judge.tables;
   }
 
   /** Every way to draw, and every distance, that the brief allows. */

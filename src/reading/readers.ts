@@ -33,14 +33,15 @@ export interface ReaderOptions {
 /** Readers of every scenario, in a flat wave or a focused beam: the one place that tells the two apart. */
 export class Readers {
   readonly #beam: GaussianBeam | undefined;
-  readonly #flat: TableShelf;
+  /** Tables for a flat wave. */
+  readonly flat: TableShelf;
   readonly #focused: BeamShelf | null;
   readonly #sourceAngleRad: number;
 
   constructor(scenarios: readonly Scenario[], { spreadsM, beam, fields }: ReaderOptions) {
     this.#beam = beam;
     this.#sourceAngleRad = scenarios[0]?.sourceAngleRad ?? 0;
-    this.#flat = new TableShelf(scenarios, spreadsM, fields);
+    this.flat = new TableShelf(scenarios, spreadsM, fields);
     this.#focused = beam === undefined ? null : new BeamShelf(scenarios, spreadsM, beam, fields);
   }
 
@@ -48,7 +49,7 @@ export class Readers {
   at(distanceM: number, placeM: number, radiusM: number, offsetM: number): Reader[] {
     const beam = this.#beam;
     if (beam === undefined || this.#focused === null) {
-      return this.#flat
+      return this.flat
         .tables(distanceM - placeM, radiusM + offsetM)
         .map((table) => (nodes, x, y) => boundaryReading(table, nodes, x, y));
     }
@@ -80,7 +81,7 @@ export class Readers {
     const offsetM = farthest(points);
     const beam = this.#beam;
     if (beam === undefined || this.#focused === null) {
-      return tableDensity(this.#flat.tables(distanceM, radiusM + offsetM)[scenario], points, 1);
+      return tableDensity(this.flat.tables(distanceM, radiusM + offsetM)[scenario], points, 1);
     }
     const tables = this.#focused.tables(distanceM, 0, radiusM, offsetM)[scenario];
     const { tangents, weights } = this.#directions(tables, distanceM, radiusM, offsetM);
@@ -105,7 +106,7 @@ export class Readers {
    */
   densityTables(distanceM: number, placeM: number, radiusM: number, offsetM: number): DensityTable[] {
     if (this.#beam !== undefined) throw new RimwrightError('input', 'a focused beam has no radial density');
-    return this.#flat.tables(distanceM - placeM, radiusM + offsetM).map(densityTable);
+    return this.flat.tables(distanceM - placeM, radiusM + offsetM).map(densityTable);
   }
 
   #directions(tables: readonly LineTable[], distanceM: number, radiusM: number, offsetM: number) {

@@ -6,6 +6,12 @@ import type { Scenario } from './scenario.ts';
 /** Which fields of the sphere a reading is computed from: those of its far zone, or the exact ones at the detector's distance. */
 export type Fields = 'far' | 'exact';
 
+/** The tables of every scenario at one distance and reach, in memory that threads share. */
+export interface SharedTables {
+  key: string;
+  tables: RadialTable[];
+}
+
 /** Ratio of neighbouring reaches of tables. */
 const REACH_STEP = 1.3;
 
@@ -23,6 +29,8 @@ export class TableShelf {
   /** By distance and reach. */
   readonly #held = new Map<string, { tables: RadialTable[]; size: number }>();
   #size = 0;
+  /** Built here, and not told to other threads so far; null where nobody asks. */
+  #fresh: SharedTables[] | null = null;
 
   /** @param spreadsM rms random motion per axis in each scenario, metres */
   constructor(scenarios: readonly Scenario[], spreadsM: readonly number[], fields: Fields = 'far') {
@@ -46,6 +54,25 @@ export class TableShelf {
     const tables = this.#scenarios.map((scenario, s) =>
       buildRadialTable(this.#seenFrom(scenario, distanceM), distanceM, reach, this.#spreadsM[s]),
     );
+    if (this.#fresh === null) return this.#keep(key, tables);
+    const shared = tables.map(inSharedMemory);
+    this.#fresh.push({ key, tables: shared });
+    return this.#keep(key, shared);
+  }
+
+  /** From now on tables are built in shared memory, and those built since the last call come back, for other threads' shelves of the same scenarios. */
+  fresh(): SharedTables[] {
+    const built = this.#fresh ?? [];
+    this.#fresh = [];
+    return built;
+  }
+
+  /** Takes in what another thread has built. */
+  take({ key, tables }: SharedTables): void {
+    if (!this.#held.has(key)) this.#keep(key, tables);
+  }
+
+  #keep(key: string, tables: RadialTable[]): RadialTable[] {
     const size = tables.reduce((sum, { mean, twofold }) => sum + mean.length + (twofold?.length ?? 0), 0);
     this.#held.set(key, { tables, size });
     this.#size += size;
@@ -69,4 +96,14 @@ export class TableShelf {
     this.#held.delete(key);
     this.#size -= size;
   }
+}
+
+function inSharedMemory(table: RadialTable): RadialTable {
+  return { ...table, mean: shared(table.mean), twofold: table.twofold && shared(table.twofold) };
+}
+
+function shared(values: Float64Array): Float64Array {
+  const copy = new Float64Array(new SharedArrayBuffer(values.byteLength));
+  copy.set(values);
+  return copy;
 }

@@ -14,7 +14,7 @@ import { Readers } from '../reading/readers.ts';
 import type { EdgeDensity } from '../reading/roughEdge.ts';
 import type { Scenario } from '../reading/scenario.ts';
 import { spreadOf } from '../reading/spreadOf.ts';
-import type { Fields } from '../reading/tableShelf.ts';
+import type { Fields, TableShelf } from '../reading/tableShelf.ts';
 import type { ElementNodes } from './elementNodes.ts';
 import { elementNodes } from './elementNodes.ts';
 import type { Fineness } from './fineness.ts';
@@ -51,6 +51,11 @@ export class Judge {
     this.#spreadsM = spreadsM;
     this.#readers = new Readers(this.scenarios, { spreadsM, beam: task.light.beam, fields });
     this.#scorer = new Scorer(task, this.scenarios, this.wavelengthM);
+  }
+
+  /** Its tables for a flat wave, which judges of the same task in other threads can share. */
+  get tables(): TableShelf {
+    return this.#readers.flat;
   }
 
   /** κ = k/(2z) at the nominal wavelength, 1/m²; in a focused beam what stands for it (see `Fringes`). */

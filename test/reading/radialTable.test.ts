@@ -124,4 +124,24 @@ describe('TableShelf', () => {
     expect(larger[0].cells / larger[0].cellsPerM2).toBeGreaterThan(9e-8);
     expect(shelf.tables(0.02, 1e-4)).toBe(first);
   });
+
+  it('hands what it has built to a shelf in another thread, in memory that both share', () => {
+    const scenarios = [sphereScenario(1e-6), sphereScenario(2e-6)];
+    const [builder, other] = [new TableShelf(scenarios, [0, 0]), new TableShelf(scenarios, [0, 0])];
+    const plain = builder.tables(0.02, 1e-4);
+    expect(builder.fresh()).toEqual([]);
+    const built = builder.tables(0.03, 1e-4);
+    const fresh = builder.fresh();
+    expect(fresh).toHaveLength(1);
+    expect(builder.fresh()).toEqual([]);
+    // As a message between threads does.
+    for (const tables of fresh) other.take(structuredClone(tables));
+    const taken = other.tables(0.03, 1e-4);
+    expect(taken).toEqual(new TableShelf(scenarios, [0, 0]).tables(0.03, 1e-4));
+    expect(taken[0].mean.buffer).toBeInstanceOf(SharedArrayBuffer);
+    taken[0].mean[0] += 1;
+    expect(built[0].mean[0]).toBe(taken[0].mean[0]);
+    expect(plain[0].mean.buffer).toBeInstanceOf(ArrayBuffer);
+    expect(other.fresh()).toEqual([]);
+  });
 });
