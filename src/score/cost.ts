@@ -1,5 +1,5 @@
-/** Elementary charge, C (SI 2019, exact). */
-const ELEMENTARY_CHARGE = 1.602176634e-19;
+import type { Electronics } from './noisePower.ts';
+import { noiseOf, noisePower } from './noisePower.ts';
 
 /** Angle of the first dark ring of diffraction at a disc, over λ/d: the first zero of J₁(x)/x over π, rounded as is common practice. */
 const FIRST_DARK_RING = 1.22;
@@ -8,14 +8,6 @@ const FIRST_DARK_RING = 1.22;
 export interface ElementArea {
   weight: number;
   areaM2: number;
-}
-
-/** Light on the detector, and what the electronics make of it. */
-export interface Electronics {
-  responsivityAW: number;
-  irradianceWm2: number;
-  noiseCurrentA: number;
-  intensityNoisePerHz: number;
 }
 
 /**
@@ -46,7 +38,7 @@ export function requiredSnr(
 
 /**
  * Time for one measurement of two readings (with and without the particle) whose noise is the target correction:
- * τ = (Σ w²(2e i + i_n²) + RIN (Σ w i)²)/(ε s)², i = ℛ·irradiance·A, s = ℛ·irradiance·g·C.
+ * τ = N/(ε s)², N the noise of the weighted currents (see `noisePower`), i = ℛ·irradiance·A, s = ℛ·irradiance·g·C.
  * Each reading's bandwidth is 1/(2τ); their difference doubles the variance.
  *
  * @returns seconds
@@ -63,17 +55,11 @@ export function measurementTime(
   return currentNoise(elements, electronics) / (signal * signal);
 }
 
-/** Noise of the weighted current, A²/Hz (one-sided): Σ w²(2e i + i_n²) + RIN (Σ w i)². */
+/** Noise of the weighted current, A²/Hz (one-sided): see `noisePower`. */
 export function currentNoise(elements: readonly ElementArea[], electronics: Electronics): number {
-  const perArea = electronics.responsivityAW * electronics.irradianceWm2;
-  let independent = 0;
-  let common = 0;
-  for (const { weight, areaM2 } of elements) {
-    const current = perArea * areaM2;
-    independent += weight * weight * (2 * ELEMENTARY_CHARGE * current + electronics.noiseCurrentA ** 2);
-    common += weight * current;
-  }
-  return independent + electronics.intensityNoisePerHz * common * common;
+  const areas = elements.map(({ areaM2 }) => areaM2);
+  const weights = elements.map(({ weight }) => weight);
+  return noisePower(noiseOf(areas, electronics), weights);
 }
 
 /** (area / gain) over λ z, with λ in the medium: see the design floor in DEVELOPERS.md. */
