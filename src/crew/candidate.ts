@@ -20,6 +20,8 @@ export interface Candidate {
   scores: Scores;
   /** How badly the shop's rules are missed, 0 to 1. */
   misfit: number;
+  /** The correction that its elements' weights were solved for, where they were. */
+  weighedFor?: number;
 }
 
 /** What came of trying a point: `value` is what the search makes small; the rest is null where nothing was drawn. */
@@ -63,7 +65,31 @@ export function drawCandidate(
   const distanceM = distanceAt(space, vector[count] ?? 0);
   const values = Array.from(vector).slice(0, count);
   const drawn = variant.draw(values, 1 / Math.sqrt(judge.kappa(distanceM)));
-  return isDrawn(drawn) ? { shape: drawn, distanceM } : drawn;
+  return isDrawn(drawn) ? placed(drawn, distanceM, space, judge.task.detector.balanced) : drawn;
+}
+
+/** Puts the elements into planes of the grid, as far as it reaches, and leaves no single one where a balance is asked for. */
+function placed(
+  shape: Shape,
+  distanceM: number,
+  { distances }: SearchSpace,
+  balanced = false,
+): { shape: Shape; distanceM: number } | { misdrawnBy: number } {
+  if (balanced && shape.elements.length < 2) return { misdrawnBy: 1 };
+  if (shape.elements.every(({ distanceRatio }) => distanceRatio === undefined)) return { shape, distanceM };
+  const farthest = distances[distances.length - 1];
+  const beyond =
+    Math.max(...shape.elements.map(({ distanceRatio = 1 }) => distanceRatio * distanceM)) / farthest;
+  if (beyond > 1 + 1e-9) return { misdrawnBy: beyond - 1 };
+  // Tables are made for the distances of the grid.
+  const nearest = (wanted: number) =>
+    distances.reduce((best, one) => (Math.abs(one - wanted) < Math.abs(best - wanted) ? one : best));
+  const elements = shape.elements.map((element) =>
+    element.distanceRatio === undefined
+      ? element
+      : { ...element, distanceM: nearest(element.distanceRatio * distanceM) },
+  );
+  return { shape: { ...shape, elements }, distanceM };
 }
 
 function notFinite(what: string, { id }: Variant, vector: ArrayLike<number>): RimwrightError {
@@ -88,11 +114,18 @@ export function tryCandidate(
   if ('misdrawnBy' in drawn || misdrawnBy > 0) {
     return { value: MISDRAWN + misdrawnBy, candidate: null, ratios: null };
   }
-  const { scores, ratios } = judge.scoreShape(drawn.shape, drawn.distanceM);
+  const { scores, ratios } = judge.scoreShape(drawn.shape, drawn.distanceM, aim.correction);
   const misfit = shopMisfit(judge, drawn.shape, scores, aim);
   const value = aimValue(scores, misfit, aim, judge.task);
   if (Number.isNaN(value)) throw notFinite('a value', variant, vector);
-  return { value, candidate: { variant: variant.id, vector: Array.from(vector), scores, misfit }, ratios };
+  const candidate = {
+    variant: variant.id,
+    vector: Array.from(vector),
+    scores,
+    misfit,
+    ...(drawn.shape.freeWeights && { weighedFor: aim.correction }),
+  };
+  return { value, candidate, ratios };
 }
 
 /** How far an outline is beyond what the judge's tables reach, over the largest radius; 0 or below where it is within. */

@@ -24,9 +24,10 @@ const GAIN_SCALE = 0.1;
 export function descend(trials: Trials, vector: Float64Array, scales: ArrayLike<number>): Float64Array {
   const { variant, judge, aim } = trials;
   const count = variant.parameters.length;
-  const gainFree = judge.task.target.gain === 'free';
   const first = trials.try(vector);
   if (first.ratios === null || trials.left < count + 3) return vector;
+  // Solved weights bring their gain with them.
+  const gainFree = judge.task.target.gain === 'free' && !variant.weighted;
   // A step in the gain alone needs no new readings: the last point's are kept.
   let last: { vector: Float64Array; trial: Trial } = { vector, trial: first };
   const evaluate = (x: Float64Array): Outcome | null => {
@@ -36,7 +37,7 @@ export function descend(trials: Trials, vector: Float64Array, scales: ArrayLike<
     const { trial } = last;
     if (trial.ratios === null) return null;
     const { scores, misfit } = trial.candidate;
-    const gain = gainFree ? x[0] : 1;
+    const gain = gainFree ? x[0] : scores.gain;
     const measure =
       measureOf({ ...scores, gain: scores.gain }, aim.measure) * measureShare(scores.gain, gain, aim.measure);
     return {

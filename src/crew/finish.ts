@@ -17,7 +17,7 @@ import { drawCandidate } from './candidate.ts';
 /** Candidates to be drawn as points and scored again, finely. */
 export interface FinishJob {
   kind: 'finish';
-  candidates: { variant: string; vector: number[] }[];
+  candidates: { variant: string; vector: number[]; weighedFor?: number }[];
 }
 
 export interface FinishResult {
@@ -41,11 +41,15 @@ export function finish(
   space: SearchSpace,
 ): FinishResult {
   return {
-    designs: job.candidates.map(({ variant: id, vector }) => {
+    designs: job.candidates.map(({ variant: id, vector, weighedFor }) => {
       const variant = space.variants.find((one) => one.id === id) as Variant;
       const drawn = drawCandidate(judge, space, variant, vector) as { shape: Shape; distanceM: number };
-      const elements = toPoints(drawn.shape, judge.kappa(drawn.distanceM));
-      const judged = certifier.scoreOutline(elements, drawn.distanceM, drawn.shape);
+      const { shape, distanceM } = drawn;
+      const points = toPoints(shape, judge.kappa(distanceM));
+      const correction = weighedFor ?? judge.task.target.correction;
+      const { elements, judgement: judged } = shape.freeWeights
+        ? certifier.weighOutline(points, distanceM, shape, correction)
+        : { elements: points, judgement: certifier.scoreOutline(points, distanceM, shape) };
       const other = otherJudge?.scoreOutline(elements, drawn.distanceM, drawn.shape);
       return {
         family: variant.family,
@@ -83,12 +87,14 @@ function askShop(elements: readonly OutlineElement[], shop: ShopRules | null): S
 function toPoints(shape: Shape, kappa: number): OutlineElement[] {
   const phase = kappa * shapeRadius(shape) ** 2;
   const vertices = 4 * Math.ceil(Math.min(1440, Math.max(180, Math.PI * Math.sqrt(50 * phase))) / 4);
-  return shape.elements.map(({ weight, loops }) => {
+  return shape.elements.map(({ weight, loops, distanceM, share }) => {
     const curves = loops.map(arcLoopOf).filter((loop) => loop !== null);
     // Of an outline of straight edges alone the points say it all.
     const isExact = curves.length === loops.length && curves.some(isCurved);
     return {
       weight,
+      ...(distanceM !== undefined && { distanceM }),
+      ...(share !== undefined && { share }),
       rings: loops.map((loop) => polygonise(loop, vertices)),
       ...(isExact && { curves }),
     };

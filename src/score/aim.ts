@@ -2,7 +2,7 @@ import type { Scores } from './scores.ts';
 import { worstOf } from './scores.ts';
 import type { Task } from './task.ts';
 
-/** What one run of the search makes small. `cost` is area over gain. */
+/** What one run of the search makes small. `cost` is area over gain, every element's area times its weight. */
 export const MEASURES = ['radius', 'area', 'cost', 'time'] as const;
 export type Measure = (typeof MEASURES)[number];
 
@@ -20,7 +20,7 @@ export function measureOf(scores: Scores, measure: Measure): number {
     case 'area':
       return scores.area_m2;
     case 'cost':
-      return scores.area_m2 / scores.gain;
+      return (scores.weightedArea_m2 ?? scores.area_m2) / scores.gain;
     case 'time':
       return scores.snr.time_s;
   }

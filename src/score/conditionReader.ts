@@ -29,14 +29,13 @@ const CAPACITY = 20_000_000;
 /** Tables of a focused beam are larger than those of a flat wave: by about this much. */
 const BEAM_SIZE = 30;
 
-/** Reads under any condition of a task, not only under those that a judge samples. Holds the tables of one distance. */
+/** Reads under any condition of a task, not only under those that a judge samples. Holds tables as far as there is room. */
 export class ConditionReader {
   readonly #task: Task;
   readonly #fields: Fields;
   readonly #solve: ScenarioSolver;
   readonly #scenarios = new Map<string, Scenario>();
   readonly #readers = new Map<string, Readers>();
-  #distanceM = Number.NaN;
 
   constructor(task: Task, fields: Fields) {
     this.#task = task;
@@ -66,14 +65,13 @@ export class ConditionReader {
   #held(condition: Condition, view: View): { scenario: Scenario; readers: Readers } {
     const { kind, diameterM, wavelengthM } = condition;
     const key = `${kind.id} ${diameterM} ${wavelengthM}`;
+    const seen = `${key} ${view.distanceM}`;
     const scenario = held(this.#scenarios, key, MOST_SOLVED, () => {
       // A climb asks for hundreds of tables.
       return { ...this.#solve([particleOf(condition)], [wavelengthM])[0], tiltsAsPlaces: true };
     });
-    if (view.distanceM !== this.#distanceM) this.#readers.clear();
-    this.#distanceM = view.distanceM;
     const most = Math.max(1, Math.floor(CAPACITY / this.tableSize(view)));
-    const readers = held(this.#readers, key, most, () => this.#readersOf(scenario));
+    const readers = held(this.#readers, seen, most, () => this.#readersOf(scenario));
     return { scenario, readers };
   }
 

@@ -16,13 +16,15 @@ import type { Scenario } from '../reading/scenario.ts';
 import { spreadOf } from '../reading/spreadOf.ts';
 import type { Fields, TableShelf } from '../reading/tableShelf.ts';
 import type { ElementNodes } from './elementNodes.ts';
-import { elementNodes } from './elementNodes.ts';
+import { elementNodes, factorOf, nearestPlane, planesOf } from './elementNodes.ts';
 import type { Fineness } from './fineness.ts';
 import { NO_SYMMETRY, Sampling } from './sampling.ts';
 import type { Judgement, SampledReadings } from './scorer.ts';
 import { Scorer } from './scorer.ts';
 import type { Task } from './task.ts';
 import { taskScenarios } from './taskScenarios.ts';
+import type { ApartReadings } from './weigher.ts';
+import { weigh } from './weigher.ts';
 
 export type { ElementNodes };
 
@@ -81,10 +83,16 @@ export class Judge {
     return irradianceAt(this.scenarios[scenario], beam, { x, y, z, distanceM, spreadM });
   }
 
-  /** Scores a shape as its family draws it; the ratios reading/extinction behind the correction come along. */
-  scoreShape(shape: Shape, distanceM: number): Judgement {
+  /**
+   * Scores a shape as its family draws it; the ratios reading/extinction behind the correction come along.
+   *
+   * @param correction that free weights are solved for; the target's if left out
+   */
+  scoreShape(shape: Shape, distanceM: number, correction = this.task.target.correction): Judgement {
     const nodes = this.shapeNodes(shape, distanceM);
-    return this.judge(this.#read(nodes, shapeRadius(shape), distanceM, shape, shape));
+    const radiusM = shapeRadius(shape);
+    if (!shape.freeWeights) return this.judge(this.#read(nodes, radiusM, distanceM, shape, shape));
+    return this.judge(weigh(this.task, this.#readApart(nodes, radiusM, distanceM, shape, shape), correction));
   }
 
   /** Scores an outline given by its points. */
@@ -107,6 +115,16 @@ export class Judge {
     return this.#read(this.outlineNodes(elements, distanceM), radiusM, distanceM, symmetry, NO_SYMMETRY);
   }
 
+  /** As `readOutline`, each element for itself, for `weigh`; the elements' own weights do not count. */
+  readApart(
+    elements: readonly OutlineElement[],
+    distanceM: number,
+    symmetry: Symmetry = NO_SYMMETRY,
+  ): ApartReadings {
+    const radiusM = Math.max(...elements.map(({ rings }) => ringsRadius(rings)));
+    return this.#readApart(this.outlineNodes(elements, distanceM), radiusM, distanceM, symmetry, NO_SYMMETRY);
+  }
+
   /**
    * Ratios reading/extinction of an outline, one row a scenario.
    *
@@ -120,9 +138,10 @@ export class Judge {
   ): { positions: Float64Array; depths: readonly number[]; ratios: Float64Array[] } {
     const radiusM = Math.max(...elements.map(({ rings }) => ringsRadius(rings)));
     const nodes = this.outlineNodes(elements, distanceM);
-    const places = positions ?? this.#sampling.positions(radiusM, distanceM, NO_SYMMETRY);
+    const nearestM = nearestPlane(elements, distanceM);
+    const places = positions ?? this.#sampling.positions(radiusM, nearestM, NO_SYMMETRY);
     const depths = positions ? [0] : this.#sampling.depths();
-    const flights = this.#sampling.flights(places, radiusM, distanceM, NO_SYMMETRY);
+    const flights = this.#sampling.flights(places, radiusM, nearestM, NO_SYMMETRY);
     return { positions: places, depths, ratios: this.#ratios(nodes, radiusM, distanceM, flights, depths) };
   }
 
@@ -139,8 +158,9 @@ export class Judge {
     positions?: Float64Array,
   ): { positions: Float64Array; flight: Float64Array; ratios: Float64Array[] } {
     const radiusM = Math.max(...elements.map(({ rings }) => ringsRadius(rings)));
-    const places = positions ?? this.#sampling.positions(radiusM, distanceM, NO_SYMMETRY);
-    const flight = this.#sampling.flight(radiusM, distanceM);
+    const nearestM = nearestPlane(elements, distanceM);
+    const places = positions ?? this.#sampling.positions(radiusM, nearestM, NO_SYMMETRY);
+    const flight = this.#sampling.flight(radiusM, nearestM);
     const points = new Float64Array((places.length * flight.length) / 2);
     for (let p = 0; p < places.length; p += 2) {
       for (let f = 0; f < flight.length; f++)
@@ -176,16 +196,18 @@ export class Judge {
 
   /** Boundary nodes of a shape, dense enough for every place, depth and line of the task. */
   shapeNodes(shape: Shape, distanceM: number): ElementNodes[] {
-    const density = this.#sampling.density(distanceM);
-    return shape.elements.map(({ weight, loops }) =>
-      elementNodes(weight, boundaryNodes(loops, density, this.#rules)),
-    );
+    return shape.elements.map((element) => {
+      const density = this.#sampling.density(element.distanceM ?? distanceM);
+      return elementNodes(element, boundaryNodes(element.loops, density, this.#rules));
+    });
   }
 
   /** As `shapeNodes`, of an outline given by its points. */
   outlineNodes(elements: readonly OutlineElement[], distanceM: number): ElementNodes[] {
-    const density = this.#sampling.density(distanceM);
-    return elements.map(({ weight, rings }) => elementNodes(weight, ringNodes(rings, density, this.#rules)));
+    return elements.map((element) => {
+      const density = this.#sampling.density(element.distanceM ?? distanceM);
+      return elementNodes(element, ringNodes(element.rings, density, this.#rules));
+    });
   }
 
   #ratios(
@@ -197,19 +219,25 @@ export class Judge {
   ): Float64Array[] {
     const { count, farthestM } = flights;
     const ratios = this.scenarios.map(() => new Float64Array(count * depths.length));
+    const further = new Float64Array(count);
     depths.forEach((depth, d) => {
-      const readers = this.#readers.at(distanceM, depth, radiusM, farthestM);
-      for (let s = 0; s < ratios.length; s++) {
-        const read = readers[s];
-        const { extinctionM2 } = this.scenarios[s];
-        const row = ratios[s].subarray(d * count, (d + 1) * count);
-        flights.means((x, y) => {
-          let reading = 0;
-          for (const { weight, nodes } of elements) reading += weight * read(nodes, x, y);
-          return reading;
-        }, row);
-        for (let p = 0; p < count; p++) row[p] /= extinctionM2;
-      }
+      planesOf(elements, distanceM).forEach((plane, p) => {
+        const readers = this.#readers.at(plane.distanceM, depth, radiusM, farthestM);
+        for (let s = 0; s < ratios.length; s++) {
+          const read = readers[s];
+          const row = ratios[s].subarray(d * count, (d + 1) * count);
+          const out = p === 0 ? row : further;
+          flights.means((x, y) => {
+            let reading = 0;
+            for (const element of plane.elements) reading += factorOf(element) * read(element.nodes, x, y);
+            return reading;
+          }, out);
+          if (p > 0) for (let i = 0; i < count; i++) row[i] += further[i];
+        }
+      });
+    });
+    ratios.forEach((row, s) => {
+      for (let i = 0; i < row.length; i++) row[i] /= this.scenarios[s].extinctionM2;
     });
     return ratios;
   }
@@ -221,10 +249,36 @@ export class Judge {
     symmetry: Symmetry,
     nodesSymmetry: Symmetry,
   ): SampledReadings {
-    const positions = this.#sampling.positions(radiusM, distanceM, symmetry);
-    const flights = this.#sampling.flights(positions, radiusM, distanceM, nodesSymmetry);
+    const flights = this.#flights(elements, radiusM, distanceM, symmetry, nodesSymmetry);
     const rows = this.#ratios(elements, radiusM, distanceM, flights, this.#sampling.depths());
     return { elements, radiusM, distanceM, rows };
+  }
+
+  #readApart(
+    elements: readonly ElementNodes[],
+    radiusM: number,
+    distanceM: number,
+    symmetry: Symmetry,
+    nodesSymmetry: Symmetry,
+  ): ApartReadings {
+    const flights = this.#flights(elements, radiusM, distanceM, symmetry, nodesSymmetry);
+    const depths = this.#sampling.depths();
+    const apart = elements.map((element) =>
+      this.#ratios([{ ...element, weight: 1 }], radiusM, distanceM, flights, depths),
+    );
+    return { elements, radiusM, distanceM, apart };
+  }
+
+  #flights(
+    elements: readonly ElementNodes[],
+    radiusM: number,
+    distanceM: number,
+    symmetry: Symmetry,
+    nodesSymmetry: Symmetry,
+  ): FlightMeans {
+    const nearestM = nearestPlane(elements, distanceM);
+    const positions = this.#sampling.positions(radiusM, nearestM, symmetry);
+    return this.#sampling.flights(positions, radiusM, nearestM, nodesSymmetry);
   }
 
   /**

@@ -1,7 +1,7 @@
 import { LegendreRules } from '../numeric/gaussLegendre.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
 import { boundaryNodes } from '../outline/boundaryNodes.ts';
-import { ringLoop } from '../outline/families/rings.ts';
+import { ringLoop } from '../outline/ring.ts';
 import { plainFlights } from '../reading/flightMeans.ts';
 import { farthestRead } from '../reading/placement.ts';
 import type { FlightRule } from '../reading/positions.ts';

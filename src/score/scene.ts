@@ -2,11 +2,16 @@ import type { FlightMeans } from '../reading/flightMeans.ts';
 import type { View } from './conditionReader.ts';
 import type { Condition } from './conditions.ts';
 
-/** One design as the search for its worst cases looks at it. */
-export interface Scene {
-  /** All elements as one list (see `weightedNodes`). */
+/** The elements of a design in one plane, and how far its tables reach. */
+export interface ScenePlane {
   nodes: Float64Array;
   view: View;
+}
+
+/** One design as the search for its worst cases looks at it. */
+export interface Scene {
+  /** All elements of each plane as one list (see `weightedNodes`). */
+  planes: readonly ScenePlane[];
   /** Places that stand for all: flat [x0, y0, …], metres; and the flights through them. */
   places: Float64Array;
   flights: FlightMeans;

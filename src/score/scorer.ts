@@ -3,6 +3,7 @@ import type { Scenario } from '../reading/scenario.ts';
 import { correctionOf } from './correction.ts';
 import { areaOverFloor, lobeRatio, measurementTime, requiredSnr } from './cost.ts';
 import type { ElementNodes } from './elementNodes.ts';
+import { factorOf } from './elementNodes.ts';
 import { litElements } from './litElements.ts';
 import type { Population } from './population.ts';
 import { populationCorrection, populationsOf } from './population.ts';
@@ -62,17 +63,48 @@ export class Scorer {
     const scores: Scores = {
       gain,
       correction: { worst, rms, ...(population !== null && { population }) },
-      lobe: { ratio: lobeRatio(radiusM, distanceM, this.#wavelengthM, this.#largestDiameterM) },
+      lobe: { ratio: this.#lobe(elements, radiusM, distanceM) },
       snr: {
         required: requiredSnr(lit, target.correction, gain, extinctionM2),
         time_s: measurementTime(lit, target.correction, gain, extinctionM2, electronics),
       },
       area_m2: elements.reduce((sum, { areaM2 }) => sum + areaM2, 0),
       radius_m: radiusM,
-      areaOverFloor: areaOverFloor(elements, gain, this.#wavelengthM, distanceM),
+      areaOverFloor: areaOverFloor(floored(elements, distanceM), gain, this.#wavelengthM, distanceM),
+      ...weightedArea(elements),
     };
     return { scores, ratios };
   }
+
+  /** Of several planes, the largest of their ratios. */
+  #lobe(elements: readonly ElementNodes[], radiusM: number, distanceM: number): number {
+    const at = (radius: number, distance: number) =>
+      lobeRatio(radius, distance, this.#wavelengthM, this.#largestDiameterM);
+    if (elements.every((one) => one.distanceM === undefined)) return at(radiusM, distanceM);
+    return Math.max(
+      ...elements.map(({ nodes, distanceM: own = distanceM }) => {
+        let squared = 0;
+        for (let i = 0; i < nodes.length; i += 4)
+          squared = Math.max(squared, nodes[i] ** 2 + nodes[i + 1] ** 2);
+        return at(Math.sqrt(squared), own);
+      }),
+    );
+  }
+}
+
+/** Elements as the floor counts them: λz is that of their own plane, and what a splitter takes is as good as not there. */
+function floored(elements: readonly ElementNodes[], distanceM: number) {
+  return elements.map((element) => ({
+    weight: factorOf(element) * (distanceM / (element.distanceM ?? distanceM)),
+    areaM2: element.areaM2,
+  }));
+}
+
+/** Σ |weight| · share · area, where that is not simply the area. */
+function weightedArea(elements: readonly ElementNodes[]): Pick<Scores, 'weightedArea_m2'> {
+  if (elements.every((element) => factorOf(element) === 1)) return {};
+  const total = elements.reduce((sum, element) => sum + Math.abs(factorOf(element)) * element.areaM2, 0);
+  return { weightedArea_m2: total };
 }
 
 function flatten(rows: readonly Float64Array[]): Float64Array {

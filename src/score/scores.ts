@@ -10,6 +10,8 @@ export interface Scores {
   lobe: { ratio: number };
   snr: { required: number; time_s: number };
   area_m2: number;
+  /** Σ |weight| · share · area of elements that do not simply count once: what `cost` counts. */
+  weightedArea_m2?: number;
   radius_m: number;
   areaOverFloor: number;
   /**

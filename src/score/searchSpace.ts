@@ -18,7 +18,11 @@ export interface SearchSpace {
 
 export function searchSpace(task: Task, families: readonly FamilyName[], judge: Judge): SearchSpace {
   const distances = distanceGrid(...task.detector.distanceM);
-  return { variants: allVariants(families, phaseLimits(task, judge)), distances };
+  const { balanced, elements } = task.detector;
+  const variants = allVariants(families, phaseLimits(task, judge)).filter(({ weighted }) =>
+    weighted ? elements !== 'one' : !balanced,
+  );
+  return { variants, distances };
 }
 
 /** The phases that the brief's radii span at its distances. */
@@ -26,7 +30,12 @@ function phaseLimits(task: Task, judge: Judge): PhaseLimits {
   const { radiusM, distanceM } = task.detector;
   const low = judge.kappa(distanceM[1]) * radiusM[0] ** 2;
   const high = judge.kappa(distanceM[0]) * radiusM[1] ** 2;
-  return { low, high: Math.max(low * 1.001, Math.min(high, Math.max(LARGEST_PHASE, 4 * low))) };
+  return {
+    low,
+    high: Math.max(low * 1.001, Math.min(high, Math.max(LARGEST_PHASE, 4 * low))),
+    gapM: task.detector.gapM ?? 0,
+    distanceSpan: distanceM[1] / distanceM[0],
+  };
 }
 
 /** Distances in even ratios, rounded to a micrometre: a search that knows them all need not table every distance. */

@@ -14,6 +14,14 @@ export interface DetectorLimits {
   responsivityAW: number;
   /** Noise current density of the circuit, A/√Hz. */
   noiseCurrentA: number;
+  /** What differences of elements keep of the light's common intensity noise (see `noisePower`); 0 if left out. */
+  commonModeLeak?: number;
+  /** Whether weighted areas must cancel, so that the light's intensity noise does: single elements are then left out. */
+  balanced?: boolean;
+  /** `one` leaves layouts of several weighted elements out; several if left out. */
+  elements?: 'one' | 'several';
+  /** Least gap between elements in one plane, metres; 0 if left out. */
+  gapM?: number;
 }
 
 /** What counts as good enough. */

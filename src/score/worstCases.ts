@@ -9,7 +9,7 @@ import { ConditionReader } from './conditionReader.ts';
 import type { Condition, Kind } from './conditions.ts';
 import { kindsOf, particleOf } from './conditions.ts';
 import type { ElementNodes } from './elementNodes.ts';
-import { weightedNodes } from './elementNodes.ts';
+import { nearestPlane, planesOf, weightedNodes } from './elementNodes.ts';
 import { SEARCH_FINENESS } from './fineness.ts';
 import type { FirstConditions } from './firstConditions.ts';
 import { firstConditions } from './firstConditions.ts';
@@ -104,6 +104,29 @@ export class WorstCases {
     }));
   }
 
+  /**
+   * What each element reads over the extinction in a case that was found, for a weight of one.
+   *
+   * @param elements, radiusM, distanceM of the design that it was found for
+   */
+  ratiosAt(
+    elements: readonly ElementNodes[],
+    radiusM: number,
+    distanceM: number,
+    { condition, positionM }: WorstCase,
+  ): number[] {
+    return elements.map((element) => {
+      const { flightsOf, corrections } = this.#scene(
+        [{ ...element, weight: 1 }],
+        radiusM,
+        distanceM,
+        1,
+        NO_SYMMETRY,
+      );
+      return 1 + corrections(condition, flightsOf(Float64Array.from(positionM)))[0];
+    });
+  }
+
   #scene(
     elements: readonly ElementNodes[],
     radiusM: number,
@@ -112,24 +135,30 @@ export class WorstCases {
     symmetry: Symmetry,
   ): Scene {
     const { offsetM, crossing } = this.#task.placement;
-    const places = this.#sampling.positions(radiusM, distanceM, symmetry);
+    const nearestM = nearestPlane(elements, distanceM);
+    const places = this.#sampling.positions(radiusM, nearestM, symmetry);
     const flightsOf = (middles: Float64Array) =>
-      this.#sampling.flights(middles, radiusM, distanceM, NO_SYMMETRY);
+      this.#sampling.flights(middles, radiusM, nearestM, NO_SYMMETRY);
     const flights = flightsOf(places);
     const farthestM = Math.max(flights.farthestM, offsetM + (crossing?.spanM ?? 0) / 2);
-    const nodes = weightedNodes(elements);
-    const view = { distanceM, radiusM, offsetM: farthestM };
+    const planes = planesOf(elements, distanceM).map((plane) => ({
+      nodes: weightedNodes(plane.elements),
+      view: { distanceM: plane.distanceM, radiusM, offsetM: farthestM },
+    }));
     return {
-      nodes,
-      view,
+      planes,
       places,
       flights,
       flightsOf,
-      phasePerMetre: this.#sampling.phasePerMetre(radiusM, distanceM),
+      phasePerMetre: this.#sampling.phasePerMetre(radiusM, nearestM),
       corrections: (condition, those) => {
-        const read = this.#reader.at(condition, view);
         const ratios = new Float64Array(those.count);
-        those.means((x, y) => read(nodes, x, y), ratios);
+        const further = new Float64Array(those.count);
+        planes.forEach(({ nodes, view }, p) => {
+          const read = this.#reader.at(condition, view);
+          those.means((x, y) => read(nodes, x, y), p === 0 ? ratios : further);
+          if (p > 0) for (let i = 0; i < ratios.length; i++) ratios[i] += further[i];
+        });
         return ratios.map((ratio) => ratio / gain - 1);
       },
     };
@@ -148,10 +177,13 @@ export class WorstCases {
   }
 
   /** Conditions of the first look: of a large outline or a wide line, whose tables take long, only every second or third of those between. */
-  #firstOf({ nodes, view }: Scene, flights: FlightMeans): Condition[] {
+  #firstOf({ planes }: Scene, flights: FlightMeans): Condition[] {
     const reader = this.#reader;
-    const table = reader.colours * (SOLVING_EFFORT + TABLE_EFFORT * reader.tableSize(view));
-    const steps = table + (flights.count * nodes.length) / 4;
+    let steps = 0;
+    for (const { nodes, view } of planes) {
+      const table = reader.colours * (SOLVING_EFFORT + TABLE_EFFORT * reader.tableSize(view));
+      steps += table + (flights.count * nodes.length) / 4;
+    }
     const { given, between } = this.#first;
     const stride = Math.ceil((between.length * steps) / MOST_STEPS);
     return [...given, ...between.filter((_, i) => (i + Math.floor(i / stride)) % stride === 0)];

@@ -2,8 +2,8 @@ import { describe, expect, it } from 'vitest';
 import { randomStream } from '../../src/base/random.ts';
 import { ringArea, ringsRadius } from '../../src/outline/area.ts';
 import { isDrawn } from '../../src/outline/families/family.ts';
-import { ringLoop } from '../../src/outline/families/rings.ts';
 import { polygonise } from '../../src/outline/polygonise.ts';
+import { ringLoop } from '../../src/outline/ring.ts';
 import type { Segment } from '../../src/outline/segment.ts';
 import { drawn, ringsOf, someValues, UNIT_M, VARIANTS, variantNamed } from './drawings.ts';
 

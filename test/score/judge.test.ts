@@ -4,7 +4,7 @@ import { randomStream } from '../../src/base/random.ts';
 import { constantIndex } from '../../src/optics/indexModel.ts';
 import { ringsRadius } from '../../src/outline/area.ts';
 import { isDrawn } from '../../src/outline/families/family.ts';
-import { ringLoop } from '../../src/outline/families/rings.ts';
+import { ringLoop } from '../../src/outline/ring.ts';
 import type { Loop, OutlineElement, Shape } from '../../src/outline/shape.ts';
 import { samplePositions } from '../../src/reading/positions.ts';
 import { REPORT_FINENESS, SEARCH_FINENESS } from '../../src/score/fineness.ts';

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { LinearModels } from '../../src/numeric/linearModel.ts';
-import { ringLoop } from '../../src/outline/families/rings.ts';
+import { ringLoop } from '../../src/outline/ring.ts';
 import type { Shape } from '../../src/outline/shape.ts';
 import { REPORT_FINENESS } from '../../src/score/fineness.ts';
 import { Judge } from '../../src/score/judge.ts';

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { LinearModels } from '../../src/numeric/linearModel.ts';
-import { ringLoop } from '../../src/outline/families/rings.ts';
+import { ringLoop } from '../../src/outline/ring.ts';
 import type { Loop, Shape } from '../../src/outline/shape.ts';
 import { ConditionReader } from '../../src/score/conditionReader.ts';
 import { kindsOf } from '../../src/score/conditions.ts';

@@ -1,6 +1,6 @@
+import { ringLoop } from '../ring.ts';
 import type { Shape } from '../shape.ts';
 import type { PhaseLimits, Variant } from './family.ts';
-import { ringLoop } from './rings.ts';
 
 /** A full disc about the axis. One parameter: the phase of its rim. */
 export function discVariants(limits: PhaseLimits): Variant[] {

@@ -2,13 +2,26 @@ import type { RandomSource } from '../../base/random.ts';
 import type { Shape } from '../shape.ts';
 
 /** The families, in the order in which tables name them. */
-export const FAMILY_NAMES = ['disc', 'rings', 'ramp', 'fourier', 'polygon', 'sectors'] as const;
+export const FAMILY_NAMES = [
+  'disc',
+  'rings',
+  'ramp',
+  'fourier',
+  'polygon',
+  'sectors',
+  'grid',
+  'splitter',
+] as const;
 export type FamilyName = (typeof FAMILY_NAMES)[number];
 
 /** The span of phases η = κρ² that a search may use: from the brief's radii and distances. */
 export interface PhaseLimits {
   low: number;
   high: number;
+  /** Least gap between elements in one plane, metres; as small as can be drawn if left out. */
+  gapM?: number;
+  /** Farthest over nearest distance that a detector may have; 1 if left out. */
+  distanceSpan?: number;
 }
 
 /** One number that a family varies, with the range to which every method of the search keeps it. */
@@ -32,6 +45,8 @@ export interface Variant {
   /** Name of its own within all variants: `rings-3-open`. */
   id: string;
   parameters: readonly Parameter[];
+  /** Draws several elements whose weights are to be solved for. */
+  weighted?: true;
   /** Draws the outline; `values` run in the order of `parameters`, each within its range. */
   draw(values: ArrayLike<number>, unitM: number): Shape | Misdrawn;
   /** Numbers that must all be 0 or above for the outline to be drawn, smooth in the values; none where any values do. */

@@ -1,26 +1,20 @@
 import type { RandomSource } from '../../base/random.ts';
+import { ringLoop, THINNEST_M } from '../ring.ts';
 import type { Loop, Shape } from '../shape.ts';
 import type { Misdrawn, PhaseLimits, Variant } from './family.ts';
+import { weightedRingsVariants } from './weightedRings.ts';
 
 /** Thinnest ring and gap that are drawn, in phase: thinner ones are merged with their neighbours. */
 const THINNEST = 1e-3;
 
-/** And in metres: on the files' grid of 1 nm the rims of a thinner one could touch. */
-const THINNEST_M = 1e-8;
-
-/** A circle about the axis: sense +1 for an outer rim, −1 for a hole. */
-export function ringLoop(radiusM: number, sense: 1 | -1): Loop {
-  return [{ kind: 'arc', centre: [0, 0], radius: radiusM, from: 0, to: sense * 2 * Math.PI }];
-}
-
-/** One to four concentric annuli, the innermost with a closed middle (`rings-n`) or an open one (`rings-n-open`). */
+/** One to four concentric annuli, the innermost with a closed middle (`rings-n`) or an open one (`rings-n-open`); and weighted ones. */
 export function ringsVariants(limits: PhaseLimits): Variant[] {
   const variants: Variant[] = [];
   for (let count = 1; count <= 4; count++) {
     variants.push(ringsVariant(count, false, limits));
     if (count > 1) variants.push(ringsVariant(count, true, limits));
   }
-  return variants;
+  return [...variants, ...weightedRingsVariants(limits)];
 }
 
 function ringsVariant(count: number, open: boolean, limits: PhaseLimits): Variant {
