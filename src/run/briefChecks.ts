@@ -5,6 +5,8 @@ import { coversWavelength, refractiveIndex } from '../optics/indexModel.ts';
 import { LINE_REACH } from '../optics/light.ts';
 import type { Particle, Sphere } from '../optics/particle.ts';
 import { isTabled } from '../optics/particle.ts';
+import type { FamilyName } from '../outline/families/family.ts';
+import { LEAST_SPLIT } from '../outline/families/splitter.ts';
 import type { Path, Report } from './briefReport.ts';
 import type { briefSchema } from './briefSchema.ts';
 import { checkTable } from './checkTables.ts';
@@ -34,6 +36,7 @@ export function checkTogether(brief: BriefValues, report: Report, folder: string
   checkFocus(brief, entries.flat(), report);
   checkGeometry(brief, Math.max(0, ...entries.flat().map(({ diameterM }) => diameterM)), report);
   checkIndices(brief, entries, report);
+  checkLayouts(brief, report);
   checkSpread(brief.placement?.spread, brief.medium?.name, entries.flat(), report);
   return entries;
 }
@@ -62,6 +65,32 @@ function checkLight({ light }: BriefValues, report: Report): void {
   if (shares > 1 - 1e-5) {
     const found = `shares of ${Number((100 * shares).toPrecision(7))} % together`;
     report.refuse(['light', 'also'], 'shares that leave at least 0.001 % to the main line', found);
+  }
+}
+
+/** Families that draw several weighted elements, and those that draw nothing else. */
+const LAYOUTS: readonly FamilyName[] = ['rings', 'grid', 'splitter'];
+const LAYOUTS_ALONE: readonly FamilyName[] = ['grid', 'splitter'];
+
+/** A search must have something to draw. */
+function checkLayouts({ detector, families }: BriefValues, report: Report): void {
+  if (detector === undefined || families === undefined) return;
+  const { elements, balanced, distance } = detector;
+  if (balanced && elements === 'one') {
+    report.refuse(['detector', 'elements'], 'several, which balanced: true needs');
+  } else if (balanced && !families.some((family) => LAYOUTS.includes(family))) {
+    report.refuse(['families'], `at least one of ${LAYOUTS.join(', ')}, which balanced: true needs`);
+  } else if (elements === 'one' && families.every((family) => LAYOUTS_ALONE.includes(family))) {
+    report.refuse(
+      ['families'],
+      `one that draws single elements: ${LAYOUTS_ALONE.join(' and ')} draw several`,
+    );
+  } else if (
+    distance !== undefined &&
+    families.every((family) => family === 'splitter') &&
+    distance[1] < LEAST_SPLIT * distance[0]
+  ) {
+    report.refuse(['families'], `more than splitter, or distances that are ${LEAST_SPLIT} times apart`);
   }
 }
 

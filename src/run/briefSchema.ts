@@ -20,6 +20,7 @@ import {
   quantityRules,
   refused,
   textLine,
+  trueOrFalse,
   wholeNumber,
   word,
   words,
@@ -114,6 +115,10 @@ export function briefSchema(units: Units, presets: string, title: string) {
       radius: required(quantityRange('length', ['1 um', '1 m'], '50 um to 2 mm')),
       responsivity: withDefault('0.42 A/W', quantity('responsivity', ['1e-6 A/W', '1e9 A/W'], '0.42 A/W')),
       noiseCurrent: withDefault('2 pA', quantity('current', ['0 pA', '1 A'], '2 pA')),
+      elements: withDefault('several', word(['several', 'one'])),
+      gap: withDefault('10 um', quantity('length', ['0 um', '10 mm'], '10 um')),
+      balanced: withDefault(false, trueOrFalse()),
+      commonModeRejection: withDefault('none', orNone(plainNumber(0, 300, 'a number of dB'))),
     }),
     target: section({
       correction: required(quantity('ratio', ['1e-7 %', '99.9 %'], '1 %')),

@@ -7,8 +7,10 @@ import type { OutlineElement } from '../outline/shape.ts';
  */
 export function designHash(distanceM: number, elements: readonly OutlineElement[]): string {
   const hash = createHash('sha256').update(`${distanceM}`);
-  for (const { weight, rings } of elements) {
+  for (const { weight, rings, distanceM: own, share } of elements) {
     hash.update(`\nelement ${weight}`);
+    if (own !== undefined) hash.update(` at ${own}`);
+    if (share !== undefined) hash.update(` of ${share}`);
     for (const ring of rings) hash.update(`\nring ${Array.from(ring, nanometres).join(' ')}`);
   }
   return hash.digest('hex').slice(0, 12);

@@ -7,6 +7,9 @@ import type { RankedDesign } from './ranking.ts';
 /** One element. */
 interface ElementJson {
   weight: number;
+  /** Where it stands in another plane than the design's, and its part of the light: behind a beam splitter. */
+  distance_m?: number;
+  share?: number;
   rings_mm: [x: number, y: number][][];
   /**
    * The same rings as straight edges and arcs, where they consist of these: each vertex with the bulge of what follows it, the
@@ -52,10 +55,12 @@ export function designToJson(design: RankedDesign): DesignJson {
   };
 }
 
-function elementToJson({ weight, rings, curves }: OutlineElement): ElementJson {
+function elementToJson({ weight, rings, curves, distanceM, share }: OutlineElement): ElementJson {
   const inMm = (metres: number) => Number((metres * 1e3).toFixed(DECIMALS)) + 0;
   return {
     weight,
+    ...(distanceM !== undefined && { distance_m: distanceM }),
+    ...(share !== undefined && { share }),
     rings_mm: rings.map((ring) =>
       Array.from({ length: ring.length / 2 }, (_, k) => [inMm(ring[2 * k]), inMm(ring[2 * k + 1])]),
     ),

@@ -42,10 +42,16 @@ export function judgeOutline(
 ): OutlineJudge {
   const distance = chooseDistance(task, given, distanceM);
   const radiusM = ringsRadius(given.elements.flatMap(({ rings }) => rings));
+  // The sums of several planes are no harder than the nearest of them.
+  const distances = given.elements.map(({ distanceM: own }) => own ?? distance);
   const around: Task = {
     ...task,
     placement: { ...task.placement, offsetM: place === null ? task.placement.offsetM : Math.hypot(...place) },
-    detector: { ...task.detector, distanceM: [distance, distance], radiusM: [radiusM, radiusM] },
+    detector: {
+      ...task.detector,
+      distanceM: [Math.min(...distances), Math.max(...distances)],
+      radiusM: [radiusM, radiusM],
+    },
   };
   checkGeometry(around, given.file);
   checkEffort(around, place === null, given.file);

@@ -93,6 +93,10 @@ function fillBrief(values: BriefValues, particles: Particle[], defaults: readonl
         radiusM: detector.radius,
         responsivityAW: detector.responsivity,
         noiseCurrentA: detector.noiseCurrent,
+        elements: detector.elements,
+        gapM: detector.gap,
+        balanced: detector.balanced,
+        commonModeLeak: leakOf(detector.commonModeRejection),
       },
       target: {
         correction: target.correction,
@@ -120,6 +124,11 @@ function fillBrief(values: BriefValues, particles: Particle[], defaults: readonl
     // Searches and readings do not ask for the built instrument's.
     defaults: defaults.filter((line) => !isOfUncertainties(line)),
   };
+}
+
+/** The part of a current that differences keep, from the rejection of common ones in dB. */
+function leakOf(rejectionDb: number | null): number {
+  return rejectionDb === null ? 0 : 10 ** (-rejectionDb / 20);
 }
 
 function beamOf({ waist, focus }: { waist: number; focus: number }): GaussianBeam {

@@ -14,6 +14,7 @@ import { isNumber, readRing } from './readRing.ts';
 const MOST_POINTS = 100_000;
 const MOST_RINGS = 1000;
 const LARGEST_WEIGHT = 1e6;
+const LEAST_SHARE = 1e-6;
 
 const ID = /^[A-Za-z0-9][A-Za-z0-9._-]{0,59}$/;
 const FAMILIES: readonly string[] = [...FAMILY_NAMES, 'given'];
@@ -28,7 +29,13 @@ const DESIGN_KEYS: readonly (keyof DesignJson)[] = [
   'rank',
   'meetsTarget',
 ];
-const ELEMENT_KEYS: readonly (keyof DesignJson['elements'][number])[] = ['weight', 'rings_mm', 'curves_mm'];
+const ELEMENT_KEYS: readonly (keyof DesignJson['elements'][number])[] = [
+  'weight',
+  'distance_m',
+  'share',
+  'rings_mm',
+  'curves_mm',
+];
 
 /**
  * Reads a design's geometry from its plain form. Its scores and rank are passed over: they belong to the brief that they
@@ -82,7 +89,7 @@ function readElement(value: unknown, key: string, mistakes: JsonMistakes): Outli
   const nothing = { weight: 1, rings: [] };
   const element = mistakes.mapping(key, value, ELEMENT_KEYS);
   if (element === null) return nothing;
-  const { weight, rings_mm, curves_mm } = element;
+  const { weight, distance_m, share, rings_mm, curves_mm } = element;
   if (!isNumber(weight, -LARGEST_WEIGHT, LARGEST_WEIGHT) || weight === 0) {
     const range = `from -${LARGEST_WEIGHT} to ${LARGEST_WEIGHT}`;
     mistakes.refuse(`${key}.weight`, weight, `a number other than 0, ${range}`);
@@ -92,9 +99,21 @@ function readElement(value: unknown, key: string, mistakes: JsonMistakes): Outli
     mistakes.refuse(`${key}.rings_mm`, rings_mm, 'a list with at least one ring of points [x, y]');
     return nothing;
   }
+  if (distance_m !== undefined && !isNumber(distance_m, ...DISTANCES_M)) {
+    mistakes.refuse(`${key}.distance_m`, distance_m, `a distance from ${DISTANCES_M.join(' to ')} m`);
+  }
+  if (share !== undefined && !isNumber(share, LEAST_SHARE, 1)) {
+    mistakes.refuse(`${key}.share`, share, `a part of the light from ${LEAST_SHARE} to 1`);
+  }
   const rings = rings_mm.map((ring, r) => readRing(ring, `${key}.rings_mm[${r}]`, mistakes));
   const curves = curves_mm === undefined ? null : readCurves(curves_mm, rings, `${key}.curves_mm`, mistakes);
-  return { weight, rings, ...(curves && { curves }) };
+  return {
+    weight,
+    ...(distance_m !== undefined && { distanceM: distance_m as number }),
+    ...(share !== undefined && { share: share as number }),
+    rings,
+    ...(curves && { curves }),
+  };
 }
 
 function checkSize(elements: readonly OutlineElement[], mistakes: JsonMistakes): void {

@@ -71,6 +71,11 @@ export function words<const W extends string>(known: readonly W[]): ValueRule<W[
   );
 }
 
+/** YAML's true or false. */
+export function trueOrFalse(): ValueRule<boolean> {
+  return bySchema(z.boolean({ error: 'true or false' }));
+}
+
 /** A number without a unit, both ends included. */
 export function plainNumber(from: number, to: number, what: string): ValueRule<number> {
   const expected = `${what} from ${from} to ${to}`;

@@ -14,7 +14,8 @@ const MOST_DIRECTED = 4;
 /**
  * Designs with the least `areaOverFloor` that any mask could have at their distance, of their gain and worst correction. Left
  * without: in a brief with a preferred direction all but the four fastest that keep the target's correction, or come nearest; all
- * where a source has a finite angle, or a focused beam a direction.
+ * where a source has a finite angle, or a focused beam a direction; and layouts that weigh an element below 0 or stand in several planes, of which
+ * the bound is not.
  */
 export async function withBounds<D extends Design>(
   designs: readonly D[],
@@ -31,14 +32,23 @@ export async function withBounds<D extends Design>(
   });
 }
 
-function toBound<D extends Design>(designs: readonly D[], task: Task): readonly D[] {
+function toBound<D extends Design>(all: readonly D[], task: Task): readonly D[] {
   if (task.light.sourceAngleRad) return [];
+  const designs = all.filter(isMask);
   if (!hasDirection(task)) return designs;
   if (task.light.beam !== undefined) return [];
   const beyond = ({ scores }: Design) => Math.max(1, worstOf(scores) / task.target.correction);
   return designs
     .toSorted((p, q) => beyond(p) - beyond(q) || p.scores.snr.time_s - q.scores.snr.time_s)
     .slice(0, MOST_DIRECTED);
+}
+
+/** Whether a design reads as a mask would that lets through between nothing and all: what the bound is of. */
+function isMask({ elements }: Design): boolean {
+  return elements.every(
+    ({ weight, distanceM, share }) =>
+      weight > 0 && weight <= 1 && distanceM === undefined && share === undefined,
+  );
 }
 
 function jobFor({ distanceM, scores }: Design, task: Task): MaskJob {

@@ -54,7 +54,7 @@ export function noisePower(
     else minus -= weights[j] * currents[j];
   }
   const common = plus - minus;
-  return own + commonPerHz * (common * common + leak * leak * plus * minus);
+  return own + commonPerHz * common * common + commonPerHz * leak * leak * plus * minus;
 }
 
 /**

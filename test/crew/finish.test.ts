@@ -18,6 +18,9 @@ const CANDIDATES = [
   { variant: 'sectors-arc-2-fold-1', vector: [0.8, 1, 4] },
 ];
 
+/** Families of one element; `layouts.test.ts` has those of several. */
+const SINGLE = FAMILY_NAMES.filter((name) => name !== 'grid' && name !== 'splitter');
+
 describe('finish', async () => {
   const judge = new Judge(OFFSET, REPORT_FINENESS);
   const space = searchSpace(OFFSET, FAMILY_NAMES, judge);
@@ -27,7 +30,7 @@ describe('finish', async () => {
   });
 
   it('gives one design a candidate, in their order', () => {
-    expect(designs.map(({ family }) => family)).toEqual(FAMILY_NAMES);
+    expect(designs.map(({ family }) => family)).toEqual(SINGLE);
     for (const { distanceM } of designs) expect(distanceM).toBe(0.02);
   });
 

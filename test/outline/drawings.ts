@@ -7,7 +7,7 @@ import { polygonise } from '../../src/outline/polygonise.ts';
 import type { Loop, Shape, ShapeElement } from '../../src/outline/shape.ts';
 
 /** The phases of the brief `offset-range`: 635 nm, 20 mm, radii up to 0.4 mm. */
-export const LIMITS = { low: 0.1, high: 39.6 };
+export const LIMITS = { low: 0.1, high: 39.6, gapM: 1e-6, distanceSpan: 3 };
 export const KAPPA = Math.PI / (635e-9 * 0.02);
 export const UNIT_M = 1 / Math.sqrt(KAPPA);
 

@@ -117,7 +117,7 @@ describe('hintsFor', () => {
       `search.candidates: the front has not come to rest, more than ${brief.search.candidates} may take it further`,
       'shop: the design lies at the smallest widths of mine, a finer process may lead further',
       'target.gain: free would let one calibrated factor for all particles be taken out',
-      'families: ramp, fourier, polygon, sectors were not looked at',
+      'families: ramp, fourier, polygon, sectors, grid, splitter were not looked at',
     ]);
   });
 });

@@ -6,6 +6,9 @@ import type { PhaseLimits, Variant } from './family.ts';
 /** How much farther the second detector is, for each variant. */
 const RATIOS = [1.5, 2] as const;
 
+/** Least ratio of the brief's distances that such detectors need. */
+export const LEAST_SPLIT = RATIOS[0];
+
 /**
  * Two detectors behind a beam splitter that gives each half of the light, the second one farther away: discs or annuli of a weight each.
  * Of the same outline they would have as much light, yet see other phases: a difference keeps the particle and loses the
