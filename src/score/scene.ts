@@ -3,7 +3,7 @@ import type { View } from './conditionReader.ts';
 import type { Condition } from './conditions.ts';
 
 /** The elements of a design in one plane, and how far its tables reach. */
-export interface ScenePlane {
+interface ScenePlane {
   nodes: Float64Array;
   view: View;
 }
