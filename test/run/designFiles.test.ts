@@ -164,7 +164,7 @@ describe('readDesignJson', () => {
     [{ ...DESIGN, elements: [] }, 'd.json: elements: found [], expected a list with at least one element'],
     [
       { ...DESIGN, elements: [7] },
-      'd.json: elements[0]: found 7, expected an object with the keys weight, distance_m, share, rings_mm',
+      'd.json: elements[0]: found 7, expected an object with the keys weight, distance_m, share, rings_mm, curves_mm',
     ],
     [
       { ...DESIGN, elements: [{ wieght: 1, rings_mm: [SQUARE] }] },
