@@ -8,6 +8,7 @@ const SI_UNIT = {
   irradiance: 'W/m^2',
   responsivity: 'A/W',
   current: 'A',
+  power: 'W',
   time: 's',
   temperature: 'K',
   viscosity: 'Pa s',
@@ -24,6 +25,7 @@ const IN_WORDS: Record<Dimension, [name: string, example: string]> = {
   irradiance: ['an irradiance with its unit', '5 W/cm^2'],
   responsivity: ['a responsivity with its unit', '0.42 A/W'],
   current: ['a current with its unit', '2 pA'],
+  power: ['a power with its unit', '2 mW'],
   time: ['a time with its unit', '1 ms'],
   temperature: ['a temperature with its unit', '20 degC'],
   viscosity: ['a viscosity with its unit', '1.2 mPa s'],
@@ -150,6 +152,12 @@ const TABLE_UNITS: Record<Dimension, [unit: string, factor: number][]> = {
     ['µA', 1e-6],
     ['mA', 1e-3],
     ['A', 1],
+  ],
+  power: [
+    ['nW', 1e-9],
+    ['µW', 1e-6],
+    ['mW', 1e-3],
+    ['W', 1],
   ],
   time: [
     ['ns', 1e-9],

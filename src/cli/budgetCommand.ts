@@ -3,6 +3,7 @@ import { formatQuantity } from '../base/quantity.ts';
 import { areaText, countText, percentText, quantityText } from '../draw/quantityText.ts';
 import { INPUT_UNITS } from '../metrology/extinctionModel.ts';
 import type { BudgetLine } from '../metrology/uncertaintyBudget.ts';
+import type { LengthUnit } from '../outline/files/lengthUnit.ts';
 import { budgetCsv } from '../run/budgetCsv.ts';
 import { chooseDesign } from '../run/chooseDesign.ts';
 import type { ExtinctionBudget } from '../run/extinctionBudget.ts';
@@ -13,6 +14,7 @@ import { prepareFolder } from '../run/resultsFolder.ts';
 import { sphereLike } from '../run/sphereLike.ts';
 import { readingWarnings } from '../run/warnings.ts';
 import { refuseExisting, writeWhole } from '../run/writeWhole.ts';
+import { areaWithUncertainty } from './areaWithUncertainty.ts';
 import { shortCount } from './designColumns.ts';
 import { EXIT } from './exit.ts';
 import { uninterrupted } from './interrupt.ts';
@@ -24,6 +26,7 @@ import { table } from './table.ts';
 interface Options {
   outline?: string;
   design?: string;
+  unit?: LengthUnit;
   distance?: string;
   diameter?: string;
   material?: string;
@@ -122,7 +125,7 @@ function printBudget(result: ExtinctionBudget): void {
     ? `${countText(degreesOfFreedom)} effective degrees of freedom`
     : 'infinite degrees of freedom';
   printWrapped(
-    `Measured extinction ${plusMinus(budget.value, expandedUncertainty)} ` +
+    `Measured extinction ${areaWithUncertainty(budget.value, expandedUncertainty)} ` +
       `(${percentText(coverage)} coverage, k = ${coverageFactor.toFixed(2)}, ${freedom}); ` +
       `standard uncertainty ${areaText(standardUncertainty)}, ${percentText(standardUncertainty / budget.value)}.`,
   );
@@ -137,14 +140,6 @@ function printBudget(result: ExtinctionBudget): void {
       `${intervalText(run.shortest)}. The budget's ends are ${areaText(check.low)} and ${areaText(check.high)} off, ` +
       `tolerance ${areaText(check.tolerance)}. ${verdict}`,
   );
-}
-
-/** `8.501 µm² ± 0.21 µm²`, the value to the digits that its uncertainty leaves. */
-function plusMinus(valueM2: number, uncertaintyM2: number): string {
-  const [unit, perUnit] = valueM2 < 1e-9 ? ['µm²', 1e12] : ['mm²', 1e6];
-  const uncertainty = Number((uncertaintyM2 * perUnit).toPrecision(2));
-  const decimals = uncertainty > 0 ? Math.max(0, 1 - Math.floor(Math.log10(uncertainty))) : 4;
-  return `${(valueM2 * perUnit).toFixed(decimals)} ${unit} ± ${uncertainty.toFixed(decimals)} ${unit}`;
 }
 
 const intervalText = ([least, most]: readonly [number, number]) => `${areaText(least)} to ${areaText(most)}`;

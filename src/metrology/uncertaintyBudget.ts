@@ -54,12 +54,14 @@ export interface Budget {
  * meant for inputs that are not correlated), and a coverage factor from Student's t at the next lower whole number of them (G.4.1).
  *
  * @param coverage above 0 and below 1, such as 0.95
+ * @param factorFor the coverage factor, for callers that keep those they have met
  */
 export function uncertaintyBudget(
   model: Model,
   inputs: readonly BudgetInput[],
   coverage: number,
   correlations: readonly Correlation[] = [],
+  factorFor = coverageFactor,
 ): Budget {
   const values = Float64Array.from(inputs, ({ distribution }) => distribution.mean);
   const parts = inputs.map((input, i) => {
@@ -93,7 +95,7 @@ export function uncertaintyBudget(
   );
   const combined = Math.sqrt(variance);
   const degreesOfFreedom = effectiveFreedom(combined, lines);
-  const k = coverageFactor(coverage, degreesOfFreedom);
+  const k = factorFor(coverage, degreesOfFreedom);
   return {
     value: model(values),
     lines,

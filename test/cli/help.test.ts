@@ -10,6 +10,7 @@ const COMMANDS = [
   'reading',
   'response',
   'budget',
+  'evaluate',
   'bound',
   'compare',
   'draw',
