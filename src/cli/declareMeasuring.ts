@@ -63,8 +63,8 @@ Example:
       `
 Example:
   $ rimwright evaluate my.yaml --design rings-1 --data monday.csv --csv out.csv
-  reads power_without_uW and power_with_uW (or W, mW, nW, or current_... in A, mA,
-  uA, nA), and if they are there time_ms, label, reference_diameter_um and
+  reads power_without_uW and power_with_uW (or W, mW, nW, or current_... in A,
+  mA, uA, nA), and if they are there time_ms, label, reference_diameter_um and
   reference_uncertainty_um.
   $ rimwright evaluate my.yaml --design rings-1 --data log.csv \\
       --without ch1 --with ch2 --column-unit nA`,

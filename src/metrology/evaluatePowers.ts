@@ -7,9 +7,9 @@ import type { PowerReading } from './powerReading.ts';
 import { coverageFactor, uncertaintyBudget } from './uncertaintyBudget.ts';
 
 /** `unusable` rows have no result; `doubtful` ones have, and a reason not to trust it. */
-export type Grade = 'good' | 'doubtful' | 'unusable';
+type Grade = 'good' | 'doubtful' | 'unusable';
 
-export interface Extinction {
+interface Extinction {
   valueM2: number;
   standardUncertaintyM2: number;
   degreesOfFreedom: number;
