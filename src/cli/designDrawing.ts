@@ -5,7 +5,10 @@ import { drawSvg } from '../draw/svg.ts';
 import { designHash } from '../run/designHash.ts';
 import type { GivenDesign } from '../run/givenDesign.ts';
 import type { RankedDesign } from '../run/ranking.ts';
+import { edgeSensitivities } from '../score/edgeSensitivity.ts';
+import type { Judge } from '../score/judge.ts';
 import { worstOf } from '../score/scores.ts';
+import { criticalEdges, shopFacts } from './sheetFacts.ts';
 
 export const DRAWING_FORMATS = ['dxf', 'svg'] as const;
 export type DrawingFormat = (typeof DRAWING_FORMATS)[number];
@@ -16,22 +19,38 @@ export function drawAs(format: DrawingFormat, drawing: Drawing): string {
 }
 
 /** A drawing of a design that a search found, with what its maker should know. */
-export function rankedDrawing(title: string, design: RankedDesign): Drawing {
-  const { id, distanceM, elements, scores, shop } = design;
+export function rankedDrawing(title: string, design: RankedDesign, judge: Judge): Drawing {
+  const { id, scores, shop } = design;
   const gain = Number(scores.gain.toPrecision(5));
+  const worst = percentText(worstOf(scores));
+  const drawing = givenDrawing({ ...design, id: `${title}: ${id}` }, design.distanceM, judge);
   return {
-    title: `${title}: ${id}`,
-    elements,
-    distanceM,
-    hash: designHash(distanceM, elements),
+    ...drawing,
     notes: [
-      `Radius ${quantityText(scores.radius_m, 'm')}, worst correction ${percentText(worstOf(scores))}, gain ${gain}`,
+      `Radius ${quantityText(scores.radius_m, 'm')}, worst correction ${worst}, gain ${gain}`,
+      ...drawing.notes,
       ...shop.notes,
     ],
   };
 }
 
-/** A drawing of an outline from a file. Its scores depend on a brief, so the sheet does not tell them. */
-export function givenDrawing({ id, elements }: GivenDesign, distanceM: number): Drawing {
-  return { title: id, elements, distanceM, hash: designHash(distanceM, elements), notes: [] };
+/**
+ * A drawing of an outline from a file. Its scores depend on a brief, so the sheet does not tell them.
+ *
+ * @param judge of the brief, where there is one: then the sheet names the shop's rules and the critical edges
+ */
+export function givenDrawing(
+  { id, elements }: Pick<GivenDesign, 'id' | 'elements'>,
+  distanceM: number,
+  judge: Judge | null,
+): Drawing {
+  const plain = { title: id, elements, distanceM, hash: designHash(distanceM, elements) };
+  if (judge === null) return { ...plain, facts: [], notes: [] };
+  const { shop } = judge.task;
+  const sensitivities = edgeSensitivities(judge, elements, distanceM);
+  return {
+    ...plain,
+    facts: shopFacts(shop),
+    notes: criticalEdges(sensitivities, elements, shop?.edgeToleranceM ?? 0),
+  };
 }

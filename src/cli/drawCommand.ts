@@ -7,6 +7,8 @@ import { openBrief } from '../run/openBrief.ts';
 import { readDesignFile } from '../run/readDesignFile.ts';
 import { prepareFolder } from '../run/resultsFolder.ts';
 import { writeWhole } from '../run/writeWhole.ts';
+import { SEARCH_FINENESS } from '../score/fineness.ts';
+import { Judge } from '../score/judge.ts';
 import type { DrawingFormat } from './designDrawing.ts';
 import { DRAWING_FORMATS, drawAs, givenDrawing } from './designDrawing.ts';
 import { EXIT } from './exit.ts';
@@ -28,13 +30,13 @@ interface Options {
 export async function run(place: string, options: Options): Promise<number> {
   const formats = readFormats(options.formats);
   const chosen = await readDistance(options.distance);
-  const given = await openDesign(place, options);
+  const { given, judge } = await openDesign(place, options);
   const distanceM = chosen ?? given.distanceM;
   if (distanceM === null) {
     const expected = 'a distance, such as --distance "20 mm"';
     throw inputError([{ file: place, found: 'an outline without a distance', expected }]);
   }
-  const drawing = givenDrawing(given, distanceM);
+  const drawing = givenDrawing(given, distanceM, judge);
   const files = formats.map((format) => ({
     path: join(options.out, `${given.id}.${format}`),
     text: drawAs(format, drawing),
@@ -45,16 +47,20 @@ export async function run(place: string, options: Options): Promise<number> {
   return EXIT.done;
 }
 
-/** The design of a file; with an id, `place` may also be the brief in whose results it is. */
-async function openDesign(place: string, { design, unit }: Options): Promise<GivenDesign> {
+/** The design of a file; with an id, `place` may also be the brief in whose results it is, which then judges it. */
+async function openDesign(
+  place: string,
+  { design, unit }: Options,
+): Promise<{ given: GivenDesign; judge: Judge | null }> {
   if (design === undefined || extname(place).toLowerCase() === '.json') {
     const given = readDesignFile(place, design, unit);
     warn(given.notes ?? []);
-    return given;
+    return { given, judge: null };
   }
-  const { given, warnings } = chooseDesign(await openBrief(place), { design });
+  const opened = await openBrief(place);
+  const { given, warnings } = chooseDesign(opened, { design });
   warn(warnings);
-  return given;
+  return { given, judge: new Judge(opened.brief.task, SEARCH_FINENESS) };
 }
 
 function readFormats(text: string): DrawingFormat[] {

@@ -10,6 +10,8 @@ import type { OpenedBrief } from '../run/openBrief.ts';
 import type { SearchJson } from '../run/results.ts';
 import type { SearchResult } from '../run/search.ts';
 import type { TextFile } from '../run/writeWhole.ts';
+import { SEARCH_FINENESS } from '../score/fineness.ts';
+import { Judge } from '../score/judge.ts';
 import { DRAWING_FORMATS, drawAs, rankedDrawing } from './designDrawing.ts';
 
 /** The files of a results folder. */
@@ -21,13 +23,14 @@ export function resultFiles(
 ): TextFile[] {
   const { brief } = opened;
   const { designs } = result;
+  const judge = new Judge(brief.task, SEARCH_FINENESS);
   return [
     { path: 'front.json', text: jsonText(json) },
     { path: 'front.csv', text: frontCsv(designs) },
     { path: 'report.html', text: renderReport(reportInput(opened, result, json.warnings)) },
     { path: 'run.json', text: jsonText(runRecord(opened, result, json.warnings, workers)) },
     ...designs.flatMap((design) => {
-      const drawing = rankedDrawing(brief.title, design);
+      const drawing = rankedDrawing(brief.title, design, judge);
       return [
         ...DRAWING_FORMATS.map((format) => ({
           path: `drawings/${design.id}.${format}`,

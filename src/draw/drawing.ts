@@ -1,6 +1,7 @@
 import { inputError, type Problem } from '../base/errors.ts';
 import { ringArea } from '../outline/area.ts';
 import type { OutlineElement } from '../outline/shape.ts';
+import type { Fact } from './titleBlock.ts';
 
 /**
  * What every drawing is made from. Coordinates have their origin on the beam axis; x points right and y up for someone
@@ -10,6 +11,8 @@ export interface Drawing {
   title: string;
   /** Each element counts the light through its openings with its weight; outer rings run counter-clockwise, holes clockwise. */
   elements: readonly OutlineElement[];
+  /** What the shop must know, for the title block: sheet, tolerance, corners. */
+  facts: readonly Fact[];
   notes: readonly string[];
   /** Particle to mask, metres. */
   distanceM: number;

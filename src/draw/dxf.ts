@@ -94,6 +94,7 @@ function addNotes(writer: DxfWriter, drawing: Drawing): void {
       (element, e) =>
         `ELEMENT_${e + 1}: weight ${exactWeight(element.weight)}, open area ${areaText(elementArea(element))}`,
     ),
+    ...drawing.facts.map(({ label, text }) => `${label}: ${text}`),
     ...drawing.notes,
     `Design ${drawing.hash}`,
   ];

@@ -4,9 +4,10 @@ import { checkDrawing, type Drawing, VIEW_NOTE } from './drawing.ts';
 import { elementArea, largestRadius } from './elementMeasure.ts';
 import { hatchPattern, inkClass, inkColor } from './hatch.ts';
 import { shortDecimal as n, plainDecimal } from './plainDecimal.ts';
-import { markupText, wrapText } from './plainText.ts';
+import { markupText } from './plainText.ts';
 import { areaText, quantityText, weightText } from './quantityText.ts';
 import { roundDown } from './roundDown.ts';
+import { type Fact, titleBlock } from './titleBlock.ts';
 
 const MARGIN = 8;
 const VIEW_SIDE = 84;
@@ -42,8 +43,12 @@ export function drawSvg(drawing: Drawing): string {
   checkDrawing(drawing);
   const { elements } = drawing;
   const sheet = layOut(elements);
-  const lines = blockLines(drawing, sheet);
-  const height = sheet.blockTop + LINE_PITCH * (lines.length + 1) + MARGIN;
+  const { markup: block, bottom } = titleBlock(blockFacts(drawing, sheet), [VIEW_NOTE, ...drawing.notes], {
+    left: MARGIN,
+    top: sheet.blockTop,
+    width: sheet.width - 2 * MARGIN,
+  });
+  const height = bottom + MARGIN;
   const size = `${n(sheet.width)} ${n(height)}`;
   return [
     '<?xml version="1.0" encoding="UTF-8"?>',
@@ -55,7 +60,7 @@ export function drawSvg(drawing: Drawing): string {
     `<rect width="${n(sheet.width)}" height="${n(height)}" fill="#ffffff"/>`,
     enlargedView(elements, sheet),
     trueSizeFigure(elements, sheet),
-    titleBlock(lines, sheet),
+    block,
     '</svg>',
     '',
   ].join('\n');
@@ -149,25 +154,20 @@ function pathData({ rings }: OutlineElement): string {
     .join(' ');
 }
 
-function blockLines({ title, distanceM, elements, notes, hash }: Drawing, sheet: Sheet): string[] {
-  const width = Math.floor((sheet.width - 2 * MARGIN) / 1.7);
+/** What the title block states of every drawing, and its own facts between them. */
+function blockFacts({ title, distanceM, elements, facts, hash }: Drawing, sheet: Sheet): Fact[] {
   return [
-    title,
-    `Distance particle to mask: ${quantityText(distanceM, 'm')}`,
-    `Scale: small figure ${scaleText(1)}, enlarged view ${scaleText(sheet.scale)}; lengths in mm`,
-    ...elements.map(
-      (element, e) =>
-        `Element ${e + 1}: weight ${weightText(element.weight)}, open area ${areaText(elementArea(element))}`,
-    ),
-    VIEW_NOTE,
-    ...notes,
-    `Design ${hash}`,
-  ].flatMap((line) => wrapText(line, width));
-}
-
-function titleBlock(lines: readonly string[], { blockTop, width }: Sheet): string {
-  const rule = `<line x1="${MARGIN}" y1="${n(blockTop)}" x2="${n(width - MARGIN)}" y2="${n(blockTop)}" stroke="${INK}" stroke-width="0.4"/>`;
-  return [rule, ...lines.map((line, k) => text(MARGIN, blockTop + LINE_PITCH * (k + 1.3), line))].join('\n');
+    { label: 'Title', text: title },
+    { label: 'Distance, particle to mask', text: quantityText(distanceM, 'm') },
+    { label: 'Design', text: hash },
+    { label: 'Unit', text: 'millimetre' },
+    { label: 'Scale', text: `small figure ${scaleText(1)}, large view ${scaleText(sheet.scale)}` },
+    ...facts,
+    ...elements.map((element, e) => ({
+      label: `Element ${e + 1}`,
+      text: `weight ${weightText(element.weight)}, open area ${areaText(elementArea(element))}`,
+    })),
+  ];
 }
 
 function text(x: number, y: number, content: string): string {

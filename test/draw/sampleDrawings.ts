@@ -27,7 +27,18 @@ function starRing(outer: number, inner: number, points: number): Float64Array {
 }
 
 function drawing(title: string, elements: Drawing['elements']): Drawing {
-  return { title, elements, notes: ['Photomask, edge tolerance 0.5 µm.'], distanceM: 0.02, hash: '0f3a9c' };
+  const facts = [
+    { label: 'Sheet', text: 'Chrome on glass' },
+    { label: 'Edges', text: 'within 0.5 µm of where they are drawn, all around and on both sides' },
+  ];
+  return {
+    title,
+    elements,
+    facts,
+    notes: ['Critical edge: the outer rim.'],
+    distanceM: 0.02,
+    hash: '0f3a9c',
+  };
 }
 
 /** Outlines of the sizes that briefs ask for: 60 µm to 2 mm. */
