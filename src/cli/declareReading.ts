@@ -1,9 +1,11 @@
 import type { Command } from './commander.ts';
-import { lengthUnit, wholeNumber } from './optionRules.ts';
+import { lengthUnit, oneOf, wholeNumber } from './optionRules.ts';
 import type { Done } from './optionTexts.ts';
 import { AS_JSON, BRIEF, EXACT, ID, OUTLINE, SEEDS, UNIT } from './optionTexts.ts';
 
 const DIAMETERS = [2, 2000] as const;
+const BUILDS = [100, 10_000_000] as const;
+const BUILD_GAINS = ['nominal', 'recalibrated'] as const;
 const ROUGH_OUTLINES = [2, 10_000] as const;
 
 /** Commands that read given outlines. */
@@ -91,6 +93,48 @@ Example:
     .action(async (brief, files, options) =>
       done(await (await import('./compareCommand.ts')).run(brief, files, options)),
     );
+
+  declareYield(program, done);
+}
+
+/** The command that builds given outlines over and over. */
+function declareYield(program: Command, done: Done): void {
+  program
+    .command('yield')
+    .summary('how many builds of a design meet the target')
+    .description(
+      "Draws builds of a design within the brief's tolerances, judges each over the whole brief, and shows the share that meets the target, which tolerance spoils most, and what each would have to be.",
+    )
+    .argument('<brief>', BRIEF)
+    .option('--outline <file>', OUTLINE)
+    .option('--design <id>', ID)
+    .option('--distance <length>', 'distance from particle to detector')
+    .option('--tolerance <key = value>', "in place of the brief's; may be given again", repeated, [])
+    .option('--gain <is>', 'nominal, or recalibrated for each build', oneOf('--gain', BUILD_GAINS))
+    .option('--builds <n>', 'how many', wholeNumber('--builds', ...BUILDS), 100_000)
+    .option('--seed <n>', 'for their errors', wholeNumber('--seed', ...SEEDS), 1)
+    .option('--in-full', 'read every build in full, which may take an hour')
+    .option(
+      '--at-least <share>',
+      'exit 1 for a smaller yield; tolerances are tightened for it (default: 95 %)',
+    )
+    .option('--exact', EXACT)
+    .option('--workers <n>', 'worker threads (default: one a core)', wholeNumber('--workers', 1, 64))
+    .option('--csv <file>', 'write the worst correction of each build as CSV')
+    .option('--force', 'replace that file if it is there')
+    .option('--quiet', 'no progress and no notes')
+    .option('--json', AS_JSON)
+    .addHelpText(
+      'after',
+      `
+Example:
+  $ rimwright yield my.yaml --design rings-1
+  $ rimwright yield my.yaml --design rings-1 --tolerance "place = 1 um rms" \\
+      --tolerance "edge = 0.5 um" --at-least "90 %"
+  A size stands for limits either way, with rms for a standard deviation. Keys:
+  edge, kerf, place, distance, tilt, wavelength, index, size, averaging.`,
+    )
+    .action(async (brief, options) => done(await (await import('./yieldCommand.ts')).run(brief, options)));
 }
 
 /** Collects an option that may be given more than once. */

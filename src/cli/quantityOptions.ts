@@ -24,6 +24,14 @@ export async function readPosition(text: string | undefined): Promise<[x: number
   throw refused('--position', text, 'a place within 1 m of the axis');
 }
 
+/** `--at-least "95 %"` as a share above 0 and below 1, null where it is left out. */
+export async function readShare(text: string | undefined, option: string): Promise<number | null> {
+  if (text === undefined) return null;
+  const share = (await loadUnits()).parse(text, 'ratio', option);
+  if (share > 0 && share < 1) return share;
+  throw refused(option, text, 'a share above 0 and below 100 %');
+}
+
 /** Diameters that reference spheres may have, metres. */
 const DIAMETERS_M = [1e-11, 1e-2] as const;
 

@@ -1,5 +1,6 @@
 import { LinearModels } from '../numeric/linearModel.ts';
 import type { Fields, TableShelf } from '../reading/tableShelf.ts';
+import { BuildReader } from '../score/buildReader.ts';
 import { Certifier } from '../score/certifier.ts';
 import { leadingFields } from '../score/farZoneError.ts';
 import { REPORT_FINENESS, SEARCH_FINENESS } from '../score/fineness.ts';
@@ -8,6 +9,7 @@ import { Judge } from '../score/judge.ts';
 import { boundTools } from '../score/maskBound.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
 import { searchSpace } from '../score/searchSpace.ts';
+import { readBuilds } from './buildsJob.ts';
 import { explore } from './explore.ts';
 import type { FinishingJudges } from './finish.ts';
 import { finish } from './finish.ts';
@@ -24,6 +26,8 @@ export class Workshop {
   #fine: FinishingJudges | null = null;
   /** Likewise, for the first least mask. */
   #masks: MaskTools | null = null;
+  /** Likewise, for the first build of a design; all jobs of a crew are about one. */
+  #builds: BuildReader | null = null;
   readonly #space: SearchSpace;
 
   constructor(orders: Orders) {
@@ -57,6 +61,9 @@ export class Workshop {
       case 'mask':
         this.#masks ??= await this.#maskTools();
         return findMasks(job, this.#orders.task, this.#masks);
+      case 'builds':
+        this.#builds ??= new BuildReader(job.plan);
+        return readBuilds(job, this.#builds);
     }
   }
 

@@ -1,6 +1,7 @@
 import type { Uncertainties } from '../metrology/uncertainties.ts';
 import type { FamilyName } from '../outline/families/family.ts';
 import type { Task } from '../score/task.ts';
+import type { BriefTolerances } from './briefTolerances.ts';
 
 export { FAMILY_NAMES } from '../outline/families/family.ts';
 
@@ -9,6 +10,8 @@ export interface Brief {
   title: string;
   task: Task;
   families: FamilyName[];
+  /** How builds may differ from their drawing. */
+  tolerances: BriefTolerances;
   search: { candidates: number; seed: number };
   /** The medium's and the shop's names as written, for tables. */
   mediumName: string;
@@ -19,4 +22,6 @@ export interface Brief {
   uncertaintyDefaults: string[];
   /** Other keys that the brief left out, with the value used, in the brief's own notation: `light.drift: 0 nm`. */
   defaults: string[];
+  /** Those of `tolerances`, likewise. */
+  toleranceDefaults: string[];
 }

@@ -16,6 +16,7 @@ import type { ValueRule } from './valueRules.ts';
 import {
   fileName,
   orNone,
+  orWord,
   plainNumber,
   quantityRules,
   refused,
@@ -138,10 +139,27 @@ export function briefSchema(units: Units, presets: string, title: string) {
     }),
     shop: withDefault('none', orNone(shops)),
     families: withDefault([...FAMILY_NAMES], words(FAMILY_NAMES)),
+    tolerances: section(toleranceKeys(units)),
     search: section({
       candidates: withDefault(20_000, wholeNumber(100, 100_000_000)),
       seed: withDefault(1, wholeNumber(0, 2 ** 31 - 1)),
     }),
+  };
+}
+
+/** Keys of `tolerances`. But for the shop's, defaults are our own estimates of a careful bench. */
+export function toleranceKeys(units: Units) {
+  const { quantity, tolerance } = quantityRules(units);
+  return {
+    edge: withDefault('shop', orWord('shop', tolerance('length', '1 mm', '2 um'))),
+    kerf: withDefault('shop', orWord('shop', tolerance('length', '1 mm', '5 um'))),
+    place: withDefault('2 um rms', tolerance('length', '10 mm', '2 um')),
+    distance: withDefault('20 um', tolerance('length', '1 m', '20 um')),
+    tilt: withDefault('0.2 deg rms', tolerance('angle', '20 deg', '0.2 deg')),
+    wavelength: withDefault('0.2 nm', tolerance('length', '1 um', '0.2 nm')),
+    index: withDefault('0.002', tolerance('ratio', '0.5', '0.002')),
+    size: withDefault('1 % rms', tolerance('ratio', '50 %', '1 %')),
+    averaging: withDefault('1 s', orNone(quantity('time', ['1 ns', '1e6 s'], '1 s'))),
   };
 }
 

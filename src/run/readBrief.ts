@@ -15,6 +15,7 @@ import { briefSchema } from './briefSchema.ts';
 import { checkReach } from './checkTables.ts';
 import { readMapping } from './readMapping.ts';
 import { readSpread } from './readSpread.ts';
+import { fillTolerances } from './readTolerances.ts';
 
 /**
  * Reads a brief and checks it as a whole. Keys, limits and defaults are those of `briefSchema`.
@@ -60,6 +61,7 @@ function fillBrief(values: BriefValues, particles: Particle[], defaults: readonl
   const target = filled(sections.target);
   const known = filled(sections.uncertainties);
   const isOfUncertainties = (line: string) => line.startsWith('uncertainties.');
+  const isOfTolerances = (line: string) => line.startsWith('tolerances.');
   const crossing = placement.crossing === null ? null : filled(placement.crossing);
   return {
     title,
@@ -107,6 +109,7 @@ function fillBrief(values: BriefValues, particles: Particle[], defaults: readonl
       shop: shop === null ? null : shop.item,
     },
     families,
+    tolerances: fillTolerances(filled(sections.tolerances)),
     search: filled(sections.search),
     mediumName: medium.name,
     shopName: shop === null ? 'none' : shop.name,
@@ -121,8 +124,9 @@ function fillBrief(values: BriefValues, particles: Particle[], defaults: readonl
       wavelengthM: known.wavelength,
     },
     uncertaintyDefaults: defaults.filter(isOfUncertainties),
-    // Searches and readings do not ask for the built instrument's.
-    defaults: defaults.filter((line) => !isOfUncertainties(line)),
+    // Searches and readings do not ask for the built instrument's, nor for tolerances.
+    defaults: defaults.filter((line) => !isOfUncertainties(line) && !isOfTolerances(line)),
+    toleranceDefaults: defaults.filter(isOfTolerances),
   };
 }
 

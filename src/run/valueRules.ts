@@ -1,6 +1,8 @@
 import { z } from 'zod';
 import type { Dimension, Units } from '../base/quantity.ts';
 import { quantityInWords } from '../base/quantity.ts';
+import type { Tolerance } from '../score/tolerances.ts';
+import { NO_TOLERANCE } from '../score/tolerances.ts';
 
 /** What is wrong with a value, and where inside it. */
 interface ValueMistake {
@@ -34,6 +36,23 @@ export function quantityRules(units: Units) {
         return areWithin([read], dimension, limits)
           ? { value: read }
           : { expected: `a value from ${limits[0]} to ${limits[1]}` };
+      });
+    },
+
+    /** Limits either way, such as `2 um`, or a standard deviation, such as `2 um rms`, or `none`. */
+    tolerance(dimension: Dimension, largest: string, example: string): ValueRule<Tolerance> {
+      const expected = `none, or ${quantityInWords(dimension, `${example} (limits either way)`)} or ${example} rms`;
+      return derived((value) => {
+        const text = asText(value, dimension);
+        if (text === 'none') return { value: NO_TOLERANCE };
+        if (typeof text !== 'string') return { expected };
+        const isRms = /\srms$/.test(text);
+        const size = units.read(text.replace(/\srms$/, ''), dimension);
+        if (size === null) return { expected };
+        if (size < 0 || size > units.parse(largest, dimension)) {
+          return { expected: `none, or a value up to ${largest}` };
+        }
+        return { value: { law: isRms ? 'rms' : 'limits', size } };
       });
     },
 
@@ -107,6 +126,22 @@ export function fileName(expected: string): ValueRule<string> {
 /** No plain value at all. */
 export function refused(expected: string): ValueRule<never> {
   return { check: () => ({ mistakes: [{ path: [], expected }] }) };
+}
+
+/** One word as itself, and everything else by another rule. */
+export function orWord<const W extends string, T>(known: W, other: ValueRule<T>): ValueRule<T | W> {
+  return {
+    check(value) {
+      if (value === known) return { value: known };
+      const checked = other.check(value);
+      if ('value' in checked) return checked;
+      const mistakes = checked.mistakes.map(({ path, expected }) => ({
+        path,
+        expected: `${known}, ${expected}`,
+      }));
+      return { mistakes };
+    },
+  };
 }
 
 /** `none` as null, and everything else by another rule. */

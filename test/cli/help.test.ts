@@ -13,6 +13,7 @@ const COMMANDS = [
   'evaluate',
   'bound',
   'compare',
+  'yield',
   'draw',
   'presets',
 ];

@@ -74,6 +74,17 @@ describe('readBrief', () => {
         shop: null,
       },
       families: ['disc', 'rings', 'ramp', 'fourier', 'polygon', 'sectors', 'grid', 'splitter'],
+      tolerances: {
+        edge: 'shop',
+        kerf: 'shop',
+        place: { law: 'rms', size: 2e-6 },
+        distance: { law: 'limits', size: 2e-5 },
+        tilt: { law: 'rms', size: (0.2 * Math.PI) / 180 },
+        wavelength: { law: 'limits', size: 2e-10 },
+        index: { law: 'limits', size: 0.002 },
+        size: { law: 'rms', size: 0.01 },
+        averagingS: 1,
+      },
       search: { candidates: 20_000, seed: 1 },
       mediumName: 'air',
       shopName: 'none',
@@ -128,13 +139,29 @@ describe('readBrief', () => {
         'search.seed: 1',
         'particles[0].count: 1',
       ],
+      toleranceDefaults: [
+        'tolerances.edge: shop',
+        'tolerances.kerf: shop',
+        'tolerances.place: 2 um rms',
+        'tolerances.distance: 20 um',
+        'tolerances.tilt: 0.2 deg rms',
+        'tolerances.wavelength: 0.2 nm',
+        'tolerances.index: 0.002',
+        'tolerances.size: 1 % rms',
+        'tolerances.averaging: 1 s',
+      ],
     };
     expect(brief).toEqual(expected);
   });
 
   it('reads its own defaults as a brief would write them, and then leans on none', async () => {
-    const { defaults: others, uncertaintyDefaults, ...first } = await readBrief(MINIMAL, 'a.yaml');
-    const defaults = [...others, ...uncertaintyDefaults];
+    const {
+      defaults: others,
+      uncertaintyDefaults,
+      toleranceDefaults,
+      ...first
+    } = await readBrief(MINIMAL, 'a.yaml');
+    const defaults = [...others, ...uncertaintyDefaults, ...toleranceDefaults];
     const sections = new Map<string, string[]>();
     let text = MINIMAL.replace('index: 1.59', 'index: 1.59, count: 1');
     for (const line of defaults.filter((line) => !line.startsWith('particles'))) {
@@ -146,7 +173,10 @@ describe('readBrief', () => {
       const added = text.replace(`${section}: {`, `${section}: { ${keys.join(', ')},`);
       text = added === text ? `${text}${section}: { ${keys.join(', ')} }\n` : added;
     }
-    expect(await readBrief(text, 'a.yaml')).toEqual({ ...first, defaults: [], uncertaintyDefaults: [] });
+    expect(await readBrief(text, 'a.yaml')).toEqual({
+      ...first,
+      ...{ defaults: [], uncertaintyDefaults: [], toleranceDefaults: [] },
+    });
   });
 
   it('reads the complete example', async () => {
