@@ -11,7 +11,7 @@ export interface MaskError {
 }
 
 /**
- * The outline in the nominal plane that reads as the mask does where it is.
+ * The element in its nominal plane that reads as it does where the mask is.
  *
  * Power is neither lost nor made between two surfaces with the same rim, so what a tilted mask reads depends on where its rim
  * is alone, and a rim point at the radius ρ and the distance z + ζ counts as one at the nominal distance whose wave from the
@@ -21,10 +21,10 @@ export interface MaskError {
  * @param stretch ρ over ζ: what else the radius is multiplied by for a rim point ζ behind the plane; `flatStretch` in a flat wave
  */
 export function builtOutline(
-  elements: readonly OutlineElement[],
+  { curves: _, ...element }: OutlineElement,
   error: MaskError,
   stretch: (rho2: number, behindM: number) => number,
-): OutlineElement[] {
+): OutlineElement {
   const [cosX, sinX] = [Math.cos(error.tiltXRad), Math.sin(error.tiltXRad)];
   const [cosY, sinY] = [Math.cos(error.tiltYRad), Math.sin(error.tiltYRad)];
   const place = (ring: Float64Array) => {
@@ -39,10 +39,7 @@ export function builtOutline(
     }
     return ring;
   };
-  return elements.map(({ weight, rings }) => ({
-    weight,
-    rings: rings.map((ring) => place(movedEdges(ring, error.shiftM))),
-  }));
+  return { ...element, rings: element.rings.map((ring) => place(movedEdges(ring, error.shiftM))) };
 }
 
 /** Radius in the plane at `distanceM` over that of a rim point `behindM` behind it with the same r − z. */

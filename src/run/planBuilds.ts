@@ -6,6 +6,7 @@ import { isTabled } from '../optics/particle.ts';
 import { driftedWavelengths } from '../reading/scenario.ts';
 import type { BuildPlan } from '../score/buildPlan.ts';
 import { BUILD_FINENESS } from '../score/buildPlan.ts';
+import { nearestPlane } from '../score/elementNodes.ts';
 import { guardedTask } from '../score/guards.ts';
 import { NO_SYMMETRY, Sampling } from '../score/sampling.ts';
 import type { Scores } from '../score/scores.ts';
@@ -52,7 +53,7 @@ export function planBuilds(
   const wavenumber = (2 * Math.PI * refractiveIndex(task.medium, light.wavelengthM)[0]) / light.wavelengthM;
   const sampling = new Sampling(task, BUILD_FINENESS, wavenumber, new LegendreRules());
   const places = [
-    ...sampling.positions(radiusM, distanceM, NO_SYMMETRY),
+    ...sampling.positions(radiusM, nearestPlane(given.elements, distanceM), NO_SYMMETRY),
     ...cases.flatMap(({ positionM }) => positionM),
   ];
   const depthsM = [...new Set([...sampling.depths(), ...cases.map(({ depthM }) => depthM)])];

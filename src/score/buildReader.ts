@@ -13,7 +13,7 @@ import type { Scenario } from '../reading/scenario.ts';
 import { spreadOf } from '../reading/spreadOf.ts';
 import type { BuildPlan } from './buildPlan.ts';
 import { BUILD_FINENESS, readingCount } from './buildPlan.ts';
-import { elementNodes, weightedNodes } from './elementNodes.ts';
+import { elementNodes, nearestPlane, planesOf, weightedNodes } from './elementNodes.ts';
 import { NO_SYMMETRY, Sampling } from './sampling.ts';
 import type { ScenarioSolver } from './taskScenarios.ts';
 import { scenarioSolver } from './taskScenarios.ts';
@@ -40,24 +40,32 @@ export class BuildReader {
 
   constructor(plan: BuildPlan) {
     const { task, distanceM, radiusM, places, farthest } = plan;
-    const { light, medium, placement, detector } = task;
+    const { light, medium, detector } = task;
     this.#plan = plan;
     this.#wavenumber = (2 * Math.PI * refractiveIndex(medium, light.wavelengthM)[0]) / light.wavelengthM;
     // Sharp corners move by up to √10 of the shift (see `mitre`).
     this.#radiusM = radiusM + Math.sqrt(10) * farthest.shiftM + Math.hypot(farthest.xM, farthest.yM);
+    const distances = [distanceM, ...plan.elements.flatMap((element) => element.distanceM ?? [])];
     const around = {
       ...task,
       particles: plan.lights.map(({ particle }) => resized(particle, -farthest.size)),
       detector: {
         ...detector,
-        distanceM: [distanceM - farthest.distanceM, distanceM + farthest.distanceM] as [number, number],
+        distanceM: [
+          Math.min(...distances) - farthest.distanceM,
+          Math.max(...distances) + farthest.distanceM,
+        ] as [number, number],
         radiusM: [this.#radiusM, this.#radiusM] as [number, number],
       },
     };
     this.#solve = scenarioSolver(around);
-    const range = { ...around, placement: { ...placement, offsetM: placement.offsetM } };
-    this.#sampling = new Sampling(range, BUILD_FINENESS, this.#wavenumber, this.#rules);
-    this.#flights = this.#sampling.flights(places, radiusM, distanceM, NO_SYMMETRY);
+    this.#sampling = new Sampling(around, BUILD_FINENESS, this.#wavenumber, this.#rules);
+    this.#flights = this.#sampling.flights(
+      places,
+      radiusM,
+      nearestPlane(plan.elements, distanceM),
+      NO_SYMMETRY,
+    );
   }
 
   /**
@@ -71,20 +79,28 @@ export class BuildReader {
     const [shiftM, xM, yM, away, tiltXRad, tiltYRad] = deviations;
     const distanceM = nominalM + away;
     const optics = this.#opticsOf(deviations);
-    const built = builtOutline(elements, { shiftM, xM, yM, tiltXRad, tiltYRad }, this.#stretch(distanceM));
-    const density = this.#sampling.density(distanceM);
-    const nodes = weightedNodes(
-      built.map(({ weight, rings }) => elementNodes(weight, ringNodes(rings, density, this.#rules))),
-    );
+    const error = { shiftM, xM, yM, tiltXRad, tiltYRad };
+    const built = elements.map((element) => {
+      const ownM = (element.distanceM ?? nominalM) + away;
+      const one = { ...builtOutline(element, error, this.#stretch(ownM)), distanceM: ownM };
+      return elementNodes(one, ringNodes(one.rings, this.#sampling.density(ownM), this.#rules));
+    });
+    const planes = planesOf(built, distanceM).map((plane) => ({
+      distanceM: plane.distanceM,
+      nodes: weightedNodes(plane.elements),
+    }));
     const { count, farthestM } = this.#flights;
     const offsetM = Math.max(farthestM, task.placement.offsetM);
     depthsM.forEach((depthM, d) => {
-      const readers = optics.readers.at(distanceM, depthM, this.#radiusM, offsetM);
-      readers.forEach((read, s) => {
-        const { extinctionM2 } = optics.scenarios[s];
+      const readers = planes.map((plane) =>
+        optics.readers.at(plane.distanceM, depthM, this.#radiusM, offsetM),
+      );
+      optics.scenarios.forEach(({ extinctionM2 }, s) => {
         const from = (s * depthsM.length + d) * count;
         const row = out.subarray(from, from + count);
-        this.#flights.means((x, y) => read(nodes, x, y) / extinctionM2, row);
+        const read = (x: number, y: number) =>
+          planes.reduce((sum, { nodes }, p) => sum + readers[p][s](nodes, x, y), 0);
+        this.#flights.means((x, y) => read(x, y) / extinctionM2, row);
       });
     });
   }

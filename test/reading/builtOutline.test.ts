@@ -32,8 +32,8 @@ describe('builtOutline', () => {
   });
 
   it('moves the mask as a whole', () => {
-    const [{ rings }] = builtOutline(
-      [{ weight: 1, rings: [RECTANGLE] }],
+    const { rings } = builtOutline(
+      { weight: 1, rings: [RECTANGLE] },
       { ...DRAWN, xM: 3e-6, yM: -1e-6 },
       () => 1,
     );
@@ -51,12 +51,12 @@ describe('builtOutline', () => {
     const density = { kappa: Math.PI / (635e-9 * distanceM), offsetM: 0, perRadian: 1, least: 6 };
     const [tiltXRad, tiltYRad] = [0.15, -0.1];
     const built = builtOutline(
-      [{ weight: 1, rings: [RECTANGLE] }],
+      { weight: 1, rings: [RECTANGLE] },
       { ...DRAWN, tiltXRad, tiltYRad },
       flatStretch(distanceM),
     );
     const table = (z: number) => buildRadialTable(scenario, z, 4e-4, 0);
-    const fast = boundaryReading(table(distanceM), ringNodes(built[0].rings, density, rules), 0, 0);
+    const fast = boundaryReading(table(distanceM), ringNodes(built.rings, density, rules), 0, 0);
     const flat = ringNodes([RECTANGLE], density, rules);
     const plain = boundaryReading(table(distanceM), flat, 0, 0);
     let slow = 0;
