@@ -5,7 +5,8 @@ import { polygonise } from '../outline/polygonise.ts';
 import type { Shape } from '../outline/shape.ts';
 import { shapeRadius } from '../outline/shapeRadius.ts';
 import type { Aim } from '../score/aim.ts';
-import { aimValue } from '../score/aim.ts';
+import { aimValue, sizePenalty } from '../score/aim.ts';
+import { lobeRatio } from '../score/cost.ts';
 import type { Judge } from '../score/judge.ts';
 import type { Scores } from '../score/scores.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
@@ -24,13 +25,20 @@ export interface Candidate {
   weighedFor?: number;
 }
 
-/** What came of trying a point: `value` is what the search makes small; the rest is null where nothing was drawn. */
+/** What came of trying a point: `value` is what the search makes small; the rest is null where nothing was drawn, or it is hopeless. */
 export type Trial =
   | { value: number; candidate: Candidate; ratios: Float64Array }
   | { value: number; candidate: null; ratios: null };
 
 /** Value of a candidate that draws nothing: above all that a drawn one can have, and falling towards the valid. */
 const MISDRAWN = 1e3;
+
+/**
+ * A radius that alone costs more than this, a factor of 400 in the measure or 3 in the lobe limit, is hopeless: nothing is read, since the
+ * tables of such outlines take longer than a hundred good candidates. The value is below that of what draws nothing.
+ */
+const HOPELESS = 6;
+const UNREAD = 0.8 * MISDRAWN;
 
 /** Vertices a turn for asking the shop in a search. */
 const SHOP_VERTICES = 96;
@@ -114,6 +122,8 @@ export function tryCandidate(
   if ('misdrawnBy' in drawn || misdrawnBy > 0) {
     return { value: MISDRAWN + misdrawnBy, candidate: null, ratios: null };
   }
+  const sizeCosts = costOfSize(judge, drawn.shape, drawn.distanceM);
+  if (sizeCosts > HOPELESS) return { value: UNREAD + sizeCosts, candidate: null, ratios: null };
   const { scores, ratios } = judge.scoreShape(drawn.shape, drawn.distanceM, aim.correction);
   const misfit = shopMisfit(judge, drawn.shape, scores, aim);
   const value = aimValue(scores, misfit, aim, judge.task);
@@ -131,6 +141,12 @@ export function tryCandidate(
 /** How far an outline is beyond what the judge's tables reach, over the largest radius; 0 or below where it is within. */
 function tooLargeBy({ task }: Judge, shape: Shape): number {
   return shapeRadius(shape) / task.detector.radiusM[1] - BEYOND_RADIUS;
+}
+
+function costOfSize({ task, wavelengthM }: Judge, shape: Shape, distanceM: number): number {
+  const radiusM = shapeRadius(shape);
+  const largestM = Math.max(...task.particles.map(({ diameterM }) => diameterM));
+  return sizePenalty(lobeRatio(radiusM, distanceM, wavelengthM, largestM), radiusM, task);
 }
 
 function shopMisfit(judge: Judge, shape: Shape, scores: Scores, aim: Aim): number {

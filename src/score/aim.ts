@@ -77,6 +77,13 @@ export function aimValue(scores: Scores, misfit: number, aim: Aim, task: Task): 
   return Math.log(measureOf(scores, aim.measure)) + penalty;
 }
 
+/** The part of `aimValue` that a radius alone decides, for missing the limits of size: known before anything is read. */
+export function sizePenalty(lobe: number, radiusM: number, { target, detector }: Task): number {
+  const [least, most] = detector.radiusM;
+  const byLobe = target.lobe === null ? 0 : weigh(lobe / target.lobe);
+  return byLobe + weigh(radiusM / most) + weigh(least / radiusM);
+}
+
 function weigh(factor: number): number {
   const excess = Math.log(Math.max(1, factor));
   return MISS_WEIGHT.weight * excess + MISS_WEIGHT.bend * excess * excess;
