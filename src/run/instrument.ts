@@ -81,12 +81,15 @@ export function instrumentOf(
 
 /**
  * What is known of the correction of an unknown particle at an unknown place: that it is within the worst, evenly, or near the
- * ends as of a swing where its rms is beyond that.
+ * ends as of a swing where its rms is beyond that. Where the readings are off to one side, and the rms so large that no swing has
+ * it, the ends move out until one has.
  */
-function correctionDistribution(scores: Scores): Distribution {
-  const half = worstOf(scores);
-  const isNearEnds = scores.correction.rms > half / Math.sqrt(3);
-  return { kind: isNearEnds ? 'arcsine' : 'rectangular', mean: 0, half };
+export function correctionDistribution(scores: Pick<Scores, 'correction'>): Distribution {
+  const worst = worstOf(scores);
+  const { rms } = scores.correction;
+  return rms <= worst / Math.sqrt(3)
+    ? { kind: 'rectangular', mean: 0, half: worst }
+    : { kind: 'arcsine', mean: 0, half: Math.max(worst, Math.SQRT2 * rms) };
 }
 
 /** Slope and curvature of the relative reading over one standard uncertainty to either side: rms over the particles. */

@@ -183,6 +183,14 @@ overload,12,=HYPERLINK("x"),,
     expect(stderr).toContain('uncertainties.gain: 0 %');
   });
 
+  it('doubts rows in other light than the reference spheres were in', async () => {
+    const rows = [2, 2.01, 2.02].map((signal) => `1995,${1995 - signal},ref,3,0.01\n`).join('');
+    const data = `${HEADER}${rows}1900,1898,dim,,\n1996,1994,like them,,\n`;
+    const found: Row[] = JSON.parse((await evaluate({ 'data.csv': data }, '--json')).stdout).rows;
+    expect(found[3].reasons).toEqual(["light 4.8 % below the references'"]);
+    expect(found[4].reasons).toEqual([]);
+  });
+
   it('leaves named lines out of the fit, and says what to do without a material', async () => {
     const rows = [2, 2.01, 2.02].map((signal) => `1995,${1995 - signal},ref,3,0.01\n`).join('');
     const { stdout } = await evaluate({ 'data.csv': HEADER + rows }, '--omit', '3');

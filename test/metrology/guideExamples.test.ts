@@ -219,6 +219,24 @@ it('finds a weight’s mass to be wider than its budget (JCGM 101, 9.3)', () => 
   expect(holds).toBe(false);
 });
 
+it('finds a comparison loss that a budget has nothing to say of (JCGM 101, 9.4)', () => {
+  const { u, budget: printed, monteCarlo: expected } = guide.comparisonLoss;
+  const squares: Model = ([re, im]) => re * re + im * im;
+  const inputs = [normal('re', 0, u), normal('im', 0, u)];
+  const budget = uncertaintyBudget(squares, inputs, 0.95);
+  expect([budget.value, budget.standardUncertainty]).toEqual([printed.value, printed.u]);
+  const { monteCarlo: run, holds } = checkBudget(squares, inputs, budget, {
+    seed: 4,
+    most: 400_000,
+    digits: 2,
+  });
+  expect(Math.abs(run.mean / expected.value - 1)).toBeLessThan(0.01);
+  expect(Math.abs(run.standardUncertainty / expected.u - 1)).toBeLessThan(0.01);
+  expect(run.shortest[0]).toBeLessThan(0.5e-6);
+  expect(Math.abs(run.shortest[1] / expected.shortest95[1] - 1)).toBeLessThan(0.02);
+  expect([holds, run.isStable]).toEqual([false, false]);
+});
+
 it('takes half a unit of the last digit that counts for its tolerance (JCGM 101, 7.9.2)', () => {
   for (const { u, digits, tolerance } of guide.tolerance.cases) {
     expect(numericalTolerance(u, digits) / tolerance).toBeCloseTo(1, 12);
