@@ -12,6 +12,7 @@ import type { Placement } from '../src/reading/placement.ts';
 import { REPORT_FINENESS } from '../src/score/fineness.ts';
 import { Judge } from '../src/score/judge.ts';
 import type { Task } from '../src/score/task.ts';
+import { balancedGain } from './balancedLayout.ts';
 import { beamAgreements } from './beamAgreements.ts';
 import { moreAgreements } from './moreAgreements.ts';
 import { presetBrief } from './sampleTask.ts';
@@ -173,3 +174,7 @@ const rows: [string, number][] = [
   ...moreAgreements(task),
 ];
 for (const [what, value] of rows) console.log(`${what.padEnd(82)}${value.toExponential(1).padStart(10)}`);
+const { single, balanced, ratio } = await balancedGain();
+console.log(
+  `At -130 dB/Hz (noisy-laser) the best single element takes ${single.toExponential(3)} s, the best balanced layout ${balanced.toExponential(3)} s: ${ratio.toPrecision(3)} times less`,
+);

@@ -5,6 +5,7 @@ import { openBrief } from '../src/run/openBrief.ts';
 import { search, smallest } from '../src/run/search.ts';
 import type { Measure } from '../src/score/aim.ts';
 import { worstOf } from '../src/score/scores.ts';
+import { balancedGain } from './balancedLayout.ts';
 
 /** One figure that searches must reach, whatever their seed. */
 interface Case {
@@ -25,6 +26,9 @@ const CASES: readonly Case[] = [
 
 /** Longest that the search of this brief may take on two cores, seconds. */
 const ROAD_DUST_S = 60;
+
+/** How many times less time a balanced layout must take than a single element, in light of −130 dB/Hz. */
+const LEAST_BALANCED_GAIN = 20;
 
 const seeds = argument('--seeds')?.split(',').map(Number) ?? [1, 2, 3, 4, 5];
 const workerEntry = fileURLToPath(new URL('../dist/crew/worker.js', import.meta.url));
@@ -63,6 +67,13 @@ for (const seed of seeds) {
   held &&= seconds < ROAD_DUST_S && meeting.length > 0;
   console.log(
     `road-dust, seed ${seed}: ${seconds.toFixed(1)} s of ${ROAD_DUST_S}; ${designs.length} designs, ${meeting.length} on target, the fastest in ${(1e6 * fastest).toFixed(0)} µs`,
+  );
+}
+for (const seed of seeds) {
+  const { single, balanced, ratio } = await balancedGain(seed);
+  held &&= ratio >= LEAST_BALANCED_GAIN;
+  console.log(
+    `noisy-laser, seed ${seed}: single element ${(1e6 * single).toFixed(0)} µs, balanced layout ${(1e6 * balanced).toFixed(1)} µs: ${ratio.toPrecision(3)} times less`,
   );
 }
 console.log(held ? 'All figures are held.' : 'Not all figures are held: see (!).');

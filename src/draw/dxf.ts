@@ -2,10 +2,11 @@ import { Colors, DxfWriter, LineTypes, LWPolylineFlags, point3d, Units } from '@
 import { arcPieces, circleOf } from '../outline/arcLoop.ts';
 import { ringArea } from '../outline/area.ts';
 import { checkDrawing, type Drawing, VIEW_NOTE } from './drawing.ts';
-import { elementArea, largestRadius } from './elementMeasure.ts';
+import { largestRadius } from './elementMeasure.ts';
+import { elementText } from './elementText.ts';
 import { plainDecimal } from './plainDecimal.ts';
 import { plainText } from './plainText.ts';
-import { areaText, quantityText, weightText } from './quantityText.ts';
+import { quantityText, weightText } from './quantityText.ts';
 
 /** Decimals of a coordinate in millimetres: a rounding of 5e-11 mm at most. */
 const DECIMALS = 10;
@@ -90,10 +91,7 @@ function addNotes(writer: DxfWriter, drawing: Drawing): void {
     `Distance particle to mask: ${quantityText(drawing.distanceM, 'm')}`,
     'Unit: millimetre. Scale 1 : 1.',
     VIEW_NOTE,
-    ...drawing.elements.map(
-      (element, e) =>
-        `ELEMENT_${e + 1}: weight ${exactWeight(element.weight)}, open area ${areaText(elementArea(element))}`,
-    ),
+    ...drawing.elements.map((element, e) => `ELEMENT_${e + 1}: ${elementText(element, exactWeight)}`),
     ...drawing.facts.map(({ label, text }) => `${label}: ${text}`),
     ...drawing.notes,
     `Design ${drawing.hash}`,

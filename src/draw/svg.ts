@@ -1,11 +1,12 @@
 import type { OutlineElement } from '../outline/shape.ts';
 import { callouts } from './callouts.ts';
 import { checkDrawing, type Drawing, VIEW_NOTE } from './drawing.ts';
-import { elementArea, largestRadius } from './elementMeasure.ts';
+import { largestRadius } from './elementMeasure.ts';
+import { elementText } from './elementText.ts';
 import { hatchPattern, inkClass, inkColor } from './hatch.ts';
 import { shortDecimal as n, plainDecimal } from './plainDecimal.ts';
 import { markupText } from './plainText.ts';
-import { areaText, quantityText, weightText } from './quantityText.ts';
+import { quantityText } from './quantityText.ts';
 import { roundDown } from './roundDown.ts';
 import { type Fact, titleBlock } from './titleBlock.ts';
 
@@ -165,7 +166,7 @@ function blockFacts({ title, distanceM, elements, facts, hash }: Drawing, sheet:
     ...facts,
     ...elements.map((element, e) => ({
       label: `Element ${e + 1}`,
-      text: `weight ${weightText(element.weight)}, open area ${areaText(elementArea(element))}`,
+      text: elementText(element),
     })),
   ];
 }

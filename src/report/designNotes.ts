@@ -1,4 +1,5 @@
 import { elementArea } from '../draw/elementMeasure.ts';
+import { elementPlaceText } from '../draw/elementText.ts';
 import { percentText, timeText } from '../draw/quantityText.ts';
 import { worstOf } from '../score/scores.ts';
 import type { ReportDesign } from './reportInput.ts';
@@ -25,6 +26,15 @@ export function designNotes(design: ReportDesign, targetCorrection: number): str
   const weighted = design.elements.some(({ weight }) => weight !== 1);
   if (weighted)
     notes.push('Each element is read on its own; the reading is the sum of weight times element reading.');
+  for (const [e, element] of design.elements.entries()) {
+    const place = elementPlaceText(element);
+    if (place.length > 0) notes.push(`Element ${e + 1}: ${place.join(', ')}.`);
+  }
+  if (design.elements.some(({ weight }) => weight < 0)) {
+    notes.push(
+      'With a weight below 0 the floor and the bounds over all masks do not hold: area over gain may be less.',
+    );
+  }
   if (weighted && Math.abs(weightedArea(design)) < 1e-3 * area_m2) {
     notes.push('The weighted areas cancel, and with them the intensity noise of the light.');
   }
@@ -45,5 +55,5 @@ export function designNotes(design: ReportDesign, targetCorrection: number): str
 }
 
 function weightedArea({ elements }: ReportDesign): number {
-  return elements.reduce((sum, element) => sum + element.weight * elementArea(element), 0);
+  return elements.reduce((sum, one) => sum + one.weight * (one.share ?? 1) * elementArea(one), 0);
 }

@@ -105,10 +105,10 @@ export function roughReadings(
   const stepM = 0.2 / phasePerMetre;
   const placeAt = (s: number, p: number): RoughPlace => {
     const position: [number, number] = [places[2 * p], places[2 * p + 1]];
-    const density = judge.edgeDensity(s, distanceM, radiusM, position);
-    const estimates = elements.map(({ weight, rings }) => {
+    const estimates = elements.map(({ weight, share = 1, distanceM: own = distanceM, rings }) => {
+      const density = judge.edgeDensity(s, own, radiusM, position);
       const { mean, spread } = roughEdgeEstimate(rings, density, rmsM, correlationM, stepM);
-      return { mean: weight * mean, spread: weight * spread };
+      return { mean: weight * share * mean, spread: weight * share * spread };
     });
     const change = estimates.reduce((sum, { mean }) => sum + mean, 0);
     const correction = smooth[s][p] - 1;
@@ -151,8 +151,8 @@ function drawRough(
 ): { elements: OutlineElement[]; redrawn: number } {
   const random = randomStream(seed, stream);
   for (let redrawn = 0; redrawn < MOST_DRAWINGS; redrawn++) {
-    const rough = elements.map(({ weight, rings }) => ({
-      weight,
+    const rough = elements.map(({ curves: _, rings, ...element }) => ({
+      ...element,
       rings: rings.map((ring) => roughen(ring, rmsM, correlationM, random)),
     }));
     if (rough.every(({ rings }) => findRingsCrossing(rings) === null)) return { elements: rough, redrawn };

@@ -26,7 +26,7 @@ const SLOT_SHARE = 0.7;
  * @throws RimwrightError `input` as `measureOutline`
  */
 export function asCut(elements: readonly OutlineElement[], rules: ShopRules): OutlineElement[] {
-  return elements.map(({ weight, rings }) => ({ weight, rings: cutRings(rings, rules) }));
+  return elements.map(({ curves: _, rings, ...element }) => ({ ...element, rings: cutRings(rings, rules) }));
 }
 
 /** As `asCut`, for one element. */
