@@ -8,7 +8,9 @@ export function declareFiles(program: Command, done: Done): void {
   program
     .command('draw')
     .summary('drawings for the shop')
-    .description('Draws a design for the shop: DXF at true size, and an SVG sheet to read.')
+    .description(
+      'Draws a design for the shop: DXF and GDSII at true size, and an SVG sheet to read. CSV and JSON keep its points.',
+    )
     .argument(
       '<design>',
       "a design's JSON, front.json#ID, an outline with --distance, or a brief with --design",
@@ -17,14 +19,15 @@ export function declareFiles(program: Command, done: Done): void {
     .option('--unit <unit>', UNIT, lengthUnit)
     .option('--distance <length>', 'distance from particle to mask, for the notes on the sheet')
     .option('--out <dir>', 'folder to draw into', '.')
-    .option('--formats <list>', 'dxf, svg, or both', 'dxf,svg')
+    .option('--formats <list>', 'any of dxf, svg, gds, csv and json', 'dxf,svg')
     .option('--force', 'replace drawings that are there')
     .addHelpText(
       'after',
       `
 Example:
   $ rimwright draw results/my/front.json#rings-1 --out shop --formats dxf
-  $ rimwright draw my.yaml --design rings-1 --out shop`,
+  $ rimwright draw my.yaml --design rings-1 --out shop
+  $ rimwright draw mask.gds --distance "20 mm" --formats svg,csv`,
     )
     .action(async (design, options) => done(await (await import('./drawCommand.ts')).run(design, options)));
 

@@ -1,21 +1,32 @@
+import { outlineCsv } from '../draw/csv.ts';
 import type { Drawing } from '../draw/drawing.ts';
+import { checkDrawing } from '../draw/drawing.ts';
 import { drawDxf } from '../draw/dxf.ts';
+import { drawGds } from '../draw/gds.ts';
 import { percentText, quantityText } from '../draw/quantityText.ts';
 import { drawSvg } from '../draw/svg.ts';
 import { designHash } from '../run/designHash.ts';
+import { outlineToJson } from '../run/designJson.ts';
 import type { GivenDesign } from '../run/givenDesign.ts';
+import { jsonText } from '../run/jsonText.ts';
 import type { RankedDesign } from '../run/ranking.ts';
 import { edgeSensitivities } from '../score/edgeSensitivity.ts';
 import type { Judge } from '../score/judge.ts';
 import { worstOf } from '../score/scores.ts';
 import { criticalEdges, shopFacts } from './sheetFacts.ts';
 
-export const DRAWING_FORMATS = ['dxf', 'svg'] as const;
-export type DrawingFormat = (typeof DRAWING_FORMATS)[number];
+/** Drawings that a results folder holds of each design. */
+export const DRAWING_FORMATS = ['dxf', 'svg', 'gds'] as const;
+type DrawingFormat = (typeof DRAWING_FORMATS)[number];
 
-/** The text of a drawing file. */
-export function drawAs(format: DrawingFormat, drawing: Drawing): string {
-  return format === 'dxf' ? drawDxf(drawing) : drawSvg(drawing);
+/** All that an outline may be written to. */
+export const FILE_FORMATS = [...DRAWING_FORMATS, 'csv', 'json'] as const;
+export type FileFormat = (typeof FILE_FORMATS)[number];
+
+/** The content of a drawing file. */
+export function drawAs(format: DrawingFormat, drawing: Drawing): string | Uint8Array {
+  const makers = { dxf: drawDxf, svg: drawSvg, gds: drawGds };
+  return makers[format](drawing);
 }
 
 /** A drawing of a design that a search found, with what its maker should know. */
@@ -53,4 +64,11 @@ export function givenDrawing(
     facts: shopFacts(shop),
     notes: criticalEdges(sensitivities, elements, shop?.edgeToleranceM ?? 0),
   };
+}
+
+/** The content of any file that an outline may be written to; `drawing` is its own. */
+export function drawGiven(format: FileFormat, drawing: Drawing, given: GivenDesign): string | Uint8Array {
+  if (format !== 'csv' && format !== 'json') return drawAs(format, drawing);
+  checkDrawing(drawing);
+  return format === 'csv' ? outlineCsv(given.elements) : jsonText(outlineToJson(given, drawing.distanceM));
 }

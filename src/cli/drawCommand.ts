@@ -9,8 +9,8 @@ import { prepareFolder } from '../run/resultsFolder.ts';
 import { writeWhole } from '../run/writeWhole.ts';
 import { SEARCH_FINENESS } from '../score/fineness.ts';
 import { Judge } from '../score/judge.ts';
-import type { DrawingFormat } from './designDrawing.ts';
-import { DRAWING_FORMATS, drawAs, givenDrawing } from './designDrawing.ts';
+import type { FileFormat } from './designDrawing.ts';
+import { drawGiven, FILE_FORMATS, givenDrawing } from './designDrawing.ts';
 import { EXIT } from './exit.ts';
 import { uninterrupted } from './interrupt.ts';
 import { print, warn } from './notes.ts';
@@ -39,7 +39,7 @@ export async function run(place: string, options: Options): Promise<number> {
   const drawing = givenDrawing(given, distanceM, judge);
   const files = formats.map((format) => ({
     path: join(options.out, `${given.id}.${format}`),
-    text: drawAs(format, drawing),
+    text: drawGiven(format, drawing, given),
   }));
   prepareFolder(options.out);
   uninterrupted(() => writeWhole(files, options.force ?? false));
@@ -63,7 +63,7 @@ async function openDesign(
   return { given, judge: new Judge(opened.brief.task, SEARCH_FINENESS) };
 }
 
-function readFormats(text: string): DrawingFormat[] {
-  const known = oneOf('--formats', DRAWING_FORMATS);
+function readFormats(text: string): FileFormat[] {
+  const known = oneOf('--formats', FILE_FORMATS);
   return [...new Set(text.split(',').map((word) => known(word.trim())))];
 }

@@ -1,6 +1,6 @@
 /** Words of the help that several commands share. */
 export const BRIEF = "a brief's path, or a brief's name on the shelf";
-export const OUTLINE = "CSV (x_mm,y_mm), DXF, a design's JSON, or front.json#ID";
+export const OUTLINE = "an outline as CSV, DXF, SVG or GDSII, a design's JSON, or front.json#ID";
 export const UNIT = 'unit of drawings that state none: um, mm, cm, m or in';
 export const ID = "a design of that file, or without it of the brief's own results";
 export const EXACT = "the sphere's exact fields, for large particles near the detector";

@@ -1,7 +1,6 @@
-import { arcLoopOf, isCurved } from '../outline/arcLoop.ts';
 import type { Variant } from '../outline/families/family.ts';
-import { polygonise } from '../outline/polygonise.ts';
 import type { OutlineElement, Shape } from '../outline/shape.ts';
+import { shapePoints } from '../outline/shapePoints.ts';
 import { shapeRadius } from '../outline/shapeRadius.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import type { Certifier } from '../score/certifier.ts';
@@ -87,16 +86,5 @@ function askShop(elements: readonly OutlineElement[], shop: ShopRules | null): S
 function toPoints(shape: Shape, kappa: number): OutlineElement[] {
   const phase = kappa * shapeRadius(shape) ** 2;
   const vertices = 4 * Math.ceil(Math.min(1440, Math.max(180, Math.PI * Math.sqrt(50 * phase))) / 4);
-  return shape.elements.map(({ weight, loops, distanceM, share }) => {
-    const curves = loops.map(arcLoopOf).filter((loop) => loop !== null);
-    // Of an outline of straight edges alone the points say it all.
-    const isExact = curves.length === loops.length && curves.some(isCurved);
-    return {
-      weight,
-      ...(distanceM !== undefined && { distanceM }),
-      ...(share !== undefined && { share }),
-      rings: loops.map((loop) => polygonise(loop, vertices)),
-      ...(isExact && { curves }),
-    };
-  });
+  return shapePoints(shape, vertices);
 }

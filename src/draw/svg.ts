@@ -35,7 +35,7 @@ interface Sheet {
  *
  * The group `true-size` holds the outline itself: one even-odd `<path data-element data-weight>` an element, in
  * millimetres with the origin on the beam axis and y up, which the group's `translate(…) scale(1 -1)` turns into the
- * sheet's y down. They are the only `<path>`s of the file. Above it the same paths are shown enlarged through `<use>`,
+ * sheet's y down; `data-origin` and the paths' attributes tell `readSvg` what is the outline. They are the only `<path>`s of the file. Above it the same paths are shown enlarged through `<use>`,
  * with hatches and labels, for reading only. The same drawing always gives the same text; there is no script.
  *
  * @throws RimwrightError `input` where `checkDrawing` does
@@ -130,7 +130,7 @@ function trueSizeFigure(elements: readonly OutlineElement[], sheet: Sheet): stri
   const y = trueTop + trueHeight / 2;
   const x = MARGIN + trueHeight / 2;
   return [
-    `<g id="true-size" transform="translate(${n(x)} ${n(y)}) scale(1 -1)">`,
+    `<g id="true-size" data-origin="axis" transform="translate(${n(x)} ${n(y)}) scale(1 -1)">`,
     ...elements.map(
       (element, e) =>
         `<path id="element-${e + 1}" data-element="${e + 1}" data-weight="${element.weight}" fill-rule="evenodd" d="${pathData(element)}"/>`,

@@ -37,6 +37,28 @@ export function orientElement(element: OutlineElement): OutlineElement {
   };
 }
 
+/** An opening: the ring around it, and the holes directly within. */
+export interface Opening {
+  outer: Float64Array;
+  holes: Float64Array[];
+}
+
+/**
+ * Puts every hole to the opening that it is in.
+ *
+ * @param rings as `orientByNesting` leaves them
+ */
+export function openingsOf(rings: readonly Float64Array[]): Opening[] {
+  const outers = rings
+    .filter((ring) => ringArea(ring) > 0)
+    .map((outer) => ({ outer, holes: [] as Float64Array[], area: ringArea(outer), box: boxOf(outer) }));
+  for (const hole of rings.filter((ring) => ringArea(ring) <= 0)) {
+    const around = outers.filter(({ outer, box }) => isInside(hole[0], hole[1], outer, box));
+    around.sort((a, b) => a.area - b.area)[0]?.holes.push(hole);
+  }
+  return outers.map(({ outer, holes }) => ({ outer, holes }));
+}
+
 /** Whether a point that is not on the ring lies within it. */
 export function isWithin(ring: Float64Array, x: number, y: number): boolean {
   return isInside(x, y, ring, boxOf(ring));

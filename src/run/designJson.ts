@@ -2,6 +2,7 @@ import type { FamilyName } from '../outline/families/family.ts';
 import type { OutlineElement } from '../outline/shape.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import type { Scores } from '../score/scores.ts';
+import type { GivenDesign } from './givenDesign.ts';
 import type { RankedDesign } from './ranking.ts';
 
 /** One element. */
@@ -53,6 +54,11 @@ export function designToJson(design: RankedDesign): DesignJson {
     rank,
     meetsTarget,
   };
+}
+
+/** The plain form of an outline from outside, without scores: these belong to a brief. */
+export function outlineToJson({ id, family, elements }: GivenDesign, distanceM: number) {
+  return { id, family, distance_m: distanceM, elements: elements.map(elementToJson) };
 }
 
 function elementToJson({ weight, rings, curves, distanceM, share }: OutlineElement): ElementJson {

@@ -6,8 +6,11 @@ import type { ReadOutline } from '../outline/files/drawnOutline.ts';
 import { MOST_FILE_BYTES } from '../outline/files/drawnPath.ts';
 import type { LengthUnit } from '../outline/files/lengthUnit.ts';
 import { readDxf } from '../outline/files/readDxf.ts';
+import { readGds } from '../outline/files/readGds.ts';
+import { readSvg } from '../outline/files/readSvg.ts';
 import { orientByNesting } from '../outline/nesting.ts';
 import { readOutlineCsv } from '../outline/readOutlineCsv.ts';
+import { hasRingColumn, readRingsCsv } from '../outline/readRingsCsv.ts';
 import type { GivenDesign } from './givenDesign.ts';
 import { readDesignJson } from './readDesignJson.ts';
 import { readFileBytes, readTextFile } from './readTextFile.ts';
@@ -16,7 +19,7 @@ import { slug } from './slug.ts';
 const MOST_BYTES = 20_000_000;
 
 /**
- * Reads an outline from a file: CSV, DXF, a design's own JSON, or one of the designs of a front.json. The name's ending says which it
+ * Reads an outline from a file: CSV, DXF, SVG, GDSII, a design's own JSON, or one of the designs of a front.json. The name's ending says which it
  * is, in capitals or not; a text that begins with a brace is JSON, and all else CSV.
  *
  * @param place a path, or a path and a design's id: `front.json#rings-2`
@@ -27,26 +30,26 @@ const MOST_BYTES = 20_000_000;
 export function readDesignFile(place: string, id?: string, unit: LengthUnit | null = null): GivenDesign {
   const { path, wanted } = splitPlace(place, id);
   const ending = extname(path).toLowerCase();
-  const isDrawing = DRAWING_ENDINGS.includes(ending);
-  if (isDrawing) {
+  if (DRAWING_ENDINGS.includes(ending)) {
     if (wanted !== undefined) refuseId(place, wanted);
-    return givenOutline(place, path, readDrawing(path, unit));
+    return givenOutline(place, path, readDrawing(path, ending, unit));
   }
   const text = readTextFile(path, MOST_BYTES);
   const isJson = ending === '.json' || /^\s*\{/.test(text);
   if (isJson) return readDesignJson(oneDesign(parseJson(text, path), wanted, path), place);
   if (wanted !== undefined) refuseId(place, wanted);
-  const ring = readOutlineCsv(text, path);
-  return givenOutline(place, path, {
-    elements: [{ weight: 1, rings: orientByNesting([ring]) }],
-    notes: [],
-  });
+  const elements = hasRingColumn(text)
+    ? readRingsCsv(text, path)
+    : [{ weight: 1, rings: orientByNesting([readOutlineCsv(text, path)]) }];
+  return givenOutline(place, path, { elements, notes: [] });
 }
 
-const DRAWING_ENDINGS = ['.dxf'];
+const DRAWING_ENDINGS = ['.dxf', '.svg', '.gds', '.gdsii', '.gds2'];
 
-function readDrawing(path: string, unit: LengthUnit | null): ReadOutline {
+function readDrawing(path: string, ending: string, unit: LengthUnit | null): ReadOutline {
+  if (ending === '.svg') return readSvg(readTextFile(path, MOST_FILE_BYTES), path, unit);
   const bytes = readFileBytes(path, MOST_FILE_BYTES);
+  if (ending !== '.dxf') return readGds(bytes, path);
   // Older drawings have other encodings, which only touches remarks and the names of layers.
   return readDxf(new TextDecoder().decode(bytes), path, unit);
 }

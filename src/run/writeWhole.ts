@@ -16,7 +16,8 @@ import { diskFault } from './diskFault.ts';
 /** A file to be written. */
 export interface TextFile {
   path: string;
-  text: string;
+  /** Its content: a text, or bytes as they are. */
+  text: string | Uint8Array;
 }
 
 /**
@@ -56,7 +57,7 @@ export function refuseExisting(paths: readonly string[]): void {
 }
 
 /** Writes a file and waits until the disk has it. */
-export function writeFlushed(path: string, text: string): void {
+export function writeFlushed(path: string, text: string | Uint8Array): void {
   const file = openSync(path, 'wx');
   try {
     writeFileSync(file, text);

@@ -47,6 +47,7 @@ describe('help', () => {
       'cli/optionRules.js',
       'cli/optionTexts.js',
       'cli/program.js',
+      'outline/files/lengthUnit.js',
       'score/aim.js',
       'score/scores.js',
     ]);

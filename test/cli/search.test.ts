@@ -74,7 +74,7 @@ describe('rimwright search', () => {
       expect(read.distanceM).toBe(0.02);
       const own = readDesignFile(join(results, `drawings/${design.id}.json`));
       expect(own.elements).toEqual(read.elements);
-      for (const format of ['dxf', 'svg']) {
+      for (const format of ['dxf', 'svg', 'gds']) {
         expect(existsSync(join(results, `drawings/${design.id}.${format}`))).toBe(true);
       }
     }
@@ -85,7 +85,7 @@ describe('rimwright search', () => {
       'report.html',
       'run.json',
     ]);
-    expect(readdirSync(join(results, 'drawings'))).toHaveLength(3 * front.designs.length);
+    expect(readdirSync(join(results, 'drawings'))).toHaveLength(4 * front.designs.length);
     const run = JSON.parse(readFileSync(join(results, 'run.json'), 'utf8'));
     expect(run.brief).toEqual({ file: 'quick.yaml', text: QUICK_BRIEF });
     expect(run).toMatchObject({ seed: 3, candidates: 200, node: process.version, stopped: false });

@@ -22,6 +22,7 @@ function readDxf(text: string) {
     header: dxf.header,
     layers: Object.keys(dxf.tables.layer.layers),
     polylines: ofType('LWPOLYLINE') as unknown as Polyline[],
+    circles: ofType('CIRCLE') as unknown as { layer: string; radius: number }[],
     lines: ofType('LINE') as unknown as { layer: string; vertices: Points }[],
     texts: ofType('TEXT') as unknown as { layer: string; text: string }[],
   };
@@ -90,6 +91,30 @@ describe('DXF, read back by dxf-parser', () => {
     expect(drawDxf(SAMPLES.disc)).toBe(text);
     expect(text).not.toMatch(/^-?[\d.]+e-?\d+$/im);
     expect(text).not.toMatch(/\$TD|20\d\d-\d\d/);
+  });
+
+  it('draws exact arcs as bulges, and circles as circles', () => {
+    const half = Math.tan(Math.PI / 8);
+    const rings = [regularRing(1e-3, 64), regularRing(5e-4, 64, -1)];
+    const circle = Float64Array.of(1e-3, 0, 1, -1e-3, 0, 1);
+    const quarter = Float64Array.of(5e-4, 0, 0, 0, 0, -half, 0, 5e-4, 0);
+    const { polylines, circles } = readDxf(
+      drawDxf({ ...SAMPLES.disc, elements: [{ weight: 1, rings, curves: [circle, quarter] }] }),
+    );
+    expect(circles).toMatchObject([{ layer: 'ELEMENT_1', center: { x: 0, y: 0 }, radius: 1 }]);
+    expect(polylines).toMatchObject([{ layer: 'ELEMENT_1_HOLES', shape: true }]);
+    const bulges = polylines[0].vertices as unknown as { bulge?: number }[];
+    expect(bulges.map(({ bulge }) => bulge?.toFixed(9))).toEqual([undefined, (-half).toFixed(9), undefined]);
+  });
+
+  it('writes weights so that they can be read back', () => {
+    const [element] = SAMPLES.disc.elements;
+    const weights = [1 / 3, -0.25, 123456789];
+    const { texts } = readDxf(
+      drawDxf({ ...SAMPLES.disc, elements: weights.map((weight) => ({ ...element, weight })) }),
+    );
+    const told = texts.map(({ text }) => /^ELEMENT_\d: weight (.*),/.exec(text)?.[1]).filter((text) => text);
+    expect(told).toEqual(['+0.3333333333333333', '−0.25', '+123456789']);
   });
 
   it('writes coordinates below 1e-6 mm in plain decimals', () => {

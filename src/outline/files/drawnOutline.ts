@@ -136,7 +136,7 @@ function refuseCrossing(rings: readonly Float64Array[], loops: readonly DrawnPat
   if (crossing === null) return;
   const { ringI, ringJ, x, y } = crossing;
   const [own, other] = [loops[ringI].place, loops[ringJ].place];
-  const met = ringI === ringJ ? 'itself' : other.name;
+  const met = own.name === other.name ? 'itself' : other.name;
   refuseAt(
     file,
     own,

@@ -4,7 +4,7 @@ import type { DrawnPath } from './drawnPath.ts';
 import { pointText, refuseAt } from './drawnPath.ts';
 
 /** Ends nearer than this belong together, metres: drawings are written to a nanometre or worse. */
-const JOINT_M = 1e-8;
+export const JOINT_M = 1e-8;
 /** And in parts of the drawing's size, for drawings with few decimals. */
 const JOINT_SHARE = 1e-6;
 
