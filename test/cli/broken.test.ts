@@ -64,7 +64,7 @@ describe('broken files', () => {
   it('are refused by the real program too', async () => {
     const briefs = some(BRIEFS, 15);
     const outlines = some(OUTLINES, 4);
-    const drawings = some(DRAWINGS, 20);
+    const drawings = some(DRAWINGS, 40);
     expect(briefs.length + outlines.length).toBeGreaterThanOrEqual(12);
     // At once: starting takes longest.
     await Promise.all([
