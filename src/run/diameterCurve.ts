@@ -1,6 +1,6 @@
 import type { DiameterCurve } from '../metrology/equivalentDiameter.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
-import { expectedReadings } from './expectedReadings.ts';
+import { expectedExtinctions, expectedReadings } from './expectedReadings.ts';
 import type { BuiltInstrument } from './instrument.ts';
 import type { SphereKind } from './sphereLike.ts';
 
@@ -9,11 +9,17 @@ const BEYOND = 1.25;
 /** Steps of the size parameter: some dozen to each ripple. */
 const STEP = 0.05;
 const COUNTS = [60, 600] as const;
+/** Diameters for each that is read in the light of a source of finite angle, where a reading takes seconds. */
+const PER_READ = 8;
 
-/** What the instrument shows of spheres of one kind over the brief's diameters, and a little beyond. */
+/**
+ * What the instrument shows of spheres of one kind over the brief's diameters, and a little beyond. Where readings are slow, only
+ * some are made, and reading/extinction is interpolated between them: it goes smoothly where extinction ripples.
+ */
 export function diameterCurve(
   { task, given, fields, distanceM, scores }: BuiltInstrument,
   kind: SphereKind,
+  perRead = (task.light.sourceAngleRad ?? 0) > 0 ? PER_READ : 1,
 ): DiameterCurve {
   const alike = task.particles.filter(({ material }) => material === kind.material);
   const particles = alike.length > 0 ? alike : task.particles;
@@ -29,7 +35,23 @@ export function diameterCurve(
   const even = Array.from({ length: count }, (_, i) => leastM + ((mostM - leastM) * i) / (count - 1));
   const diametersM = Float64Array.from(new Set([...even, ...rangeM])).sort();
   const spheres = Array.from(diametersM, (diameterM) => ({ ...kind, diameterM }));
-  const readings = expectedReadings(task, given, distanceM, spheres, fields);
-  const shownM2 = Float64Array.from(readings, ({ meanM2 }) => meanM2 / scores.gain);
+  const isRead = (i: number) => i % perRead === 0 || i === spheres.length - 1;
+  const read = spheres.filter((_, i) => isRead(i));
+  const ratios = expectedReadings(task, given, distanceM, read, fields).map(
+    ({ meanM2, extinctionM2 }) => meanM2 / extinctionM2,
+  );
+  const extinctions = expectedExtinctions(task, given, distanceM, spheres);
+  const shownM2 = Float64Array.from(extinctions, (extinctionM2, i) => {
+    const before = Math.floor(i / perRead);
+    const after = Math.min(before + 1, ratios.length - 1);
+    const span = Math.min(perRead, spheres.length - 1 - before * perRead);
+    const share = span === 0 ? 0 : (i - before * perRead) / span;
+    // The last one that is read may stand nearer than the others.
+    const ratio =
+      i === spheres.length - 1
+        ? ratios[ratios.length - 1]
+        : ratios[before] + share * (ratios[after] - ratios[before]);
+    return (ratio * extinctionM2) / scores.gain;
+  });
   return { material: kind.material, diametersM, shownM2, rangeM };
 }

@@ -26,22 +26,56 @@ export function expectedReadings(
   particles: readonly Particle[],
   fields: Fields,
 ): ExpectedReading[] {
-  const radiusM = ringsRadius(elements.flatMap(({ rings }) => rings));
-  const detector = { ...task.detector, distanceM: [distanceM, distanceM], radiusM: [radiusM, radiusM] };
-  const readings: ExpectedReading[] = [];
-  for (let first = 0; first < particles.length; first += AT_A_TIME) {
-    const some = particles.slice(first, first + AT_A_TIME);
-    const judge = new Judge({ ...task, particles: some, detector } as Task, SEARCH_FINENESS, fields);
+  return inGroups(particles).flatMap((some) => {
+    const judge = new Judge(taskOf(task, elements, distanceM, some), SEARCH_FINENESS, fields);
     const { ratios } = judge.outlineRatios(elements, distanceM);
     const perParticle = ratios.length / some.length;
-    for (let p = 0; p < some.length; p++) {
-      const rows = ratios.slice(p * perParticle, (p + 1) * perParticle);
-      // The nominal wavelength stands in the middle of the drift.
-      const { extinctionM2 } = judge.scenarios[p * perParticle + Math.floor(perParticle / 2)];
-      readings.push(summarised(rows, extinctionM2));
-    }
-  }
-  return readings;
+    return nominalExtinctions(judge, some.length).map((extinctionM2, p) =>
+      summarised(ratios.slice(p * perParticle, (p + 1) * perParticle), extinctionM2),
+    );
+  });
+}
+
+/** The extinction of particles in the brief's light at its nominal wavelength, m²: quick, for nothing is read. */
+export function expectedExtinctions(
+  task: Task,
+  { elements }: GivenDesign,
+  distanceM: number,
+  particles: readonly Particle[],
+): number[] {
+  return inGroups(particles).flatMap((some) =>
+    nominalExtinctions(new Judge(taskOf(task, elements, distanceM, some), SEARCH_FINENESS), some.length),
+  );
+}
+
+function inGroups(particles: readonly Particle[]): Particle[][] {
+  const groups: Particle[][] = [];
+  for (let first = 0; first < particles.length; first += AT_A_TIME)
+    groups.push(particles.slice(first, first + AT_A_TIME));
+  return groups;
+}
+
+function taskOf(
+  task: Task,
+  elements: GivenDesign['elements'],
+  distanceM: number,
+  particles: Particle[],
+): Task {
+  const radiusM = ringsRadius(elements.flatMap(({ rings }) => rings));
+  return {
+    ...task,
+    particles,
+    detector: { ...task.detector, distanceM: [distanceM, distanceM], radiusM: [radiusM, radiusM] },
+  };
+}
+
+/** The nominal wavelength stands in the middle of the drift. */
+function nominalExtinctions({ scenarios }: Judge, particles: number): number[] {
+  const perParticle = scenarios.length / particles;
+  return Array.from(
+    { length: particles },
+    (_, p) => scenarios[p * perParticle + Math.floor(perParticle / 2)].extinctionM2,
+  );
 }
 
 function summarised(rows: readonly Float64Array[], extinctionM2: number): ExpectedReading {

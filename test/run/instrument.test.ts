@@ -1,11 +1,13 @@
 import { describe, expect, it } from 'vitest';
 import { standardUncertainty } from '../../src/metrology/distribution.ts';
 import { ringsRadius } from '../../src/outline/area.ts';
+import { diameterCurve } from '../../src/run/diameterCurve.ts';
 import { expectedReadings } from '../../src/run/expectedReadings.ts';
 import type { GivenDesign } from '../../src/run/givenDesign.ts';
 import { correctionDistribution, instrumentOf } from '../../src/run/instrument.ts';
 import { judgeOutline } from '../../src/run/judgeOutline.ts';
 import { readBrief } from '../../src/run/readBrief.ts';
+import type { SphereKind } from '../../src/run/sphereLike.ts';
 import { measurementTime } from '../../src/score/cost.ts';
 
 const BRIEF = `light: { wavelength: 635 nm, intensityNoise: -150 }
@@ -110,5 +112,28 @@ describe('correctionDistribution', () => {
     expect(distribution.kind).toBe(kind);
     expect(standardUncertainty(distribution)).toBeCloseTo(expected, 12);
     expect(standardUncertainty(distribution)).toBeGreaterThanOrEqual(rms * (1 - 1e-12));
+  });
+});
+
+describe('diameterCurve', () => {
+  it('is what a response shows, and nearly the same from every eighth reading', async () => {
+    const brief = await readBrief(BRIEF, 'b.yaml');
+    const built = instrumentOf(brief, PLAIN, null, 'far');
+    const [sphere] = brief.task.particles;
+    const kind = { index: sphere.index, material: '1.59' } as SphereKind;
+    const full = diameterCurve(built, kind);
+    const sparse = diameterCurve(built, kind, 8);
+    expect(full.rangeM).toEqual([1e-6, 4e-6]);
+    expect(full.diametersM.at(0)).toBeCloseTo(0.8e-6, 12);
+    expect(full.diametersM.at(-1)).toBeCloseTo(5e-6, 12);
+    expect(full.diametersM).toContain(4e-6);
+    let farthest = 0;
+    full.shownM2.forEach((shown, i) => {
+      farthest = Math.max(farthest, Math.abs(sparse.shownM2[i] / shown - 1));
+    });
+    expect(farthest).toBeLessThan(0.004);
+    const at = full.diametersM.indexOf(4e-6);
+    const [{ meanM2 }] = expectedReadings(brief.task, PLAIN, 0.02, [brief.task.particles[2]], 'far');
+    expect(full.shownM2[at] * built.scores.gain).toBeCloseTo(meanM2, 18);
   });
 });
