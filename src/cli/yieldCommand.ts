@@ -70,12 +70,13 @@ export async function run(place: string, options: Options): Promise<number> {
     ...(gain && { gain }),
     ...(!quiet && { onProgress: progressLines() }),
   });
+  const { worsts, warnings: ofBuilds, ...result } = found;
   const warnings = [
     ...ofResults,
+    ...ofBuilds,
     ...readingWarnings(brief.task, fields, [{ radiusM: found.radius_m, distanceM: found.distance_m }]),
   ];
   warn(warnings);
-  const { worsts, ...result } = found;
   if (csv !== undefined) {
     const rows = [...worsts].map((worst, i) => [i + 1, Number(worst.toPrecision(10)), worst <= found.target]);
     const file = { path: csv, text: csvText([['build', 'worst', 'meets'], ...rows]) };
@@ -102,7 +103,7 @@ function progressLines(): (read: number, of: number) => void {
 }
 
 function printYield(found: Yield, file: string): void {
-  const { builds, target, worst, near, surface, readings, gain, wanted, tolerances } = found;
+  const { builds, target, worst, near, surface, readings, gain, tolerances } = found;
   const [low, high] = found.interval.map(shareText);
   const calibrated = gain.is === 'recalibrated' ? 'calibrated each' : 'with the gain of the drawing';
   printWrapped(
@@ -114,7 +115,12 @@ function printYield(found: Yield, file: string): void {
   print('');
   print(table(COLUMNS, tolerances));
   print('');
-  printWrapped(needsText(found));
+  const most = tolerances.toSorted((p, q) => q.worst.total - p.worst.total).at(0);
+  const spoils =
+    most === undefined
+      ? ''
+      : `What spoils most is ${most.name}, with ${tenths(most.worst.total)} % of the variance of the worst correction. `;
+  printWrapped(spoils + needsText(found));
   printWrapped(
     near === null
       ? `Every build was read in full, at ${readings} readings each; shares are of a surface.`
@@ -123,10 +129,6 @@ function printYield(found: Yield, file: string): void {
           `${percentText(surface.error.largest)} at most. Of the ${near.builds} builds that it puts so near the target, ` +
           `${near.read} were read in full.`,
   );
-  const least = tolerances.toSorted((p, q) => q.worst.total - p.worst.total).at(0);
-  if (least !== undefined && found.yield < wanted) {
-    printWrapped(`What spoils most: ${least.name}, with ${shareText(least.worst.total)} of the variance.`);
-  }
 }
 
 function needsText({ wanted, togetherNeeded, yield: share, drawing, target }: Yield): string {
@@ -137,9 +139,10 @@ function needsText({ wanted, togetherNeeded, yield: share, drawing, target }: Yi
   return `All tolerances together, each times ${countText(togetherNeeded)}, give ${goal}.`;
 }
 
-/** A share of builds or of variance, to a tenth of a percent. */
+/** A share of builds or of variance, to a tenth of a percent, and more digits near none and all. */
 function shareText(share: number): string {
-  return `${Number((100 * share).toFixed(share > 0.999 && share < 1 ? 3 : 1))} %`;
+  const isEdge = Math.min(share, 1 - share) < 0.001;
+  return `${Number((100 * share).toFixed(isEdge ? 3 : 1))} %`;
 }
 
 /** What each tolerance is measured in; `noise` is over gain times the smallest extinction. */

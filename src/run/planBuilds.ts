@@ -3,6 +3,7 @@ import { formatQuantity } from '../base/quantity.ts';
 import { LegendreRules } from '../numeric/gaussLegendre.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
 import { isTabled } from '../optics/particle.ts';
+import type { OutlineElement } from '../outline/shape.ts';
 import { driftedWavelengths } from '../reading/scenario.ts';
 import type { BuildPlan } from '../score/buildPlan.ts';
 import { BUILD_FINENESS } from '../score/buildPlan.ts';
@@ -13,6 +14,7 @@ import type { Scores } from '../score/scores.ts';
 import type { Task } from '../score/task.ts';
 import type { Deviations } from '../score/tolerances.ts';
 import { WorstCases } from '../score/worstCases.ts';
+import { measureOutline } from '../shop/measureOutline.ts';
 import type { GivenDesign } from './givenDesign.ts';
 import type { OutlineJudge } from './judgeOutline.ts';
 
@@ -104,4 +106,15 @@ export function checkTolerances(task: Task, distanceM: number, farthest: Deviati
     const expected = `within half of what ${particle.material} differs from the medium by, ${(contrast / 2).toPrecision(3)}`;
     refuse('index', farthest.index.toPrecision(3), expected);
   }
+}
+
+/** Where edges that are moved as far as tolerances let them close an opening or a bar: what such builds read means little. */
+export function edgeWarning(elements: readonly OutlineElement[], shiftM: number): string | null {
+  const narrowest = elements.flatMap(({ rings }) => {
+    const { smallestOpening, smallestWeb } = measureOutline(rings);
+    return [smallestOpening?.widthM ?? Infinity, smallestWeb?.widthM ?? Infinity];
+  });
+  if (2 * shiftM < Math.min(...narrowest)) return null;
+  const width = formatQuantity(Math.min(...narrowest), 'length', 3);
+  return `Edges that move by ${formatQuantity(shiftM, 'length', 3)} close this outline's narrowest place, ${width}: what such builds read means little`;
 }

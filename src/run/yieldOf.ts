@@ -26,9 +26,10 @@ import type { SurfaceReport } from './fitBuilds.ts';
 import { drawBuilds, fitSurface, STREAM, stretched, worstsInFull } from './fitBuilds.ts';
 import type { GivenDesign } from './givenDesign.ts';
 import { judgeOutline } from './judgeOutline.ts';
-import { checkTolerances, planBuilds } from './planBuilds.ts';
+import { checkTolerances, edgeWarning, planBuilds } from './planBuilds.ts';
 import { resolveTolerances } from './readTolerances.ts';
 import { toleranceNeeds } from './toleranceNeeds.ts';
+import { present } from './warnings.ts';
 
 export interface YieldOptions {
   /** How many builds; 100 000 if left out. */
@@ -93,11 +94,13 @@ export interface Yield {
   tolerances: ToleranceRow[];
   /** What all tolerances together would have to be multiplied by; null where even nothing is not enough, or it was not asked for. */
   togetherNeeded: number | null;
+  /** What the user should know of these builds. */
+  warnings: string[];
 }
 
 /** Points of each of the two samples for shares; builds that tolerances are tightened with. */
 const SHARE_POINTS = 8000;
-const NEEDS_BUILDS = 5000;
+const NEEDS_BUILDS = 20_000;
 /** Most builds near the target that are read in full. */
 const NEAR_READ = { usual: 400, quick: 60 };
 
@@ -203,6 +206,7 @@ export async function yieldOf(
       worsts,
       wanted,
       ...details,
+      warnings: present([edgeWarning(given.elements, farthestDeviations(tolerances).shiftM)]),
     };
   });
 }

@@ -133,3 +133,15 @@ describe('yieldOf', () => {
     }
   });
 });
+
+it('warns where edges may meet', async () => {
+  const ring = (radiusM: number, turn: 1 | -1) =>
+    circle(turn * radiusM, 60).map((v, i) => (i % 2 ? turn * v : v));
+  const rings = { ...GIVEN, elements: [{ weight: 1, rings: [ring(1.1e-4, 1), ring(1.05e-4, -1)] }] };
+  const warningsFor = async (edgeM: number) =>
+    (await yieldOf(TASK, rings, { ...NONE, edge: limits(edgeM) }, { builds: 100, quick: true })).warnings;
+  expect(await warningsFor(1e-6)).toEqual([]);
+  expect((await warningsFor(3e-6))[0]).toMatch(
+    /^Edges that move by 3 µm close this outline's narrowest place, (5|4.99) µm/,
+  );
+});
