@@ -2,6 +2,7 @@ export type { ErrorCode, Problem } from './base/errors.ts';
 export { RimwrightError } from './base/errors.ts';
 export type { Drawing } from './draw/drawing.ts';
 export { drawDxf } from './draw/dxf.ts';
+export { drawGds } from './draw/gds.ts';
 export { drawSvg } from './draw/svg.ts';
 export type { BudgetCheck } from './metrology/checkBudget.ts';
 export { checkBudget } from './metrology/checkBudget.ts';

@@ -41,6 +41,12 @@ export async function run(place: string, options: Options): Promise<number> {
     path: join(options.out, `${given.id}.${format}`),
     text: drawGiven(format, drawing, given),
   }));
+  const isApart = given.elements.some(
+    ({ distanceM: own, share }) => own !== undefined || share !== undefined,
+  );
+  if (isApart && formats.some((format) => format !== 'json')) {
+    warn(['elements in planes of their own, or behind a beam splitter: only JSON keeps that']);
+  }
   prepareFolder(options.out);
   uninterrupted(() => writeWhole(files, options.force ?? false));
   for (const { path } of files) print(path);

@@ -26,6 +26,9 @@ const NAMES = [
   'sectors-hub-3-fold-2',
   'sectors-arc-3-fold-2',
   'fourier-square-3-fold-6',
+  'rings-weighted-apart-3',
+  'grid-3-by-5',
+  'splitter-2',
   'fourier-square-1-fold-6-sines',
 ];
 const DISTANCE_M = 0.02;
@@ -58,7 +61,9 @@ afterAll(() => rmSync(FOLDER, { recursive: true, force: true }));
 function outlineNamed(name: string): OutlineElement[] {
   const variant = variantNamed(name);
   const random = randomStream(name.length, 7);
-  return shapePoints(drawn(variant, someValues(variant, random, 0), UNIT_M), 720).map(orientElement);
+  const elements = shapePoints(drawn(variant, someValues(variant, random, 0), UNIT_M), 720);
+  // Only JSON keeps planes and parts of the light, which the last test is about.
+  return elements.map(({ distanceM: _, share: __, ...element }) => orientElement(element));
 }
 
 const areaOf = (elements: readonly OutlineElement[]) =>
@@ -105,6 +110,19 @@ describe('an outline through a file', () => {
     const back = throughFile(elements, format, `weights-${format}`);
     expect(back.elements.map(({ weight }) => weight)).toEqual([1, -0.3333333333]);
     expect(Math.abs(areaOf(back.elements) / areaOf(elements) - 1)).toBeLessThan(1e-6);
+  });
+
+  it('keeps planes and parts of the light in JSON', () => {
+    const elements = outlineNamed('splitter-2').map((element, e) => ({
+      ...element,
+      distanceM: 0.02 + 0.01 * e,
+      share: 0.5,
+    }));
+    const { elements: back } = throughFile(elements, 'json', 'splitter');
+    expect(back.map(({ distanceM, share }) => [distanceM, share])).toEqual([
+      [0.02, 0.5],
+      [0.03, 0.5],
+    ]);
   });
 
   it('keeps exact arcs through JSON and DXF', () => {

@@ -45,7 +45,7 @@ function chains(paths: readonly DrawnPath[], jointM: number, file: string): Draw
     while (!used.has(path)) {
       used.add(path);
       const own = paths[path].curves;
-      curves.push(...(forwards ? own : own.map(backwards).reverse()));
+      for (const curve of forwards ? own : own.map(backwards).reverse()) curves.push(curve);
       const next = partner({ path, atStart: !forwards });
       path = next.path;
       forwards = next.atStart;

@@ -249,14 +249,24 @@ describe('readDxf', () => {
       fc.property(places, (changes) => {
         const changed = [...lines];
         for (const [at, word] of changes) changed[at] = word;
-        try {
-          readDxf(changed.join('\n'), 'a.dxf', 'mm');
-        } catch (error) {
-          expect(error).toBeInstanceOf(RimwrightError);
-          expect((error as RimwrightError).code).toBe('input');
-        }
+        expectOwnErrors(changed.join('\n'));
       }),
       { numRuns: 300 },
     );
+    fc.assert(fc.property(fc.string({ unit: 'binary' }), expectOwnErrors));
+    fc.assert(
+      fc.property(fc.array(fc.nat(300)), (codes) =>
+        expectOwnErrors(dxfText([codes.flatMap((code) => [code, 1])])),
+      ),
+    );
   });
 });
+
+function expectOwnErrors(text: string): void {
+  try {
+    readDxf(text, 'a.dxf', 'mm');
+  } catch (error) {
+    expect(error).toBeInstanceOf(RimwrightError);
+    expect((error as RimwrightError).code).toBe('input');
+  }
+}
