@@ -53,6 +53,7 @@ interface Options {
 const MOST_BYTES = 20_000_000;
 /** Rows that a terminal is filled with; the file has them all. */
 const MOST_SHOWN = 40;
+const MOST_REASONS = 20;
 
 /** Runs `rimwright evaluate` and gives its exit code. */
 export async function run(place: string, options: Options): Promise<number> {
@@ -99,14 +100,15 @@ export async function run(place: string, options: Options): Promise<number> {
 function printEvaluation(evaluation: Evaluation, data: string, design: string, isWritten: boolean): void {
   const { rows, fit, gain, coverage, curve } = evaluation;
   const [value, uncertainty] = withUncertainty(gain.value, gain.standardUncertainty);
+  const known = gain.standardUncertainty > 0 ? ` ± ${uncertainty} (one standard uncertainty)` : '';
   const origin = gain.isFitted ? 'fitted to reference spheres' : "the design's";
   printWrapped(
-    `${data} with ${design}: ${rows.length} rows, gain ${value} ± ${uncertainty} (one standard uncertainty), ${origin}. ` +
+    `${data} with ${design}: ${rows.length} ${rows.length === 1 ? 'row' : 'rows'}, gain ${value}${known}, ${origin}. ` +
       `Uncertainties of rows have ${percentText(coverage)} coverage.` +
       (curve === null
         ? ''
-        : ` Diameters are those of spheres of ${curve.material}, ${formatQuantity(curve.rangeM[0], 'length')} ` +
-          `to ${formatQuantity(curve.rangeM[1], 'length')} and a quarter beyond.`),
+        : ` Diameters are those of spheres of ${curve.material}, ` +
+          `${[...new Set(curve.rangeM)].map((end) => formatQuantity(end, 'length')).join(' to ')} and a quarter beyond.`),
   );
   print('');
   print(table(COLUMNS, rows.slice(0, MOST_SHOWN)));
@@ -122,11 +124,32 @@ function printEvaluation(evaluation: Evaluation, data: string, design: string, i
         : ` ${several} ${several === 1 ? 'row fits' : 'rows fit'} more than one diameter, because extinction ripples: ` +
           'the interval holds them all, and CSV and JSON list them.'),
   );
+  printReasons(rows);
   if (fit === null) return;
   print('');
   printWrapped(fitText(fit, gain.isFitted));
   print('');
   print(fitTable(fit));
+}
+
+/** Each reason with its rows: the table has no room for long ones. */
+function printReasons(rows: readonly EvaluatedReading[]): void {
+  const linesOf = new Map<string, number[]>();
+  for (const { reasons, reading } of rows) {
+    for (const reason of reasons) {
+      const lines = linesOf.get(reason);
+      if (lines === undefined) linesOf.set(reason, [reading.line]);
+      else lines.push(reading.line);
+    }
+  }
+  for (const [reason, lines] of [...linesOf].slice(0, MOST_REASONS)) {
+    const more = lines.length > 8 ? `, … (${lines.length} lines)` : '';
+    printWrapped(
+      `${reason}: ${lines.length === 1 ? 'line' : 'lines'} ${lines.slice(0, 8).join(', ')}${more}`,
+      '  ',
+    );
+  }
+  if (linesOf.size > MOST_REASONS) print(`  … and ${linesOf.size - MOST_REASONS} reasons more`);
 }
 
 const MICRO = 1e6;
@@ -147,7 +170,7 @@ const COLUMNS: readonly Column<EvaluatedReading>[] = [
   },
   {
     title: ['grade'],
-    cell: ({ grade, reasons }) => [grade, ...reasons].join(': '),
+    cell: ({ grade, reasons }) => plainText([grade, ...reasons].join(': ')),
     align: 'left',
     flexible: true,
   },

@@ -193,11 +193,20 @@ overload,12,=HYPERLINK("x"),,
 
   it('leaves named lines out of the fit, and says what to do without a material', async () => {
     const rows = [2, 2.01, 2.02].map((signal) => `1995,${1995 - signal},ref,3,0.01\n`).join('');
-    const { stdout } = await evaluate({ 'data.csv': HEADER + rows }, '--omit', '3');
+    const { stdout, stderr } = await evaluate({ 'data.csv': HEADER + rows }, '--omit', '3');
     expect(stdout).toMatch(/Gain from 2 readings of reference spheres/);
     expect(stdout).toMatch(/left out/);
+    // These spheres of 3 µm should take 1.86 µW.
+    expect(stderr).not.toContain('The fitted gain is');
+    const wild = await evaluate({ 'data.csv': `${HEADER}1995,1990,ref,3,0.01\n` });
+    expect(wild.stderr.replaceAll(/\s+/g, ' ')).toMatch(/The fitted gain is 1\d0 % above the design's/);
     const unusable = await evaluate({ 'data.csv': `${HEADER}x,1,ref,3,0.01\n` });
     expect(unusable.stderr.replaceAll(/\s+/g, ' ')).toContain('No row with a reference sphere can be used');
+    const stray = await evaluate({ 'data.csv': HEADER + rows }, '--omit', '3, 9');
+    expect([stray.code, stray.stdout]).toEqual([2, '']);
+    expect(stray.stderr).toContain('--omit: found 9, expected lines of reference spheres that can be used');
+    const all = await evaluate({ 'data.csv': HEADER + rows }, '--omit', '2,3,4');
+    expect(all.stderr).toContain('--omit: found every line with a reference sphere, expected one at least');
     const far = await evaluate({ 'data.csv': `${HEADER}1995,1993,ref,9000,0.01\n` });
     expect([far.code, far.stdout]).toEqual([2, '']);
     expect(far.stderr).toContain('reference_diameter: found 9 mm, expected diameters from');
