@@ -38,12 +38,14 @@ Example:
     .argument('[shelf]', 'media, materials, shops or briefs')
     .argument('[name]', 'print this one')
     .option('--json', AS_JSON)
+    .option('--schema', 'print the JSON Schema of briefs, by which editors complete them')
     .addHelpText(
       'after',
       `
 Example:
   $ rimwright presets media
-  $ rimwright presets briefs road-dust > my.yaml`,
+  $ rimwright presets briefs road-dust > my.yaml
+  $ rimwright presets --schema > brief.schema.json`,
     )
     .action(async (shelf, name, options) =>
       done(await (await import('./presetsCommand.ts')).run(shelf, name, options)),

@@ -25,8 +25,13 @@ interface Entry {
 export async function run(
   shelfName: string | undefined,
   name: string | undefined,
-  options: { json?: true },
+  options: { json?: true; schema?: true },
 ): Promise<number> {
+  if (options.schema) {
+    const { briefJsonSchema } = await import('../run/briefJsonSchema.ts');
+    print(jsonText(await briefJsonSchema()));
+    return EXIT.done;
+  }
   const folder = presetsFolder();
   const shelf = shelfName === undefined ? undefined : oneOf('presets', SHELVES)(shelfName);
   if (shelf !== undefined && name !== undefined) {

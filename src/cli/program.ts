@@ -1,6 +1,7 @@
 import { packageVersion } from '../base/version.ts';
 import { Command, CommanderError } from './commander.ts';
 import { declareFiles } from './declareFiles.ts';
+import { declareHelping } from './declareHelping.ts';
 import { declareMeasuring } from './declareMeasuring.ts';
 import { declareReading } from './declareReading.ts';
 import { declareSearching } from './declareSearching.ts';
@@ -51,5 +52,6 @@ machine. Results go to standard output, progress and notes to standard error.`,
   declareReading(program, done);
   declareMeasuring(program, done);
   declareFiles(program, done);
+  declareHelping(program, done);
   return program;
 }

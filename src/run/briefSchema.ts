@@ -11,6 +11,7 @@ import type {
   ValueKey,
   ValueOrSectionKey,
 } from './readMapping.ts';
+import { COUNT_OF_DISTRIBUTION, COUNT_OF_RANGE } from './readParticles.ts';
 import { indexOrShelfName, indexValue, shelfName } from './shelfRules.ts';
 import type { ValueRule } from './valueRules.ts';
 import {
@@ -28,121 +29,302 @@ import {
 } from './valueRules.ts';
 
 /**
- * Every key of a brief: what it may hold, its limits, and its default. Defaults stand here and nowhere else, written as
- * a brief would write them.
+ * Every key of a brief: what it means, what it may hold, its limits, and its default. All of this stands here and nowhere
+ * else: checks, help, the JSON Schema and written briefs are made of it. Defaults are written as a brief would write them.
  *
  * @param presets the folder of the shelf
- * @param title what a brief without a title is called
+ * @param title what a brief without a title is called; null where it has no file yet
  */
-export function briefSchema(units: Units, presets: string, title: string) {
+export function briefSchema(units: Units, presets: string, title: string | null) {
   const { quantity, quantityRange } = quantityRules(units);
   const materials = shelfName(
+    'materials',
     (name) => loadIndexModel('materials', name, presets),
-    'the name of a material on the shelf, such as polystyrene',
+    'polystyrene',
   );
   const ownIndex = indexValue({ n: [0.05, 30], k: 30 });
   const media = shelfName(
+    'media',
     (name) => loadIndexModel('media', name, presets),
-    'the name of a medium on the shelf, such as air, or an index such as 1.332',
+    'air',
+    ', or an index such as 1.332',
   );
-  const shops = shelfName(
-    (name) => loadShop(name, presets),
-    'the name of a shop on the shelf, such as photomask',
-  );
+  const shops = shelfName('shops', (name) => loadShop(name, presets), 'photomask');
 
   const wavelength = quantity('length', ['100 nm', '20 um'], '635 nm');
   const linewidth = quantity('length', ['0 nm', '4 um'], '1 nm');
+  const titleRule = textLine(200);
+  const titleAbout = "what the results folder and the report are called; the file's name if left out";
 
   return {
-    title: withDefault(title, textLine(200)),
-    light: section({
-      wavelength: required(wavelength),
-      linewidth: withDefault('0 nm', linewidth),
-      shape: withDefault('gaussian', word(LINE_SHAPES)),
-      also: noneOrListOf(8, {
-        wavelength: required(wavelength),
-        share: required(quantity('ratio', ['0.001 %', '99.999 %'], '40 %')),
-        linewidth: withDefault('0 nm', linewidth),
+    title: title === null ? optional(titleAbout, titleRule) : withDefault(title, titleAbout, titleRule),
+    light: section('the light that falls on the particle', {
+      wavelength: required('wavelength in vacuum', wavelength),
+      linewidth: withDefault('0 nm', 'full width of the line at half maximum', linewidth),
+      shape: withDefault('gaussian', 'shape of the line and of further ones', word(LINE_SHAPES)),
+      also: noneOrListOf(8, 'further lines of the same source', '{ wavelength: 650 nm, share: 40 % }', {
+        wavelength: required('wavelength in vacuum', wavelength),
+        share: required(
+          'its part of all the light; the main line has the rest',
+          quantity('ratio', ['0.001 %', '99.999 %'], '40 %'),
+        ),
+        linewidth: withDefault('0 nm', 'full width of this line at half maximum', linewidth),
       }),
-      drift: withDefault('0 nm', quantity('length', ['0 nm', '4 um'], '1 nm')),
-      polarization: withDefault('none', orNone(quantity('angle', ['-360 deg', '360 deg'], '30 deg'))),
-      sourceAngle: withDefault('0 mrad', quantity('angle', ['0 mrad', '100 mrad'], '2 mrad')),
-      irradiance: withDefault('5 W/cm^2', quantity('irradiance', ['1e-9 W/cm^2', '1e12 W/cm^2'], '5 W/cm^2')),
-      beam: valueOrSection(withDefault('flat', word(['flat'], 'flat, or the keys waist, focus')), {
-        waist: required(quantity('length', ['0.1 um', '10 m'], '200 um')),
-        focus: withDefault('0 mm', quantity('length', ['-10 m', '10 m'], '0 mm')),
-      }),
-      intensityNoise: withDefault('none', orNone(plainNumber(-300, 0, 'a number of dB/Hz'))),
-    }),
-    medium: withDefault('air', indexOrShelfName(indexValue({ n: [0.5, 5], k: 0 }), media)),
-    particles: listOf(50, {
-      diameter: optional(quantityRange('length', ['0.01 nm', '1 m'], '1 um to 4 um')),
-      distribution: valueOrSection(
-        optional(fileName('the keys median, gsd, or a table such as counts.csv')),
+      drift: withDefault(
+        '0 nm',
+        'every line may be off by this much, either way',
+        quantity('length', ['0 nm', '4 um'], '1 nm'),
+      ),
+      polarization: withDefault(
+        'none',
+        'direction of the electric field from x; none for unpolarised light',
+        orNone(quantity('angle', ['-360 deg', '360 deg'], '30 deg')),
+      ),
+      sourceAngle: withDefault(
+        '0 mrad',
+        'half-angle of a source that is not a point, seen from the particle',
+        quantity('angle', ['0 mrad', '100 mrad'], '2 mrad'),
+      ),
+      irradiance: withDefault(
+        '5 W/cm^2',
+        'at the nominal place of the particle',
+        quantity('irradiance', ['1e-9 W/cm^2', '1e12 W/cm^2'], '5 W/cm^2'),
+      ),
+      beam: valueOrSection(
+        withDefault(
+          'flat',
+          'a flat wave, or a Gaussian beam by its waist and focus',
+          word(['flat'], 'flat, or the keys waist, focus'),
+        ),
+        '{ waist: 200 um }',
         {
-          median: required(quantity('length', ['0.01 nm', '1 m'], '2 um')),
-          gsd: required(plainNumber(1.001, 5, 'a geometric standard deviation')),
+          waist: required(
+            'radius at which the irradiance in the focus is 1/e² of that on the axis',
+            quantity('length', ['0.1 um', '10 m'], '200 um'),
+          ),
+          focus: withDefault(
+            '0 mm',
+            "how far the focus is behind the particle's nominal place",
+            quantity('length', ['-10 m', '10 m'], '0 mm'),
+          ),
         },
       ),
-      count: optional(wholeNumber(1, 50)),
-      material: optional(materials),
-      index: optional(ownIndex),
-      core: valueOrSection(optional(refused('the keys share, material, index')), {
-        share: required(quantity('ratio', ['0.1 %', '99.99 %'], '60 %')),
-        material: optional(materials),
-        index: optional(ownIndex),
-      }),
-      amplitudes: optional(fileName('the path of a table, such as amplitudes.csv')),
-      extinction: optional(quantity('area', ['1e-12 um^2', '1 m^2'], '12.3 um^2')),
+      intensityNoise: withDefault(
+        'none',
+        'relative intensity noise of the source',
+        orNone(plainNumber(-300, 0, 'a number of dB/Hz', -150)),
+      ),
     }),
-    placement: section({
-      offset: withDefault('0 um', quantity('length', ['0 um', '10 mm'], '10 um')),
-      depth: withDefault('0 mm', quantity('length', ['0 mm', '1 m'], '1 mm')),
+    medium: withDefault(
+      'air',
+      'what the particles are in: a name on the shelf, or a real index',
+      indexOrShelfName(indexValue({ n: [0.5, 5], k: 0 }), media),
+    ),
+    particles: listOf(
+      50,
+      'the particles that must be read, one kind an entry',
+      '{ diameter: 1 um to 4 um, material: polystyrene }',
+      {
+        diameter: optional(
+          'a diameter or a range of them; with amplitudes, that of a sphere as large',
+          quantityRange('length', ['0.01 nm', '1 m'], '1 um to 4 um'),
+        ),
+        distribution: valueOrSection(
+          optional(
+            'sizes in place of a diameter: log-normal by number, or a table of counts',
+            fileName('the keys median, gsd, or a table such as counts.csv', 'counts.csv'),
+          ),
+          '{ median: 2 um, gsd: 1.6 }',
+          {
+            median: required('median diameter by number', quantity('length', ['0.01 nm', '1 m'], '2 um')),
+            gsd: required(
+              'geometric standard deviation of the diameters',
+              plainNumber(1.001, 5, 'a geometric standard deviation', 1.6),
+            ),
+          },
+        ),
+        count: optional(
+          `how many diameters stand for the entry; ${COUNT_OF_RANGE} of a range, ${COUNT_OF_DISTRIBUTION} of a distribution if left out`,
+          wholeNumber(1, 50, 3),
+        ),
+        material: optional('what they are made of: a name on the shelf', materials),
+        index: optional('their index relative to vacuum, in place of a material', ownIndex),
+        core: valueOrSection(
+          optional(
+            'a core of its own; material or index beside it are then the shell',
+            refused('the keys share, material, index'),
+          ),
+          '{ share: 60 %, material: polystyrene }',
+          {
+            share: required(
+              "the core's diameter over that of the particle",
+              quantity('ratio', ['0.1 %', '99.99 %'], '60 %'),
+            ),
+            material: optional('what the core is made of: a name on the shelf', materials),
+            index: optional("the core's index relative to vacuum, in place of a material", ownIndex),
+          },
+        ),
+        amplitudes: optional(
+          'a table of amplitudes from another computation, in place of a material',
+          fileName('the path of a table, such as amplitudes.csv', 'amplitudes.csv'),
+        ),
+        extinction: optional(
+          'extinction cross-section that the amplitudes were computed with',
+          quantity('area', ['1e-12 um^2', '1 m^2'], '12.3 um^2'),
+        ),
+      },
+    ),
+    placement: section('where the particle may be while it is measured', {
+      offset: withDefault(
+        '0 um',
+        'anywhere within this distance of the axis',
+        quantity('length', ['0 um', '10 mm'], '10 um'),
+      ),
+      depth: withDefault(
+        '0 mm',
+        'and this far before or behind its nominal place',
+        quantity('length', ['0 mm', '1 m'], '1 mm'),
+      ),
       spread: valueOrSection(
-        withDefault('0 um', quantity('length', ['0 um', '10 mm'], '5 um, or { diffusing for: 1 ms }')),
+        withDefault(
+          '0 um',
+          'random motion during one measurement: rms along each axis, or by diffusion',
+          quantity('length', ['0 um', '10 mm'], '5 um', ', or { diffusing for: 1 ms }'),
+        ),
+        '{ diffusing for: 1 ms }',
         {
-          'diffusing for': required(quantity('time', ['1 ns', '1e6 s'], '1 ms')),
-          temperature: withDefault('20 degC', quantity('temperature', ['1 K', '3000 K'], '20 degC')),
-          viscosity: optional(quantity('viscosity', ['1e-7 Pa s', '1e4 Pa s'], '1.2 mPa s')),
+          'diffusing for': required(
+            'how long the particle diffuses',
+            quantity('time', ['1 ns', '1e6 s'], '1 ms'),
+          ),
+          temperature: withDefault(
+            '20 degC',
+            'of the medium',
+            quantity('temperature', ['1 K', '3000 K'], '20 degC'),
+          ),
+          viscosity: optional(
+            'of a medium whose own is not known here',
+            quantity('viscosity', ['1e-7 Pa s', '1e4 Pa s'], '1.2 mPa s'),
+          ),
         },
       ),
-      crossing: noneOrSection({
-        span: required(quantity('length', ['10 nm', '100 mm'], '400 um')),
-        heading: withDefault('0 deg', quantity('angle', ['-360 deg', '360 deg'], '0 deg')),
+      crossing: noneOrSection('a straight flight across the beam, over which the reading is averaged', {
+        span: required(
+          'length of the flight, half of it on either side',
+          quantity('length', ['10 nm', '100 mm'], '400 um'),
+        ),
+        heading: withDefault(
+          '0 deg',
+          'direction of the flight from x',
+          quantity('angle', ['-360 deg', '360 deg'], '0 deg'),
+        ),
       }),
     }),
-    detector: section({
-      distance: required(quantityRange('length', ['0.1 mm', '10 m'], '10 mm to 60 mm')),
-      radius: required(quantityRange('length', ['1 um', '1 m'], '50 um to 2 mm')),
-      responsivity: withDefault('0.42 A/W', quantity('responsivity', ['1e-6 A/W', '1e9 A/W'], '0.42 A/W')),
-      noiseCurrent: withDefault('2 pA', quantity('current', ['0 pA', '1 A'], '2 pA')),
-      elements: withDefault('several', word(['several', 'one'])),
-      gap: withDefault('10 um', quantity('length', ['0 um', '10 mm'], '10 um')),
-      balanced: withDefault(false, trueOrFalse()),
-      commonModeRejection: withDefault('none', orNone(plainNumber(0, 300, 'a number of dB'))),
+    detector: section('the detector and its amplifier', {
+      distance: required(
+        'from the particle to the mask: one distance, or a range to search',
+        quantityRange('length', ['0.1 mm', '10 m'], '10 mm to 60 mm'),
+      ),
+      radius: required(
+        'of the circle around the outline: one, or a range to search',
+        quantityRange('length', ['1 um', '1 m'], '50 um to 2 mm'),
+      ),
+      responsivity: withDefault(
+        '0.42 A/W',
+        'current of the detector for the power on it',
+        quantity('responsivity', ['1e-6 A/W', '1e9 A/W'], '0.42 A/W'),
+      ),
+      noiseCurrent: withDefault(
+        '2 pA',
+        'noise of the amplifier, per square root of hertz',
+        quantity('current', ['0 pA', '1 A'], '2 pA'),
+      ),
+      elements: withDefault(
+        'several',
+        'whether a search may draw several weighted elements',
+        word(['several', 'one']),
+      ),
+      gap: withDefault(
+        '10 um',
+        'least gap between elements in one plane',
+        quantity('length', ['0 um', '10 mm'], '10 um'),
+      ),
+      balanced: withDefault(
+        false,
+        "whether weights must make the light's intensity noise cancel",
+        trueOrFalse(),
+      ),
+      commonModeRejection: withDefault(
+        'none',
+        'how well the difference of two currents rejects what is common; none for perfectly',
+        orNone(plainNumber(0, 300, 'a number of dB', 60)),
+      ),
     }),
-    target: section({
-      correction: required(quantity('ratio', ['1e-7 %', '99.9 %'], '1 %')),
-      gain: withDefault('one', word(['one', 'free'])),
-      lobe: withDefault('none', orNone(quantity('ratio', ['0.0001 %', '10000 %'], '10 %'))),
-      time: withDefault('none', orNone(quantity('time', ['1 ns', '1e6 s'], '1 ms'))),
+    target: section('what a design must reach', {
+      correction: required(
+        'how far the reading may be from the extinction, over all of the brief',
+        quantity('ratio', ['1e-7 %', '99.9 %'], '1 %'),
+      ),
+      gain: withDefault(
+        'one',
+        'free: one factor for all particles may be calibrated away; one: none',
+        word(['one', 'free']),
+      ),
+      lobe: withDefault(
+        'none',
+        "largest half-angle of the detector over that of diffraction's first dark ring",
+        orNone(quantity('ratio', ['0.0001 %', '10000 %'], '10 %')),
+      ),
+      time: withDefault(
+        'none',
+        'longest time that one measurement may take',
+        orNone(quantity('time', ['1 ns', '1e6 s'], '1 ms')),
+      ),
     }),
-    uncertainties: section({
-      averaging: withDefault('1 ms', quantity('time', ['1 ns', '1e6 s'], '1 ms')),
-      irradiance: withDefault('1 %', quantity('ratio', ['0 %', '50 %'], '1 %')),
-      responsivity: withDefault('1 %', quantity('ratio', ['0 %', '50 %'], '1 %')),
-      gain: withDefault('0 %', quantity('ratio', ['0 %', '50 %'], '0.5 %')),
-      lightDrift: withDefault('0.0001 %', quantity('ratio', ['0 %', '50 %'], '0.0001 %')),
-      nonlinearity: withDefault('0.1 %', quantity('ratio', ['0 %', '50 %'], '0.1 %')),
-      distance: withDefault('20 um', quantity('length', ['0 um', '1 m'], '20 um')),
-      wavelength: withDefault('0.1 nm', quantity('length', ['0 nm', '100 nm'], '0.1 nm')),
+    uncertainties: section('of the built instrument: what rimwright budget and evaluate count with', {
+      averaging: withDefault(
+        '1 ms',
+        'of each of the two readings, without and with the particle',
+        quantity('time', ['1 ns', '1e6 s'], '1 ms'),
+      ),
+      irradiance: withDefault(
+        '1 %',
+        'standard uncertainty over the value',
+        quantity('ratio', ['0 %', '50 %'], '1 %'),
+      ),
+      responsivity: withDefault(
+        '1 %',
+        'standard uncertainty over the value',
+        quantity('ratio', ['0 %', '50 %'], '1 %'),
+      ),
+      gain: withDefault(
+        '0 %',
+        'standard uncertainty over the value, where the gain is not calibrated',
+        quantity('ratio', ['0 %', '50 %'], '0.5 %'),
+      ),
+      lightDrift: withDefault(
+        '0.0001 %',
+        'limits, either way, of the light between the two readings',
+        quantity('ratio', ['0 %', '50 %'], '0.0001 %'),
+      ),
+      nonlinearity: withDefault(
+        '0.1 %',
+        'limits, either way, of the detector',
+        quantity('ratio', ['0 %', '50 %'], '0.1 %'),
+      ),
+      distance: withDefault('20 um', 'standard uncertainty', quantity('length', ['0 um', '1 m'], '20 um')),
+      wavelength: withDefault(
+        '0.1 nm',
+        'standard uncertainty',
+        quantity('length', ['0 nm', '100 nm'], '0.1 nm'),
+      ),
     }),
-    shop: withDefault('none', orNone(shops)),
-    families: withDefault([...FAMILY_NAMES], words(FAMILY_NAMES)),
-    tolerances: section(toleranceKeys(units)),
-    search: section({
-      candidates: withDefault(20_000, wholeNumber(100, 100_000_000)),
-      seed: withDefault(1, wholeNumber(0, 2 ** 31 - 1)),
+    shop: withDefault('none', 'who cuts the mask: a name on the shelf; none for no limits', orNone(shops)),
+    families: withDefault([...FAMILY_NAMES], 'kinds of outlines to try', words(FAMILY_NAMES)),
+    tolerances: section('how one build differs from the next, for rimwright yield', toleranceKeys(units)),
+    search: section('how much a search tries', {
+      candidates: withDefault(20_000, 'how many designs to try', wholeNumber(100, 100_000_000, 20_000)),
+      seed: withDefault(1, 'the same seed finds the same designs', wholeNumber(0, 2 ** 31 - 1, 1)),
     }),
   };
 }
@@ -151,35 +333,84 @@ export function briefSchema(units: Units, presets: string, title: string) {
 export function toleranceKeys(units: Units) {
   const { quantity, tolerance } = quantityRules(units);
   return {
-    edge: withDefault('shop', orWord('shop', tolerance('length', '1 mm', '2 um'))),
-    kerf: withDefault('shop', orWord('shop', tolerance('length', '1 mm', '5 um'))),
-    place: withDefault('2 um rms', tolerance('length', '10 mm', '2 um')),
-    distance: withDefault('20 um', tolerance('length', '1 m', '20 um')),
-    tilt: withDefault('0.2 deg rms', tolerance('angle', '20 deg', '0.2 deg')),
-    wavelength: withDefault('0.2 nm', tolerance('length', '1 um', '0.2 nm')),
-    index: withDefault('0.002', tolerance('ratio', '0.5', '0.002')),
-    size: withDefault('1 % rms', tolerance('ratio', '50 %', '1 %')),
-    averaging: withDefault('1 s', orNone(quantity('time', ['1 ns', '1e6 s'], '1 s'))),
+    edge: withDefault(
+      'shop',
+      'all edges of its openings moved outwards together; shop for what the shop keeps',
+      orWord('shop', tolerance('length', '1 mm', '2 um')),
+    ),
+    kerf: withDefault(
+      'shop',
+      'width of the cut, which moves every edge by half of it; shop for a tenth of its kerf',
+      orWord('shop', tolerance('length', '1 mm', '5 um')),
+    ),
+    place: withDefault('2 um rms', 'of the mask, along x and along y', tolerance('length', '10 mm', '2 um')),
+    distance: withDefault('20 um', 'from the particle to the mask', tolerance('length', '1 m', '20 um')),
+    tilt: withDefault(
+      '0.2 deg rms',
+      'of the mask, about x and about y',
+      tolerance('angle', '20 deg', '0.2 deg'),
+    ),
+    wavelength: withDefault(
+      '0.2 nm',
+      'from one light source to the next',
+      tolerance('length', '1 um', '0.2 nm'),
+    ),
+    index: withDefault(
+      '0.002',
+      'real part of the index of all particles',
+      tolerance('ratio', '0.5', '0.002'),
+    ),
+    size: withDefault('1 % rms', "of all particles' diameters", tolerance('ratio', '50 %', '1 %')),
+    averaging: withDefault(
+      '1 s',
+      'how long one measurement is averaged, for its noise; none for no noise',
+      orNone(quantity('time', ['1 ns', '1e6 s'], '1 s')),
+    ),
   };
 }
 
-const required = <T>(rule: ValueRule<T>): ValueKey<T> => ({ kind: 'value', rule, leftOut: 'refused' });
-const optional = <T>(rule: ValueRule<T>): ValueKey<T> => ({ kind: 'value', rule, leftOut: 'allowed' });
-const withDefault = <T>(use: unknown, rule: ValueRule<T>): ValueKey<T> => ({
+const required = <T>(about: string, rule: ValueRule<T>): ValueKey<T> => ({
   kind: 'value',
+  about,
+  rule,
+  leftOut: 'refused',
+});
+const optional = <T>(about: string, rule: ValueRule<T>): ValueKey<T> => ({
+  kind: 'value',
+  about,
+  rule,
+  leftOut: 'allowed',
+});
+const withDefault = <T>(use: unknown, about: string, rule: ValueRule<T>): ValueKey<T> => ({
+  kind: 'value',
+  about,
   rule,
   leftOut: { use },
 });
-const section = <K>(keys: K): SectionKey<K> => ({ kind: 'section', keys });
-const noneOrSection = <K>(keys: K): NoneOrSectionKey<K> => ({ kind: 'none or section', keys });
-const valueOrSection = <T, K>(value: ValueKey<T>, keys: K): ValueOrSectionKey<T, K> => ({
-  kind: 'value or section',
-  value,
+const section = <K>(about: string, keys: K): SectionKey<K> => ({ kind: 'section', about, keys });
+const noneOrSection = <K>(about: string, keys: K): NoneOrSectionKey<K> => ({
+  kind: 'none or section',
+  about,
   keys,
 });
-const listOf = <K>(longest: number, keys: K): ListKey<K> => ({ kind: 'list', keys, longest });
-const noneOrListOf = <K>(longest: number, keys: K): NoneOrListKey<K> => ({
-  kind: 'none or list',
+const valueOrSection = <T, K>(value: ValueKey<T>, example: string, keys: K): ValueOrSectionKey<T, K> => ({
+  kind: 'value or section',
+  about: value.about,
+  value,
+  example,
+  keys,
+});
+const listOf = <K>(longest: number, about: string, example: string, keys: K): ListKey<K> => ({
+  kind: 'list',
+  about,
   keys,
   longest,
+  example,
+});
+const noneOrListOf = <K>(longest: number, about: string, example: string, keys: K): NoneOrListKey<K> => ({
+  kind: 'none or list',
+  about,
+  keys,
+  longest,
+  example,
 });

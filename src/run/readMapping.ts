@@ -2,9 +2,13 @@ import { nearestName } from '../base/nearestName.ts';
 import type { Path, Report } from './briefReport.ts';
 import type { ValueRule } from './valueRules.ts';
 
-/** A key with a plain value, and what stands for it where it is left out: a value in the brief's notation, or nothing. */
+/**
+ * A key with a plain value, and what stands for it where it is left out: a value in the brief's notation, or nothing.
+ * Here as below, `about` says in one line what the key means.
+ */
 export interface ValueKey<T> {
   kind: 'value';
+  about: string;
   rule: ValueRule<T>;
   leftOut: 'refused' | 'allowed' | { use: unknown };
 }
@@ -12,34 +16,45 @@ export interface ValueKey<T> {
 /** A key that holds more keys. Left out, it counts as a mapping without keys. */
 export interface SectionKey<Keys> {
   kind: 'section';
+  about: string;
   keys: Keys;
 }
 
 /** A key that holds more keys or the word `none`, which is also its default. */
 export interface NoneOrSectionKey<Keys> {
   kind: 'none or section';
+  about: string;
   keys: Keys;
 }
 
 /** A key that holds a plain value, or more keys. */
 export interface ValueOrSectionKey<T, Keys> {
   kind: 'value or section';
+  about: string;
   value: ValueKey<T>;
   keys: Keys;
+  /** The keys with values, in the brief's notation. */
+  example: string;
 }
 
 /** A key that holds a list of 1 to `longest` mappings, and may not be left out. */
 export interface ListKey<Keys> {
   kind: 'list';
+  about: string;
   keys: Keys;
   longest: number;
+  /** One entry, in the brief's notation. */
+  example: string;
 }
 
 /** A key that holds such a list or the word `none`, which is also its default. */
 export interface NoneOrListKey<Keys> {
   kind: 'none or list';
+  about: string;
   keys: Keys;
   longest: number;
+  /** One entry, in the brief's notation. */
+  example: string;
 }
 
 /** The keys of one mapping. */

@@ -23,8 +23,9 @@ export interface ParticleEntry {
   extinction?: number;
 }
 
-const COUNT_OF_RANGE = 3;
-const COUNT_OF_DISTRIBUTION = 9;
+/** What `count` is where it is left out: of a range of diameters, and of a distribution. */
+export const COUNT_OF_RANGE = 3;
+export const COUNT_OF_DISTRIBUTION = 9;
 
 /**
  * The particles of one entry: as many as `count` says, evenly in the logarithm of the diameter, or those that stand for a

@@ -1,4 +1,5 @@
 import { RimwrightError } from '../base/errors.ts';
+import type { Shelf } from '../base/presetFiles.ts';
 import type { IndexModel } from '../optics/indexModel.ts';
 import { constantIndex } from '../optics/indexModel.ts';
 import type { ValueRule } from './valueRules.ts';
@@ -11,15 +12,30 @@ export interface Named<T> {
 }
 
 const NUMBER = String.raw`(?:\d+\.?\d*|\.\d+)(?:[eE][+-]?\d+)?`;
-const INDEX = new RegExp(`^(${NUMBER})(?:\\s*\\+\\s*(${NUMBER})\\s*i)?$`);
+/** An index as a brief writes it. */
+export const INDEX_PATTERN = `^(${NUMBER})(?:\\s*\\+\\s*(${NUMBER})\\s*i)?$`;
+
+const ONE_OF: Record<Shelf, string> = {
+  media: 'a medium',
+  materials: 'a material',
+  shops: 'a shop',
+  briefs: 'a brief',
+};
 
 /**
  * A name on the shelf.
  *
  * @param load gives what the name stands for, and throws an `input` error for an unknown name
+ * @param other what may stand in its place, for messages
  */
-export function shelfName<T>(load: (name: string) => T, expected: string): ValueRule<Named<T>> {
-  return derived((value) => {
+export function shelfName<T>(
+  shelf: Shelf,
+  load: (name: string) => T,
+  example: string,
+  other = '',
+): ValueRule<Named<T>> {
+  const expected = `the name of ${ONE_OF[shelf]} on the shelf, such as ${example}${other}`;
+  return derived({ kind: 'shelf', shelf, example }, (value) => {
     if (typeof value !== 'string') return { expected };
     try {
       return { value: { name: value, item: load(value) } };
@@ -44,9 +60,9 @@ export function indexValue({ n: [least, largest], k: largestK }: IndexLimits): V
     largestK === 0
       ? `a real index from ${least} to ${largest}`
       : `an index such as 1.59 or 1.5 + 0.1i, real part ${least} to ${largest}, imaginary part 0 to ${largestK}`;
-  return derived((value) => {
+  return derived({ kind: 'index', n: [least, largest], k: largestK }, (value) => {
     const name = String(value);
-    const match = isIndex(value) ? INDEX.exec(name) : null;
+    const match = isIndex(value) ? new RegExp(INDEX_PATTERN).exec(name) : null;
     if (match === null) return { expected };
     const n = Number(match[1]);
     const k = Number(match[2] ?? 0);
@@ -60,7 +76,10 @@ export function indexOrShelfName(
   index: ValueRule<Named<IndexModel>>,
   shelf: ValueRule<Named<IndexModel>>,
 ): ValueRule<Named<IndexModel>> {
-  return { check: (value) => (isIndex(value) ? index : shelf).check(value) };
+  return {
+    holds: { kind: 'either', of: [shelf.holds, index.holds] },
+    check: (value) => (isIndex(value) ? index : shelf).check(value),
+  };
 }
 
 /** Numbers, and texts that begin as numbers do, are meant as an index. */

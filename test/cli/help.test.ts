@@ -16,6 +16,7 @@ const COMMANDS = [
   'yield',
   'draw',
   'presets',
+  'help',
 ];
 
 /** Scripts that a run of the program loaded, after the coverage that V8 writes. */
@@ -39,6 +40,7 @@ describe('help', () => {
       'base/version.js',
       'cli/commander.js',
       'cli/declareFiles.js',
+      'cli/declareHelping.js',
       'cli/declareMeasuring.js',
       'cli/declareReading.js',
       'cli/declareSearching.js',
