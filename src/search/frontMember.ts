@@ -22,6 +22,8 @@ export interface Member {
   along: number[];
   /** Hypervolume that would be lost without it, in those units; 0 for points that are not on the front. */
   worth: number;
+  /** How often a point that was meant for a gap beside this one missed it. */
+  misses: number;
 }
 
 /**
@@ -53,6 +55,7 @@ export function memberOf(
     place: [],
     along: [],
     worth: 0,
+    misses: 0,
   };
 }
 

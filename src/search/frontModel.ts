@@ -1,5 +1,5 @@
 import type { RandomSource } from '../base/random.ts';
-import type { Member } from './frontMember.ts';
+import { alongFront, type Member } from './frontMember.ts';
 import { CORNER, type FrontPopulation } from './frontPopulation.ts';
 import { hypervolume } from './hypervolume.ts';
 import { localFit } from './localFit.ts';
@@ -35,36 +35,52 @@ const SLOPE_PENALTY = 0.1;
 export function modelled(population: FrontPopulation, random: RandomSource): Float64Array | undefined {
   const { members } = population;
   const centre = population.worthy(random);
-  const dimension = centre.place.length - 1;
-  const [few, many] = NEIGHBOURS;
-  const count = Math.min(members.length, 1 + Math.round(few * (many / few) ** random.uniform()));
-  if (centre.violation > 0 || count < 2 * dimension + 4) return undefined;
-  const neighbours = nearest(members, centre, count);
-  if (neighbours.length < 2 * dimension + 4) return undefined;
+  if (centre.violation > 0) return undefined;
+  const neighbours = nearest(members, centre.along, NEAREST + 1);
+  const { length } = centre.along;
+  if (neighbours.length < 2 * length + 4) return undefined;
+  const offsets = neighbours.map(({ along }) => along.map((v, j) => v - centre.along[j]));
+  const coefficients = localFit(offsets.map((v) => [1, ...v])).coefficients(
+    neighbours.map(({ place }) => height(place)),
+  );
+  if (!coefficients) return undefined;
+  const draw = () => someOffset(offsets, random);
+  const target = bestOffset(draw, neighbours, centre.along, coefficients);
+  return aimed(population, centre.along.map((v, j) => v + target[j]), random);
+}
 
-  const middle = centre.along;
-  const offsets = neighbours.map(({ along }) => along.map((v, j) => v - middle[j]));
-  const heights = neighbours.map(({ place }) => height(place));
-  const flat = localFit(offsets.map((v) => [1, ...v]));
+export function filled(population: FrontPopulation, random: RandomSource): Float64Array | undefined {
+  const gap = population.takeGap();
+  return gap && aimed(population, alongFront(gap.middle), random);
+}
+
+function aimed(population: FrontPopulation, middle: readonly number[], random: RandomSource): Float64Array | undefined {
+  const dimension = middle.length;
+  const [few, many] = NEIGHBOURS;
+  const count = Math.round(few * (many / few) ** random.uniform());
+  const near = nearest(population.members, middle, 2 * count);
+  if (near.length < 2 * dimension + 4) return undefined;
+  const rows = near.map(({ along }) => along.map((v, j) => v - middle[j])).map((v) => [1, ...v]);
+  const curved = (row: number[]) => near.length < 30 ? row : [...row, ...row.slice(1).flatMap((v, j, all) => all.slice(j).map((w) => v * w))];
+  const heights = near.map(({ place }) => height(place));
+  const flat = localFit(rows.map(curved));
   const coefficients = flat.coefficients(heights);
   if (!coefficients) return undefined;
-
-  const draw = () => someOffset(offsets, random);
-  const target = bestOffset(draw, neighbours.slice(0, NEAREST), middle, coefficients);
-  const excess = heights.map((h, k) => h - predicted(coefficients, offsets[k]));
-  const aim = AMBITION * random.uniform() * Math.min(...excess);
+  const excess = heights.map((h, k) => h - predicted(coefficients, curved(rows[k]).slice(1)));
+  const order = [...near.keys()].sort((a, b) => excess[a] - excess[b]).slice(0, Math.max(2 * dimension + 4, near.length / 2));
+  const aim = AMBITION * random.uniform() * excess[order[0]];
   const full = localFit(
-    offsets.map((v, k) => [1, ...v, excess[k]]),
-    [0, ...target.map(() => 0), SLOPE_PENALTY],
+    order.map((k) => [...rows[k], excess[k]]),
+    [0, ...middle.map(() => 0), SLOPE_PENALTY],
   );
-  const weights = full.weights([1, ...target, aim]);
+  const weights = full.weights([1, ...middle.map(() => 0), aim]);
   if (!weights) return undefined;
 
   const isNoisy = random.uniform() < NOISE_CHANCE;
-  const any = () => neighbours[Math.floor(neighbours.length * random.uniform())].unit;
-  return centre.unit.map((_, i) => {
+  const any = () => near[Math.floor(near.length * random.uniform())].unit;
+  return near[0].unit.map((_, i) => {
     let x = 0;
-    for (let k = 0; k < neighbours.length; k++) x += weights[k] * neighbours[k].unit[i];
+    for (const [i2, k] of order.entries()) x += weights[i2] * near[k].unit[i];
     if (isNoisy) x += NOISE * random.normal() * (any()[i] - any()[i]);
     return Math.min(1, Math.max(0, x));
   });
@@ -126,13 +142,12 @@ function bestOffset(
   return best;
 }
 
-/** The members nearest to one along the front, itself first; at most `count`, only allowed ones. */
-function nearest(members: readonly Member[], centre: Member, count: number): Member[] {
-  const middle = centre.along;
-  const found = [centre];
-  const distances = [-1];
+/** The members nearest to a place along the front, nearest first; at most `count`, only allowed ones. */
+function nearest(members: readonly Member[], middle: readonly number[], count: number): Member[] {
+  const found: Member[] = [];
+  const distances: number[] = [];
   for (const member of members) {
-    if (member === centre || member.violation > 0) continue;
+    if (member.violation > 0) continue;
     let squared = 0;
     for (let j = 0; j < middle.length; j++) squared += (member.along[j] - middle[j]) ** 2;
     if (found.length === count && squared >= distances[count - 1]) continue;

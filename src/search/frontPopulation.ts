@@ -3,6 +3,7 @@ import { ascending } from './ascending.ts';
 import { alongFront, beats, type Member } from './frontMember.ts';
 import { firstAtLeast } from './hypervolume.ts';
 import { hypervolumeContributions } from './hypervolumeContributions.ts';
+import { hypervolumeGaps } from './hypervolumeGaps.ts';
 import { compareRows, nonDominatedRanks } from './pareto.ts';
 
 /** Worst corner of the hypervolume, in units of the spans: a tenth beyond the worst, so that the ends of the front count too. */
@@ -31,6 +32,9 @@ export class FrontPopulation {
   /** Best and worst objectives that places are measured by. */
   private best: number[] = [];
   private worst: number[] = [];
+  /** Gaps, the most promising last, once somebody asks for one; and those that were given out. */
+  private gaps: FrontGap[] | undefined;
+  private given: FrontGap[] = [];
   /** Running sums of worth over the front. */
   private sums: number[] = [];
 
@@ -50,6 +54,7 @@ export class FrontPopulation {
     const { front, others, wide } = isLarge
       ? merged(this.front, arrivals)
       : ranked([...this.members, ...arrivals]);
+    this.noteMisses(newcomers);
     this.measure(wide, arrivals);
     // In order, the next appraisal need not sort it again.
     front.sort((a, b) => ascending(a.place[a.place.length - 1], b.place[b.place.length - 1]));
@@ -65,6 +70,7 @@ export class FrontPopulation {
     this.beaten = [...this.beaten, ...losers].slice(-this.least);
     this.front = front;
     this.members = [...front, ...others.slice(0, Math.max(0, this.least - front.length))];
+    this.gaps = undefined;
     let sum = 0;
     this.sums = front.map(({ worth }) => {
       sum += worth;
@@ -92,6 +98,27 @@ export class FrontPopulation {
     return this.front[Math.min(k, this.front.length - 1)];
   }
 
+  /** The gap that promises most, given out once a round; undefined where there is none. */
+  takeGap(): FrontGap | undefined {
+    if (!this.gaps) {
+      this.gaps = promisingGaps(this.front);
+    }
+    const gap = this.gaps.pop();
+    if (gap) this.given.push(gap);
+    return gap;
+  }
+
+  /** A gap that stays as it was is less and less likely to be one that can be filled. */
+  private noteMisses(newcomers: readonly Member[]): void {
+    for (const { corner, holders } of this.given) {
+      const isHit = newcomers.some(
+        ({ objectives, violation }) => violation === 0 && objectives.every((x, j) => x < corner[j]),
+      );
+      if (!isHit) for (const holder of holders) holder.misses++;
+    }
+    this.given = [];
+  }
+
   /** Gives all that are new their places, and everyone where the spans have changed. */
   private measure(wide: readonly Member[], arrivals: readonly Member[]): void {
     const extreme = (pick: (a: number, b: number) => number, start: number) =>
@@ -108,6 +135,38 @@ export class FrontPopulation {
       member.along = alongFront(member.place);
     }
   }
+}
+
+/** Room that the front leaves below a corner. */
+export interface FrontGap {
+  /** In the objectives. */
+  corner: readonly number[];
+  /** The members that the corner rests on. */
+  holders: readonly Member[];
+  promise: number;
+  /** Mean place of the holders. */
+  middle: readonly number[];
+}
+
+function promisingGaps(front: readonly Member[]): FrontGap[] {
+  const corner = new Array<number>(front[0]?.place.length ?? 2).fill(CORNER);
+  const found = hypervolumeGaps(
+    front.map(({ place }) => place),
+    corner,
+  ).map((gap) => {
+    const holders = gap.holders.filter((k) => k >= 0).map((k) => front[k]);
+    const middle = gap.corner.map((_, j) => holders.reduce((sum, { place }) => sum + place[j], 0) / holders.length);
+    const volume = gap.corner.reduce((product, x, j) => product * (x - middle[j]), 1);
+    const misses = Math.min(...holders.map(({ misses }) => misses));
+    return {
+      corner: gap.holders.map((k, j) => front[k]?.objectives[j] ?? Number.POSITIVE_INFINITY),
+      holders,
+      promise: holders.length > 0 ? volume * 0.5 ** misses : 0,
+      middle,
+    };
+  });
+  found.sort((a, b) => a.promise - b.promise);
+  return found.slice(-200);
 }
 
 function appraise(front: readonly Member[]): void {

@@ -1,13 +1,13 @@
 import type { RandomSource } from '../base/random.ts';
 import { beats, type Member } from './frontMember.ts';
-import { modelled } from './frontModel.ts';
+import { filled, modelled } from './frontModel.ts';
 import type { FrontPopulation } from './frontPopulation.ts';
 
 /** Makes a point of the unit cube out of a population. */
 export type Variation = (population: FrontPopulation, random: RandomSource) => Float64Array;
 
 /** The ways to make a new point; which pays depends on the problem and changes on the way, see `VariationChoice`. */
-export const VARIATIONS: readonly Variation[] = [crossed, differential, downhill, modelledOrDifferential];
+export const VARIATIONS: readonly Variation[] = [crossed, differential, downhill, modelledOrDifferential, filledOrDifferential];
 
 /** Spread of crossed and of mutated coordinates: larger keeps them nearer to the parents. */
 const CROSS_INDEX = 15;
@@ -77,6 +77,10 @@ function nearestThatBeats(loser: Member, members: readonly Member[]): Member | u
 
 function modelledOrDifferential(population: FrontPopulation, random: RandomSource): Float64Array {
   return modelled(population, random) ?? differential(population, random);
+}
+
+function filledOrDifferential(population: FrontPopulation, random: RandomSource): Float64Array {
+  return filled(population, random) ?? differential(population, random);
 }
 
 /** A step along all coordinates, or along some. */
