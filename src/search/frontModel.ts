@@ -1,6 +1,6 @@
 import type { RandomSource } from '../base/random.ts';
 import { alongFront, type Member } from './frontMember.ts';
-import { CORNER, type FrontPopulation } from './frontPopulation.ts';
+import { CORNER, type FrontGap, type FrontPopulation } from './frontPopulation.ts';
 import { hypervolume } from './hypervolume.ts';
 import { localFit } from './localFit.ts';
 
@@ -51,7 +51,11 @@ export function modelled(population: FrontPopulation, random: RandomSource): Flo
 
 export function filled(population: FrontPopulation, random: RandomSource): Float64Array | undefined {
   const gap = population.takeGap();
-  return gap && aimed(population, alongFront(gap.middle), random);
+  return gap && aimed(population, inGap(gap, random), random);
+}
+
+function inGap({ middle, open }: FrontGap, random: RandomSource): number[] {
+  return alongFront(middle.map((x, j) => (open[j] ? x + 0.3 * random.uniform() ** 4 : x)));
 }
 
 function aimed(population: FrontPopulation, middle: readonly number[], random: RandomSource): Float64Array | undefined {
@@ -68,7 +72,7 @@ function aimed(population: FrontPopulation, middle: readonly number[], random: R
   if (!coefficients) return undefined;
   const excess = heights.map((h, k) => h - predicted(coefficients, curved(rows[k]).slice(1)));
   const order = [...near.keys()].sort((a, b) => excess[a] - excess[b]).slice(0, Math.max(2 * dimension + 4, near.length / 2));
-  const aim = AMBITION * random.uniform() * excess[order[0]];
+  const aim = random.uniform() < 0.5 ? order.reduce((sum, k) => sum + excess[k], 0) / order.length : AMBITION * random.uniform() * excess[order[0]];
   const full = localFit(
     order.map((k) => [...rows[k], excess[k]]),
     [0, ...middle.map(() => 0), SLOPE_PENALTY],
@@ -84,6 +88,37 @@ function aimed(population: FrontPopulation, middle: readonly number[], random: R
     if (isNoisy) x += NOISE * random.normal() * (any()[i] - any()[i]);
     return Math.min(1, Math.max(0, x));
   });
+}
+
+const CURVED = (row: readonly number[]) => [...row, ...row.slice(1).flatMap((v, j, all) => all.slice(j).map((w) => v * w))];
+
+export function descended(population: FrontPopulation, random: RandomSource): Float64Array | undefined {
+  const gap = random.uniform() < 0.5 ? population.takeGap() : undefined;
+  const middle = gap ? inGap(gap, random) : population.worthy(random).along;
+  const n = population.members[0].unit.length;
+  const count = Math.min(100, 2 * (n + 7));
+  const near = nearest([...population.members, ...population.beaten], middle, count);
+  if (near.length < n + 7) return undefined;
+  const rows = near.map(({ along }) => [1, ...along.map((v, j) => v - middle[j])]);
+  // Where the average lies.
+  const flat = localFit(rows).weights([1, ...middle.map(() => 0)]);
+  if (!flat) return undefined;
+  const start = near[0].unit.map((_, i) => Math.min(1, Math.max(0, near.reduce((sum, { unit }, k) => sum + flat[k] * unit[i], 0))));
+  const heights = near.map(({ place }) => height(place));
+  const steps = near.map(({ unit }) => unit.map((x, i) => x - start[i]));
+  const squares = steps.map((step) => step.reduce((sum, x) => sum + x * x, 0));
+  const full = rows.map((row, k) => [...CURVED(row), ...steps[k], squares[k]]);
+  const plain = CURVED(rows[0]).length;
+  const fit = localFit(full, full[0].map((_, j) => (j < plain ? 0 : 1e-3))).coefficients(heights);
+  if (!fit) return undefined;
+  const gradient = fit.slice(plain, plain + n);
+  const steep = Math.hypot(...gradient);
+  const curvature = fit[plain + n];
+  const radius = Math.sqrt(squares.reduce((sum, x) => sum + x, 0) / squares.length);
+  let length = 2 * radius;
+  if (curvature > 0) length = Math.min(length, steep / (2 * curvature));
+  length *= 0.5 + random.uniform();
+  return start.map((x, i) => Math.min(1, Math.max(0, x - (length * gradient[i]) / (steep || 1))));
 }
 
 /** Mean of the objectives: how far a place is from the best corner. */

@@ -48,13 +48,14 @@ export class FrontPopulation {
   }
 
   /** Takes newcomers in, and leaves out who is not needed any more. */
-  add(newcomers: readonly Member[]): void {
+  add(newcomers: readonly Member[]): number[] {
     const arrivals = this.mayGrow ? [...newcomers, ...this.resting.splice(0)] : newcomers;
     const isLarge = this.mayGrow && this.front.length >= this.least;
     const { front, others, wide } = isLarge
       ? merged(this.front, arrivals)
       : ranked([...this.members, ...arrivals]);
     this.noteMisses(newcomers);
+    const before = this.front.map((member) => ({ member, worth: member.worth }));
     this.measure(wide, arrivals);
     // In order, the next appraisal need not sort it again.
     front.sort((a, b) => ascending(a.place[a.place.length - 1], b.place[b.place.length - 1]));
@@ -65,6 +66,11 @@ export class FrontPopulation {
       appraise(front);
     }
     for (const member of others) member.worth = 0;
+    const staying = new Set(front);
+    const gone = before.filter(({ member }) => !staying.has(member));
+    const gains = newcomers.map((newcomer) =>
+      gone.reduce((sum, { member, worth }) => (beats(newcomer, member) ? sum - worth : sum), newcomer.worth),
+    );
     const known = new Set(this.beaten);
     const losers = others.filter((member) => !known.has(member));
     this.beaten = [...this.beaten, ...losers].slice(-this.least);
@@ -76,6 +82,7 @@ export class FrontPopulation {
       sum += worth;
       return sum;
     });
+    return gains.map((gain) => Math.max(0, gain));
   }
 
   /** Everything on the front that was seen so far. */
@@ -146,6 +153,7 @@ export interface FrontGap {
   promise: number;
   /** Mean place of the holders. */
   middle: readonly number[];
+  open: readonly boolean[];
 }
 
 function promisingGaps(front: readonly Member[]): FrontGap[] {
@@ -163,6 +171,7 @@ function promisingGaps(front: readonly Member[]): FrontGap[] {
       holders,
       promise: holders.length > 0 ? volume * 0.5 ** misses : 0,
       middle,
+      open: gap.holders.map((k) => k < 0),
     };
   });
   found.sort((a, b) => a.promise - b.promise);

@@ -84,9 +84,9 @@ export class MultiObjectiveSearch {
     );
     this.scored += count;
     if (this.scored > APPROACH * budget) this.population.grow();
-    this.population.add(newcomers);
+    const gains = this.population.add(newcomers);
     if (this.pending.some(({ way }) => way >= 0)) {
-      this.choice.record(this.pending.map(({ way }, k) => ({ way, gain: newcomers[k].worth })));
+      this.choice.record(this.pending.map(({ way }, k) => ({ way, gain: gains[k] })));
     }
     this.pending = Array.from({ length: Math.min(batch, budget - this.scored) }, () => this.nextPoint());
   }

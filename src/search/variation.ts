@@ -1,13 +1,13 @@
 import type { RandomSource } from '../base/random.ts';
 import { beats, type Member } from './frontMember.ts';
-import { filled, modelled } from './frontModel.ts';
+import { descended, filled, modelled } from './frontModel.ts';
 import type { FrontPopulation } from './frontPopulation.ts';
 
 /** Makes a point of the unit cube out of a population. */
 export type Variation = (population: FrontPopulation, random: RandomSource) => Float64Array;
 
 /** The ways to make a new point; which pays depends on the problem and changes on the way, see `VariationChoice`. */
-export const VARIATIONS: readonly Variation[] = [crossed, differential, downhill, modelledOrDifferential, filledOrDifferential];
+export const VARIATIONS: readonly Variation[] = [crossed, differential, downhill, modelledOrDifferential, filledOrDifferential, descendedOrDifferential];
 
 /** Spread of crossed and of mutated coordinates: larger keeps them nearer to the parents. */
 const CROSS_INDEX = 15;
@@ -27,7 +27,7 @@ function crossed(population: FrontPopulation, random: RandomSource): Float64Arra
       const side = random.uniform() < 0.5 ? 1 : -1;
       child = clamped((x + b[i] + side * spread * (x - b[i])) / 2);
     }
-    return random.uniform() * a.length < 1 ? mutated(child, random.uniform()) : child;
+    return random.uniform() * a.length < 1 ? random.uniform() < 0.1 ? random.uniform() : mutated(child, random.uniform()) : child;
   });
 }
 
@@ -81,6 +81,10 @@ function modelledOrDifferential(population: FrontPopulation, random: RandomSourc
 
 function filledOrDifferential(population: FrontPopulation, random: RandomSource): Float64Array {
   return filled(population, random) ?? differential(population, random);
+}
+
+function descendedOrDifferential(population: FrontPopulation, random: RandomSource): Float64Array {
+  return descended(population, random) ?? differential(population, random);
 }
 
 /** A step along all coordinates, or along some. */
