@@ -5,7 +5,7 @@ import { hypervolume } from './hypervolume.ts';
 import { localFit } from './localFit.ts';
 
 /** Least and largest number of neighbours of a model, by their logarithm alike. */
-const NEIGHBOURS = [12, 50] as const;
+const NEIGHBOURS = [12, 60] as const;
 
 /** Places that are looked at for one point, and neighbours that decide what a place would be worth. */
 const PLACES = 6;
@@ -62,7 +62,7 @@ function aimed(population: FrontPopulation, middle: readonly number[], random: R
   const dimension = middle.length;
   const [few, many] = NEIGHBOURS;
   const count = Math.round(few * (many / few) ** random.uniform());
-  const near = nearest(population.members, middle, 2 * count);
+  const near = nearest(population.members, middle, count);
   if (near.length < 2 * dimension + 4) return undefined;
   const rows = near.map(({ along }) => along.map((v, j) => v - middle[j])).map((v) => [1, ...v]);
   const curved = (row: number[]) => near.length < 30 ? row : [...row, ...row.slice(1).flatMap((v, j, all) => all.slice(j).map((w) => v * w))];
