@@ -22,8 +22,6 @@ export interface Member {
   along: number[];
   /** Hypervolume that would be lost without it, in those units; 0 for points that are not on the front. */
   worth: number;
-  /** How often a point that was meant for a gap beside this one missed it. */
-  misses: number;
 }
 
 /**
@@ -55,7 +53,6 @@ export function memberOf(
     place: [],
     along: [],
     worth: 0,
-    misses: 0,
   };
 }
 

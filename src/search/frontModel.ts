@@ -1,6 +1,7 @@
 import type { RandomSource } from '../base/random.ts';
+import { CORNER, type GapPlace } from './frontGaps.ts';
 import { alongFront, type Member } from './frontMember.ts';
-import { CORNER, type FrontGap, type FrontPopulation } from './frontPopulation.ts';
+import type { FrontPopulation } from './frontPopulation.ts';
 import { hypervolume } from './hypervolume.ts';
 import { localFit } from './localFit.ts';
 
@@ -50,11 +51,11 @@ export function modelled(population: FrontPopulation, random: RandomSource): Flo
 }
 
 export function filled(population: FrontPopulation, random: RandomSource): Float64Array | undefined {
-  const gap = population.takeGap();
+  const gap = population.gaps.take();
   return gap && aimed(population, inGap(gap, random), random);
 }
 
-function inGap({ middle, open }: FrontGap, random: RandomSource): number[] {
+function inGap({ middle, open }: GapPlace, random: RandomSource): number[] {
   return alongFront(middle.map((x, j) => (open[j] ? x + 0.3 * random.uniform() ** 4 : x)));
 }
 
@@ -93,7 +94,7 @@ function aimed(population: FrontPopulation, middle: readonly number[], random: R
 const CURVED = (row: readonly number[]) => [...row, ...row.slice(1).flatMap((v, j, all) => all.slice(j).map((w) => v * w))];
 
 export function descended(population: FrontPopulation, random: RandomSource): Float64Array | undefined {
-  const gap = random.uniform() < 0.5 ? population.takeGap() : undefined;
+  const gap = random.uniform() < 0.5 ? population.gaps.take() : undefined;
   const middle = gap ? inGap(gap, random) : population.worthy(random).along;
   const n = population.members[0].unit.length;
   const count = Math.min(100, 2 * (n + 7));

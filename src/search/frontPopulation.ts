@@ -1,16 +1,16 @@
 import type { RandomSource } from '../base/random.ts';
 import { ascending } from './ascending.ts';
 import { alongFront, beats, type Member } from './frontMember.ts';
+import { CORNER, FrontGaps } from './frontGaps.ts';
 import { firstAtLeast } from './hypervolume.ts';
 import { hypervolumeContributions } from './hypervolumeContributions.ts';
-import { hypervolumeGaps } from './hypervolumeGaps.ts';
 import { compareRows, nonDominatedRanks } from './pareto.ts';
-
-/** Worst corner of the hypervolume, in units of the spans: a tenth beyond the worst, so that the ends of the front count too. */
-export const CORNER = 1.1;
 
 /** Spans are those of at least so many points: a front that shrinks to a point would lose all sense of scale. */
 const LEAST_FOR_SPANS = 20;
+
+/** Worths are computed anew when so large a share of the front has changed. */
+const REFRESH = 0.02;
 
 /**
  * The points that a search for a front breeds from: the whole front, filled up with the next ranks while it is small.
@@ -21,6 +21,8 @@ const LEAST_FOR_SPANS = 20;
  */
 export class FrontPopulation {
   private readonly least: number;
+  /** What is missing on the front of all points seen. */
+  readonly gaps: FrontGaps;
   /** All that are on the front, then others by rank; at least `least` once that many were seen. */
   members: readonly Member[] = [];
   /** The best of `members`: allowed, and dominated by none. */
@@ -32,14 +34,14 @@ export class FrontPopulation {
   /** Best and worst objectives that places are measured by. */
   private best: number[] = [];
   private worst: number[] = [];
-  /** Gaps, the most promising last, once somebody asks for one; and those that were given out. */
-  private gaps: FrontGap[] | undefined;
-  private given: FrontGap[] = [];
+  /** Members that came in or went since all worths were computed. */
+  private changes = 0;
   /** Running sums of worth over the front. */
   private sums: number[] = [];
 
-  constructor(least: number) {
+  constructor(least: number, objectives: number) {
     this.least = least;
+    this.gaps = new FrontGaps(objectives);
   }
 
   /** Lets the front grow beyond the least size. */
@@ -54,35 +56,37 @@ export class FrontPopulation {
     const { front, others, wide } = isLarge
       ? merged(this.front, arrivals)
       : ranked([...this.members, ...arrivals]);
-    this.noteMisses(newcomers);
-    const before = this.front.map((member) => ({ member, worth: member.worth }));
     this.measure(wide, arrivals);
-    // In order, the next appraisal need not sort it again.
-    front.sort((a, b) => ascending(a.place[a.place.length - 1], b.place[b.place.length - 1]));
-    appraise(front);
+    // Where nothing else is in its way, this is what a newcomer is worth.
+    const gains = newcomers.map((member) => {
+      member.worth = member.violation > 0 ? 0 : this.gaps.add(member.objectives);
+      return member.worth;
+    });
+    this.gaps.endRound();
+    this.changes += arrivals.length;
+    if (!isLarge || this.changes > REFRESH * front.length) {
+      // In order, the next appraisal need not sort it again.
+      front.sort((a, b) => ascending(a.place[a.place.length - 1], b.place[b.place.length - 1]));
+      appraise(front);
+      this.changes = 0;
+    }
     while (!this.mayGrow && front.length > this.least) {
       const cheapest = front.reduce((least, { worth }, k) => (worth < front[least].worth ? k : least), 0);
       this.resting.push(...front.splice(cheapest, 1));
       appraise(front);
     }
     for (const member of others) member.worth = 0;
-    const staying = new Set(front);
-    const gone = before.filter(({ member }) => !staying.has(member));
-    const gains = newcomers.map((newcomer) =>
-      gone.reduce((sum, { member, worth }) => (beats(newcomer, member) ? sum - worth : sum), newcomer.worth),
-    );
     const known = new Set(this.beaten);
     const losers = others.filter((member) => !known.has(member));
     this.beaten = [...this.beaten, ...losers].slice(-this.least);
     this.front = front;
     this.members = [...front, ...others.slice(0, Math.max(0, this.least - front.length))];
-    this.gaps = undefined;
     let sum = 0;
     this.sums = front.map(({ worth }) => {
       sum += worth;
       return sum;
     });
-    return gains.map((gain) => Math.max(0, gain));
+    return gains;
   }
 
   /** Everything on the front that was seen so far. */
@@ -105,27 +109,6 @@ export class FrontPopulation {
     return this.front[Math.min(k, this.front.length - 1)];
   }
 
-  /** The gap that promises most, given out once a round; undefined where there is none. */
-  takeGap(): FrontGap | undefined {
-    if (!this.gaps) {
-      this.gaps = promisingGaps(this.front);
-    }
-    const gap = this.gaps.pop();
-    if (gap) this.given.push(gap);
-    return gap;
-  }
-
-  /** A gap that stays as it was is less and less likely to be one that can be filled. */
-  private noteMisses(newcomers: readonly Member[]): void {
-    for (const { corner, holders } of this.given) {
-      const isHit = newcomers.some(
-        ({ objectives, violation }) => violation === 0 && objectives.every((x, j) => x < corner[j]),
-      );
-      if (!isHit) for (const holder of holders) holder.misses++;
-    }
-    this.given = [];
-  }
-
   /** Gives all that are new their places, and everyone where the spans have changed. */
   private measure(wide: readonly Member[], arrivals: readonly Member[]): void {
     const extreme = (pick: (a: number, b: number) => number, start: number) =>
@@ -137,45 +120,13 @@ export class FrontPopulation {
     const isSame = compareRows(best, this.best) === 0 && compareRows(worst, this.worst) === 0;
     this.best = best;
     this.worst = worst;
+    const spans = best.map((least, j) => worst[j] - least || 1);
+    if (!isSame) this.gaps.measure(best, spans);
     for (const member of isSame ? arrivals : [...this.members, ...this.beaten, ...arrivals]) {
-      member.place = best.map((least, j) => (member.objectives[j] - least) / (worst[j] - least || 1));
+      member.place = best.map((least, j) => (member.objectives[j] - least) / spans[j]);
       member.along = alongFront(member.place);
     }
   }
-}
-
-/** Room that the front leaves below a corner. */
-export interface FrontGap {
-  /** In the objectives. */
-  corner: readonly number[];
-  /** The members that the corner rests on. */
-  holders: readonly Member[];
-  promise: number;
-  /** Mean place of the holders. */
-  middle: readonly number[];
-  open: readonly boolean[];
-}
-
-function promisingGaps(front: readonly Member[]): FrontGap[] {
-  const corner = new Array<number>(front[0]?.place.length ?? 2).fill(CORNER);
-  const found = hypervolumeGaps(
-    front.map(({ place }) => place),
-    corner,
-  ).map((gap) => {
-    const holders = gap.holders.filter((k) => k >= 0).map((k) => front[k]);
-    const middle = gap.corner.map((_, j) => holders.reduce((sum, { place }) => sum + place[j], 0) / holders.length);
-    const volume = gap.corner.reduce((product, x, j) => product * (x - middle[j]), 1);
-    const misses = Math.min(...holders.map(({ misses }) => misses));
-    return {
-      corner: gap.holders.map((k, j) => front[k]?.objectives[j] ?? Number.POSITIVE_INFINITY),
-      holders,
-      promise: holders.length > 0 ? volume * 0.5 ** misses : 0,
-      middle,
-      open: gap.holders.map((k) => k < 0),
-    };
-  });
-  found.sort((a, b) => a.promise - b.promise);
-  return found.slice(-200);
 }
 
 function appraise(front: readonly Member[]): void {

@@ -48,7 +48,7 @@ export class MultiObjectiveSearch {
   /** @throws RimwrightError `input` that lists every mistake in the options */
   constructor(options: MultiObjectiveOptions) {
     this.options = checkedMultiObjectiveOptions(options);
-    this.population = new FrontPopulation(this.options.population);
+    this.population = new FrontPopulation(this.options.population, this.options.objectives);
     this.pending = this.firstPoints().slice(0, this.options.budget);
   }
 

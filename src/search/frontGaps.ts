@@ -1,0 +1,154 @@
+import { hypervolume } from './hypervolume.ts';
+
+/** Worst corner of the hypervolume, in units of the spans: a tenth beyond the worst, so that the ends of the front count too. */
+export const CORNER = 1.1;
+
+/** A place where the front leaves room: no point of it lies below the corner, and some lie at every larger one. */
+interface Gap {
+  /** In the objectives; +Infinity where no point bounds it. */
+  corner: number[];
+  /** For each objective the point that bounds the corner there. */
+  holders: (readonly number[] | undefined)[];
+  /** Hypervolume, in units of the spans, between the corner and the middle of its holders. */
+  room: number;
+  /** How often a point that was meant for it missed it. */
+  misses: number;
+  isFilled: boolean;
+}
+
+/** Where to look for a point that fills a gap. */
+export interface GapPlace {
+  /** Mean of the points around, in units of the spans. */
+  middle: number[];
+  /** Objectives in which nothing bounds the gap: the front may go on there. */
+  open: boolean[];
+}
+
+/**
+ * All gaps of the front of the points told so far: about twice as many as points for three objectives.
+ *
+ * A point brings hypervolume if and only if it lies below the corner of a gap; what it brings follows from those gaps alone.
+ * Source: Klamroth, Lacour & Vanderpooten (2015), Eur. J. Oper. Res. 245, 767 (local upper bounds, with redundancy avoided).
+ */
+export class FrontGaps {
+  private readonly gaps: Gap[];
+  private given: Gap[] = [];
+  private best: readonly number[];
+  private spans: readonly number[];
+
+  /** @param objectives 2 or 3 */
+  constructor(objectives: number) {
+    this.best = new Array<number>(objectives).fill(0);
+    this.spans = new Array<number>(objectives).fill(1);
+    this.gaps = [
+      {
+        corner: new Array<number>(objectives).fill(Number.POSITIVE_INFINITY),
+        holders: new Array<undefined>(objectives).fill(undefined),
+        room: 0,
+        misses: 0,
+        isFilled: false,
+      },
+    ];
+  }
+
+  /** Measures from now on by the best objectives and the spans. */
+  measure(best: readonly number[], spans: readonly number[]): void {
+    this.best = best;
+    this.spans = spans;
+    for (const gap of this.gaps) gap.room = this.roomIn(gap);
+  }
+
+  /**
+   * Takes a point in.
+   *
+   * @returns the hypervolume that it adds, in units of the spans; 0 where another point is as good
+   */
+  add(point: readonly number[]): number {
+    const { gaps } = this;
+    const filled: Gap[] = [];
+    for (let k = gaps.length - 1; k >= 0; k--) {
+      if (!isBelow(point, gaps[k].corner)) continue;
+      gaps[k].isFilled = true;
+      filled.push(gaps[k]);
+      // The last one was looked at before.
+      gaps[k] = gaps[gaps.length - 1];
+      gaps.pop();
+    }
+    const corners = filled.map(({ corner }) => this.placed(corner));
+    for (const gap of filled) for (let j = 0; j < point.length; j++) this.split(gap, j, point);
+    // Seen from the point, the corners dominate what it brings.
+    return hypervolume(
+      corners.map((corner) => corner.map((x) => -x)),
+      this.placed(point).map((x) => -x),
+    );
+  }
+
+  /** The gap with most room, less of it after every miss; each is given once a round. Undefined where none is left. */
+  take(): GapPlace | undefined {
+    let most = 0;
+    let found: Gap | undefined;
+    for (const gap of this.gaps) {
+      if (!(gap.room > most) || this.given.includes(gap)) continue;
+      most = gap.room;
+      found = gap;
+    }
+    if (!found) return undefined;
+    this.given.push(found);
+    return { middle: this.middle(found), open: found.holders.map((holder) => !holder) };
+  }
+
+  /** Gaps that were given out and are there still were missed. */
+  endRound(): void {
+    for (const gap of this.given) {
+      if (gap.isFilled) continue;
+      gap.misses++;
+      gap.room = this.roomIn(gap);
+    }
+    this.given = [];
+  }
+
+  /** Keeps the part of a gap that lies below the point in objective j, if no other gap covers it. */
+  private split({ corner, holders }: Gap, j: number, point: readonly number[]): void {
+    for (let i = 0; i < holders.length; i++) {
+      const holder = holders[i];
+      // Of equal coordinates the later one counts as larger, so that nothing is lost.
+      if (i !== j && holder && holder[j] > point[j]) return;
+    }
+    const gap: Gap = {
+      corner: corner.with(j, point[j]),
+      holders: holders.with(j, point),
+      room: 0,
+      misses: 0,
+      isFilled: false,
+    };
+    gap.room = this.roomIn(gap);
+    this.gaps.push(gap);
+  }
+
+  private roomIn(gap: Gap): number {
+    const middle = this.middle(gap);
+    const corner = this.placed(gap.corner);
+    const room = corner.reduce((product, x, j) => product * Math.max(0, x - middle[j]), 1);
+    return room * 0.5 ** gap.misses;
+  }
+
+  private middle({ holders }: Gap): number[] {
+    const sum = this.best.map(() => 0);
+    let count = 0;
+    for (const holder of holders) {
+      if (!holder) continue;
+      count++;
+      for (let j = 0; j < sum.length; j++) sum[j] += (holder[j] - this.best[j]) / this.spans[j];
+    }
+    return sum.map((x) => (count > 0 ? x / count : CORNER));
+  }
+
+  private placed(point: readonly number[]): number[] {
+    return point.map((x, j) => Math.min(CORNER, (x - this.best[j]) / this.spans[j]));
+  }
+}
+
+function isBelow(point: readonly number[], corner: readonly number[]): boolean {
+  for (let j = 0; j < point.length; j++) if (!(point[j] < corner[j])) return false;
+  return true;
+}
