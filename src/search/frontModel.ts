@@ -56,7 +56,7 @@ export function filled(population: FrontPopulation, random: RandomSource): Float
 }
 
 function inGap({ middle, open }: GapPlace, random: RandomSource): number[] {
-  return alongFront(middle.map((x, j) => (open[j] ? x + 0.3 * random.uniform() ** 4 : x)));
+  return alongFront(middle.map((x, j) => (open[j] ? x + 0.003 * 1000 ** random.uniform() : x)));
 }
 
 function aimed(population: FrontPopulation, middle: readonly number[], random: RandomSource): Float64Array | undefined {

@@ -86,7 +86,7 @@ export class MultiObjectiveSearch {
     if (this.scored > APPROACH * budget) this.population.grow();
     const gains = this.population.add(newcomers);
     if (this.pending.some(({ way }) => way >= 0)) {
-      this.choice.record(this.pending.map(({ way }, k) => ({ way, gain: gains[k] })));
+      this.choice.record(this.pending.map(({ way }, k) => ({ way, gain: Math.sqrt(gains[k]) })));
     }
     this.pending = Array.from({ length: Math.min(batch, budget - this.scored) }, () => this.nextPoint());
   }
