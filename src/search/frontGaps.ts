@@ -3,6 +3,9 @@ import { hypervolume } from './hypervolume.ts';
 /** Worst corner of the hypervolume, in units of the spans: a tenth beyond the worst, so that the ends of the front count too. */
 export const CORNER = 1.1;
 
+/** Room beyond an end of the front in each objective that only the end itself bounds: nobody knows. */
+const BEYOND = 3e-4;
+
 /** A place where the front leaves room: no point of it lies below the corner, and some lie at every larger one. */
 interface Gap {
   /** In the objectives; +Infinity where no point bounds it. */
@@ -61,9 +64,9 @@ export class FrontGaps {
   /**
    * Takes a point in.
    *
-   * @returns the hypervolume that it adds, in units of the spans; 0 where another point is as good
+   * @returns the corners of the gaps that it lies in; none where another point is as good
    */
-  add(point: readonly number[]): number {
+  add(point: readonly number[]): (readonly number[])[] {
     const { gaps } = this;
     const filled: Gap[] = [];
     for (let k = gaps.length - 1; k >= 0; k--) {
@@ -74,13 +77,15 @@ export class FrontGaps {
       gaps[k] = gaps[gaps.length - 1];
       gaps.pop();
     }
-    const corners = filled.map(({ corner }) => this.placed(corner));
     for (const gap of filled) for (let j = 0; j < point.length; j++) this.split(gap, j, point);
+    return filled.map(({ corner }) => corner);
+  }
+
+  /** Hypervolume that a point brings, in units of the spans, from the corners of the gaps that it lies in. */
+  brought(point: readonly number[], corners: readonly (readonly number[])[]): number {
     // Seen from the point, the corners dominate what it brings.
-    return hypervolume(
-      corners.map((corner) => corner.map((x) => -x)),
-      this.placed(point).map((x) => -x),
-    );
+    const reversed = (row: readonly number[]) => this.placed(row).map((x) => -x);
+    return hypervolume(corners.map(reversed), reversed(point));
   }
 
   /** The gap with most room, less of it after every miss; each is given once a round. Undefined where none is left. */
@@ -128,7 +133,8 @@ export class FrontGaps {
   private roomIn(gap: Gap): number {
     const middle = this.middle(gap);
     const corner = this.placed(gap.corner);
-    const room = corner.reduce((product, x, j) => product * Math.max(0, x - middle[j]), 1);
+    const isEnd = gap.holders.filter((holder) => holder).length === 1;
+    const room = corner.reduce((product, x, j) => product * Math.max(isEnd ? BEYOND : 0, x - middle[j]), 1);
     return room * 0.5 ** gap.misses;
   }
 

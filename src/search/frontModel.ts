@@ -34,10 +34,9 @@ const SLOPE_PENALTY = 0.1;
  * @returns undefined where there are too few points for a model
  */
 export function modelled(population: FrontPopulation, random: RandomSource): Float64Array | undefined {
-  const { members } = population;
   const centre = population.worthy(random);
   if (centre.violation > 0) return undefined;
-  const neighbours = nearest(members, centre.along, NEAREST + 1);
+  const neighbours = nearest(population, centre.along, NEAREST + 1);
   const { length } = centre.along;
   if (neighbours.length < 2 * length + 4) return undefined;
   const offsets = neighbours.map(({ along }) => along.map((v, j) => v - centre.along[j]));
@@ -63,7 +62,7 @@ function aimed(population: FrontPopulation, middle: readonly number[], random: R
   const dimension = middle.length;
   const [few, many] = NEIGHBOURS;
   const count = Math.round(few * (many / few) ** random.uniform());
-  const near = nearest(population.members, middle, count);
+  const near = nearest(population, middle, count);
   if (near.length < 2 * dimension + 4) return undefined;
   const rows = near.map(({ along }) => along.map((v, j) => v - middle[j])).map((v) => [1, ...v]);
   const curved = (row: number[]) => near.length < 30 ? row : [...row, ...row.slice(1).flatMap((v, j, all) => all.slice(j).map((w) => v * w))];
@@ -98,7 +97,7 @@ export function descended(population: FrontPopulation, random: RandomSource): Fl
   const middle = gap ? inGap(gap, random) : population.worthy(random).along;
   const n = population.members[0].unit.length;
   const count = Math.min(100, 2 * (n + 7));
-  const near = nearest([...population.members, ...population.beaten], middle, count);
+  const near = nearest(population, middle, count, population.known.length);
   if (near.length < n + 7) return undefined;
   const rows = near.map(({ along }) => [1, ...along.map((v, j) => v - middle[j])]);
   // Where the average lies.
@@ -178,22 +177,28 @@ function bestOffset(
   return best;
 }
 
-/** The members nearest to a place along the front, nearest first; at most `count`, only allowed ones. */
-function nearest(members: readonly Member[], middle: readonly number[], count: number): Member[] {
+/** The points nearest to a place along the front, nearest first; at most `count` of the first `among`, only allowed ones. */
+function nearest(
+  { known, members, alongs }: FrontPopulation,
+  middle: readonly number[],
+  count: number,
+  among = members.length,
+): Member[] {
   const found: Member[] = [];
   const distances: number[] = [];
-  for (const member of members) {
-    if (member.violation > 0) continue;
+  const width = middle.length;
+  for (let k = 0; k < among; k++) {
     let squared = 0;
-    for (let j = 0; j < middle.length; j++) squared += (member.along[j] - middle[j]) ** 2;
+    for (let j = 0; j < width; j++) squared += (alongs[width * k + j] - middle[j]) ** 2;
     if (found.length === count && squared >= distances[count - 1]) continue;
+    if (known[k].violation > 0) continue;
     if (found.length === count) {
       found.pop();
       distances.pop();
     }
     let at = found.length;
     while (distances[at - 1] > squared) at--;
-    found.splice(at, 0, member);
+    found.splice(at, 0, known[k]);
     distances.splice(at, 0, squared);
   }
   return found;

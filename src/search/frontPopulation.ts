@@ -1,6 +1,6 @@
 import type { RandomSource } from '../base/random.ts';
 import { ascending } from './ascending.ts';
-import { alongFront, beats, type Member } from './frontMember.ts';
+import { alongFront, type Member } from './frontMember.ts';
 import { CORNER, FrontGaps } from './frontGaps.ts';
 import { firstAtLeast } from './hypervolume.ts';
 import { hypervolumeContributions } from './hypervolumeContributions.ts';
@@ -29,6 +29,9 @@ export class FrontPopulation {
   front: readonly Member[] = [];
   /** Points that were beaten of late, at most `least`. */
   beaten: readonly Member[] = [];
+  /** `members`, then `beaten`; and their places along the front, one after the other. */
+  known: readonly Member[] = [];
+  alongs = new Float64Array(0);
   private resting: Member[] = [];
   private mayGrow = false;
   /** Best and worst objectives that places are measured by. */
@@ -51,18 +54,20 @@ export class FrontPopulation {
 
   /** Takes newcomers in, and leaves out who is not needed any more. */
   add(newcomers: readonly Member[]): number[] {
-    const arrivals = this.mayGrow ? [...newcomers, ...this.resting.splice(0)] : newcomers;
-    const isLarge = this.mayGrow && this.front.length >= this.least;
+    const corners = newcomers.map((member) => (member.violation > 0 ? [] : this.gaps.add(member.objectives)));
+    this.gaps.endRound();
+    const returning = this.mayGrow ? this.resting.splice(0) : [];
+    const arrivals = [...newcomers, ...returning];
+    const isLarge = this.mayGrow && returning.length === 0 && this.front.length >= this.least;
     const { front, others, wide } = isLarge
-      ? merged(this.front, arrivals)
+      ? merged(this.front, newcomers, (k) => corners[k].length > 0)
       : ranked([...this.members, ...arrivals]);
     this.measure(wide, arrivals);
     // Where nothing else is in its way, this is what a newcomer is worth.
-    const gains = newcomers.map((member) => {
-      member.worth = member.violation > 0 ? 0 : this.gaps.add(member.objectives);
+    const gains = newcomers.map((member, k) => {
+      member.worth = this.gaps.brought(member.objectives, corners[k]);
       return member.worth;
     });
-    this.gaps.endRound();
     this.changes += arrivals.length;
     if (!isLarge || this.changes > REFRESH * front.length) {
       // In order, the next appraisal need not sort it again.
@@ -81,6 +86,10 @@ export class FrontPopulation {
     this.beaten = [...this.beaten, ...losers].slice(-this.least);
     this.front = front;
     this.members = [...front, ...others.slice(0, Math.max(0, this.least - front.length))];
+    this.known = [...this.members, ...this.beaten];
+    const width = this.best.length - 1;
+    this.alongs = new Float64Array(Math.max(0, width * this.known.length));
+    for (const [k, { along }] of this.known.entries()) this.alongs.set(along, width * k);
     let sum = 0;
     this.sums = front.map(({ worth }) => {
       sum += worth;
@@ -121,7 +130,7 @@ export class FrontPopulation {
     this.best = best;
     this.worst = worst;
     const spans = best.map((least, j) => worst[j] - least || 1);
-    if (!isSame) this.gaps.measure(best, spans);
+    if (!isSame && best.length > 0) this.gaps.measure(best, spans);
     for (const member of isSame ? arrivals : [...this.members, ...this.beaten, ...arrivals]) {
       member.place = best.map((least, j) => (member.objectives[j] - least) / spans[j]);
       member.along = alongFront(member.place);
@@ -145,27 +154,27 @@ interface Sorted {
   wide: readonly Member[];
 }
 
-/** A front that is large enough to do without others: each arrival is only held against it. */
-function merged(old: readonly Member[], arrivals: readonly Member[]): Sorted {
+/** A front that is large enough to do without others; an arrival is new if no point told before is as good. */
+function merged(old: readonly Member[], arrivals: readonly Member[], isNew: (k: number) => boolean): Sorted {
   let front = old.slice();
   const others: Member[] = [];
-  for (const arrival of arrivals) {
-    if (front.some((member) => beats(member, arrival) || isEqual(member, arrival))) {
+  for (const [k, arrival] of arrivals.entries()) {
+    if (!isNew(k)) {
       others.push(arrival);
       continue;
     }
-    const losers = front.filter((member) => beats(arrival, member));
-    if (losers.length > 0) {
-      others.push(...losers);
-      front = front.filter((member) => !losers.includes(member));
-    }
+    const losers = front.filter(({ objectives }) => isNoBetter(objectives, arrival.objectives));
+    if (losers.length > 0) front = front.filter((member) => !losers.includes(member));
+    others.push(...losers);
     front.push(arrival);
   }
   return { front, others, wide: front };
 }
 
-function isEqual(a: Member, b: Member): boolean {
-  return a.violation === b.violation && compareRows(a.objectives, b.objectives) === 0;
+/** Whether a is nowhere below b. */
+function isNoBetter(a: readonly number[], b: readonly number[]): boolean {
+  for (let j = 0; j < a.length; j++) if (a[j] < b[j]) return false;
+  return true;
 }
 
 /** Any members, by their ranks. */
