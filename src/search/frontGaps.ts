@@ -6,12 +6,15 @@ export const CORNER = 1.1;
 /** Room beyond an end of the front in each objective that only the end itself bounds: nobody knows. */
 const BEYOND = 3e-4;
 
-/** A place where the front leaves room: no point of it lies below the corner, and some lie at every larger one. */
-interface Gap {
+/** A place where the front left room: no point of it lay below the corner, and some lay at every larger one. */
+export interface FilledGap {
   /** In the objectives; +Infinity where no point bounds it. */
-  corner: number[];
+  corner: readonly number[];
   /** For each objective the point that bounds the corner there. */
-  holders: (readonly number[] | undefined)[];
+  holders: readonly (readonly number[] | undefined)[];
+}
+
+interface Gap extends FilledGap {
   /** Hypervolume, in units of the spans, between the corner and the middle of its holders. */
   room: number;
   /** How often a point that was meant for it missed it. */
@@ -35,6 +38,8 @@ export interface GapPlace {
  */
 export class FrontGaps {
   private readonly gaps: Gap[];
+  /** The corners of all gaps, one after the other: they are looked at most often. */
+  private readonly corners: number[];
   private given: Gap[] = [];
   private best: readonly number[];
   private spans: readonly number[];
@@ -52,6 +57,7 @@ export class FrontGaps {
         isFilled: false,
       },
     ];
+    this.corners = this.gaps[0].corner.slice();
   }
 
   /** Measures from now on by the best objectives and the spans. */
@@ -64,28 +70,37 @@ export class FrontGaps {
   /**
    * Takes a point in.
    *
-   * @returns the corners of the gaps that it lies in; none where another point is as good
+   * @returns the gaps that it lies in; none where another point is as good
    */
-  add(point: readonly number[]): (readonly number[])[] {
-    const { gaps } = this;
+  add(point: readonly number[]): FilledGap[] {
+    const { gaps, corners } = this;
+    const width = point.length;
     const filled: Gap[] = [];
     for (let k = gaps.length - 1; k >= 0; k--) {
-      if (!isBelow(point, gaps[k].corner)) continue;
+      let j = 0;
+      while (j < width && point[j] < corners[width * k + j]) j++;
+      if (j < width) continue;
       gaps[k].isFilled = true;
       filled.push(gaps[k]);
       // The last one was looked at before.
-      gaps[k] = gaps[gaps.length - 1];
-      gaps.pop();
+      const last = gaps.length - 1;
+      gaps[k] = gaps[last];
+      for (j = 0; j < width; j++) corners[width * k + j] = corners[width * last + j];
+      gaps.length = last;
+      corners.length = width * last;
     }
-    for (const gap of filled) for (let j = 0; j < point.length; j++) this.split(gap, j, point);
-    return filled.map(({ corner }) => corner);
+    for (const gap of filled) for (let j = 0; j < width; j++) this.split(gap, j, point);
+    return filled;
   }
 
-  /** Hypervolume that a point brings, in units of the spans, from the corners of the gaps that it lies in. */
-  brought(point: readonly number[], corners: readonly (readonly number[])[]): number {
+  /** Hypervolume that a point brings, in units of the spans, from the gaps that it filled. */
+  brought(point: readonly number[], filled: readonly FilledGap[]): number {
     // Seen from the point, the corners dominate what it brings.
     const reversed = (row: readonly number[]) => this.placed(row).map((x) => -x);
-    return hypervolume(corners.map(reversed), reversed(point));
+    return hypervolume(
+      filled.map(({ corner }) => reversed(corner)),
+      reversed(point),
+    );
   }
 
   /** The gap with most room, less of it after every miss; each is given once a round. Undefined where none is left. */
@@ -128,6 +143,7 @@ export class FrontGaps {
     };
     gap.room = this.roomIn(gap);
     this.gaps.push(gap);
+    this.corners.push(...gap.corner);
   }
 
   private roomIn(gap: Gap): number {
@@ -152,9 +168,4 @@ export class FrontGaps {
   private placed(point: readonly number[]): number[] {
     return point.map((x, j) => Math.min(CORNER, (x - this.best[j]) / this.spans[j]));
   }
-}
-
-function isBelow(point: readonly number[], corner: readonly number[]): boolean {
-  for (let j = 0; j < point.length; j++) if (!(point[j] < corner[j])) return false;
-  return true;
 }

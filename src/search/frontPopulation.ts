@@ -1,7 +1,7 @@
 import type { RandomSource } from '../base/random.ts';
 import { ascending } from './ascending.ts';
 import { alongFront, type Member } from './frontMember.ts';
-import { CORNER, FrontGaps } from './frontGaps.ts';
+import { CORNER, type FilledGap, FrontGaps } from './frontGaps.ts';
 import { firstAtLeast } from './hypervolume.ts';
 import { hypervolumeContributions } from './hypervolumeContributions.ts';
 import { compareRows, nonDominatedRanks } from './pareto.ts';
@@ -54,18 +54,18 @@ export class FrontPopulation {
 
   /** Takes newcomers in, and leaves out who is not needed any more. */
   add(newcomers: readonly Member[]): number[] {
-    const corners = newcomers.map((member) => (member.violation > 0 ? [] : this.gaps.add(member.objectives)));
+    const filled = newcomers.map((member) => (member.violation > 0 ? [] : this.gaps.add(member.objectives)));
     this.gaps.endRound();
     const returning = this.mayGrow ? this.resting.splice(0) : [];
     const arrivals = [...newcomers, ...returning];
     const isLarge = this.mayGrow && returning.length === 0 && this.front.length >= this.least;
     const { front, others, wide } = isLarge
-      ? merged(this.front, newcomers, (k) => corners[k].length > 0)
+      ? merged(this.front, newcomers, filled)
       : ranked([...this.members, ...arrivals]);
     this.measure(wide, arrivals);
     // Where nothing else is in its way, this is what a newcomer is worth.
     const gains = newcomers.map((member, k) => {
-      member.worth = this.gaps.brought(member.objectives, corners[k]);
+      member.worth = this.gaps.brought(member.objectives, filled[k]);
       return member.worth;
     });
     this.changes += arrivals.length;
@@ -154,20 +154,22 @@ interface Sorted {
   wide: readonly Member[];
 }
 
-/** A front that is large enough to do without others; an arrival is new if no point told before is as good. */
-function merged(old: readonly Member[], arrivals: readonly Member[], isNew: (k: number) => boolean): Sorted {
-  let front = old.slice();
-  const others: Member[] = [];
-  for (const [k, arrival] of arrivals.entries()) {
-    if (!isNew(k)) {
-      others.push(arrival);
-      continue;
+/** A front that is large enough to do without others. Only points beside the gaps that an arrival filled can be beaten by it. */
+function merged(
+  old: readonly Member[],
+  arrivals: readonly Member[],
+  filled: readonly (readonly FilledGap[])[],
+): Sorted {
+  const lost = new Set<readonly number[]>();
+  for (const [k, { objectives }] of arrivals.entries()) {
+    for (const { holders } of filled[k]) {
+      for (const holder of holders) if (holder && isNoBetter(holder, objectives)) lost.add(holder);
     }
-    const losers = front.filter(({ objectives }) => isNoBetter(objectives, arrival.objectives));
-    if (losers.length > 0) front = front.filter((member) => !losers.includes(member));
-    others.push(...losers);
-    front.push(arrival);
   }
+  const all = [...old, ...arrivals.filter((_, k) => filled[k].length > 0)];
+  const front = lost.size > 0 ? all.filter(({ objectives }) => !lost.has(objectives)) : all;
+  const others = arrivals.filter((_, k) => filled[k].length === 0);
+  if (lost.size > 0) others.push(...all.filter(({ objectives }) => lost.has(objectives)));
   return { front, others, wide: front };
 }
 

@@ -7,7 +7,7 @@ import type { FrontPopulation } from './frontPopulation.ts';
 export type Variation = (population: FrontPopulation, random: RandomSource) => Float64Array;
 
 /** The ways to make a new point; which pays depends on the problem and changes on the way, see `VariationChoice`. */
-export const VARIATIONS: readonly Variation[] = [crossed, differential, downhill, modelledOrDifferential, filledOrDifferential, descendedOrDifferential];
+export const VARIATIONS: readonly Variation[] = [crossed, differential, downhill, filledOrDifferential, descendedOrDifferential];
 
 /** Spread of crossed and of mutated coordinates: larger keeps them nearer to the parents. */
 const CROSS_INDEX = 15;
