@@ -1,10 +1,15 @@
+import type { RandomSource } from '../base/random.ts';
+import { alongFront } from './frontMember.ts';
 import { hypervolume } from './hypervolume.ts';
 
 /** Worst corner of the hypervolume, in units of the spans: a tenth beyond the worst, so that the ends of the front count too. */
 export const CORNER = 1.1;
 
-/** Room beyond an end of the front in each objective that only the end itself bounds: nobody knows. */
-const BEYOND = 3e-4;
+/** Room beyond an end of the front in an objective that only the end itself bounds: little, so that its turn comes late. */
+const ROOM_BEYOND = 3e-4;
+
+/** Shortest and longest step beyond the front, in units of the spans, by their logarithm alike. */
+const STEPS_BEYOND = [0.003, 3] as const;
 
 /** A place where the front left room: no point of it lay below the corner, and some lay at every larger one. */
 export interface FilledGap {
@@ -20,14 +25,6 @@ interface Gap extends FilledGap {
   /** How often a point that was meant for it missed it. */
   misses: number;
   isFilled: boolean;
-}
-
-/** Where to look for a point that fills a gap. */
-export interface GapPlace {
-  /** Mean of the points around, in units of the spans. */
-  middle: number[];
-  /** Objectives in which nothing bounds the gap: the front may go on there. */
-  open: boolean[];
 }
 
 /**
@@ -103,8 +100,13 @@ export class FrontGaps {
     );
   }
 
-  /** The gap with most room, less of it after every miss; each is given once a round. Undefined where none is left. */
-  take(): GapPlace | undefined {
+  /**
+   * The place along the front of the gap with most room, less of it after every miss; each is given once a round. Where
+   * nothing bounds the gap on one side, the place is somewhere on that side: the front may go on there.
+   *
+   * @returns undefined where no gap is left
+   */
+  take(random: RandomSource): number[] | undefined {
     let most = 0;
     let found: Gap | undefined;
     for (const gap of this.gaps) {
@@ -114,7 +116,11 @@ export class FrontGaps {
     }
     if (!found) return undefined;
     this.given.push(found);
-    return { middle: this.middle(found), open: found.holders.map((holder) => !holder) };
+    const [near, far] = STEPS_BEYOND;
+    const { holders } = found;
+    return alongFront(
+      this.middle(found).map((x, j) => (holders[j] ? x : x + near * (far / near) ** random.uniform())),
+    );
   }
 
   /** Gaps that were given out and are there still were missed. */
@@ -150,7 +156,10 @@ export class FrontGaps {
     const middle = this.middle(gap);
     const corner = this.placed(gap.corner);
     const isEnd = gap.holders.filter((holder) => holder).length === 1;
-    const room = corner.reduce((product, x, j) => product * Math.max(isEnd ? BEYOND : 0, x - middle[j]), 1);
+    const room = corner.reduce(
+      (product, x, j) => product * Math.max(isEnd ? ROOM_BEYOND : 0, x - middle[j]),
+      1,
+    );
     return room * 0.5 ** gap.misses;
   }
 

@@ -1,7 +1,7 @@
 import type { RandomSource } from '../base/random.ts';
 import { ascending } from './ascending.ts';
-import { alongFront, type Member } from './frontMember.ts';
 import { CORNER, type FilledGap, FrontGaps } from './frontGaps.ts';
+import { alongFront, type Member } from './frontMember.ts';
 import { firstAtLeast } from './hypervolume.ts';
 import { hypervolumeContributions } from './hypervolumeContributions.ts';
 import { compareRows, nonDominatedRanks } from './pareto.ts';
@@ -21,6 +21,7 @@ const REFRESH = 0.02;
  */
 export class FrontPopulation {
   private readonly least: number;
+  private readonly objectives: number;
   /** What is missing on the front of all points seen. */
   readonly gaps: FrontGaps;
   /** All that are on the front, then others by rank; at least `least` once that many were seen. */
@@ -44,6 +45,7 @@ export class FrontPopulation {
 
   constructor(least: number, objectives: number) {
     this.least = least;
+    this.objectives = objectives;
     this.gaps = new FrontGaps(objectives);
   }
 
@@ -87,8 +89,8 @@ export class FrontPopulation {
     this.front = front;
     this.members = [...front, ...others.slice(0, Math.max(0, this.least - front.length))];
     this.known = [...this.members, ...this.beaten];
-    const width = this.best.length - 1;
-    this.alongs = new Float64Array(Math.max(0, width * this.known.length));
+    const width = this.objectives - 1;
+    this.alongs = new Float64Array(width * this.known.length);
     for (const [k, { along }] of this.known.entries()) this.alongs.set(along, width * k);
     let sum = 0;
     this.sums = front.map(({ worth }) => {
@@ -126,7 +128,10 @@ export class FrontPopulation {
       );
     const best = extreme(Math.min, Number.POSITIVE_INFINITY);
     const worst = extreme(Math.max, Number.NEGATIVE_INFINITY);
-    const isSame = compareRows(best, this.best) === 0 && compareRows(worst, this.worst) === 0;
+    const isSame =
+      best.length === this.best.length &&
+      compareRows(best, this.best) === 0 &&
+      compareRows(worst, this.worst) === 0;
     this.best = best;
     this.worst = worst;
     const spans = best.map((least, j) => worst[j] - least || 1);

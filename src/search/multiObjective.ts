@@ -86,6 +86,7 @@ export class MultiObjectiveSearch {
     if (this.scored > APPROACH * budget) this.population.grow();
     const gains = this.population.add(newcomers);
     if (this.pending.some(({ way }) => way >= 0)) {
+      // Roots: one lucky find must not decide for many rounds.
       this.choice.record(this.pending.map(({ way }, k) => ({ way, gain: Math.sqrt(gains[k]) })));
     }
     this.pending = Array.from({ length: Math.min(batch, budget - this.scored) }, () => this.nextPoint());

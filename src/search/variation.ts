@@ -1,17 +1,27 @@
 import type { RandomSource } from '../base/random.ts';
+import { descended } from './frontDescent.ts';
 import { beats, type Member } from './frontMember.ts';
-import { descended, filled, modelled } from './frontModel.ts';
+import { modelled } from './frontModel.ts';
 import type { FrontPopulation } from './frontPopulation.ts';
 
 /** Makes a point of the unit cube out of a population. */
 export type Variation = (population: FrontPopulation, random: RandomSource) => Float64Array;
 
 /** The ways to make a new point; which pays depends on the problem and changes on the way, see `VariationChoice`. */
-export const VARIATIONS: readonly Variation[] = [crossed, differential, downhill, filledOrDifferential, descendedOrDifferential];
+export const VARIATIONS: readonly Variation[] = [
+  crossed,
+  differential,
+  downhill,
+  (population, random) => modelled(population, random) ?? differential(population, random),
+  (population, random) => descended(population, random) ?? differential(population, random),
+];
 
 /** Spread of crossed and of mutated coordinates: larger keeps them nearer to the parents. */
 const CROSS_INDEX = 15;
 const MUTATION_INDEX = 20;
+
+/** Chance that a mutated coordinate is drawn anew: pieces of a front that were lost can be found again. */
+const ANEW_CHANCE = 0.1;
 
 /**
  * Simulated binary crossover of each coordinate with probability ½, then polynomial mutation of one coordinate or so.
@@ -27,7 +37,8 @@ function crossed(population: FrontPopulation, random: RandomSource): Float64Arra
       const side = random.uniform() < 0.5 ? 1 : -1;
       child = clamped((x + b[i] + side * spread * (x - b[i])) / 2);
     }
-    return random.uniform() * a.length < 1 ? random.uniform() < 0.1 ? random.uniform() : mutated(child, random.uniform()) : child;
+    if (random.uniform() * a.length >= 1) return child;
+    return random.uniform() < ANEW_CHANCE ? random.uniform() : mutated(child, random.uniform());
   });
 }
 
@@ -73,18 +84,6 @@ function nearestThatBeats(loser: Member, members: readonly Member[]): Member | u
     least = squared;
   }
   return nearest;
-}
-
-function modelledOrDifferential(population: FrontPopulation, random: RandomSource): Float64Array {
-  return modelled(population, random) ?? differential(population, random);
-}
-
-function filledOrDifferential(population: FrontPopulation, random: RandomSource): Float64Array {
-  return filled(population, random) ?? differential(population, random);
-}
-
-function descendedOrDifferential(population: FrontPopulation, random: RandomSource): Float64Array {
-  return descended(population, random) ?? differential(population, random);
 }
 
 /** A step along all coordinates, or along some. */
