@@ -54,7 +54,11 @@ export class FrontPopulation {
     this.mayGrow = true;
   }
 
-  /** Takes newcomers in, and leaves out who is not needed any more. */
+  /**
+   * Takes newcomers in, and leaves out who is not needed any more.
+   *
+   * @returns the hypervolume that each newcomer brought, in units of the spans
+   */
   add(newcomers: readonly Member[]): number[] {
     const filled = newcomers.map((member) => (member.violation > 0 ? [] : this.gaps.add(member.objectives)));
     this.gaps.endRound();
@@ -91,7 +95,10 @@ export class FrontPopulation {
     this.known = [...this.members, ...this.beaten];
     const width = this.objectives - 1;
     this.alongs = new Float64Array(width * this.known.length);
-    for (const [k, { along }] of this.known.entries()) this.alongs.set(along, width * k);
+    for (let k = 0; k < this.known.length; k++) {
+      const { along } = this.known[k];
+      for (let j = 0; j < width; j++) this.alongs[width * k + j] = along[j];
+    }
     let sum = 0;
     this.sums = front.map(({ worth }) => {
       sum += worth;
