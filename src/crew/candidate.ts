@@ -11,6 +11,7 @@ import type { Judge } from '../score/judge.ts';
 import type { Scores } from '../score/scores.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
 import { BEYOND_RADIUS } from '../score/taskScenarios.ts';
+import { bridgedShape } from '../shop/bridgedShape.ts';
 import { widthMisfit } from '../shop/widthMisfit.ts';
 
 /** A point of the search, with its scores. */
@@ -58,7 +59,7 @@ function distanceAt(space: SearchSpace, place: number): number {
 }
 
 /**
- * Draws a candidate's outline at its distance, unless its parameters draw none.
+ * Draws a candidate's outline at its distance, unless its parameters draw none. Where the shop's islands fall out, rings hang on bridges.
  *
  * @throws RimwrightError `machine` for a vector that is not finite: the search is at fault then, not the brief
  */
@@ -73,7 +74,9 @@ export function drawCandidate(
   const distanceM = distanceAt(space, vector[count] ?? 0);
   const values = Array.from(vector).slice(0, count);
   const drawn = variant.draw(values, 1 / Math.sqrt(judge.kappa(distanceM)));
-  return isDrawn(drawn) ? placed(drawn, distanceM, space, judge.task.detector.balanced) : drawn;
+  if (!isDrawn(drawn)) return drawn;
+  const shape = bridgedShape(drawn, judge.task.shop);
+  return placed(shape, distanceM, space, judge.task.detector.balanced);
 }
 
 /** Puts the elements into planes of the grid, as far as it reaches, and leaves no single one where a balance is asked for. */
@@ -107,6 +110,7 @@ function notFinite(what: string, { id }: Variant, vector: ArrayLike<number>): Ri
 /**
  * Scores one point of the search.
  *
+ * @param shift what is added to its ratios (see `cutShift`)
  * @throws RimwrightError `machine` as `drawCandidate`, or for an outline or a value that is no number
  */
 export function tryCandidate(
@@ -115,6 +119,7 @@ export function tryCandidate(
   variant: Variant,
   vector: Float64Array,
   aim: Aim,
+  shift: Float64Array | null = null,
 ): Trial {
   const drawn = drawCandidate(judge, space, variant, vector);
   const misdrawnBy = 'misdrawnBy' in drawn ? drawn.misdrawnBy : tooLargeBy(judge, drawn.shape);
@@ -124,7 +129,7 @@ export function tryCandidate(
   }
   const sizeCosts = costOfSize(judge, drawn.shape, drawn.distanceM);
   if (sizeCosts > HOPELESS) return { value: UNREAD + sizeCosts, candidate: null, ratios: null };
-  const { scores, ratios } = judge.scoreShape(drawn.shape, drawn.distanceM, aim.correction);
+  const { scores, ratios } = judge.scoreShape(drawn.shape, drawn.distanceM, aim.correction, shift);
   const misfit = shopMisfit(judge, drawn.shape, scores, aim);
   const value = aimValue(scores, misfit, aim, judge.task);
   if (Number.isNaN(value)) throw notFinite('a value', variant, vector);

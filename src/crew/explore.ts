@@ -7,6 +7,8 @@ import type { SearchSpace } from '../score/searchSpace.ts';
 import { nelderMead } from '../search/nelderMead.ts';
 import { RestartedCma } from '../search/restartedCma.ts';
 import type { Candidate } from './candidate.ts';
+import { drawCandidate } from './candidate.ts';
+import { cutShift } from './cutShift.ts';
 import { descend } from './descend.ts';
 import { spread } from './spread.ts';
 import { boxOf, drawStart } from './startPoints.ts';
@@ -30,6 +32,8 @@ export interface ExploreJob {
   method: 'glance' | 'evolve' | 'refine' | 'seed' | 'spread';
   /** Where to refine or seed from; a start of the variant's own if left out. */
   from?: number[];
+  /** Whether to count what the shop's cutting does to the candidate `from`, for all that are tried. */
+  asCut?: true;
   /** Good candidates of the variant for `spread` to begin with. */
   starts?: number[][];
 }
@@ -54,7 +58,8 @@ const SEED_STEP = 0.5;
 /** Does one job within its budget. */
 export function explore(job: ExploreJob, judge: Judge, space: SearchSpace): ExploreResult {
   const variant = space.variants.find(({ id }) => id === job.variant) as Variant;
-  const trials = new Trials(judge, space, variant, job.aim, job.budget);
+  const shift = job.asCut && job.from ? shiftOf(judge, space, variant, job.from) : null;
+  const trials = new Trials(judge, space, variant, job.aim, job.budget, shift);
   const random = randomStream(job.seed, job.stream);
   const from = Float64Array.from(job.from ?? drawStart(trials, random).start);
   if (job.method === 'glance') glance(trials, random);
@@ -62,6 +67,16 @@ export function explore(job: ExploreJob, judge: Judge, space: SearchSpace): Expl
   else if (job.method === 'spread') spread(trials, job.starts ?? [], random);
   else (job.method === 'seed' ? descendOnce : refine)(trials, from, random);
   return { evaluations: trials.spent, best: trials.best, front: trials.front };
+}
+
+function shiftOf(
+  judge: Judge,
+  space: SearchSpace,
+  variant: Variant,
+  from: readonly number[],
+): Float64Array | null {
+  const drawn = drawCandidate(judge, space, variant, from);
+  return 'shape' in drawn ? cutShift(judge, drawn.shape, drawn.distanceM) : null;
 }
 
 /** Descents from start after start: a descent settles within a hundred evaluations or so. */

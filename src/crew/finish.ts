@@ -7,10 +7,9 @@ import type { Certifier } from '../score/certifier.ts';
 import type { Design } from '../score/design.ts';
 import type { Judge } from '../score/judge.ts';
 import type { Judgement } from '../score/scorer.ts';
+import { worstOf } from '../score/scores.ts';
 import type { SearchSpace } from '../score/searchSpace.ts';
-import type { ShopReport } from '../shop/inspect.ts';
-import { inspectOutline } from '../shop/inspect.ts';
-import type { ShopRules } from '../shop/shopRules.ts';
+import { making } from '../shop/making.ts';
 import { drawCandidate } from './candidate.ts';
 
 /** Candidates to be drawn as points and scored again, finely. */
@@ -33,7 +32,7 @@ export interface FinishingJudges {
   fields: Fields;
 }
 
-/** Turns candidates into what the shop gets; judges and certifies exactly that: the points as they stand in the files. */
+/** Turns candidates into what the shop gets; judges and certifies what comes back: the points as they stand in the files, as cut. */
 export function finish(
   job: FinishJob,
   { judge, certifier, otherJudge, fields }: FinishingJudges,
@@ -44,22 +43,26 @@ export function finish(
       const variant = space.variants.find((one) => one.id === id) as Variant;
       const drawn = drawCandidate(judge, space, variant, vector) as { shape: Shape; distanceM: number };
       const { shape, distanceM } = drawn;
-      const points = toPoints(shape, judge.kappa(distanceM));
+      const made = making(toPoints(shape, judge.kappa(distanceM)), judge.task.shop);
       const correction = weighedFor ?? judge.task.target.correction;
-      const { elements, judgement: judged } = shape.freeWeights
-        ? certifier.weighOutline(points, distanceM, shape, correction)
-        : { elements: points, judgement: certifier.scoreOutline(points, distanceM, shape) };
-      const other = otherJudge?.scoreOutline(elements, drawn.distanceM, drawn.shape);
+      const score = (outline: readonly OutlineElement[]) =>
+        shape.freeWeights
+          ? certifier.weighOutline(outline, distanceM, shape, correction)
+          : { elements: outline, judgement: certifier.scoreOutline(outline, distanceM, shape) };
+      const { elements: cut, judgement: judged } = score(made.cut);
+      const weighed = made.drawn.map((element, k) => ({ ...element, weight: cut[k].weight }));
+      const other = otherJudge?.scoreOutline(cut, distanceM, shape);
       return {
         family: variant.family,
         distanceM: drawn.distanceM,
-        elements,
+        elements: weighed,
         scores: judged.scores,
+        ...(made.cut !== made.drawn && { asDrawn: { worst: worstOf(score(made.drawn).judgement.scores) } }),
         fields,
         ...(other && {
           otherFields: { worst: other.scores.correction.worst, difference: largestDifference(judged, other) },
         }),
-        shop: askShop(elements, judge.task.shop),
+        shop: made.report,
       };
     }),
   };
@@ -72,11 +75,6 @@ function largestDifference(judged: Judgement, other: Judgement): number {
     0,
   );
   return difference / judged.scores.gain;
-}
-
-/** The shop's word on an outline; without a shop everything fits. */
-function askShop(elements: readonly OutlineElement[], shop: ShopRules | null): ShopReport {
-  return shop === null ? { fits: true, notes: [], misfit: 0 } : inspectOutline(elements, shop);
 }
 
 /**

@@ -28,16 +28,26 @@ export class Trials {
   readonly variant: Variant;
   readonly aim: Aim;
   readonly #budget: number;
+  readonly #shift: Float64Array | null;
   readonly #archive = new ParetoArchive<Candidate>(FRONT_RESOLUTION, FRONT_SIZE);
   #spent = 0;
   #best: { candidate: Candidate; value: number } | null = null;
 
-  constructor(judge: Judge, space: SearchSpace, variant: Variant, aim: Aim, budget: number) {
+  /** @param shift what is added to every candidate's ratios (see `cutShift`) */
+  constructor(
+    judge: Judge,
+    space: SearchSpace,
+    variant: Variant,
+    aim: Aim,
+    budget: number,
+    shift: Float64Array | null = null,
+  ) {
     this.judge = judge;
     this.space = space;
     this.variant = variant;
     this.aim = aim;
     this.#budget = budget;
+    this.#shift = shift;
   }
 
   get spent(): number {
@@ -61,7 +71,7 @@ export class Trials {
   /** Tries one point. */
   try(vector: Float64Array): Trial {
     this.#spent++;
-    const trial = tryCandidate(this.judge, this.space, this.variant, vector, this.aim);
+    const trial = tryCandidate(this.judge, this.space, this.variant, vector, this.aim, this.#shift);
     const { candidate, value } = trial;
     if (candidate) {
       if (this.#best === null || value < this.#best.value) this.#best = { candidate, value };

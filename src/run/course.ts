@@ -5,6 +5,8 @@ import type { Job, Orders, ResultOf } from '../crew/messages.ts';
 import { Workshop } from '../crew/workshop.ts';
 import type { Aim } from '../score/aim.ts';
 import type { Design } from '../score/design.ts';
+import { worstOf } from '../score/scores.ts';
+import type { Task } from '../score/task.ts';
 import type { Brief } from './brief.ts';
 import type { JobMemory } from './journal.ts';
 import type { Progress } from './progress.ts';
@@ -13,6 +15,7 @@ import type { Findings } from './quest.ts';
 import { missesOf } from './ranking.ts';
 import type { Hands } from './remembering.ts';
 import { remembering } from './remembering.ts';
+import type { Again } from './rounds.ts';
 import { Rounds } from './rounds.ts';
 import { withBounds } from './withBounds.ts';
 
@@ -35,6 +38,8 @@ export interface Finish {
   asTheyAre(candidates: readonly Candidate[]): Promise<Design[]>;
   /** The same for the best `count` of an aim; those that finer judging finds a little beyond the target are refined with more room. */
   untilMet(aim: number, count: number): Promise<Design[]>;
+  /** As `asTheyAre`; those that meet the target as drawn and lose it in the cutting are refined for the aim, as cut. */
+  keptInCutting(candidates: readonly Candidate[], aim: number): Promise<Design[]>;
   /** Says of every design how little area a mask could do with in its place. */
   bounded<D extends Design>(designs: readonly D[]): Promise<D[]>;
 }
@@ -56,6 +61,9 @@ const REPAIRABLE = 1.3;
 
 /** How much more than what was missed a repair leaves, so that the next certificate does not miss by a hair. */
 const REPAIR_ROOM = 1.01;
+
+/** Designs that cutting takes off the target and that are refined for that. */
+const MOST_LOST = 6;
 
 /** Candidates of one finishing job. */
 const BATCH = 3;
@@ -141,6 +149,21 @@ function handsOf(workshop: Workshop): Hands {
   return { do: async <J extends Job>(job: J): Promise<ResultOf<J>> => workshop.do(job) };
 }
 
+/** A design with the candidate and the aim that it came from. */
+interface Finished extends Again {
+  design: Design;
+}
+
+/** What to ask for a design that misses the target: first that it be met as cut, then more room. Null where neither helps. */
+function repairOf({ design, candidate, aim, asCut }: Finished, task: Task): Again | null {
+  const misses = missesOf(design, task);
+  const only = misses.length === 1 && misses[0].limit === 'target.correction' ? misses[0].factor : 0;
+  if (only === 0 || only > REPAIRABLE) return null;
+  if (design.asDrawn && !asCut) return { candidate, aim, asCut: true };
+  const room = { ...aim, correction: aim.correction / (only * REPAIR_ROOM) };
+  return { candidate, aim: room, ...(asCut && { asCut }) };
+}
+
 function finishing(
   rounds: Rounds,
   brief: Brief,
@@ -156,28 +179,43 @@ function finishing(
     const results = await Promise.all(jobs.map((job) => hands.do(job)));
     return results.flatMap(({ designs }) => designs);
   };
-  const untilMet = async (k: number, count: number) => {
-    let candidates = rounds.findings.best[k].slice(0, count).map(({ candidate }) => candidate);
-    let corrections = candidates.map(() => aims[k].correction);
-    let designs = await asTheyAre(candidates);
-    const all = [...designs];
+  /** Refines what misses the target alone, and by a little, until it is met; all that was finished on the way. */
+  const repaired = async (first: readonly Finished[]) => {
+    const all: Design[] = [];
+    let finished = first;
     for (let repair = 0; mayRepair && repair < REPAIRS; repair++) {
-      const asked = candidates.flatMap((candidate, i) => {
-        const misses = missesOf(designs[i], brief.task);
-        const only = misses.length === 1 && misses[0].limit === 'target.correction' ? misses[0].factor : 0;
-        if (only === 0 || only > REPAIRABLE) return [];
-        return [{ candidate, aim: { ...aims[k], correction: corrections[i] / (only * REPAIR_ROOM) } }];
-      });
+      const asked = finished.flatMap((one) => repairOf(one, brief.task) ?? []);
       if (asked.length === 0) break;
       const results = await rounds.again(asked);
-      if (results.length === 0) break;
-      candidates = results.flatMap(({ best }) => (best ? [best.candidate] : []));
-      corrections = results.flatMap(({ best }, i) => (best ? [asked[i].aim.correction] : []));
-      designs = await asTheyAre(candidates);
+      const found = results.flatMap(({ best }, i) =>
+        best ? [{ ...asked[i], candidate: best.candidate }] : [],
+      );
+      if (found.length === 0) break;
+      const designs = await asTheyAre(found.map(({ candidate }) => candidate));
       all.push(...designs);
+      finished = found.map((one, i) => ({ ...one, design: designs[i] }));
     }
     return all;
   };
+  const untilMet = async (k: number, count: number) => {
+    const candidates = rounds.findings.best[k].slice(0, count).map(({ candidate }) => candidate);
+    const designs = await asTheyAre(candidates);
+    const aim = aims[k];
+    return [
+      ...designs,
+      ...(await repaired(designs.map((design, i) => ({ design, aim, candidate: candidates[i] })))),
+    ];
+  };
+  const keptInCutting = async (candidates: readonly Candidate[], k: number) => {
+    const designs = await asTheyAre(candidates);
+    const { correction } = brief.task.target;
+    const lost = designs.flatMap((design, i): Finished[] => {
+      const isLost =
+        design.asDrawn && design.asDrawn.worst <= correction && worstOf(design.scores) > correction;
+      return isLost ? [{ design, aim: aims[k], candidate: candidates[i] }] : [];
+    });
+    return [...designs, ...(await repaired(lost.slice(0, MOST_LOST)))];
+  };
   const bounded = <D extends Design>(designs: readonly D[]) => withBounds(designs, brief.task, hands);
-  return { findings: rounds.findings, asTheyAre, untilMet, bounded };
+  return { findings: rounds.findings, asTheyAre, untilMet, keptInCutting, bounded };
 }

@@ -28,6 +28,8 @@ export interface DesignJson {
   /** Fields of the sphere behind the scores, and what the others make of the design. */
   fields: Fields;
   otherFields?: { worst: number; difference: number };
+  /** The worst correction of the drawing itself, where the shop's cutting changes the outline: `scores` are as cut. */
+  asDrawn?: { worst: number };
   scores: Scores & { shop: { fits: boolean; notes: readonly string[] } };
   /** 1 is the front. */
   rank: number;
@@ -42,7 +44,8 @@ const BULGE_DIGITS = 12;
 
 /** The plain form of a design: what front.json and a design's own file hold. */
 export function designToJson(design: RankedDesign): DesignJson {
-  const { id, family, distanceM, elements, scores, fields, otherFields, shop, rank, meetsTarget } = design;
+  const { id, family, distanceM, elements, scores, fields, otherFields, asDrawn } = design;
+  const { shop, rank, meetsTarget } = design;
   return {
     id,
     family,
@@ -50,6 +53,7 @@ export function designToJson(design: RankedDesign): DesignJson {
     elements: elements.map(elementToJson),
     fields,
     ...(otherFields && { otherFields }),
+    ...(asDrawn && { asDrawn }),
     scores: { ...scores, shop: { fits: shop.fits, notes: shop.notes } },
     rank,
     meetsTarget,

@@ -41,7 +41,9 @@ export function rankFront(designs: readonly Design[], task: Task): RankedDesign[
       worstOf(scores) <= FRONT_REACH * task.target.correction &&
       missedLimits(scores, shop.misfit, task).length === 0,
   );
-  const front = thin(distinct(within));
+  // Of two that are one to whoever chooses, the one that meets the target stays.
+  const meets = within.map((design) => missesOf(design, task).length === 0);
+  const front = thin(distinct([...within.filter((_, i) => meets[i]), ...within.filter((_, i) => !meets[i])]));
   return rankAll([...front, ...familyBests(within, front, task)], task);
 }
 

@@ -25,6 +25,7 @@ const DESIGN_KEYS: readonly (keyof DesignJson)[] = [
   'elements',
   'fields',
   'otherFields',
+  'asDrawn',
   'scores',
   'rank',
   'meetsTarget',

@@ -40,6 +40,9 @@ const LEAST_REFINE = 250;
 /** Evaluations for one candidate that is refined once more. */
 const AGAIN_BUDGET = 400;
 
+/** And for one that cutting alone takes beyond what it was refined for: it is nearly there. */
+const AS_CUT_BUDGET = 160;
+
 /** Evaluations that a seed's descent may take. */
 const SEED_BUDGET = 500;
 
@@ -48,6 +51,14 @@ const DIG = 1200;
 
 /** Evaluations per variant below which a first look tells nothing. */
 const LEAST_LOOK = 40;
+
+/** A candidate to be refined once more. */
+export interface Again {
+  candidate: Candidate;
+  aim: Aim;
+  /** As in a job. */
+  asCut?: true;
+}
 
 /**
  * The course of a search: a first look at every variant, then new starts for the best of them, then refinement of the best
@@ -96,15 +107,18 @@ export class Rounds {
     }
   }
 
-  /** Refines candidates once more for aims of their own, such as a correction that leaves more room. */
-  async again(asked: readonly { candidate: Candidate; aim: Aim }[]): Promise<ExploreResult[]> {
+  /**
+   * Refines candidates once more for aims of their own, such as a correction that leaves more room.
+   */
+  async again(asked: readonly Again[]): Promise<ExploreResult[]> {
     const left = this.#quest.candidates - this.#evaluations;
-    const budget = Math.min(AGAIN_BUDGET, left / asked.length);
-    if (budget < LEAST_LOOK) return [];
-    const jobs = asked.map(({ candidate, aim }) => ({
-      ...this.#job(candidate.variant, 0, budget),
+    const share = left / asked.length;
+    if (share < LEAST_LOOK) return [];
+    const jobs = asked.map(({ candidate, aim, asCut }) => ({
+      ...this.#job(candidate.variant, 0, Math.min(asCut ? AS_CUT_BUDGET : AGAIN_BUDGET, share)),
       aim,
       method: 'refine' as const,
+      ...(asCut && { asCut }),
       from: candidate.vector,
     }));
     const results = await Promise.all(jobs.map((job) => this.#crew.do(job)));

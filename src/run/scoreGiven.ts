@@ -1,14 +1,15 @@
 import { Certifier } from '../score/certifier.ts';
+import { worstOf } from '../score/scores.ts';
 import type { Task } from '../score/task.ts';
-import { inspectOutline } from '../shop/inspect.ts';
+import { making } from '../shop/making.ts';
 import type { GivenDesign } from './givenDesign.ts';
 import type { OutlineJudge } from './judgeOutline.ts';
 import type { RankedDesign } from './ranking.ts';
 import { missesOf } from './ranking.ts';
 
 /**
- * The certified scores of an outline from outside, over every particle, wavelength and position of the brief. Its rank is 1
- * as long as it stands alone.
+ * The certified scores of an outline from outside, over every particle, wavelength and position of the brief: as its shop cuts it, with
+ * bridges where islands would fall out. Its rank is 1 as long as it stands alone.
  */
 export function scoreGiven(
   task: Task,
@@ -16,10 +17,18 @@ export function scoreGiven(
   { judge, distanceM, fields }: OutlineJudge,
 ): RankedDesign {
   const { id, family, elements } = given;
-  const { scores } = new Certifier(judge, fields).scoreOutline(elements, distanceM);
-  const shop =
-    task.shop === null ? { fits: true, notes: [], misfit: 0 } : inspectOutline(elements, task.shop);
-  const design = { family, distanceM, elements, scores, fields, shop };
+  const { drawn, cut, report } = making(elements, task.shop);
+  const certifier = new Certifier(judge, fields);
+  const { scores } = certifier.scoreOutline(cut, distanceM);
+  const design = {
+    family,
+    distanceM,
+    elements: drawn,
+    scores,
+    fields,
+    ...(cut !== drawn && { asDrawn: { worst: worstOf(certifier.scoreOutline(drawn, distanceM).scores) } }),
+    shop: report,
+  };
   return { ...design, id, rank: 1, meetsTarget: missesOf(design, task).length === 0 };
 }
 

@@ -56,7 +56,7 @@ export async function search(brief: Brief, options: CourseOptions): Promise<Sear
     const { front, best } = finish.findings;
     const others = aims.slice(1).flatMap((_, k) => best[k + 1].slice(0, 1));
     const rest = [...others, ...best[0].slice(ON_TARGET)].map(({ candidate }) => candidate);
-    const all = [...onTarget, ...(await finish.asTheyAre([...front, ...rest]))];
+    const all = [...onTarget, ...(await finish.keptInCutting([...front, ...rest], 0))];
     return finish.bounded(rankFront(all, brief.task));
   });
   const { designs, evaluations, seconds, stopped } = course;

@@ -17,5 +17,7 @@ export interface Design {
    * of a reading between the two, over gain and extinction.
    */
   otherFields?: { worst: number; difference: number };
+  /** What the drawing itself would do, where the shop's cutting changes it: `scores` are of the outline as cut. */
+  asDrawn?: { worst: number };
   shop: ShopReport;
 }

@@ -87,12 +87,23 @@ export class Judge {
    * Scores a shape as its family draws it; the ratios reading/extinction behind the correction come along.
    *
    * @param correction that free weights are solved for; the target's if left out
+   * @param shift what is added to each ratio, for what the shape leaves out; passed over where it is not as long, or weights are free
    */
-  scoreShape(shape: Shape, distanceM: number, correction = this.task.target.correction): Judgement {
+  scoreShape(
+    shape: Shape,
+    distanceM: number,
+    correction = this.task.target.correction,
+    shift: Float64Array | null = null,
+  ): Judgement {
     const nodes = this.shapeNodes(shape, distanceM);
     const radiusM = shapeRadius(shape);
-    if (!shape.freeWeights) return this.judge(this.#read(nodes, radiusM, distanceM, shape, shape));
-    return this.judge(weigh(this.task, this.#readApart(nodes, radiusM, distanceM, shape, shape), correction));
+    if (shape.freeWeights)
+      return this.judge(
+        weigh(this.task, this.#readApart(nodes, radiusM, distanceM, shape, shape), correction),
+      );
+    const read = this.#read(nodes, radiusM, distanceM, shape, shape);
+    if (shift?.length === read.rows.reduce((sum, { length }) => sum + length, 0)) addTo(read.rows, shift);
+    return this.judge(read);
   }
 
   /** Scores an outline given by its points. */
@@ -288,5 +299,12 @@ export class Judge {
    */
   judge(readings: SampledReadings, found: readonly number[] = []): Judgement {
     return this.#scorer.score(readings, found);
+  }
+}
+
+function addTo(rows: readonly Float64Array[], shift: Float64Array): void {
+  let at = 0;
+  for (const row of rows) {
+    for (let i = 0; i < row.length; i++) row[i] += shift[at++];
   }
 }

@@ -142,13 +142,13 @@ function roundingNotes(
 }
 
 /** Three significant digits, in µm below a millimetre. */
-function lengthText(metres: number): string {
+export function lengthText(metres: number): string {
   const [factor, unit] = metres < 1e-3 ? [1e6, 'µm'] : [1e3, 'mm'];
   return `${Number((metres * factor).toPrecision(3))} ${unit}`;
 }
 
 /** To a tenth of a micrometre. */
-function placeText([x, y]: readonly [number, number]): string {
+export function placeText([x, y]: readonly [number, number]): string {
   const [xUm, yUm] = [x, y].map((metres) => (Math.round(metres * 1e7) / 10 + 0).toFixed(1));
   return `(${xUm}, ${yUm}) µm`;
 }

@@ -11,7 +11,7 @@ export interface Departure {
 
 /** A changed outline that runs on the original's own vertices wherever the change does not reach. */
 export interface Stitched {
-  rings: Float64Array[];
+  rings: readonly Float64Array[];
   departures: Departure[];
   /** Numbers of the original's rings that nothing of the result follows. */
   lost: number[];
@@ -72,7 +72,7 @@ export function stitch(
     return withoutRepeats(points, original.touchM);
   });
   const lost = original.rings.map((_, k) => k).filter((k) => !followed.has(k));
-  if (departures.length === 0 && lost.length === 0) return { rings: [...originalRings], departures, lost };
+  if (departures.length === 0 && lost.length === 0) return { rings: originalRings, departures, lost };
   return { rings: stitched.filter(({ length }) => length >= 6), departures, lost };
 }
 
