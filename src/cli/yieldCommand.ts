@@ -127,7 +127,7 @@ function printYield(found: Yield, file: string): void {
       : `Each build is judged on ${readings} readings, by a polynomial surface through ${surface.fitted} builds that were read in full; ` +
           `against ${surface.checked} others its worst correction errs by ${percentText(surface.error.rms)} rms, ` +
           `${percentText(surface.error.largest)} at most. Of the ${near.builds} builds that it puts so near the target, ` +
-          `${near.read} were read in full.`,
+          `${near.read} were read in full: ${near.changed} came out otherwise.`,
   );
 }
 

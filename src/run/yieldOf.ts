@@ -1,6 +1,5 @@
 import { randomStream } from '../base/random.ts';
 import { varianceShares } from '../numeric/varianceShares.ts';
-import { wilsonInterval } from '../numeric/wilsonInterval.ts';
 import { refractiveIndex } from '../optics/indexModel.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import type { BuildGain } from '../score/buildJudge.ts';
@@ -26,6 +25,8 @@ import type { SurfaceReport } from './fitBuilds.ts';
 import { drawBuilds, fitSurface, STREAM, stretched, worstsInFull } from './fitBuilds.ts';
 import type { GivenDesign } from './givenDesign.ts';
 import { judgeOutline } from './judgeOutline.ts';
+import type { NearCounts } from './nearTarget.ts';
+import { nearCounts, shareMeeting, zonesOf } from './nearTarget.ts';
 import { checkTolerances, edgeWarning, planBuilds } from './planBuilds.ts';
 import { resolveTolerances } from './readTolerances.ts';
 import { toleranceNeeds } from './toleranceNeeds.ts';
@@ -80,8 +81,8 @@ export interface Yield {
   /** Share of builds that meet the target, and its 95 % confidence interval: for so many builds, and so many of the near ones. */
   yield: number;
   interval: [low: number, high: number];
-  /** Builds that the surface puts within its error of the target, and how many of them were read in full; null where all were. */
-  near: { builds: number; read: number; met: number } | null;
+  /** Builds that the surface puts within its error of the target, how many of them were read in full, and of these came out otherwise; null where all were read. */
+  near: NearCounts | null;
   /** Worst correction of builds: that of the middle one, and what 95 % stay below. */
   worst: { median: number; most95: number };
   /** Readings that judge each build. */
@@ -101,8 +102,9 @@ export interface Yield {
 /** Points of each of the two samples for shares; builds that tolerances are tightened with. */
 const SHARE_POINTS = 8000;
 const NEEDS_BUILDS = 20_000;
-/** Most builds near the target that are read in full. */
-const NEAR_READ = { usual: 400, quick: 60 };
+/** The nearer of two zones about the target, in rms of the surface's error; most builds of each that are read in full. */
+const NEAREST = 1.5;
+const ZONE_READ = { usual: 200, quick: 30 };
 
 /**
  * How many builds of a design meet the target's correction: each differs from the drawing within the tolerances, and is judged over the
@@ -162,27 +164,23 @@ export async function yieldOf(
       ? await worstsInFull(read, judge, drawn, tolerances)
       : Float64Array.from(drawn, (standard) => ofSurface(standard, tolerances));
     const sorted = worsts.toSorted();
-    const near = options.inFull
-      ? []
-      : [...worsts.keys()].filter((build) => Math.abs(worsts[build] - target) <= report.error.largest);
-    const reread = near.slice(0, quick ? NEAR_READ.quick : NEAR_READ.usual);
-    const rereadWorsts = await worstsInFull(
-      read,
-      judge,
-      reread.map((build) => drawn[build]),
-      tolerances,
-    );
-    reread.forEach((build, i) => {
-      worsts[build] = rereadWorsts[i];
-    });
-    const isNear = new Set(near);
-    const sure = worsts.reduce((sum, worst, b) => sum + Number(worst <= target && !isNear.has(b)), 0);
-    const nearCounts = {
-      builds: near.length,
-      read: reread.length,
-      met: rereadWorsts.reduce((sum, worst) => sum + Number(worst <= target), 0),
-    };
-    const { share, interval } = shareMeeting(sure, nearCounts, builds);
+    const { rms, largest } = report.error;
+    const ends = options.inFull ? [] : [NEAREST * rms, largest];
+    const said = worsts.reduce((sum, worst) => sum + Number(worst <= target), 0);
+    const zones = zonesOf(worsts, target, ends, quick ? ZONE_READ.quick : ZONE_READ.usual);
+    for (const zone of zones) {
+      const inFull = await worstsInFull(
+        read,
+        judge,
+        zone.read.map((build) => drawn[build]),
+        tolerances,
+      );
+      zone.read.forEach((build, i) => {
+        zone.changes.push(Number(inFull[i] <= target) - Number(worsts[build] <= target));
+        worsts[build] = inFull[i];
+      });
+    }
+    const { share, interval } = shareMeeting(said, zones, builds);
     const details = quick
       ? { tolerances: [], togetherNeeded: null }
       : detailsOf(tolerances, seed, target, wanted, drawn.slice(0, NEEDS_BUILDS), ofSurface);
@@ -196,7 +194,7 @@ export async function yieldOf(
       seed,
       yield: share,
       interval,
-      near: options.inFull ? null : nearCounts,
+      near: options.inFull ? null : nearCounts(zones),
       worst: {
         median: sorted[Math.floor((builds - 1) / 2)],
         most95: sorted[Math.ceil(0.95 * builds) - 1],
@@ -209,25 +207,6 @@ export async function yieldOf(
       warnings: present([edgeWarning(given.elements, farthestDeviations(tolerances).shiftM)]),
     };
   });
-}
-
-/**
- * The share of builds that meet the target where of those near it only some were read in full, and its 95 % interval: that of as many
- * plain trials as have the same variance.
- */
-function shareMeeting(
-  sure: number,
-  near: { builds: number; read: number; met: number },
-  builds: number,
-): { share: number; interval: [low: number, high: number] } {
-  const ofNear = near.read === 0 ? 0 : near.met / near.read;
-  const share = (sure + near.builds * ofNear) / builds;
-  const plain = share * (1 - share);
-  // Reading all of them leaves nothing open.
-  const open = near.read === 0 ? 0 : (1 - near.read / near.builds) / near.read;
-  const added = (near.builds / builds) ** 2 * ofNear * (1 - ofNear) * open;
-  const trials = plain === 0 ? builds : plain / (plain / builds + added);
-  return { share, interval: wilsonInterval(share * trials, trials) };
 }
 
 /** x = k d/2 of the largest sphere. */
