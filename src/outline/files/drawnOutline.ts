@@ -6,7 +6,7 @@ import { findRingsCrossing } from '../selfCrossing.ts';
 import type { OutlineElement } from '../shape.ts';
 import type { Curve } from './curve.ts';
 import type { DrawnElement, DrawnPath, Place } from './drawnPath.ts';
-import { LARGEST_M, MOST_VERTICES, pointText, refuseAt } from './drawnPath.ts';
+import { LARGEST_M, MOST_VERTICES, pointText, refuseAt, refuseManyRings } from './drawnPath.ts';
 import { flattenCurve } from './flatten.ts';
 
 /** How far chords may lie off a curve, in parts of the drawing's size: as far as the 1440 sides of a polygon do off a circle. */
@@ -54,6 +54,10 @@ export function outlineOf(drawn: readonly DrawnElement[], file: string): Outline
   if (drawn.every(({ loops }) => loops.length === 0)) {
     throw inputError([{ file, found: 'no outline', expected: 'at least one closed curve' }]);
   }
+  refuseManyRings(
+    drawn.reduce((sum, { loops }) => sum + loops.length, 0),
+    file,
+  );
   const sizeM = drawingSize(
     drawn.flatMap(({ loops }) => loops),
     file,

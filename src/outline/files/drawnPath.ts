@@ -6,6 +6,8 @@ import type { Curve, Point } from './curve.ts';
 export const MOST_FILE_BYTES = 50_000_000;
 /** Points of all rings together. */
 export const MOST_VERTICES = 200_000;
+/** Rings of all elements together. */
+const MOST_RINGS = 5000;
 /** Largest coordinate either way, metres. */
 export const LARGEST_M = 1;
 
@@ -42,6 +44,12 @@ export function problemAt(
 /** @throws RimwrightError `input`, always */
 export function refuseAt(file: string, place: Partial<Place>, found: string, expected: string): never {
   throw inputError([problemAt(file, place, found, expected)]);
+}
+
+/** @throws RimwrightError `input` where there are more rings than are read */
+export function refuseManyRings(count: number, file: string): void {
+  if (count <= MOST_RINGS) return;
+  throw inputError([{ file, found: `${count} rings`, expected: `at most ${MOST_RINGS} rings` }]);
 }
 
 /** A point of a file as a message names it: `x = 0.5 mm, y = -0.25 mm`. */

@@ -7,6 +7,8 @@ import { moved, multiply, SAME_PLACE } from './svgTransform.ts';
 
 /** References that are followed, all levels together. */
 const MOST_CELLS = 100_000;
+/** Levels of cells within cells. */
+const DEEPEST = 100;
 /** Turned points are rounded to this part of a database unit, so that edges that belong together stay so. */
 const ROUNDING = 1024;
 
@@ -32,6 +34,9 @@ export function flattenGds({ cells }: GdsLibrary, file: string): { top: string; 
       const inner = cells.get(reference.cell);
       const name = JSON.stringify(reference.cell);
       if (inner === undefined) refuseAt(file, byteAt(reference.at), `the cell ${name}`, 'a cell of the file');
+      if (within.length >= DEEPEST) {
+        refuseAt(file, byteAt(reference.at), `the cell ${name} more than ${DEEPEST} deep`, 'cells less deep');
+      }
       if (within.includes(reference.cell)) {
         refuseAt(file, byteAt(reference.at), `the cell ${name} within itself`, 'cells that end somewhere');
       }

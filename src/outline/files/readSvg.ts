@@ -3,7 +3,7 @@ import type { Curve } from './curve.ts';
 import type { ReadOutline } from './drawnOutline.ts';
 import { drawingSize, outlineOf } from './drawnOutline.ts';
 import type { DrawnPath, Place } from './drawnPath.ts';
-import { quoted, refuseAt } from './drawnPath.ts';
+import { quoted, refuseAt, refuseManyRings } from './drawnPath.ts';
 import { filledParts } from './fillRule.ts';
 import { joinPaths } from './joinPaths.ts';
 import type { LengthUnit } from './lengthUnit.ts';
@@ -155,6 +155,7 @@ function readShape(
   }
   const parts = svgPathCurves(data);
   if (typeof parts === 'string') refuseAt(file, place, `${parts} in ${place.name}`, 'path data of SVG');
+  refuseManyRings(parts.length, file);
   const [a, b, c, d, e, f] = matrix;
   const onAxis: Matrix = [a, b, c, d, e - origin[0], f - origin[1]];
   const curves = parts.map((part) => part.map((curve) => movedCurve(onAxis, curve)));

@@ -8,7 +8,8 @@ import { arcAbout, bezier, curved, straight } from './curve.ts';
  * @returns what is wrong, in words, where anything is
  */
 export function svgPathCurves(data: string): Curve[][] | string {
-  const path = svgpath(data);
+  if (LONGEST_ARCS.test(data)) return 'more arcs after one letter than are read';
+  const path = svgpath(spelledOut(data));
   // The library keeps what came before a mistake; its words begin with its own name.
   const { err } = path as unknown as { err: string };
   if (err !== '') return `broken data (${err.replace(/^\w+: /, '')})`;
@@ -41,6 +42,28 @@ export function svgPathCurves(data: string): Curve[][] | string {
     });
   begin(start);
   return mistake ?? parts;
+}
+
+/** Numbers that each command takes, but for arcs, whose flags may stand without a space. */
+const COUNTS: Record<string, number> = { m: 2, l: 2, h: 1, v: 1, c: 6, s: 4, q: 4, t: 2 };
+/** Arcs are not spelled out, see there. */
+const LONGEST_ARCS = /a[^a-df-z]{200000}/i;
+const NUMBER = /[+-]?(?:\d+\.?\d*|\.\d+)(?:[eE][+-]?\d+)?/g;
+
+/** Data with a letter for every step: the library takes a time that grows as the square of the numbers after one letter. */
+function spelledOut(data: string): string {
+  return data.replace(/([mlhvcsqt])([^a-df-z]*)/gi, (whole, letter: string, text: string) => {
+    const numbers = text.match(NUMBER) ?? [];
+    const count = COUNTS[letter.toLowerCase()];
+    const isPlain = numbers.length > count && numbers.length % count === 0;
+    if (!isPlain || !/^[\s,]*$/.test(text.replace(NUMBER, ' '))) return whole;
+    const next = letter === 'm' ? 'l' : letter === 'M' ? 'L' : letter;
+    const steps: string[] = [];
+    for (let i = 0; i < numbers.length; i += count) {
+      steps.push(`${i === 0 ? letter : next}${numbers.slice(i, i + count).join(' ')}`);
+    }
+    return steps.join('');
+  });
 }
 
 /** An edge from a point to itself is none. */

@@ -78,6 +78,11 @@ describe('readGds', () => {
     ).toThrow('found more than 100000 cells');
   });
 
+  it('refuses cells within cells without end', () => {
+    const cells = Array.from({ length: 3000 }, (_, k) => cell(`C${k}`, sref(`C${k + 1}`, 0, 0)));
+    expect(() => read(...cells, cell('C3000', boundary(1, TRIANGLE)))).toThrow('more than 100 deep');
+  });
+
   it('never throws anything but its own errors, whatever is changed in a file', () => {
     const bytes = [
       library([

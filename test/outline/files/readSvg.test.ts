@@ -112,6 +112,19 @@ describe('readSvg', () => {
     });
   });
 
+  it('reads long lists of points in a moment, and refuses what is too long', () => {
+    const points = (count: number) =>
+      Array.from({ length: count }, (_, k) => {
+        const angle = (2 * Math.PI * k) / count;
+        return `${Math.cos(angle).toFixed(9)},${Math.sin(angle).toFixed(9)}`;
+      }).join(' ');
+    expect(elementsOf(`<polygon points="${points(20_000)}"/>`)[0].rings[0]).toHaveLength(40_000);
+    const squares = Array.from({ length: 5001 }, (_, k) => `M${k} 0h.1v.1z`).join('');
+    expect(() => elementsOf(`<path d="${squares}"/>`)).toThrow(
+      'found 5001 rings, expected at most 5000 rings',
+    );
+  });
+
   it('never throws anything but its own errors, whatever is changed in a file', () => {
     const text = sheet(SHAPES.map(([, , content]) => content).join('\n'));
     const changes = fc.array(
