@@ -6,20 +6,21 @@ import type { SphereKind } from './sphereLike.ts';
 
 /** How far the curve goes beyond the brief's own diameters: noise may carry a reading there. */
 const BEYOND = 1.25;
-/** Steps of the size parameter: some dozen to each ripple. */
-const STEP = 0.05;
-const COUNTS = [60, 600] as const;
-/** Diameters for each that is read in the light of a source of finite angle, where a reading takes seconds. */
-const PER_READ = 8;
+/** Steps of the size parameter: narrower resonances are rarely met. */
+const STEP = 0.01;
+const COUNTS = [60, 3000] as const;
+/** Diameters for each that is read, and those in the light of a source of finite angle, where a reading takes seconds. */
+const PER_READ = { plain: 5, source: 40 };
 
 /**
- * What the instrument shows of spheres of one kind over the brief's diameters, and a little beyond. Where readings are slow, only
- * some are made, and reading/extinction is interpolated between them: it goes smoothly where extinction ripples.
+ * What the instrument shows of spheres of one kind over the brief's diameters, and a little beyond. Readings
+ * are slow beside extinctions, so only some are made, and reading/extinction is interpolated between them: it goes smoothly where
+ * extinction ripples.
  */
 export function diameterCurve(
   { task, given, fields, distanceM, scores }: BuiltInstrument,
   kind: SphereKind,
-  perRead = (task.light.sourceAngleRad ?? 0) > 0 ? PER_READ : 1,
+  perRead = (task.light.sourceAngleRad ?? 0) > 0 ? PER_READ.source : PER_READ.plain,
 ): DiameterCurve {
   const alike = task.particles.filter(({ material }) => material === kind.material);
   const particles = alike.length > 0 ? alike : task.particles;
