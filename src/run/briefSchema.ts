@@ -3,24 +3,23 @@ import { LINE_SHAPES } from '../optics/light.ts';
 import { loadIndexModel } from '../optics/shelf.ts';
 import { loadShop } from '../shop/shelf.ts';
 import { FAMILY_NAMES } from './brief.ts';
-import type {
-  ListKey,
-  NoneOrListKey,
-  NoneOrSectionKey,
-  SectionKey,
-  ValueKey,
-  ValueOrSectionKey,
-} from './readMapping.ts';
-import { COUNT_OF_DISTRIBUTION, COUNT_OF_RANGE } from './readParticles.ts';
-import { indexOrShelfName, indexValue, shelfName } from './shelfRules.ts';
-import type { ValueRule } from './valueRules.ts';
 import {
-  fileName,
+  listOf,
+  noneOrListOf,
+  noneOrSection,
+  optional,
+  required,
+  section,
+  valueOrSection,
+  withDefault,
+} from './keyMakers.ts';
+import { particleKeys } from './particleKeys.ts';
+import { indexOrShelfName, indexValue, shelfName } from './shelfRules.ts';
+import { toleranceKeys } from './toleranceKeys.ts';
+import {
   orNone,
-  orWord,
   plainNumber,
   quantityRules,
-  refused,
   textLine,
   trueOrFalse,
   wholeNumber,
@@ -37,12 +36,6 @@ import {
  */
 export function briefSchema(units: Units, presets: string, title: string | null) {
   const { quantity, quantityRange } = quantityRules(units);
-  const materials = shelfName(
-    'materials',
-    (name) => loadIndexModel('materials', name, presets),
-    'polystyrene',
-  );
-  const ownIndex = indexValue({ n: [0.05, 30], k: 30 });
   const media = shelfName(
     'media',
     (name) => loadIndexModel('media', name, presets),
@@ -124,55 +117,7 @@ export function briefSchema(units: Units, presets: string, title: string | null)
       50,
       'the particles that must be read, one kind an entry',
       '{ diameter: 1 um to 4 um, material: polystyrene }',
-      {
-        diameter: optional(
-          'a diameter or a range of them; with amplitudes, that of a sphere as large',
-          quantityRange('length', ['0.01 nm', '1 m'], '1 um to 4 um'),
-        ),
-        distribution: valueOrSection(
-          optional(
-            'sizes in place of a diameter: log-normal by number, or a table of counts',
-            fileName('the keys median, gsd, or a table such as counts.csv', 'counts.csv'),
-          ),
-          '{ median: 2 um, gsd: 1.6 }',
-          {
-            median: required('median diameter by number', quantity('length', ['0.01 nm', '1 m'], '2 um')),
-            gsd: required(
-              'geometric standard deviation of the diameters',
-              plainNumber(1.001, 5, 'a geometric standard deviation', 1.6),
-            ),
-          },
-        ),
-        count: optional(
-          `how many diameters stand for the entry; ${COUNT_OF_RANGE} of a range, ${COUNT_OF_DISTRIBUTION} of a distribution if left out`,
-          wholeNumber(1, 50, 3),
-        ),
-        material: optional('what they are made of: a name on the shelf', materials),
-        index: optional('their index relative to vacuum, in place of a material', ownIndex),
-        core: valueOrSection(
-          optional(
-            'a core of its own; material or index beside it are then the shell',
-            refused('the keys share, material, index'),
-          ),
-          '{ share: 60 %, material: polystyrene }',
-          {
-            share: required(
-              "the core's diameter over that of the particle",
-              quantity('ratio', ['0.1 %', '99.99 %'], '60 %'),
-            ),
-            material: optional('what the core is made of: a name on the shelf', materials),
-            index: optional("the core's index relative to vacuum, in place of a material", ownIndex),
-          },
-        ),
-        amplitudes: optional(
-          'a table of amplitudes from another computation, in place of a material',
-          fileName('the path of a table, such as amplitudes.csv', 'amplitudes.csv'),
-        ),
-        extinction: optional(
-          'extinction cross-section that the amplitudes were computed with',
-          quantity('area', ['1e-12 um^2', '1 m^2'], '12.3 um^2'),
-        ),
-      },
+      particleKeys(units, presets),
     ),
     placement: section('where the particle may be while it is measured', {
       offset: withDefault(
@@ -328,89 +273,3 @@ export function briefSchema(units: Units, presets: string, title: string | null)
     }),
   };
 }
-
-/** Keys of `tolerances`. But for the shop's, defaults are our own estimates of a careful bench. */
-export function toleranceKeys(units: Units) {
-  const { quantity, tolerance } = quantityRules(units);
-  return {
-    edge: withDefault(
-      'shop',
-      'all edges of its openings moved outwards together; shop for what the shop keeps',
-      orWord('shop', tolerance('length', '1 mm', '2 um')),
-    ),
-    kerf: withDefault(
-      'shop',
-      'width of the cut, which moves every edge by half of it; shop for a tenth of its kerf',
-      orWord('shop', tolerance('length', '1 mm', '5 um')),
-    ),
-    place: withDefault('2 um rms', 'of the mask, along x and along y', tolerance('length', '10 mm', '2 um')),
-    distance: withDefault('20 um', 'from the particle to the mask', tolerance('length', '1 m', '20 um')),
-    tilt: withDefault(
-      '0.2 deg rms',
-      'of the mask, about x and about y',
-      tolerance('angle', '20 deg', '0.2 deg'),
-    ),
-    wavelength: withDefault(
-      '0.2 nm',
-      'from one light source to the next',
-      tolerance('length', '1 um', '0.2 nm'),
-    ),
-    index: withDefault(
-      '0.002',
-      'real part of the index of all particles',
-      tolerance('ratio', '0.5', '0.002'),
-    ),
-    size: withDefault('1 % rms', "of all particles' diameters", tolerance('ratio', '50 %', '1 %')),
-    averaging: withDefault(
-      '1 s',
-      'how long one measurement is averaged, for its noise; none for no noise',
-      orNone(quantity('time', ['1 ns', '1e6 s'], '1 s')),
-    ),
-  };
-}
-
-const required = <T>(about: string, rule: ValueRule<T>): ValueKey<T> => ({
-  kind: 'value',
-  about,
-  rule,
-  leftOut: 'refused',
-});
-const optional = <T>(about: string, rule: ValueRule<T>): ValueKey<T> => ({
-  kind: 'value',
-  about,
-  rule,
-  leftOut: 'allowed',
-});
-const withDefault = <T>(use: unknown, about: string, rule: ValueRule<T>): ValueKey<T> => ({
-  kind: 'value',
-  about,
-  rule,
-  leftOut: { use },
-});
-const section = <K>(about: string, keys: K): SectionKey<K> => ({ kind: 'section', about, keys });
-const noneOrSection = <K>(about: string, keys: K): NoneOrSectionKey<K> => ({
-  kind: 'none or section',
-  about,
-  keys,
-});
-const valueOrSection = <T, K>(value: ValueKey<T>, example: string, keys: K): ValueOrSectionKey<T, K> => ({
-  kind: 'value or section',
-  about: value.about,
-  value,
-  example,
-  keys,
-});
-const listOf = <K>(longest: number, about: string, example: string, keys: K): ListKey<K> => ({
-  kind: 'list',
-  about,
-  keys,
-  longest,
-  example,
-});
-const noneOrListOf = <K>(longest: number, about: string, example: string, keys: K): NoneOrListKey<K> => ({
-  kind: 'none or list',
-  about,
-  keys,
-  longest,
-  example,
-});

@@ -4,8 +4,8 @@ import { loadUnits } from '../base/quantity.ts';
 import type { Tolerance, Tolerances } from '../score/tolerances.ts';
 import { NO_TOLERANCE } from '../score/tolerances.ts';
 import type { ShopRules } from '../shop/shopRules.ts';
-import { toleranceKeys } from './briefSchema.ts';
 import type { BriefTolerances } from './briefTolerances.ts';
+import { toleranceKeys } from './toleranceKeys.ts';
 
 /** The keys of a brief's `tolerances`, every one filled. */
 type ToleranceValues = Omit<BriefTolerances, 'averagingS'> & { averaging: number | null };
