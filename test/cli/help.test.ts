@@ -17,6 +17,7 @@ const COMMANDS = [
   'draw',
   'presets',
   'help',
+  'new',
 ];
 
 /** Scripts that a run of the program loaded, after the coverage that V8 writes. */
