@@ -151,6 +151,9 @@ function keptOutHints({ task, families }: Brief): string[] {
   if (task.target.gain === 'one') {
     hints.push('target.gain: free would let one calibrated factor for all particles be taken out');
   }
+  if (task.detector.elements === 'one') {
+    hints.push('detector.elements: several would let weighted elements be tried');
+  }
   const left = FAMILY_NAMES.filter((family) => !families.includes(family));
   if (left.length > 0) hints.push(`families: ${left.join(', ')} were not looked at`);
   return hints;

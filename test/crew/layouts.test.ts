@@ -68,6 +68,27 @@ describe('finish, of layouts', async () => {
   });
 });
 
+describe('a balanced layout in light of −130 dB/Hz', async () => {
+  const { designs } = await new Workshop({ task: NOISY, families: FAMILIES }).do({
+    kind: 'finish',
+    // What a search of 2500 candidates found.
+    candidates: [
+      { variant: 'rings-weighted-4', vector: [3.224, 6.569, 12.038, 15.621, 0], weighedFor: 0.0099 },
+    ],
+  });
+  const [{ scores, elements, distanceM }] = designs;
+
+  it('meets the target of 1 % in a fiftieth of the least time that any single element could have', () => {
+    expect(scores.correction.certified).toBeLessThan(0.01);
+    // All of the light's noise over the floor of area over gain, λz (see DEVELOPERS.md): RIN (λz)² over (ε C)².
+    const judge = new Judge(NOISY, SEARCH_FINENESS);
+    const least = Math.min(...judge.scenarios.map(({ extinctionM2 }) => extinctionM2));
+    const floorS = 1e-13 * ((judge.wavelengthM * distanceM) / (0.01 * least)) ** 2;
+    expect(scores.snr.time_s).toBeLessThan(floorS / 50);
+    expect(elements.map(({ weight }) => Math.sign(weight))).toEqual([1, -1, 1, -1]);
+  });
+});
+
 describe('searchSpace', () => {
   const idsOf = (changes: Partial<Task['detector']>) => {
     const task = { ...NOISY, detector: { ...NOISY.detector, ...changes } };

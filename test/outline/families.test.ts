@@ -216,6 +216,48 @@ describe('areas in closed form', () => {
   });
 });
 
+describe('weighted elements', () => {
+  const areasOf = (id: string, values: number[]) =>
+    drawn(variantNamed(id), values).elements.map((element) => nodesArea(nodesOf(element)));
+  const radius = (eta: number) => Math.sqrt(eta) * UNIT_M;
+  const annulus = (inner: number, outer: number) => Math.PI * (outer * outer - inner * inner);
+  const half = LIMITS.gapM / 2;
+
+  it('share the gap between them', () => {
+    const [disc, ring] = areasOf('rings-weighted-2', [7, 3]);
+    expect(disc / annulus(0, radius(3) - half)).toBeCloseTo(1, 9);
+    expect(ring / annulus(radius(3) + half, radius(7))).toBeCloseTo(1, 9);
+    // Of annuli that lie apart anyway nothing is taken.
+    const apart = areasOf('rings-weighted-apart-3', [1, 2, 3, 4, 5, 6]);
+    [1, 3, 5].forEach((inner, i) => {
+      expect(apart[i] / annulus(radius(inner), radius(inner + 1))).toBeCloseTo(1, 9);
+    });
+  });
+
+  it('cut annuli into sectors with gaps of even width', () => {
+    const [disc, open, between] = areasOf('rings-weighted-sectors-3-fold', [3, 6, 9, 0.4]);
+    expect(disc / annulus(0, radius(3) - half)).toBeCloseTo(1, 9);
+    const [inner, outer] = [radius(3) + half, radius(6) - half];
+    const gaps = 3 * LIMITS.gapM * (outer - inner);
+    expect(open / (0.4 * annulus(inner, outer) - gaps)).toBeCloseTo(1, 4);
+    expect(between / (0.6 * annulus(inner, outer) - gaps)).toBeCloseTo(1, 4);
+  });
+
+  it('leave out what the gap leaves nothing of, and stand as far out in a farther plane as their phase says', () => {
+    expect(areasOf('rings-weighted-2', [3, 3.0001]).length).toBe(1);
+    const [near, far] = drawn(variantNamed('splitter-2'), [0, 4, 1, 5]).elements;
+    expect([near.distanceRatio, far.distanceRatio, near.share, far.share]).toEqual([undefined, 2, 0.5, 0.5]);
+    expect(nodesArea(nodesOf(far)) / annulus(radius(2), radius(10))).toBeCloseTo(1, 9);
+  });
+
+  it('keep photodiodes one gap apart at the least', () => {
+    expect(variantNamed('grid-4-by-4').draw([1e-4, 1], UNIT_M)).toHaveProperty('misdrawnBy');
+    const total = areasOf('grid-3-by-5', [2, 3, 0.75]).reduce((sum, area) => sum + area, 0);
+    const [across, up] = [radius(2), radius(3)];
+    expect(total / (15 * (across - 0.25 * across) * (up - 0.25 * across))).toBeCloseTo(1, 9);
+  });
+});
+
 describe('rings', () => {
   it('merges rims that are too close, and misdraws what has no ring left', () => {
     const thin = drawn(variantNamed('rings-2'), [2, 2.0005, 3, 5]);

@@ -111,12 +111,18 @@ describe('hintsFor', () => {
     const brief: Brief = {
       ...BRIEF,
       families: ['disc', 'rings'],
-      task: { ...task, shop, target: { ...task.target, gain: 'one' } },
+      task: {
+        ...task,
+        shop,
+        detector: { ...task.detector, elements: 'one' },
+        target: { ...task.target, gain: 'one' },
+      },
     };
     expect(hintsFor(brief, [design({})], 0.05)).toEqual([
       `search.candidates: the front has not come to rest, more than ${brief.search.candidates} may take it further`,
       'shop: the design lies at the smallest widths of mine, a finer process may lead further',
       'target.gain: free would let one calibrated factor for all particles be taken out',
+      'detector.elements: several would let weighted elements be tried',
       'families: ramp, fourier, polygon, sectors, grid, splitter were not looked at',
     ]);
   });
