@@ -1,7 +1,9 @@
 import type { Problem } from '../base/errors.ts';
 import { inputError, RimwrightError } from '../base/errors.ts';
+import { countText } from '../draw/quantityText.ts';
 import type { LengthUnit } from '../outline/files/lengthUnit.ts';
 import type { Fields } from '../reading/tableShelf.ts';
+import type { Brief } from '../run/brief.ts';
 import type { DesignChoice } from '../run/chooseDesign.ts';
 import { chooseDesign } from '../run/chooseDesign.ts';
 import { designToJson } from '../run/designJson.ts';
@@ -10,24 +12,33 @@ import { judgeOutline } from '../run/judgeOutline.ts';
 import type { OpenedBrief } from '../run/openBrief.ts';
 import { openBrief } from '../run/openBrief.ts';
 import type { RankedDesign } from '../run/ranking.ts';
+import { recommend } from '../run/recommend.ts';
 import { rankGiven, scoreGiven } from '../run/scoreGiven.ts';
 import { outlineOf, present, readingWarnings } from '../run/warnings.ts';
+import { yieldOf } from '../run/yieldOf.ts';
+import { worstOf } from '../score/scores.ts';
 import type { Task } from '../score/task.ts';
-import { DESIGN_COLUMNS, MEETS_COLUMN, shopColumn } from './designColumns.ts';
+import { DESIGN_COLUMNS, MEETS_COLUMN, percentCell, shopColumn } from './designColumns.ts';
 import { EXIT } from './exit.ts';
 import { noteDefaults, print, printWrapped, warn } from './notes.ts';
 import { readDistance } from './quantityOptions.ts';
 import { table } from './table.ts';
 
-/** A design and the file that it came from. */
-type Compared = RankedDesign & { file: string };
+/** A design, the file that it came from, and the share of its builds that meet the target where that was worked out. */
+type Compared = RankedDesign & { file: string; yield?: number };
+
+interface Options {
+  design: readonly string[];
+  unit?: LengthUnit;
+  distance?: string;
+  /** Of each design that meets the target; 0 for none. */
+  builds: number;
+  exact?: true;
+  json?: true;
+}
 
 /** Runs `rimwright compare` and gives its exit code. */
-export async function run(
-  place: string,
-  files: readonly string[],
-  options: { design: readonly string[]; unit?: LengthUnit; distance?: string; exact?: true; json?: true },
-): Promise<number> {
+export async function run(place: string, files: readonly string[], options: Options): Promise<number> {
   const distance = await readDistance(options.distance);
   const unit = options.unit === undefined ? {} : { unit: options.unit };
   const choices = [
@@ -43,14 +54,24 @@ export async function run(
   const { task } = brief;
   const wanted = options.exact ? 'exact' : 'far';
   const compared = scoreAll(opened, choices, distance, wanted);
-  const designs = rankGiven(compared.designs);
+  const designs = rankGiven(await withYields(compared.designs, brief, options.builds));
+  const recommended = recommend(designs, task);
   const warnings = present([...compared.warnings, ...readingWarnings(task, wanted, designs.map(outlineOf))]);
   if (!options.json) noteDefaults(brief.defaults);
   warn(warnings);
   if (options.json) {
-    const plain = designs.map((design) => ({ file: design.file, ...designToJson(design) }));
-    print(jsonText({ brief, designs: plain, warnings }));
-  } else printComparison(designs, task);
+    const plain = designs.map((design) => ({
+      file: design.file,
+      ...designToJson(design),
+      ...(design.yield !== undefined && { yield: design.yield }),
+    }));
+    print(jsonText({ brief, designs: plain, recommended, warnings }));
+  } else {
+    printComparison(designs, task);
+    print('');
+    const { id, reason } = recommended;
+    printWrapped(id === null ? `No recommendation: ${reason}.` : `Recommended: ${id}, since ${reason}.`);
+  }
   return EXIT.done;
 }
 
@@ -80,8 +101,27 @@ function scoreAll(
   return { designs, warnings };
 }
 
+/** The yield of each design that meets the target as drawn: of the others next to no build does. */
+async function withYields(
+  designs: readonly Compared[],
+  { task, tolerances }: Brief,
+  builds: number,
+): Promise<Compared[]> {
+  const found: Compared[] = [];
+  for (const design of designs) {
+    if (builds === 0 || !design.meetsTarget) {
+      found.push(design);
+      continue;
+    }
+    const { fields } = design;
+    const { yield: share } = await yieldOf(task, design, tolerances, { builds, fields, quick: true });
+    found.push({ ...design, yield: share });
+  }
+  return found;
+}
+
 function printComparison(designs: readonly Compared[], task: Task): void {
-  const { worst, rms, gain, lobe, snr, time, area } = DESIGN_COLUMNS;
+  const { worst, gain, lobe, snr, time } = DESIGN_COLUMNS;
   const place = { title: [], cell: ({ rank }: Compared) => String(rank) };
   const name = {
     title: ['design'],
@@ -89,9 +129,20 @@ function printComparison(designs: readonly Compared[], task: Task): void {
     align: 'left' as const,
     flexible: true,
   };
+  const drawn = {
+    title: ['drawn', '%'],
+    cell: ({ asDrawn, scores }: Compared) => percentCell(asDrawn?.worst ?? worstOf(scores)),
+  };
+  const cut = { ...worst, title: ['as cut', '%'] };
+  const share = {
+    title: ['yield', '%'],
+    cell: (design: Compared) => (design.yield === undefined ? '–' : countText(100 * design.yield)),
+  };
+  const hasShop = task.shop !== null;
+  const corrections = hasShop ? [drawn, cut] : [worst];
   print(
     table(
-      [place, name, worst, rms, gain, lobe, snr, time, area, shopColumn(task.shop !== null), MEETS_COLUMN],
+      [place, name, ...corrections, gain, lobe, snr, time, share, shopColumn(hasShop), MEETS_COLUMN],
       designs,
     ),
   );

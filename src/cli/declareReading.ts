@@ -73,13 +73,19 @@ Example:
     .command('compare')
     .summary('outlines side by side')
     .description(
-      'Scores outlines against one brief, side by side: those that meet the target first, then the fastest.',
+      'Scores outlines against one brief, side by side: those that meet the target first, then the fastest; and recommends one.',
     )
     .argument('<brief>', BRIEF)
     .argument('[files...]', OUTLINE)
     .option('--design <id>', "a design of the brief's own results; may be given again", repeated, [])
     .option('--unit <unit>', UNIT, lengthUnit)
     .option('--distance <length>', 'distance from particle to detector, for all of them')
+    .option(
+      '--builds <n>',
+      'for the yield of those that meet the target; 0: none',
+      wholeNumber('--builds', 0, BUILDS[1]),
+      2000,
+    )
     .option('--exact', EXACT)
     .option('--json', AS_JSON)
     .addHelpText(

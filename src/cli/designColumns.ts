@@ -25,7 +25,7 @@ function overLeastText({ areaOverFloor, leastAreaOverFloor }: Scores): string {
 }
 
 /** Four significant digits, so that a correction just beyond a target of 1 % does not look like one that keeps it. */
-function percentCell(ratio: number): string {
+export function percentCell(ratio: number): string {
   const percent = 100 * ratio;
   return percent !== 0 && (percent < 1e-3 || percent >= 1e4)
     ? shortCount(percent)

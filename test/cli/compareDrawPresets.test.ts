@@ -33,8 +33,16 @@ describe('rimwright compare', () => {
     const files = ['square.csv', 'small.csv', 'zone.json'].map((file) => join(folder, file));
     const { code, stdout } = await runHere(['compare', 'size-range', ...files, '--json']);
     expect(code).toBe(0);
-    const { brief, designs } = JSON.parse(stdout);
+    const { brief, designs, recommended } = JSON.parse(stdout);
     expect(brief.title).toBe('Spheres of three sizes on the axis');
+    // Only what meets the target as drawn is built over and over.
+    expect(designs.map((design: { yield?: number }) => design.yield !== undefined)).toEqual([
+      true,
+      false,
+      false,
+    ]);
+    expect(designs[0].yield).toBeGreaterThan(0);
+    expect(recommended).toEqual({ id: 'zone', reason: expect.stringMatching('it alone meets the target') });
     expect(designs.map(({ id }: { id: string }) => id)).toEqual(['zone', 'small', 'square']);
     expect(designs.map(({ rank }: { rank: number }) => rank)).toEqual([1, 2, 3]);
     expect(designs[0].file).toBe(files[2]);
@@ -55,6 +63,7 @@ describe('rimwright compare', () => {
     expect(stdout.replace(/\s+/g, ' ')).toContain('zone.json: smallest opening');
     const table = stdout.split('\n\n')[0];
     for (const line of table.split('\n')) expect(line.length).toBeLessThanOrEqual(80);
+    expect(stdout).toMatch(/\n(Recommended: zone, since|No recommendation: none meets the target;)/);
   });
 
   it('gives every broken file’s message and no scores at all', async () => {
