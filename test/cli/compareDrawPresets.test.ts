@@ -78,7 +78,7 @@ describe('rimwright compare', () => {
     expect(stderr.split('\n')).toEqual([
       'bow.csv:2: found the edge from line 2 meeting the edge from line 4 at x = 0.5 mm, y = 0.5 mm, expected an outline that does not cross or touch itself',
       'missing.csv: found no such file, expected a file that can be read',
-      'zone.json: wieght: found an unknown key, expected only id, family, distance_m, elements, fields, otherFields, scores, rank, meetsTarget',
+      'zone.json: wieght: found an unknown key, expected only id, family, distance_m, elements, fields, otherFields, asDrawn, scores, rank, meetsTarget',
       'zone.json: distance_m: found "20 mm", expected a distance from 0.0001 to 10 m',
       '',
     ]);
