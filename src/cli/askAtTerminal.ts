@@ -15,7 +15,11 @@ export function openQuestions(): Questions | null {
   const lines = createInterface({ input: stdin, output: stderr });
   const closed = new Promise<never>((_, reject) => {
     lines.on('close', () => {
-      reject(inputError([{ found: 'questions that were left', expected: 'answers; nothing was written' }]));
+      reject(
+        inputError([
+          { found: 'questions that were left', expected: 'answers to all of them: nothing was written' },
+        ]),
+      );
     });
   });
   // Closed in the end by ourselves, with nobody waiting.

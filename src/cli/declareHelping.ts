@@ -46,4 +46,18 @@ Example:
   $ rimwright help brief`,
     )
     .action(async (topic) => done(await (await import('./helpCommand.ts')).run(program, topic)));
+
+  program
+    .command('completion')
+    .summary('a script by which a shell completes commands')
+    .description('Prints a script by which a shell completes commands, options, presets and keys of briefs.')
+    .argument('<shell>', 'bash, zsh or fish')
+    .addHelpText(
+      'after',
+      `
+Example, for the shell's own start file:
+  $ eval "$(rimwright completion bash)"
+  $ rimwright completion fish | source`,
+    )
+    .action(async (shell) => done(await (await import('./completionCommand.ts')).run(program, shell)));
 }

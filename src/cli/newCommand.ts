@@ -45,6 +45,7 @@ async function askAll(
       })),
     );
   }
+  note('An empty answer takes what stands in brackets. Ctrl-C leaves, and writes nothing.');
   try {
     const answers: { [Name in Asked]?: string } = {};
     for (const { name, about, isNeeded, offered } of questions) {

@@ -18,6 +18,7 @@ const COMMANDS = [
   'presets',
   'help',
   'new',
+  'completion',
 ];
 
 /** Scripts that a run of the program loaded, after the coverage that V8 writes. */
