@@ -143,16 +143,16 @@ describe('smallest', () => {
       name: string,
       measure: 'area' | 'cost',
       families: FamilyName[] | undefined,
-      candidates: number | undefined,
+      candidates: number,
       most: number,
     ]
   >([
-    ['nominal-sphere', 'area', undefined, undefined, 1.05],
-    ['nominal-sphere', 'area', ['fourier', 'sectors'], undefined, 1.72],
-    ['size-range', 'cost', undefined, undefined, 1.05],
+    ['nominal-sphere', 'area', undefined, 3000, 1.05],
+    ['nominal-sphere', 'area', ['fourier', 'sectors'], 3000, 1.72],
+    ['size-range', 'cost', undefined, 4000, 1.05],
     ['size-range', 'cost', ['disc'], 1000, 1.671],
-    ['offset-range', 'area', undefined, undefined, 1.6],
-    ['offset-range', 'area', ['fourier'], 8000, 2.8],
+    ['offset-range', 'area', undefined, 4000, 1.6],
+    ['offset-range', 'area', ['fourier'], 5000, 2.8],
   ])('%s by %s with families %j', async (name, measure, families, candidates, most) => {
     const brief = await briefOf(name, candidates, families);
     const { design, evaluations, misses } = await smallest(brief, measure, crewOf(2));
