@@ -1,6 +1,6 @@
 import type { Problem } from '../base/errors.ts';
 import { inputError, RimwrightError } from '../base/errors.ts';
-import { countText } from '../draw/quantityText.ts';
+import { countText, percentText } from '../draw/quantityText.ts';
 import type { LengthUnit } from '../outline/files/lengthUnit.ts';
 import type { Fields } from '../reading/tableShelf.ts';
 import type { Brief } from '../run/brief.ts';
@@ -148,8 +148,12 @@ function printComparison(designs: readonly Compared[], task: Task): void {
   );
   print('');
   const width = String(designs.length).length;
-  for (const { rank, file, shop } of designs) {
+  for (const { rank, file, shop, asDrawn } of designs) {
     const [note] = shop.notes;
-    printWrapped(note === undefined ? file : `${file}: ${note}`, `${String(rank).padStart(width)}  `);
+    const drawn = asDrawn && `; as drawn it would read within ${percentText(asDrawn.worst)}`;
+    printWrapped(
+      note === undefined ? file : `${file}: ${note}${drawn ?? ''}`,
+      `${String(rank).padStart(width)}  `,
+    );
   }
 }

@@ -32,6 +32,33 @@ Example:
     .action(async (design, options) => done(await (await import('./drawCommand.ts')).run(design, options)));
 
   program
+    .command('mend')
+    .summary('the nearest outline that a shop can cut')
+    .description(
+      'Changes an outline as little as its shop asks for: bridges for islands, slots and webs wide enough, corners and vertices as cut. Says what was changed, where, and what it does to the correction.',
+    )
+    .argument('<brief>', "a brief's path, or a name on the shelf")
+    .option('--outline <file>', "an outline's file, or front.json#ID")
+    .option('--design <id>', "a design of that front.json, or of the brief's own results")
+    .option('--unit <unit>', UNIT, lengthUnit)
+    .option('--shop <name>', "a shop on the shelf, in place of the brief's")
+    .option('--distance <length>', 'distance from particle to mask, for outlines without one')
+    .option('--out <file>', "the mended design's own JSON; draw makes drawings of it")
+    .option('--force', 'replace a file that is there')
+    .option('--json', AS_JSON)
+    .addHelpText(
+      'after',
+      `
+Example:
+  $ rimwright mend my.yaml --outline ring.csv --distance "20 mm" \\
+      --shop photo-etching --out ring-mended.json
+  $ rimwright draw ring-mended.json
+
+Exit code 1 where no outline nearby can be cut.`,
+    )
+    .action(async (brief, options) => done(await (await import('./mendCommand.ts')).run(brief, options)));
+
+  program
     .command('presets')
     .summary('what is on the shelf')
     .description('Lists media, materials, shops and briefs that briefs can name, or prints one of them.')

@@ -10,8 +10,10 @@ import { missText } from './missText.ts';
 export function scoreText(design: RankedDesign, task: Task): string {
   const { gain, correction, lobe, snr, area_m2, areaOverFloor, leastAreaOverFloor } = design.scores;
   const worst = worstOf(design.scores);
+  const { asDrawn } = design;
   const scores = [
     `worst correction ${percentText(worst)}`,
+    ...(asDrawn === undefined ? [] : [`as cut (as drawn ${percentText(asDrawn.worst)})`]),
     // The same three digits twice would tell nothing.
     ...(percentText(worst) === percentText(correction.worst)
       ? []

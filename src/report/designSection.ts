@@ -27,7 +27,7 @@ export function designSection(design: ReportDesign, input: ReportInput, anchor: 
   ].join('\n');
 }
 
-function scoreList({ rank, distanceM, elements, scores, meetsTarget }: ReportDesign): string {
+function scoreList({ rank, distanceM, elements, scores, meetsTarget, asDrawn }: ReportDesign): string {
   const rows: [name: string, value: string][] = [
     ['Rank', rank === 1 ? '1 (front)' : String(rank)],
     ['Meets the target', meetsTarget ? 'yes' : 'no'],
@@ -35,7 +35,8 @@ function scoreList({ rank, distanceM, elements, scores, meetsTarget }: ReportDes
     ['Radius', quantityText(scores.radius_m, 'm')],
     ['Elements', String(elements.length)],
     ['Gain', scores.gain.toFixed(3)],
-    ['Worst correction', percentText(worstOf(scores))],
+    [asDrawn ? 'Worst correction, as cut' : 'Worst correction', percentText(worstOf(scores))],
+    ...(asDrawn ? [['Worst correction, as drawn', percentText(asDrawn.worst)] as [string, string]] : []),
     ...certifiedRows(scores),
     ['RMS correction', percentText(scores.correction.rms)],
     ...populationRow(scores),

@@ -26,6 +26,8 @@ export interface ReportDesign {
     shop: { fits: boolean | null; notes: readonly string[] };
   };
   meetsTarget: boolean;
+  /** Of the drawing itself, where the shop's cutting changes it; `scores` are of the outline as cut. */
+  asDrawn?: { worst: number };
 }
 
 /** All that a report says, as plain data. */

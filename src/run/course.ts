@@ -11,11 +11,10 @@ import type { Brief } from './brief.ts';
 import type { JobMemory } from './journal.ts';
 import type { Progress } from './progress.ts';
 import { Pace } from './progress.ts';
-import type { Findings } from './quest.ts';
+import type { Again, Findings } from './quest.ts';
 import { missesOf } from './ranking.ts';
 import type { Hands } from './remembering.ts';
 import { remembering } from './remembering.ts';
-import type { Again } from './rounds.ts';
 import { Rounds } from './rounds.ts';
 import { withBounds } from './withBounds.ts';
 

@@ -41,3 +41,11 @@ export interface Findings {
   /** As `FrontHistory` says. */
   movedInLastQuarter: number | null;
 }
+
+/** A candidate to be refined once more. */
+export interface Again {
+  candidate: Candidate;
+  aim: Aim;
+  /** As in a job. */
+  asCut?: true;
+}

@@ -2,12 +2,11 @@ import type { Candidate } from '../crew/candidate.ts';
 import type { Crew } from '../crew/crew.ts';
 import type { ExploreJob, ExploreResult } from '../crew/explore.ts';
 import { FRONT_REACH, FRONT_RESOLUTION, frontObjectives } from '../crew/trials.ts';
-import type { Aim } from '../score/aim.ts';
 import { missedLimits } from '../score/aim.ts';
 import { ParetoArchive } from '../search/paretoArchive.ts';
 import { FrontCredit } from './frontCredit.ts';
 import { FrontHistory } from './frontHistory.ts';
-import type { Findings, Quest, RoundsProgress } from './quest.ts';
+import type { Again, Findings, Quest, RoundsProgress } from './quest.ts';
 import { maskJobs, seedsOf } from './seeding.ts';
 import { Standing } from './standing.ts';
 
@@ -51,14 +50,6 @@ const DIG = 1200;
 
 /** Evaluations per variant below which a first look tells nothing. */
 const LEAST_LOOK = 40;
-
-/** A candidate to be refined once more. */
-export interface Again {
-  candidate: Candidate;
-  aim: Aim;
-  /** As in a job. */
-  asCut?: true;
-}
 
 /**
  * The course of a search: a first look at every variant, then new starts for the best of them, then refinement of the best
@@ -107,9 +98,7 @@ export class Rounds {
     }
   }
 
-  /**
-   * Refines candidates once more for aims of their own, such as a correction that leaves more room.
-   */
+  /** Refines candidates once more for aims of their own, such as a correction that leaves more room. */
   async again(asked: readonly Again[]): Promise<ExploreResult[]> {
     const left = this.#quest.candidates - this.#evaluations;
     const share = left / asked.length;

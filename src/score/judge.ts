@@ -20,7 +20,7 @@ import { elementNodes, factorOf, nearestPlane, planesOf } from './elementNodes.t
 import type { Fineness } from './fineness.ts';
 import { NO_SYMMETRY, Sampling } from './sampling.ts';
 import type { Judgement, SampledReadings } from './scorer.ts';
-import { Scorer } from './scorer.ts';
+import { Scorer, shiftRows } from './scorer.ts';
 import type { Task } from './task.ts';
 import { taskScenarios } from './taskScenarios.ts';
 import type { ApartReadings } from './weigher.ts';
@@ -89,21 +89,15 @@ export class Judge {
    * @param correction that free weights are solved for; the target's if left out
    * @param shift what is added to each ratio, for what the shape leaves out; passed over where it is not as long, or weights are free
    */
-  scoreShape(
-    shape: Shape,
-    distanceM: number,
-    correction = this.task.target.correction,
-    shift: Float64Array | null = null,
-  ): Judgement {
+  scoreShape(shape: Shape, distanceM: number, correction?: number, shift?: Float64Array | null): Judgement {
     const nodes = this.shapeNodes(shape, distanceM);
     const radiusM = shapeRadius(shape);
-    if (shape.freeWeights)
-      return this.judge(
-        weigh(this.task, this.#readApart(nodes, radiusM, distanceM, shape, shape), correction),
-      );
+    if (shape.freeWeights) {
+      const apart = this.#readApart(nodes, radiusM, distanceM, shape, shape);
+      return this.judge(weigh(this.task, apart, correction ?? this.task.target.correction));
+    }
     const read = this.#read(nodes, radiusM, distanceM, shape, shape);
-    if (shift?.length === read.rows.reduce((sum, { length }) => sum + length, 0)) addTo(read.rows, shift);
-    return this.judge(read);
+    return this.judge(shift ? shiftRows(read, shift) : read);
   }
 
   /** Scores an outline given by its points. */
@@ -299,12 +293,5 @@ export class Judge {
    */
   judge(readings: SampledReadings, found: readonly number[] = []): Judgement {
     return this.#scorer.score(readings, found);
-  }
-}
-
-function addTo(rows: readonly Float64Array[], shift: Float64Array): void {
-  let at = 0;
-  for (const row of rows) {
-    for (let i = 0; i < row.length; i++) row[i] += shift[at++];
   }
 }

@@ -116,3 +116,10 @@ function flatten(rows: readonly Float64Array[]): Float64Array {
   }
   return out;
 }
+
+/** Readings with something added to each ratio, row by row; as they are where there is not one for each. */
+export function shiftRows(read: SampledReadings, shift: Float64Array): SampledReadings {
+  if (shift.length !== read.rows.reduce((sum, { length }) => sum + length, 0)) return read;
+  let at = 0;
+  return { ...read, rows: read.rows.map((row) => row.map((ratio) => ratio + shift[at++])) };
+}

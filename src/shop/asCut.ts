@@ -71,7 +71,8 @@ function isRoundAlready(rings: Rings, radiusM: number, side: Side): boolean {
   return isWide && (corner === null || corner.radiusM >= radiusM * (1 + WIDTH_SLACK));
 }
 
-function onGrid(ring: Float64Array, gridM: number): Float64Array {
+/** A ring with its vertices on a grid, each once. */
+export function onGrid(ring: Float64Array, gridM: number): Float64Array {
   const points: number[] = [];
   for (let i = 0; i < ring.length; i += 2) {
     const [x, y] = [ring[i], ring[i + 1]].map((value) => Math.round(value / gridM) * gridM);

@@ -112,8 +112,16 @@ function toRings(geometry: Geometry): Float64Array[] {
   return rings;
 }
 
+/** A millionth of a micrometre: of points that differ only by rounding the library makes hard work. */
+function onGrid(value: number): number {
+  return Math.round(value * 1e6) / 1e6;
+}
+
 function toRing(line: LineRing, sense: 1 | -1): Float64Array {
-  const points = line.getCoordinates().slice(0, -1);
+  const points = line
+    .getCoordinates()
+    .slice(0, -1)
+    .map(({ x, y }) => ({ x: onGrid(x), y: onGrid(y) }));
   const ring = Float64Array.from(points.flatMap(({ x, y }) => [x * UNIT_M, y * UNIT_M]));
   if (ringArea(ring) > 0 === sense > 0) return ring;
   return Float64Array.from(points.reverse().flatMap(({ x, y }) => [x * UNIT_M, y * UNIT_M]));

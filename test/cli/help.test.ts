@@ -15,6 +15,7 @@ const COMMANDS = [
   'compare',
   'yield',
   'draw',
+  'mend',
   'presets',
   'help',
   'new',
