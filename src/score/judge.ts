@@ -16,7 +16,8 @@ import type { Scenario } from '../reading/scenario.ts';
 import { spreadOf } from '../reading/spreadOf.ts';
 import type { Fields, TableShelf } from '../reading/tableShelf.ts';
 import type { ElementNodes } from './elementNodes.ts';
-import { elementNodes, factorOf, nearestPlane, planesOf } from './elementNodes.ts';
+import { elementNodes, nearestPlane } from './elementNodes.ts';
+import { elementRatios } from './elementRatios.ts';
 import type { Fineness } from './fineness.ts';
 import { NO_SYMMETRY, Sampling } from './sampling.ts';
 import type { Judgement, SampledReadings } from './scorer.ts';
@@ -222,29 +223,7 @@ export class Judge {
     flights: FlightMeans,
     depths: readonly number[],
   ): Float64Array[] {
-    const { count, farthestM } = flights;
-    const ratios = this.scenarios.map(() => new Float64Array(count * depths.length));
-    const further = new Float64Array(count);
-    depths.forEach((depth, d) => {
-      planesOf(elements, distanceM).forEach((plane, p) => {
-        const readers = this.#readers.at(plane.distanceM, depth, radiusM, farthestM);
-        for (let s = 0; s < ratios.length; s++) {
-          const read = readers[s];
-          const row = ratios[s].subarray(d * count, (d + 1) * count);
-          const out = p === 0 ? row : further;
-          flights.means((x, y) => {
-            let reading = 0;
-            for (const element of plane.elements) reading += factorOf(element) * read(element.nodes, x, y);
-            return reading;
-          }, out);
-          if (p > 0) for (let i = 0; i < count; i++) row[i] += further[i];
-        }
-      });
-    });
-    ratios.forEach((row, s) => {
-      for (let i = 0; i < row.length; i++) row[i] /= this.scenarios[s].extinctionM2;
-    });
-    return ratios;
+    return elementRatios(this.scenarios, this.#readers, { elements, radiusM, distanceM }, flights, depths);
   }
 
   #read(
