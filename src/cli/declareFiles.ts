@@ -65,14 +65,18 @@ Exit code 1 where no outline nearby can be cut.`,
     .argument('[shelf]', 'media, materials, shops or briefs')
     .argument('[name]', 'print this one')
     .option('--json', AS_JSON)
-    .option('--schema', 'print the JSON Schema of briefs, by which editors complete them')
+    .option(
+      '--schema [of]',
+      'print a JSON Schema: of a brief, by which editors complete it, or of what search, smallest or reading print',
+    )
     .addHelpText(
       'after',
       `
 Example:
   $ rimwright presets media
   $ rimwright presets briefs road-dust > my.yaml
-  $ rimwright presets --schema > brief.schema.json`,
+  $ rimwright presets --schema > brief.schema.json
+  $ rimwright presets --schema search > front.schema.json`,
     )
     .action(async (shelf, name, options) =>
       done(await (await import('./presetsCommand.ts')).run(shelf, name, options)),

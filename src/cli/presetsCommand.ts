@@ -4,8 +4,10 @@ import { presetsFolder } from '../base/presetsFolder.ts';
 import { formatQuantity } from '../base/quantity.ts';
 import { wrapText } from '../draw/plainText.ts';
 import { listIndexModels } from '../optics/shelf.ts';
+import { briefJsonSchema } from '../run/briefJsonSchema.ts';
 import { jsonText } from '../run/jsonText.ts';
 import { listBriefs } from '../run/presetShelf.ts';
+import { RESULT_SCHEMAS } from '../run/resultSchemas.ts';
 import { listShops } from '../shop/shelf.ts';
 import { coloursFor } from './colour.ts';
 import { EXIT } from './exit.ts';
@@ -21,15 +23,18 @@ interface Entry {
   details: string;
 }
 
+/** What `--schema` describes. */
+const SCHEMAS = ['brief', ...(Object.keys(RESULT_SCHEMAS) as (keyof typeof RESULT_SCHEMAS)[])] as const;
+
 /** Runs `rimwright presets` and gives its exit code. */
 export async function run(
   shelfName: string | undefined,
   name: string | undefined,
-  options: { json?: true; schema?: true },
+  options: { json?: true; schema?: true | string },
 ): Promise<number> {
-  if (options.schema) {
-    const { briefJsonSchema } = await import('../run/briefJsonSchema.ts');
-    print(jsonText(await briefJsonSchema()));
+  if (options.schema !== undefined) {
+    const document = options.schema === true ? 'brief' : oneOf('--schema', SCHEMAS)(options.schema);
+    print(jsonText(document === 'brief' ? await briefJsonSchema() : RESULT_SCHEMAS[document]()));
     return EXIT.done;
   }
   const folder = presetsFolder();

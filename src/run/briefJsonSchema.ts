@@ -7,11 +7,10 @@ import type { BriefKey } from './briefKeys.ts';
 import { defaultOf, isList, isRequired, loadBriefKeys, plainValueOf } from './briefKeys.ts';
 import type { Holds } from './holds.ts';
 import { holdsInWords } from './holds.ts';
+import type { JsonSchema } from './jsonSchema.ts';
+import { DRAFT } from './jsonSchema.ts';
 import type { Keys } from './readMapping.ts';
 import { INDEX_PATTERN } from './shelfRules.ts';
-
-/** A JSON Schema, or a part of one. */
-export type JsonSchema = { [keyword: string]: unknown };
 
 /**
  * The JSON Schema (draft 2020-12) of briefs, made of the keys that `readBrief` checks by. It knows keys, types, words, units and
@@ -20,7 +19,7 @@ export type JsonSchema = { [keyword: string]: unknown };
 export async function briefJsonSchema(): Promise<JsonSchema> {
   const units = await loadUnits();
   return {
-    $schema: 'https://json-schema.org/draft/2020-12/schema',
+    $schema: DRAFT,
     title: 'Brief of Rimwright',
     ...mappingSchema(await loadBriefKeys(), units),
   };

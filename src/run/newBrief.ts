@@ -10,7 +10,7 @@ import { readBrief } from './readBrief.ts';
 import type { Keys } from './readMapping.ts';
 
 /** What a new brief is asked for, in this order, and the keys that the answers fill. */
-export const ASKED = {
+const ASKED = {
   particles: 'particles',
   wavelength: 'light.wavelength',
   distance: 'detector.distance',
