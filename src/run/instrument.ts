@@ -11,7 +11,7 @@ import type { Brief } from './brief.ts';
 import { expectedReadings } from './expectedReadings.ts';
 import type { GivenDesign } from './givenDesign.ts';
 import { judgeOutline } from './judgeOutline.ts';
-import { scoreGiven } from './scoreGiven.ts';
+import { asMade, scoreGiven } from './scoreGiven.ts';
 
 /** A brief's instrument, built after one design. */
 export interface BuiltInstrument {
@@ -34,14 +34,15 @@ export interface BuiltInstrument {
  */
 export function instrumentOf(
   { task, uncertainties }: Brief,
-  given: GivenDesign,
+  outline: GivenDesign,
   distance: number | null,
   fields: Fields,
   particles: readonly Particle[] = task.particles,
 ): BuiltInstrument {
+  const given = asMade(task, outline);
   const judged = judgeOutline(task, given, distance, null, fields);
   const { judge, distanceM, radiusM } = judged;
-  const { scores } = scoreGiven(task, given, judged);
+  const { scores } = scoreGiven({ ...task, shop: null }, given, judged);
   const { light, detector } = task;
   const lit = litElements(task, judge.outlineNodes(given.elements, distanceM), distanceM);
   const noise = currentNoise(lit, { ...detector, ...light });

@@ -9,7 +9,7 @@ import type { Fields } from '../reading/tableShelf.ts';
 import type { Task } from '../score/task.ts';
 import type { GivenDesign } from './givenDesign.ts';
 import { judgeOutline } from './judgeOutline.ts';
-import { scoreGiven } from './scoreGiven.ts';
+import { asMade, scoreGiven } from './scoreGiven.ts';
 
 /** Reference spheres: diameters evenly in the logarithm, both ends included. */
 export interface ReferenceSpheres {
@@ -60,14 +60,15 @@ const LEAST_CONTRAST = 1e-6;
  */
 export function responseOf(
   task: Task,
-  given: GivenDesign,
+  outline: GivenDesign,
   spheres: ReferenceSpheres,
   distanceM: number | null,
   fields: Fields = 'far',
 ): Response {
   checkSpheres(task, spheres);
+  const given = asMade(task, outline);
   const judged = judgeOutline(task, given, distanceM, null, fields);
-  const { gain } = scoreGiven(task, given, judged).scores;
+  const { gain } = scoreGiven({ ...task, shop: null }, given, judged).scores;
   const target = task.target.correction;
   const points = diametersOf(spheres).map((diameterM): ResponsePoint => {
     const particle = { diameterM, index: spheres.index, material: spheres.material };

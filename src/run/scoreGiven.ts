@@ -32,6 +32,11 @@ export function scoreGiven(
   return { ...design, id, rank: 1, meetsTarget: missesOf(design, task).length === 0 };
 }
 
+/** The outline that comes back from the brief's shop: see `making`. */
+export function asMade({ shop }: Task, given: GivenDesign): GivenDesign {
+  return shop === null ? given : { ...given, elements: making(given.elements, shop).cut };
+}
+
 /** Designs by whether they meet the target, then by time, each with that place as its rank. */
 export function rankGiven<T extends RankedDesign>(designs: readonly T[]): T[] {
   return [...designs]
