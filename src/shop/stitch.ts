@@ -1,3 +1,4 @@
+import { ringArea } from '../outline/area.ts';
 import type { Boundary } from './boundary.ts';
 import type { Foot } from './edgeGrid.ts';
 import { edgeGrid } from './edgeGrid.ts';
@@ -73,7 +74,15 @@ export function stitch(
   });
   const lost = original.rings.map((_, k) => k).filter((k) => !followed.has(k));
   if (departures.length === 0 && lost.length === 0) return { rings: originalRings, departures, lost };
-  return { rings: stitched.filter(({ length }) => length >= 6), departures, lost };
+  const whole = stitched.filter(({ length }) => length >= 6);
+  // Feet lie within nearM of what they stand for: an area that differs by more has lost its way, and the offset's own vertices serve.
+  const perimeterM = original.rings.reduce((sum, ring) => sum + ring.perimeterM, 0);
+  const isTrue = Math.abs(areaOf(whole) - areaOf(rings)) <= 2 * nearM * perimeterM;
+  return { rings: isTrue ? whole : rings, departures, lost };
+}
+
+function areaOf(rings: readonly Float64Array[]): number {
+  return rings.reduce((sum, ring) => sum + ringArea(ring), 0);
 }
 
 /** Walking along the original's rings. */
@@ -114,6 +123,8 @@ function trackOf(b: Boundary): Track {
     },
     follow(from, to, nearM, points) {
       if (isSetBack(from, to, nearM)) return;
+      // One vertex as the start of its edge, and then as the end of the edge before: the way on would be all around.
+      if (to.edge === b.previous[from.edge] && way(from, to) < nearM) return;
       for (let i = from.edge; i !== to.edge; ) {
         i = b.next[i];
         points.push(b.x[i], b.y[i]);

@@ -1,11 +1,15 @@
 import { describe, expect, it } from 'vitest';
 import { presetsFolder } from '../../src/base/presetsFolder.ts';
+import { randomStream } from '../../src/base/random.ts';
 import { ringArea } from '../../src/outline/area.ts';
+import { isDrawn } from '../../src/outline/families/family.ts';
+import { polygonise } from '../../src/outline/polygonise.ts';
 import { asCut } from '../../src/shop/asCut.ts';
 import type { Rings } from '../../src/shop/offset.ts';
-import { difference, union } from '../../src/shop/offset.ts';
+import { difference, offset, union } from '../../src/shop/offset.ts';
 import { listShops, loadShop } from '../../src/shop/shelf.ts';
 import type { ShopRules } from '../../src/shop/shopRules.ts';
+import { VARIANTS } from '../outline/drawings.ts';
 import { circle, mapped, polygon, reversed, slot, star } from './rings.ts';
 
 const UM = 1e-6;
@@ -126,6 +130,24 @@ describe('an outline as cut', () => {
     const radiusUm = Math.max(rules.insideCornerRadiusM, rules.kerfM / 2) / UM;
     expect(Math.abs(lost / radiusUm ** 2 - (4 - Math.PI))).toBeLessThan(rules.gridM === 0 ? 2e-3 : 2e-2);
   });
+
+  it.each(VARIANTS.map((variant) => [variant.id, variant] as const))(
+    'covers what plain offsets leave: %s',
+    (_, variant) => {
+      const mask = { ...loadShop('photomask', presetsFolder()), smallestOpeningM: 6e-6, smallestWebM: 6e-6 };
+      const random = randomStream(3);
+      for (let k = 0; k < 2; k++) {
+        const drawn = variant.draw(variant.start(random).values, 5e-5);
+        if (!isDrawn(drawn)) continue;
+        for (const { loops } of drawn.elements) {
+          const rings = loops.map((loop) => polygonise(loop, 360));
+          const roundedOff = offset(offset(rings, -mask.insideCornerRadiusM), mask.insideCornerRadiusM);
+          const plain = offset(offset(roundedOff, mask.outsideCornerRadiusM), -mask.outsideCornerRadiusM);
+          expect(Math.abs(areaUm2(cut(rings, mask)) - areaUm2(plain))).toBeLessThan(0.01 * areaUm2(rings));
+        }
+      }
+    },
+  );
 
   it('refuses coordinates that are not finite', () => {
     const broken = square(100);
