@@ -67,7 +67,7 @@ Exit code 1 where no outline nearby can be cut.`,
     .option('--json', AS_JSON)
     .option(
       '--schema [of]',
-      'print a JSON Schema: of a brief, by which editors complete it, or of what search, smallest or reading print',
+      'print a JSON Schema: of a brief, by which editors complete it, or of what search, smallest, reading or response print',
     )
     .addHelpText(
       'after',

@@ -18,6 +18,7 @@ import {
   text,
 } from './jsonSchema.ts';
 import type { Reading, ReadParticle } from './readings.ts';
+import type { Response, ResponsePoint } from './response.ts';
 import type { SearchJson, SmallestJson } from './results.ts';
 
 /** The JSON Schemas of what commands print with `--json`. `search` is that of front.json too. */
@@ -60,6 +61,22 @@ export const RESULT_SCHEMAS = {
       warnings: list('what to mind', text('a warning')),
     }),
   }),
+  response: () => ({
+    $schema: DRAFT,
+    title: 'Result of rimwright response',
+    ...mapping<ResponseJson>('what a design reads of spheres of every size', {
+      fields: oneOf('fields of the sphere behind the readings', ['far', 'exact']),
+      distance_m: number('from the particle to the mask, metres'),
+      radius_m: number('of the circle around the outline, metres'),
+      material: text('of the spheres'),
+      gain: number("calibrated over the brief's particles"),
+      target: number('largest correction allowed'),
+      points: list('one for each diameter', responsePointSchema()),
+      holds: list('runs of diameters that hold the target', numbers('first and last, metres', 2)),
+      brief: briefSchemaOfResults(),
+      warnings: list('what to mind', text('a warning')),
+    }),
+  }),
 } satisfies Record<string, () => JsonSchema>;
 
 /** What `rimwright reading --json` prints. */
@@ -69,6 +86,13 @@ interface ReadingJson {
   rough?: object;
   /** Null for one place alone. */
   design: DesignJson | null;
+  brief: object;
+  warnings: string[];
+}
+
+/** What `rimwright response --json` prints. */
+interface ResponseJson extends Response {
+  fields: string;
   brief: object;
   warnings: string[];
 }
@@ -120,6 +144,20 @@ function readingSchema(): JsonSchema {
     extinction_m2: number('extinction cross-section, m²'),
     reading_m2: number('what is read in its place, m²'),
     correction: number('reading over extinction, less 1'),
+  });
+}
+
+function responsePointSchema(): JsonSchema {
+  return mapping<ResponsePoint>('spheres of one diameter', {
+    diameter_m: number('metres'),
+    extinction_m2: number('extinction cross-section, m²'),
+    reading_m2: number('mean of what is read in its place, m²'),
+    calibrated_m2: number('that over gain, m²'),
+    correction: mapping<ResponsePoint['correction']>('reading over gain and extinction, less 1', {
+      least: number('over all places and wavelengths'),
+      most: number('over all places and wavelengths'),
+    }),
+    holds: flag('whether both keep the target'),
   });
 }
 

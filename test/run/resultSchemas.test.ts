@@ -56,6 +56,23 @@ describe('JSON that commands print keeps its published schema', () => {
     }
   });
 
+  it('response --json', async () => {
+    const square = join(folderWith({ 'square.csv': SQUARE }), 'square.csv');
+    const args = [
+      'response',
+      'nominal-sphere',
+      '--outline',
+      square,
+      '--to',
+      '2 um',
+      '--count',
+      '3',
+      '--json',
+    ];
+    const { stdout } = await runHere(args);
+    expect(misfits(JSON.parse(stdout), await schemaOf('response'))).toEqual([]);
+  });
+
   it('the example kept in the repository', async () => {
     const file = fileURLToPath(new URL('../../results/example/front.json', import.meta.url));
     expect(misfits(JSON.parse(readFileSync(file, 'utf8')), await schemaOf('search'))).toEqual([]);
@@ -65,7 +82,7 @@ describe('JSON that commands print keeps its published schema', () => {
     const { code, stderr } = await runHere(['presets', '--schema', 'serach']);
     expect([code, stderr]).toEqual([
       2,
-      '--schema: found "serach", expected one of brief, search, smallest, reading (did you mean search?)\n',
+      '--schema: found "serach", expected one of brief, search, smallest, reading, response (did you mean search?)\n',
     ]);
   });
 });
