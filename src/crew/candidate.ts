@@ -148,10 +148,14 @@ function tooLargeBy({ task }: Judge, shape: Shape): number {
   return shapeRadius(shape) / task.detector.radiusM[1] - BEYOND_RADIUS;
 }
 
-function costOfSize({ task, wavelengthM }: Judge, shape: Shape, distanceM: number): number {
-  const radiusM = shapeRadius(shape);
+/** What a size costs beyond that of a disc as large as the first Fresnel zone, which no outline worth having is much smaller than. */
+function costOfSize(judge: Judge, shape: Shape, distanceM: number): number {
+  const { task, wavelengthM } = judge;
   const largestM = Math.max(...task.particles.map(({ diameterM }) => diameterM));
-  return sizePenalty(lobeRatio(radiusM, distanceM, wavelengthM, largestM), radiusM, task);
+  const cost = (radiusM: number) =>
+    sizePenalty(lobeRatio(radiusM, distanceM, wavelengthM, largestM), radiusM, task);
+  const zoneM = Math.sqrt(Math.PI / judge.kappa(distanceM));
+  return cost(shapeRadius(shape)) - cost(Math.max(zoneM, task.detector.radiusM[0]));
 }
 
 function shopMisfit(judge: Judge, shape: Shape, scores: Scores, aim: Aim): number {
