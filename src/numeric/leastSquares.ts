@@ -41,12 +41,14 @@ function factorise(a: Float64Array, n: number): void {
   for (let i = 0; i < n; i++) {
     for (let j = 0; j <= i; j++) {
       let sum = a[i * n + j];
+      const least = 10 * RIDGE * sum;
       if (i === j) sum *= 1 + RIDGE;
       for (let k = 0; k < j; k++) sum -= a[i * n + k] * a[j * n + k];
       if (i > j) {
         a[i * n + j] = sum / a[j * n + j];
       } else {
-        if (!(sum > 0)) throw new RimwrightError('machine', 'a fit has columns that depend on each other');
+        if (!(sum > least))
+          throw new RimwrightError('machine', 'a fit has columns that depend on each other');
         a[i * n + i] = Math.sqrt(sum);
       }
     }

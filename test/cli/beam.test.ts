@@ -1,6 +1,8 @@
 import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { describe, expect, it } from 'vitest';
+import { presetText } from '../../src/base/presetFiles.ts';
+import { presetsFolder } from '../../src/base/presetsFolder.ts';
 import { mieCoefficients } from '../../src/optics/mieCoefficients.ts';
 import { polygonRule, quadratureReading } from '../reading/beamQuadrature.ts';
 import { square } from '../reading/setup.ts';
@@ -74,18 +76,10 @@ describe('rimwright in a focused beam', () => {
   });
 
   it('searches the brief of the shelf', async () => {
-    const folder = folderWith({});
-    const args = [
-      'search',
-      'tight-focus',
-      '--candidates',
-      '100',
-      '--workers',
-      '1',
-      '--quiet',
-      '--out',
-      folder,
-    ];
+    const { text: whole } = presetText('briefs', 'tight-focus', presetsFolder());
+    const folder = folderWith({ 'tight-focus.yaml': `${whole}families: [disc]\n` });
+    const brief = join(folder, 'tight-focus.yaml');
+    const args = ['search', brief, '--candidates', '100', '--workers', '1', '--quiet', '--out', folder];
     const { code } = await runCli(args, folder);
     expect(code).toBe(0);
     const text = readFileSync(join(folder, 'latex-beads-in-a-focused-beam', 'front.json'), 'utf8');

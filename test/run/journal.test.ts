@@ -118,7 +118,7 @@ describe('Journal', () => {
 describe('a search with a journal', () => {
   const briefOf = async (): Promise<Brief> => {
     const brief = await presetBrief('nominal-sphere');
-    return { ...brief, families: ['disc', 'rings'], search: { ...brief.search, candidates: 700 } };
+    return { ...brief, families: ['disc', 'rings'], search: { ...brief.search, candidates: 300 } };
   };
 
   it('does again only what is missing, and ends with the same', async () => {

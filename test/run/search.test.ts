@@ -26,7 +26,7 @@ async function briefOf(name: string, candidates?: number, families?: FamilyName[
 
 describe('search', () => {
   it('finds the same for the same seed, with one worker or two', async () => {
-    const brief = await briefOf('offset-range', 900);
+    const brief = await briefOf('offset-range', 600);
     const found = [];
     for (const workers of [1, 2]) {
       const { seconds, ...rest } = await search(brief, crewOf(workers));
