@@ -20,9 +20,15 @@ const COLUMNS: readonly Column[] = [
   { title: 'Required SNR', cell: ({ scores }) => countText(scores.snr.required) },
   { title: 'Time', cell: ({ scores }) => timeText(scores.snr.time_s) },
   { title: 'Area over floor', cell: ({ scores }) => countText(scores.areaOverFloor) },
+  { title: 'Area over least', cell: ({ scores }) => overLeast(scores) },
   { title: 'Fits the shop', cell: ({ scores }) => shopText(scores.shop.fits) },
   { title: 'Meets target', cell: ({ meetsTarget }) => (meetsTarget ? 'yes' : 'no') },
 ];
+
+/** A dash where no bound is known. */
+function overLeast({ areaOverFloor, leastAreaOverFloor: least }: ReportDesign['scores']): string {
+  return least === undefined ? '–' : (areaOverFloor / least).toFixed(3);
+}
 
 /** Four digits, so that a correction just beyond the target does not look like one that keeps it. */
 function finePercent(ratio: number): string {
@@ -51,7 +57,7 @@ export function designTable(designs: readonly ReportDesign[], anchors: readonly 
     `<tbody>${rows.join('\n')}</tbody>`,
     '</table>',
     '</div>',
-    '<p class="small">Area over floor is area over gain, divided by wavelength times distance. On a small screen the table moves sideways.</p>',
+    '<p class="small">Area over floor is area over gain, divided by wavelength times distance; area over least is the same beside the least that any mask is proven to need. On a small screen the table moves sideways.</p>',
   ].join('\n');
 }
 
