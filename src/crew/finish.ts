@@ -45,19 +45,22 @@ export function finish(
       const { shape, distanceM } = drawn;
       const made = making(toPoints(shape, judge.kappa(distanceM)), judge.task.shop);
       const correction = weighedFor ?? judge.task.target.correction;
-      const score = (outline: readonly OutlineElement[]) =>
-        shape.freeWeights
-          ? certifier.weighOutline(outline, distanceM, shape, correction)
-          : { elements: outline, judgement: certifier.scoreOutline(outline, distanceM, shape) };
-      const { elements: cut, judgement: judged } = score(made.cut);
+      const { elements: cut, judgement: judged } = shape.freeWeights
+        ? certifier.weighOutline(made.cut, distanceM, shape, correction)
+        : { elements: made.cut, judgement: certifier.scoreOutline(made.cut, distanceM, shape) };
       const weighed = made.drawn.map((element, k) => ({ ...element, weight: cut[k].weight }));
+      // What cutting changes at the samples: to certify twice would take twice as long.
+      const worstAsDrawn = (outline: readonly OutlineElement[]) =>
+        worstOf(judged.scores) +
+        judge.scoreOutline(outline, distanceM, shape).scores.correction.worst -
+        judged.scores.correction.worst;
       const other = otherJudge?.scoreOutline(cut, distanceM, shape);
       return {
         family: variant.family,
         distanceM: drawn.distanceM,
         elements: weighed,
         scores: judged.scores,
-        ...(made.cut !== made.drawn && { asDrawn: { worst: worstOf(score(made.drawn).judgement.scores) } }),
+        ...(made.cut !== made.drawn && { asDrawn: { worst: worstAsDrawn(weighed) } }),
         fields,
         ...(other && {
           otherFields: { worst: other.scores.correction.worst, difference: largestDifference(judged, other) },

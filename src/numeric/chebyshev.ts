@@ -56,7 +56,7 @@ export function settledFit(
 function usefulTerms(series: Float64Array, count: number, tolerance: number): number {
   const largest = series.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
   let length = count * 4;
-  while (length > 4 && Math.abs(series[length - 1]) < tolerance * largest) length--;
+  while (length > 4 && Math.abs(series[length - 1]) <= tolerance * largest) length--;
   return Math.ceil(length / 4);
 }
 
